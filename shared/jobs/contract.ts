@@ -1,0 +1,185 @@
+import type { EvidenceDocument } from '../schemas/evidence.js';
+import type { InputIssue } from '../schemas/problem.js';
+
+/** Settings of a run beside the evidence; fixed when the run starts. */
+export interface RunSettings {
+  /** How many candidates are kept, best first. */
+  readonly keep: number;
+  /** Wall-clock limit of the whole run in seconds; null = none. */
+  readonly maxSeconds: number | null;
+  /** `count` only counts constitutions, `list` keeps the first `keep` unranked, `rank` predicts and scores. */
+  readonly mode: 'count' | 'list' | 'rank';
+}
+
+/** Part of a run's search tree that one worker does on its own. Opaque outside `workers/enumeration`; JSON-safe. */
+export interface ShardSpec {
+  readonly index: number;
+  /** Position in the list of unit choices × hydrogen distributions of the plan. */
+  readonly distribution: number;
+  /** Bond orders of the rows already filled, in filling order; empty = the whole distribution. */
+  readonly prefix: readonly number[];
+}
+
+/** Stages of the funnel in the order in which constitutions pass them. */
+export const FUNNEL_STAGES = ['constitutions', 'excludedFragments', 'ringSizes', 'plausibility', 'signals', 'ranked'] as const;
+export type FunnelStage = (typeof FUNNEL_STAGES)[number];
+
+/** Counts of one stage: how many arrived, how many passed, and the others by reason. */
+export interface FunnelStep {
+  readonly stage: FunnelStage;
+  readonly entered: number;
+  readonly passed: number;
+  /** Rejected constitutions by reason, most frequent first. */
+  readonly rejections: ReadonlyArray<{ readonly reason: string; readonly text: string; readonly count: number }>;
+}
+export type Funnel = readonly FunnelStep[];
+
+/** Log-likelihood terms of a candidate (natural logarithm, higher is better); absent = no such evidence. */
+export interface ScoreTerms {
+  carbon13?: number;
+  proton1?: number;
+  multiplicity?: number;
+  integral?: number;
+  plausibility?: number;
+}
+
+/** A constitution that survived, as it leaves a shard: compact, still without SMILES. */
+export interface ShardCandidate {
+  /** Canonical, sortable text key of the constitution (Kekulé-merged when that is on); equal keys = equal constitutions. */
+  readonly key: string;
+  /** Bond list and hydrogens needed to rebuild the graph: see workers/graph/pack. */
+  readonly packed: string;
+  readonly score: number;
+  readonly terms: ScoreTerms;
+}
+
+export interface ShardResult {
+  readonly index: number;
+  /** Constitutions before any filter, resonance forms merged when that is on. */
+  readonly constitutionCount: number;
+  /** The same without merging. */
+  readonly multigraphCount: number;
+  readonly funnel: Funnel;
+  readonly kept: readonly ShardCandidate[];
+  /** log Σ exp(score) over all survivors of this shard, −Infinity written as null. */
+  readonly logSumExp: number | null;
+  readonly cpuSeconds: number;
+  /** False when a limit or a cancellation cut the shard short. */
+  readonly complete: boolean;
+}
+
+/** Live counters of a run, written by shards into a SharedArrayBuffer (see shared/jobs/counters). */
+export interface RunProgress {
+  readonly stage: 'planning' | 'enumerating' | 'ranking' | 'done';
+  readonly shardsDone: number;
+  readonly shardCount: number;
+  readonly constitutionsSeen: number;
+  readonly survivors: number;
+  readonly ratePerSecond: number;
+  readonly elapsedSeconds: number;
+  readonly secondsLeft: number | null;
+}
+
+/** Predicted signal of a set of equivalent carbons. shift, sd in ppm. */
+export interface PredictedCarbon {
+  readonly atoms: readonly number[];
+  readonly shift: number;
+  readonly sd: number;
+  readonly hydrogens: number;
+  /** The rule that gave the number, for people: "benzene increments", "alkane increments". */
+  readonly basis: string;
+}
+/** Predicted signal of a set of equivalent protons. atoms = heavy atoms that carry them; couplings in Hz. */
+export interface PredictedProton {
+  readonly atoms: readonly number[];
+  readonly shift: number;
+  readonly sd: number;
+  readonly count: number;
+  readonly multiplicity: string;
+  readonly couplings: readonly number[];
+  readonly exchangeable: boolean;
+  readonly basis: string;
+}
+export interface PredictedSpectra {
+  readonly carbons: readonly PredictedCarbon[];
+  readonly protons: readonly PredictedProton[];
+}
+
+/** Which observed signal was laid on which predicted one. Index into the evidence list; null = nothing fits. */
+export interface SignalMatch {
+  readonly nucleus: '13C' | '1H';
+  readonly observedIndex: number | null;
+  readonly predictedIndexes: readonly number[];
+  /** observed − predicted, ppm; null when one side is missing. */
+  readonly deviation: number | null;
+  /** Contribution to the log-likelihood. */
+  readonly term: number;
+  readonly remark: string | null;
+}
+
+/** Something people should see beside a candidate: soft rule that fired, stereocentres, open questions. */
+export interface CandidateRemark {
+  readonly kind: 'stereo' | 'plausibility' | 'fit' | 'signal';
+  readonly tone: 'supports' | 'doubts' | 'notes';
+  readonly text: string;
+  readonly atoms: readonly number[];
+}
+
+/** A kept candidate with everything that is shown of it. Atom numbers follow `smiles` from 0. */
+export interface RankedCandidate {
+  readonly rank: number;
+  readonly smiles: string;
+  readonly idcode: string;
+  /** Posterior over all survivors and "none of these", 0–1. */
+  readonly probability: number;
+  readonly score: number;
+  readonly terms: ScoreTerms;
+  /** Mean absolute 13C deviation of the matched signals, ppm; null without 13C evidence. */
+  readonly carbonDeviation: number | null;
+  readonly protonDeviation: number | null;
+  readonly spectra: PredictedSpectra;
+  readonly matches: readonly SignalMatch[];
+  readonly remarks: readonly CandidateRemark[];
+}
+
+export interface RunResult {
+  readonly constitutionCount: number;
+  readonly multigraphCount: number;
+  readonly complete: boolean;
+  readonly funnel: Funnel;
+  readonly candidates: readonly RankedCandidate[];
+  /** Probability that the right structure is not among the survivors. */
+  readonly noneOfTheseProbability: number;
+  readonly cpuSeconds: number;
+}
+
+/** Why a drawn structure is not in a ranking, or where it is. */
+export type Explanation =
+  | { readonly kind: 'rejected'; readonly stage: FunnelStage; readonly reasons: ReadonlyArray<{ reason: string; text: string; atoms: readonly number[] }>; readonly key: string; readonly smiles: string }
+  | { readonly kind: 'survives'; readonly score: number; readonly terms: ScoreTerms; readonly key: string; readonly smiles: string }
+  | { readonly kind: 'otherFormula'; readonly formula: string; readonly expected: string; readonly smiles: string };
+
+/** Failure that crosses the worker boundary as data: a thrown error would lose its code. */
+export interface JobFailure {
+  readonly code: 'badInput' | 'cancelled' | 'internal';
+  readonly message: string;
+  readonly issues?: readonly InputIssue[];
+}
+export type JobResult<T> = { readonly ok: true; readonly value: T } | { readonly ok: false; readonly failure: JobFailure };
+
+/** Every message that crosses the thread boundary. Input is structured-cloneable; counters are shared memory. */
+export interface JobContract {
+  plan: { input: { evidence: EvidenceDocument; settings: RunSettings; targetShards: number }; output: { shards: readonly ShardSpec[]; notes: readonly string[] } };
+  shard: {
+    input: { evidence: EvidenceDocument; settings: RunSettings; shard: ShardSpec; counters: SharedArrayBuffer; deadlineEpochMs: number | null };
+    output: ShardResult;
+  };
+  finish: {
+    input: { evidence: EvidenceDocument; settings: RunSettings; kept: readonly ShardCandidate[]; logSumExp: number | null; funnel: Funnel };
+    output: { candidates: readonly RankedCandidate[]; noneOfTheseProbability: number };
+  };
+  explain: { input: { evidence: EvidenceDocument; settings: RunSettings; smiles: string }; output: Explanation };
+  predict: { input: { smiles: string; solvent: string }; output: PredictedSpectra & { smiles: string; notes: readonly string[] } };
+  estimate: { input: { evidence: EvidenceDocument; probes: number; seed: number; maxSeconds: number }; output: { estimate: number; low: number; high: number; cpuSeconds: number; seconds: number } };
+}
+export type JobName = keyof JobContract;
