@@ -1,0 +1,37 @@
+import { exactText, HASH, ID, WORD, tableMigration } from './migration.js';
+
+export const createShortlistItems = tableMigration(
+  '20261201121700-create-shortlist-items',
+  'shortlist_items',
+  `
+    id ${ID} NOT NULL,
+    team_id ${ID} NOT NULL,
+    shortlist_id ${ID} NOT NULL,
+    unknown_id ${ID} NOT NULL,
+    candidate_id ${ID} NULL,
+    run_id ${ID} NULL,
+    smiles ${exactText(600)} NOT NULL,
+    idcode ${exactText(600)} NOT NULL,
+    idcode_hash ${HASH} NOT NULL,
+    verdict ${WORD} NOT NULL,
+    note TEXT NOT NULL,
+    snapshot JSON NOT NULL,
+    added_by_id ${ID} NOT NULL,
+    created_at DATETIME(3) NOT NULL,
+    updated_at DATETIME(3) NOT NULL,
+    CONSTRAINT shortlist_items_pk PRIMARY KEY (id),
+    CONSTRAINT shortlist_items_list_idcode_key UNIQUE (shortlist_id, idcode_hash),
+    INDEX shortlist_items_unknown_idx (unknown_id),
+    INDEX shortlist_items_team_idx (team_id),
+    INDEX shortlist_items_candidate_idx (candidate_id),
+    INDEX shortlist_items_run_idx (run_id),
+    INDEX shortlist_items_added_by_idx (added_by_id),
+    CONSTRAINT shortlist_items_team_fk FOREIGN KEY (team_id) REFERENCES teams (id),
+    CONSTRAINT shortlist_items_list_fk FOREIGN KEY (shortlist_id) REFERENCES shortlists (id),
+    CONSTRAINT shortlist_items_unknown_fk FOREIGN KEY (unknown_id) REFERENCES unknowns (id),
+    CONSTRAINT shortlist_items_candidate_fk FOREIGN KEY (candidate_id) REFERENCES candidates (id) ON DELETE SET NULL,
+    CONSTRAINT shortlist_items_run_fk FOREIGN KEY (run_id) REFERENCES runs (id) ON DELETE SET NULL,
+    CONSTRAINT shortlist_items_added_by_fk FOREIGN KEY (added_by_id) REFERENCES users (id),
+    CONSTRAINT shortlist_items_verdict_check CHECK (verdict IN ('open', 'supported', 'refuted', 'confirmed'))
+  `,
+);
