@@ -40,7 +40,7 @@ export function canonicalForm(n: number, colours: Uint8Array, edges: Uint8Array)
   refine(n, start, edges);
 
   let best: { trace: number[]; order: Uint8Array; code: Uint8Array } | null = null;
-  let first: { order: Uint8Array; code: Uint8Array; path: number[] } | null = null;
+  let first: { order: Uint8Array; code: Uint8Array; path: number[]; trace: number[] } | null = null;
   const automorphisms: Uint8Array[] = [];
   const path: number[] = [];
 
@@ -58,23 +58,23 @@ export function canonicalForm(n: number, colours: Uint8Array, edges: Uint8Array)
   };
 
   /** Explores a node; returns the depth to fall back to when an automorphism with the first leaf was found, else −1. */
-  const explore = (values: number[], trace: number[], againstBest: number): number => {
+  const explore = (values: number[], trace: number[], alongFirst: boolean): number => {
     const cell = smallestCell(n, values);
     if (cell === null) {
       const order = Uint8Array.from(Array.from({ length: n }, (_, i) => i).sort((a, b) => values[a] - values[b]));
       const code = codeOf(order);
       if (first === null) {
-        first = { order, code, path: [...path] };
+        first = { order, code, path: [...path], trace: [...trace] };
         best = { trace: [...trace], order, code };
         return -1;
       }
-      if (compareCodes(code, first.code) === 0) {
+      if (alongFirst && compareCodes(code, first.code) === 0) {
         learn(first.order, order);
         let common = 0;
-        while (common < path.length && path[common] === first.path[common]) common++;
+        while (path[common] === first.path[common]) common++;
         return common;
       }
-      const difference = againstBest !== 0 ? againstBest : compareCodes(code, best!.code);
+      const difference = compareTraces(trace, best!.trace) || compareCodes(code, best!.code);
       if (difference > 0) best = { trace: [...trace], order, code };
       else if (difference === 0) learn(best!.order, order);
       return -1;
@@ -90,39 +90,30 @@ export function canonicalForm(n: number, colours: Uint8Array, edges: Uint8Array)
       let summary = 0;
       for (const value of [...next].sort((a, b) => a - b)) summary = mix(summary, value);
       trace.push(summary);
-      let standing = againstBest;
-      if (best !== null && standing === 0) {
-        const other = best.trace[depth];
-        standing = other === undefined ? 1 : summary === other ? 0 : summary > other ? 1 : -1;
-      }
-      // A worse trace can still hold an automorphism with the first leaf, but never a new best one.
-      if (standing >= 0 || (first !== null && depth < first.path.length && isPrefix(path, first.path) && best!.trace !== trace)) {
+      // A trace below the best one can still hold an automorphism with the first leaf, but no new best leaf.
+      const followsFirst = alongFirst && (first === null || first.trace[depth] === summary);
+      if (followsFirst || best === null || compareTraces(trace, best.trace.slice(0, depth + 1)) >= 0) {
         path.push(vertex);
-        const fallBack = standing >= 0 ? explore(next, trace, standing) : -1;
+        const fallBack = explore(next, trace, followsFirst);
         path.pop();
         if (fallBack !== -1 && fallBack < depth) {
           trace.pop();
           return fallBack;
         }
-        // After a better leaf was stored this node lies on its path, so later siblings compare from equal.
-        if (standing > 0 && best!.trace[depth] === summary) againstBest = compareTracePrefix(trace, best!.trace, depth);
       }
       trace.pop();
     }
     return -1;
   };
-  explore(start, [], 0);
+  explore(start, [], true);
   const found = best as { order: Uint8Array; code: Uint8Array } | null;
   return { order: found!.order, code: found!.code, automorphisms };
 }
 
-function isPrefix(path: readonly number[], of: readonly number[]): boolean {
-  return path.every((vertex, i) => of[i] === vertex);
-}
-
-function compareTracePrefix(trace: readonly number[], best: readonly number[], length: number): number {
-  for (let i = 0; i < length; i++) if (trace[i] !== best[i]) return trace[i] > best[i] ? 1 : -1;
-  return 0;
+function compareTraces(a: readonly number[], b: readonly number[]): number {
+  const length = Math.min(a.length, b.length);
+  for (let i = 0; i < length; i++) if (a[i] !== b[i]) return a[i] - b[i];
+  return a.length - b.length;
 }
 
 /** Is `vertex` the image of a tried one under automorphisms that fix the path point by point? */

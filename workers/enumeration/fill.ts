@@ -1,0 +1,468 @@
+import type { FillLayout } from './layout.js';
+
+/** What a search asks of its caller. Return true to stop the search. */
+export interface FillEvents {
+  /** A complete canonical matrix: `open` × `open`, row-major, reused buffer. */
+  onLeaf(bondOrders: Uint8Array): void;
+  /** Rows [0, row) are filled and `stopRow` was reached: entries in filling order, fresh array. */
+  onPrefix?(prefix: number[]): void;
+  /** Called every few thousand rows; true ends the search. */
+  shouldStop(): boolean;
+}
+
+/** Rows between two calls of `shouldStop`: about a millisecond. */
+const ROWS_BETWEEN_CHECKS = 2048;
+const ANY_ORDER = 255;
+
+/**
+ * Orderly generation of connectivity matrices, row by row, larger entries first; no table of seen matrices.
+ *
+ * A matrix is produced exactly when it is the lexicographically largest one (pairs of tied vertices first, then rows
+ * in order, each over the columns to its right) among all permutations that keep classes and units. After each row
+ * the same test runs on the filled rows; a partial matrix that some permutation makes larger has no canonical
+ * completion, because a completion keeps the entries that decided. (Read, Ann. Discrete Math. 1978, 2, 107; Faradžev,
+ * Colloq. Int. CNRS 1978, 260, 131; row-wise filling: Grund, Bayreuther Math. Schr. 1995, 49, 1.)
+ *
+ * @param layout - vertices, classes and prescribed bonds.
+ * @returns `run(prefix, stopRow, events)`; not re-entrant (scratch is shared between calls).
+ */
+export function createFiller(layout: FillLayout): {
+  /**
+   * Searches below a prefix (empty = from the root). With `stopRow` > 0 the search reports prefixes of that many rows
+   * instead of going deeper; leaves that are complete before are reported as leaves.
+   * @returns false when `shouldStop` ended it.
+   */
+  run(prefix: readonly number[], stopRow: number, events: FillEvents): boolean;
+  /** Rows of the deepest useful prefix. */
+  readonly rowCount: number;
+} {
+  const n = layout.open;
+  const { tied, bondQuota, classOf, unitOf, tiedPermutations } = layout;
+  const a = new Uint8Array(n * n);
+  const left = new Uint8Array(n);
+  const quota = new Uint8Array(4 * n);
+  /** same[row * (n + 1) + j]: free columns j − 1 and j lie in one cell, rows before `row` considered. */
+  const width = n + 1;
+  const same = new Uint8Array((n + 1) * width);
+  /** capacity[j]: what columns [j, n) can still take from the current row; one line a row. */
+  const capacity = new Uint16Array((n + 1) * width);
+  const component = new Uint8Array((n + 1) * n);
+  const componentLeft = new Uint16Array(n);
+  /** Vertices that change places with their predecessor without changing the matrix. */
+  const isTwin = new Uint8Array(n);
+  const twinRoot = new Uint8Array(n);
+  const image = new Uint8Array((n + 1) * n);
+  const orbit = new Uint8Array(n);
+  /** Per depth: the search call that last tried a twin root. */
+  const seenRoot = new Uint32Array(n * n);
+  let seenStamp = 0;
+  let stabiliser: readonly Uint8Array[] = [];
+  let events: FillEvents | null = null;
+  let stopRow = 0;
+  let stopped = false;
+  let untilCheck = ROWS_BETWEEN_CHECKS;
+  const isPrescribed = new Uint8Array(n);
+  for (let v = 0; v < n; v++) isPrescribed[v] = bondQuota[4 * v] === ANY_ORDER ? 0 : 1;
+  const hasPrescribed = isPrescribed.includes(1);
+  const highestOrder = new Uint8Array(n).fill(3);
+  for (let v = 0; v < n; v++) {
+    while (isPrescribed[v] === 1 && highestOrder[v] > 0 && bondQuota[4 * v + highestOrder[v]] === 0) highestOrder[v]--;
+  }
+
+  const tiedPairs: number[] = [];
+  for (let i = 0; i < tied; i++) for (let j = i + 1; j < tied; j++) if (unitOf[i] !== unitOf[j]) tiedPairs.push(i, j);
+
+  function reset(): void {
+    a.fill(0);
+    left.set(layout.freeValence);
+    quota.set(bondQuota);
+    isTwin.fill(0);
+    // The first vertex of each unit names its component.
+    for (let v = 0; v < n; v++) component[v] = unitOf.indexOf(unitOf[v]);
+    for (let j = tied + 1; j < n; j++) same[j] = classOf[j - 1] === classOf[j] ? 1 : 0;
+    same[tied] = 0;
+  }
+
+  /** Largest order that vertices i and j can still share. */
+  function largestOrder(i: number, j: number): number {
+    let x = left[i] < left[j] ? left[i] : left[j];
+    if (x > 3) x = 3;
+    if (!hasPrescribed) return x;
+    while (x > 0 && !orderFits(i, j, x)) x--;
+    return x;
+  }
+  function orderFits(i: number, j: number, order: number): boolean {
+    return (isPrescribed[i] === 0 || quota[4 * i + order] > 0) && (isPrescribed[j] === 0 || quota[4 * j + order] > 0);
+  }
+  function addBond(i: number, j: number, order: number): void {
+    a[i * n + j] = a[j * n + i] = order;
+    left[i] -= order;
+    left[j] -= order;
+    if (hasPrescribed) {
+      if (isPrescribed[i] === 1) quota[4 * i + order]--;
+      if (isPrescribed[j] === 1) quota[4 * j + order]--;
+    }
+  }
+  function removeBond(i: number, j: number, order: number): void {
+    a[i * n + j] = a[j * n + i] = 0;
+    left[i] += order;
+    left[j] += order;
+    if (hasPrescribed) {
+      if (isPrescribed[i] === 1) quota[4 * i + order]++;
+      if (isPrescribed[j] === 1) quota[4 * j + order]++;
+    }
+  }
+
+  // ---- tied block: all pairs of tied vertices of different units, then the permutations that keep it ----
+
+  function fillTied(pair: number): void {
+    if (stopped) return;
+    if (pair === tiedPairs.length) {
+      finishTied();
+      return;
+    }
+    const i = tiedPairs[pair];
+    const j = tiedPairs[pair + 1];
+    for (let x = largestOrder(i, j); x > 0; x--) {
+      if (hasPrescribed && !orderFits(i, j, x)) continue;
+      addBond(i, j, x);
+      fillTied(pair + 2);
+      removeBond(i, j, x);
+    }
+    fillTied(pair + 2);
+  }
+
+  /** Keeps the tied block when it is the largest one, with the permutations that leave it unchanged. */
+  function finishTied(): void {
+    const keep: Uint8Array[] = [];
+    for (const permutation of tiedPermutations) {
+      let difference = 0;
+      for (let k = 0; k < tiedPairs.length && difference === 0; k += 2) {
+        const i = tiedPairs[k];
+        const j = tiedPairs[k + 1];
+        difference = a[permutation[i] * n + permutation[j]] - a[i * n + j];
+      }
+      if (difference > 0) return;
+      if (difference === 0) keep.push(permutation);
+    }
+    const saved = stabiliser;
+    stabiliser = keep;
+    const labels = component.slice(0, n);
+    let alive = true;
+    for (let k = 0; k < tiedPairs.length; k += 2) {
+      if (a[tiedPairs[k] * n + tiedPairs[k + 1]] !== 0) mergeComponents(0, component[tiedPairs[k]], component[tiedPairs[k + 1]]);
+    }
+    if (!componentsAlive(0)) alive = false;
+    if (alive) startRow(0);
+    component.set(labels, 0);
+    stabiliser = saved;
+  }
+
+  // ---- rows ----
+
+  function mergeComponents(line: number, keep: number, drop: number): void {
+    if (keep === drop) return;
+    const start = line * n;
+    for (let v = 0; v < n; v++) if (component[start + v] === drop) component[start + v] = keep;
+  }
+
+  /** False when a component is saturated before everything hangs together, or too few bonds are left to join them. */
+  function componentsAlive(line: number): boolean {
+    const start = line * n;
+    componentLeft.fill(0);
+    let total = 0;
+    for (let v = 0; v < n; v++) {
+      componentLeft[component[start + v]] += left[v];
+      total += left[v];
+    }
+    let count = 0;
+    let saturated = 0;
+    for (let v = 0; v < n; v++) {
+      const label = component[start + v];
+      if (componentLeft[label] === 0xffff) continue;
+      count++;
+      if (componentLeft[label] === 0) saturated++;
+      componentLeft[label] = 0xffff;
+    }
+    if (count === 1) return true;
+    return saturated === 0 && total >= 2 * (count - 1);
+  }
+
+  function startRow(i: number): void {
+    if (stopped) return;
+    if (--untilCheck === 0) {
+      untilCheck = ROWS_BETWEEN_CHECKS;
+      if (events!.shouldStop()) {
+        stopped = true;
+        return;
+      }
+    }
+    if (i >= n - 1) {
+      if (n === 0 || left[n - 1] === 0) events!.onLeaf(a);
+      return;
+    }
+    if (i === stopRow && stopRow > 0) {
+      events!.onPrefix!(currentPrefix(i));
+      return;
+    }
+    const first = i < tied ? tied : i + 1;
+    // Columns to the right can take this much of the row's valence; a row that needs more has no completion.
+    const line = i * width;
+    capacity[line + n] = 0;
+    for (let j = n - 1; j >= first; j--) capacity[line + j] = capacity[line + j + 1] + (left[j] < highestOrder[j] ? left[j] : highestOrder[j]);
+    // While the row equals its predecessor's and both were interchangeable, it must not grow beyond it.
+    const tight = i > tied && same[(i - 1) * width + i] === 1 ? 1 : 0;
+    fillEntry(i, first, tight);
+  }
+
+  function fillEntry(i: number, j: number, tight: number): void {
+    const need = left[i];
+    if (j === n) {
+      if (need === 0) finishRow(i, tight);
+      return;
+    }
+    if (need === 0 && tight === 0) {
+      finishRow(i, 0);
+      return;
+    }
+    let most = need < left[j] ? need : left[j];
+    if (most > 3) most = 3;
+    const first = i < tied ? tied : i + 1;
+    if (j > first && same[i * width + j] === 1 && a[i * n + j - 1] < most) most = a[i * n + j - 1];
+    const bound = tight === 1 ? a[(i - 1) * n + j] : 3;
+    if (bound < most) most = bound;
+    const least = need - capacity[i * width + j + 1];
+    for (let x = most; x > 0 && x >= least; x--) {
+      if (hasPrescribed && !orderFits(i, j, x)) continue;
+      addBond(i, j, x);
+      fillEntry(i, j + 1, tight === 1 && x === bound ? 1 : 0);
+      removeBond(i, j, x);
+      if (stopped) return;
+    }
+    if (least <= 0) fillEntry(i, j + 1, tight === 1 && bound === 0 ? 1 : 0);
+  }
+
+  function finishRow(i: number, tight: number): void {
+    const first = i < tied ? tied : i + 1;
+    const line = i * width;
+    const nextLine = line + width;
+    for (let j = first; j < n; j++) {
+      same[nextLine + j] = j > first && same[line + j] === 1 && a[i * n + j] === a[i * n + j - 1] ? 1 : 0;
+    }
+    const from = i * n;
+    const to = from + n;
+    for (let v = 0; v < n; v++) component[to + v] = component[from + v];
+    for (let j = first; j < n; j++) if (a[i * n + j] !== 0) mergeComponents(i + 1, component[to + i], component[to + j]);
+    if (!componentsAlive(i + 1)) return;
+    isTwin[i] = tight;
+    // With the last but one row the last is known too.
+    const filled = i === n - 2 ? n : i + 1;
+    if (filled === n) isTwin[n - 1] = i >= tied ? same[line + n - 1] : 0;
+    if ((i >= tied || stabiliser.length > 1) && !isLargest(filled)) return;
+    startRow(i + 1);
+  }
+
+  // ---- canonicity ----
+
+  /**
+   * Compares the row of vertex v, columns sorted within the cells of depth i, with row i, and writes the refined
+   * order of the remaining columns to depth i + 1.
+   * @returns 1 larger, −1 smaller, 0 equal
+   */
+  function matchRow(i: number, v: number): number {
+    const first = i < tied ? tied : i + 1;
+    const here = i * n;
+    const next = here + n;
+    const line = i * width;
+    const row = v * n;
+    let p = first;
+    while (p < n) {
+      let end = p + 1;
+      while (end < n && same[line + end] === 1) end++;
+      if (end === p + 1) {
+        const u = image[here + p];
+        const x = a[row + u];
+        const y = a[here + p];
+        if (x !== y) return x > y ? 1 : -1;
+        image[next + p] = u;
+        p = end;
+        continue;
+      }
+      let out = p;
+      // The cell's own entries fall, so each value is taken in turn: 3, 2, 1, then the rest.
+      for (let x = 3; x > 0; x--) {
+        for (let q = p; q < end; q++) {
+          const u = image[here + q];
+          if (a[row + u] !== x) continue;
+          if (a[here + out] !== x) return x > a[here + out] ? 1 : -1;
+          image[next + out] = u;
+          out++;
+        }
+        if (out < end && a[here + out] === x) return -1;
+      }
+      for (let q = p; q < end; q++) {
+        const u = image[here + q];
+        if (a[row + u] === 0) image[next + out++] = u;
+      }
+      p = end;
+    }
+    return 0;
+  }
+
+  function findOrbit(v: number): number {
+    while (orbit[v] !== v) v = orbit[v] = orbit[orbit[v]];
+    return v;
+  }
+
+  /** Is the matrix with rows [0, filled) known the largest of its orbit, as far as the known rows tell? */
+  function isLargest(filled: number): boolean {
+    for (let v = 0; v < n; v++) orbit[v] = v;
+    for (let v = tied; v < filled; v++) twinRoot[v] = isTwin[v] === 1 ? twinRoot[v - 1] : v;
+    const top = filled;
+    // Identity on the tied vertices: from the deepest row upwards, so that automorphisms found below save work above.
+    for (let v = tied; v < n; v++) image[tied * n + v] = v;
+    for (let k = top - 1; k >= tied; k--) {
+      const line = k * width;
+      const here = k * n;
+      let end = k + 1;
+      while (end < n && same[line + end] === 1) end++;
+      if (end > top) end = top;
+      for (let v = k + 1; v < end; v++) {
+        if (isTwin[v] === 1 && v - 1 >= k) continue;
+        if (findOrbit(v) !== v && orbitReachesBelow(v, k)) continue;
+        for (let p = k; p < n; p++) image[here + p] = p;
+        image[here + k] = v;
+        image[here + v] = k;
+        const difference = matchRow(k, v);
+        if (difference > 0) return false;
+        if (difference < 0) continue;
+        const result = search(k + 1, top);
+        if (result === 1) return false;
+        if (result === 2) {
+          image[top * n + k] = v;
+          for (let p = k; p < top; p++) joinOrbits(p, image[top * n + p]);
+        }
+      }
+    }
+    for (let w = 1; w < stabiliser.length; w++) {
+      const permutation = stabiliser[w];
+      for (let v = tied; v < n; v++) image[v] = v;
+      let difference = 0;
+      for (let i = 0; i < tied && i < top && difference === 0; i++) {
+        // A tied row is known only when it is among the filled ones.
+        if (permutation[i] >= top) {
+          difference = -1;
+          break;
+        }
+        difference = matchRow(i, permutation[i]);
+      }
+      if (difference > 0) return false;
+      if (difference < 0 || top <= tied) continue;
+      if (search(tied, top) === 1) return false;
+    }
+    return true;
+  }
+
+  function orbitReachesBelow(v: number, k: number): boolean {
+    const root = findOrbit(v);
+    for (let u = k; u < v; u++) if (findOrbit(u) === root) return true;
+    return false;
+  }
+  function joinOrbits(p: number, v: number): void {
+    orbit[findOrbit(p)] = findOrbit(v);
+  }
+
+  /** @returns 1 when some completion is larger, 2 when one is equal up to `top`, 0 when all are smaller. */
+  function search(i: number, top: number): number {
+    if (i >= top) return 2;
+    const line = i * width;
+    const here = i * n;
+    let end = i + 1;
+    while (end < n && same[line + end] === 1) end++;
+    const stamp = ++seenStamp;
+    for (let p = i; p < end; p++) {
+      const v = image[here + p];
+      if (v >= top) continue;
+      const root = twinRoot[v];
+      if (seenRoot[here + root] === stamp) continue;
+      seenRoot[here + root] = stamp;
+      image[here + p] = image[here + i];
+      image[here + i] = v;
+      const difference = matchRow(i, v);
+      if (difference > 0) return 1;
+      if (difference === 0) {
+        const result = search(i + 1, top);
+        if (result !== 0) {
+          image[top * n + i] = v;
+          return result;
+        }
+      }
+      image[here + i] = image[here + p];
+      image[here + p] = v;
+    }
+    return 0;
+  }
+
+  // ---- prefixes ----
+
+  function currentPrefix(rows: number): number[] {
+    const entries = [rows];
+    for (let k = 0; k < tiedPairs.length; k += 2) entries.push(a[tiedPairs[k] * n + tiedPairs[k + 1]]);
+    for (let i = 0; i < rows; i++) for (let j = i < tied ? tied : i + 1; j < n; j++) entries.push(a[i * n + j]);
+    return entries;
+  }
+
+  /** Puts a prefix back as if the search had come here by itself; its canonicity was tested when it was made. */
+  function restore(prefix: readonly number[]): void {
+    const rows = prefix[0];
+    let k = 1;
+    for (let p = 0; p < tiedPairs.length; p += 2) {
+      const order = prefix[k++];
+      if (order > 0) {
+        addBond(tiedPairs[p], tiedPairs[p + 1], order);
+        mergeComponents(0, component[tiedPairs[p]], component[tiedPairs[p + 1]]);
+      }
+    }
+    stabiliser = tiedPermutations.filter((permutation) => {
+      for (let p = 0; p < tiedPairs.length; p += 2) {
+        if (a[permutation[tiedPairs[p]] * n + permutation[tiedPairs[p + 1]]] !== a[tiedPairs[p] * n + tiedPairs[p + 1]]) return false;
+      }
+      return true;
+    });
+    for (let i = 0; i < rows; i++) {
+      const first = i < tied ? tied : i + 1;
+      let tight = i > tied && same[(i - 1) * width + i] === 1 ? 1 : 0;
+      for (let j = first; j < n; j++) {
+        const order = prefix[k++];
+        if (tight === 1 && order !== a[(i - 1) * n + j]) tight = 0;
+        if (order > 0) addBond(i, j, order);
+      }
+      isTwin[i] = tight;
+      for (let j = first; j < n; j++) {
+        same[(i + 1) * width + j] = j > first && same[i * width + j] === 1 && a[i * n + j] === a[i * n + j - 1] ? 1 : 0;
+      }
+      for (let v = 0; v < n; v++) component[(i + 1) * n + v] = component[i * n + v];
+      for (let j = first; j < n; j++) {
+        if (a[i * n + j] !== 0) mergeComponents(i + 1, component[(i + 1) * n + i], component[(i + 1) * n + j]);
+      }
+    }
+  }
+
+  return {
+    rowCount: n,
+    run(prefix, stopAt, handler) {
+      events = handler;
+      stopRow = stopAt;
+      stopped = false;
+      reset();
+      stabiliser = tiedPermutations;
+      if (prefix.length > 0) {
+        restore(prefix);
+        startRow(prefix[0]);
+      } else {
+        fillTied(0);
+      }
+      return !stopped;
+    },
+  };
+}

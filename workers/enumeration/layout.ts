@@ -1,0 +1,31 @@
+import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
+
+/**
+ * One vertex list to fill: unit choices and a hydrogen distribution laid out as rows.
+ *
+ * Vertices [0, tied) are the open atoms of units with two or more open atoms ("tied": a permutation moves them only
+ * unit by unit), vertices [tied, open) are free to change places within their class: open atoms of units with a single
+ * one, and single heavy atoms. Atoms [open, n) of the graph are closed: no bond is missing.
+ */
+export interface FillLayout {
+  /** Number of open vertices. */
+  readonly open: number;
+  readonly tied: number;
+  /** Free valence of each open vertex, length `open`. */
+  readonly freeValence: Uint8Array;
+  /**
+   * Prescribed bonds: for an open atom of a unit `bondQuota[4 v + o]` bonds of order o must leave it; for a single
+   * atom the entry 4 v is 255 and any orders are allowed that sum up to the free valence.
+   */
+  readonly bondQuota: Uint8Array;
+  /** Class of each vertex; equal classes are contiguous among the free vertices. */
+  readonly classOf: Uint16Array;
+  /** Unit instance of each open vertex; every single atom is its own. Vertices of one unit never bond outside the unit. */
+  readonly unitOf: Uint16Array;
+  /** All permutations of the tied vertices that keep units whole and respect their automorphisms; identity first. */
+  readonly tiedPermutations: readonly Uint8Array[];
+  /** Graph with the bonds inside units and all hydrogens; a fill adds its bonds to a copy of the bond orders. */
+  readonly base: MolecularGraph;
+  /** True when `base` holds no bond, so that the filled matrix is the molecule. */
+  readonly isPlain: boolean;
+}
