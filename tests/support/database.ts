@@ -3,6 +3,7 @@ import type { Sequelize } from 'sequelize';
 import { inject } from 'vitest';
 import { connectDatabase } from '../../server/database/connect.js';
 import { migrate } from '../../server/database/migrate.js';
+import { initModels } from '../../server/models/init-models.js';
 
 export interface TestDatabase {
   readonly sequelize: Sequelize;
@@ -12,10 +13,11 @@ export interface TestDatabase {
   readonly drop: () => Promise<void>;
 }
 
-/** A fresh, migrated database of its own, for one test file. */
+/** A fresh, migrated database of its own with the models bound to it, for one test file. */
 export async function createTestDatabase(): Promise<TestDatabase> {
   const { sequelize, url, drop } = await createEmptyTestDatabase();
   await migrate(sequelize);
+  initModels(sequelize);
   return { sequelize, url, drop };
 }
 
