@@ -128,6 +128,8 @@ export interface CandidateRemark {
 /** A kept candidate with everything that is shown of it. Atom numbers follow `smiles` from 0. */
 export interface RankedCandidate {
   readonly rank: number;
+  /** Key of the shard candidate it came from: by it an explained structure is found among the kept ones. */
+  readonly key: string;
   readonly smiles: string;
   readonly idcode: string;
   /** Posterior over all survivors and "none of these", 0–1. */
