@@ -20,6 +20,7 @@ export interface Endpoint {
 
 export const endpoints = {
   // People
+  readInstallation: { method: 'GET', path: '/installation', summary: 'What the sign-in page may say: the accounts of the demo, if there is one. Needs no session.', response: people.installationResponse },
   signIn: { method: 'POST', path: '/session', summary: 'Sign in; sets the session cookies.', body: people.signInRequest, response: people.meResponse },
   signOut: { method: 'DELETE', path: '/session', summary: 'Sign out of this session.' },
   refreshSession: { method: 'POST', path: '/session/refresh', summary: 'Exchange the refresh cookie for a new pair.', response: people.meResponse },

@@ -4,6 +4,8 @@ import { abilities, emailAddress, id, newPassword, timestamp } from './common.js
 
 export const teamRole = z.enum(TEAM_ROLES);
 
+/** What the sign-in page may say before anyone is known. The list is empty unless the installation carries the demo. */
+export const installationResponse = z.object({ demoAccounts: z.array(z.object({ email: z.string(), name: z.string(), role: z.enum([...TEAM_ROLES, 'admin']), password: z.string() })) });
 export const signInRequest = z.object({ email: emailAddress, password: z.string().min(1, { error: 'expected your password' }).max(200) });
 export const meResponse = z.object({
   user: z.object({ id, name: z.string(), email: z.string(), isAdmin: z.boolean() }),

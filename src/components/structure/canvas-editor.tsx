@@ -1,0 +1,46 @@
+import { CanvasEditor, Molecule } from 'openchemlib';
+import { useEffect, useRef } from 'react';
+import { parseStructure, writeStructure } from './parse-structure';
+
+/** The drawing surface; in its own chunk. `smiles` goes in when it differs from what was drawn last. */
+export function CanvasSurface({ smiles, height, onDrawn, onReadable }: { smiles: string; height: number; onDrawn: (smiles: string) => void; onReadable: (isReadable: boolean) => void }) {
+  const host = useRef<HTMLDivElement>(null);
+  const editor = useRef<CanvasEditor>(null);
+  const lastDrawn = useRef<string | null>(null);
+  const onDrawnRef = useRef(onDrawn);
+  useEffect(() => {
+    onDrawnRef.current = onDrawn;
+  });
+
+  useEffect(() => {
+    if (host.current === null) return undefined;
+    const created = new CanvasEditor(host.current, { initialMode: 'molecule' });
+    editor.current = created;
+    lastDrawn.current = null;
+    created.setOnChangeListener((event) => {
+      if (!event.isUserEvent || event.type !== 'molecule') return;
+      const drawn = writeStructure(created.getMolecule());
+      lastDrawn.current = drawn;
+      onDrawnRef.current(drawn);
+    });
+    return () => {
+      created.removeOnChangeListener();
+      created.destroy();
+      editor.current = null;
+    };
+  }, []);
+
+  useEffect(() => {
+    if (editor.current === null || smiles === lastDrawn.current) return;
+    try {
+      editor.current.setMolecule(smiles.trim() === '' ? new Molecule(32, 32) : parseStructure(smiles));
+      lastDrawn.current = smiles;
+      onReadable(true);
+    } catch {
+      // Half-typed text: the last drawing stays and the field says that the text cannot be read.
+      onReadable(false);
+    }
+  }, [smiles, onReadable]);
+
+  return <div ref={host} className="w-full overflow-hidden rounded-small" style={{ height }} />;
+}

@@ -1,0 +1,67 @@
+import { lazy, Suspense, useCallback, useState } from 'react';
+import { TextInput } from '../field';
+import { LoadingState } from '../states';
+import { StructureDrawing } from './structure-drawing';
+
+const LazySurface = lazy(async () => ({ default: (await import('./canvas-editor')).CanvasSurface }));
+
+interface StructureEditorProps {
+  label: string;
+  /** SMILES; `*` for attachment points in a fragment. */
+  value: string;
+  onValueChange: (smiles: string) => void;
+  /** A fragment has attachment points: atoms can be opened and closed below the surface. */
+  kind?: 'structure' | 'fragment';
+  error?: string | undefined;
+  height?: number;
+}
+
+/** Draw a structure or write its SMILES; both show the same thing. The text field serves those who cannot use the surface. */
+export function StructureEditor({ label, value, onValueChange, kind = 'structure', error, height = 340 }: StructureEditorProps) {
+  const [isReadable, setIsReadable] = useState(true);
+  const onReadable = useCallback((readable: boolean) => setIsReadable(readable), []);
+  const onAtomClick = async (atom: number) => {
+    const { toggleAttachment } = await import('./attachment-points');
+    onValueChange(toggleAttachment(value, atom));
+  };
+  return (
+    <div className="space-y-3">
+      <div role="group" aria-label={`${label}: drawing surface`} className="rounded-panel border border-selvage bg-cloth p-1">
+        <Suspense fallback={<LoadingState label="Loading the drawing surface" className="h-80" />}>
+          <LazySurface
+            smiles={value}
+            height={height}
+            onReadable={onReadable}
+            onDrawn={(smiles) => {
+              setIsReadable(true);
+              onValueChange(smiles);
+            }}
+          />
+        </Suspense>
+      </div>
+      <TextInput
+        label={`${label} as SMILES`}
+        controlClassName="font-mono text-table"
+        spellCheck={false}
+        autoComplete="off"
+        value={value}
+        error={isReadable ? error : (error ?? 'This is not a SMILES yet: check brackets, ring numbers and element symbols.')}
+        hint={kind === 'fragment' ? 'Write * for each attachment point: *C(C)C is isopropyl, C=* asks for a double bond.' : undefined}
+        onChange={(event) => onValueChange(event.target.value)}
+      />
+      {kind === 'fragment' && isReadable && value.trim() !== '' ? (
+        <div className="flex flex-wrap items-center gap-4 rounded-panel border border-seam p-3">
+          <StructureDrawing
+            smiles={value}
+            width={260}
+            height={130}
+            alt={`Attachment points of ${value}`}
+            onAtomClick={(atom) => void onAtomClick(atom)}
+            atomActionLabel={(atom, name) => (name === 'attachment point' ? 'Close this attachment point' : `Open a bond at ${name} ${atom + 1}`)}
+          />
+          <p className="max-w-[36ch] min-w-0 flex-1 text-table text-faded">Choose an atom to open a bond there; choose a wave to close it again. Everything else stays as drawn, hydrogens included.</p>
+        </div>
+      ) : null}
+    </div>
+  );
+}

@@ -1,0 +1,5 @@
+import { LoadingState } from '../../../components/states';
+
+export function Component() {
+  return <LoadingState label="Fragments" />;
+}

@@ -1,0 +1,5 @@
+import { Outlet } from 'react-router-dom';
+
+export function Component() {
+  return <Outlet />;
+}
