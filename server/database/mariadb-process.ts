@@ -41,7 +41,7 @@ export function findExecutable(name: string): string | null {
 
 function requireExecutable(name: string): string {
   const path = findExecutable(name);
-  if (path === null) throw new MariadbError(`${name} was not found. Install MariaDB (Debian: apt-get install mariadb-server) or set DATABASE_URL.`);
+  if (path === null) throw new MariadbError(`${name} was not found. Install MariaDB (on Debian as root: apt-get install mariadb-server-core mariadb-client-core) or set DATABASE_URL.`);
   return path;
 }
 
