@@ -10,8 +10,6 @@ export const createUsers = tableMigration(
     password_hash VARCHAR(100) CHARACTER SET ascii COLLATE ascii_bin NOT NULL,
     is_admin TINYINT(1) NOT NULL DEFAULT 0,
     is_disabled TINYINT(1) NOT NULL DEFAULT 0,
-    failed_sign_ins INT NOT NULL DEFAULT 0,
-    locked_until DATETIME(3) NULL,
     created_at DATETIME(3) NOT NULL,
     updated_at DATETIME(3) NOT NULL,
     CONSTRAINT users_pk PRIMARY KEY (id),

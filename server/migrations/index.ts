@@ -19,6 +19,7 @@ import { createShortlists } from './20261201121600-create-shortlists.js';
 import { createShortlistItems } from './20261201121700-create-shortlist-items.js';
 import { createComments } from './20261201121800-create-comments.js';
 import { createUsageEntries } from './20261201121900-create-usage-entries.js';
+import { createSignInAttempts } from './20261201122000-create-sign-in-attempts.js';
 import type { Migration } from './migration.js';
 
 export const migrations: readonly Migration[] = [
@@ -42,4 +43,5 @@ export const migrations: readonly Migration[] = [
   createShortlistItems,
   createComments,
   createUsageEntries,
+  createSignInAttempts,
 ];

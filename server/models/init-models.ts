@@ -13,6 +13,7 @@ import { initRunShard } from './run-shard.js';
 import { initSession, Session } from './session.js';
 import { initShortlist } from './shortlist.js';
 import { initShortlistItem, ShortlistItem } from './shortlist-item.js';
+import { initSignInAttempt } from './sign-in-attempt.js';
 import { initTeam, Team } from './team.js';
 import { initTeamFragment, TeamFragment } from './team-fragment.js';
 import { initUnknown, Unknown } from './unknown.js';
@@ -22,7 +23,7 @@ import { initUser, User } from './user.js';
 /** Binds every model to a connection. Called once a process, before the first query. */
 export function initModels(sequelize: Sequelize): void {
   for (const init of [
-    initUser, initTeam, initMembership, initSession, initInvitation, initPasswordReset, initOutboxMail, initAuditEvent, initQuota,
+    initUser, initTeam, initMembership, initSession, initSignInAttempt, initInvitation, initPasswordReset, initOutboxMail, initAuditEvent, initQuota,
     initUnknown, initEvidenceRevision, initTeamFragment, initRun, initRunShard, initCandidate, initShortlist, initShortlistItem,
     initComment, initUsageEntry,
   ]) {

@@ -1,6 +1,6 @@
 import { DataTypes, Model } from 'sequelize';
 import type { CreationOptional, InferAttributes, InferCreationAttributes, NonAttribute, Sequelize } from 'sequelize';
-import { idAttribute, optionalTimeAttribute, timeAttribute } from './columns.js';
+import { idAttribute, timeAttribute } from './columns.js';
 import type { Membership } from './membership.js';
 
 /** A person with an account. `email` is kept in lower case. */
@@ -11,16 +11,9 @@ export class User extends Model<InferAttributes<User>, InferCreationAttributes<U
   declare passwordHash: string;
   declare isAdmin: CreationOptional<boolean>;
   declare isDisabled: CreationOptional<boolean>;
-  /** Wrong passwords since the last success or lock-out. */
-  declare failedSignIns: CreationOptional<number>;
-  declare lockedUntil: CreationOptional<Date | null>;
   declare createdAt: CreationOptional<Date>;
   declare updatedAt: CreationOptional<Date>;
   declare memberships?: NonAttribute<Membership[]>;
-
-  isLocked(now: Date): boolean {
-    return this.lockedUntil !== null && this.lockedUntil > now;
-  }
 }
 
 export function initUser(sequelize: Sequelize): void {
@@ -32,8 +25,6 @@ export function initUser(sequelize: Sequelize): void {
       passwordHash: { type: DataTypes.STRING(100), allowNull: false },
       isAdmin: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
       isDisabled: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
-      failedSignIns: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
-      lockedUntil: optionalTimeAttribute,
       createdAt: timeAttribute,
       updatedAt: timeAttribute,
     },

@@ -26,12 +26,13 @@ export const endpoints = {
   refreshSession: { method: 'POST', path: '/session/refresh', summary: 'Exchange the refresh cookie for a new pair.', response: people.meResponse },
   me: { method: 'GET', path: '/me', summary: 'The signed-in person, memberships and abilities.', response: people.meResponse },
   listSessions: { method: 'GET', path: '/sessions', summary: 'Own open sessions.', response: people.sessionList },
-  endSession: { method: 'DELETE', path: '/sessions/:sessionId', summary: 'End one of the own sessions.' },
+  endSession: { method: 'DELETE', path: '/sessions/:sessionId', summary: 'End one of the own sessions.', params: people.sessionParams },
   requestPasswordReset: { method: 'POST', path: '/password-resets', summary: 'Send a reset link, if the address is known; answers the same either way.', body: people.passwordResetRequest },
   resetPassword: { method: 'POST', path: '/password-resets/:token', summary: 'Set a new password with a reset link; ends all sessions.', params: people.tokenParams, body: people.setPasswordRequest },
   readInvitation: { method: 'GET', path: '/invitations/:token', summary: 'What an invitation link is for.', params: people.tokenParams, response: people.invitationResponse },
   acceptInvitation: { method: 'POST', path: '/invitations/:token', summary: 'Set name and password, join the team and sign in.', params: people.tokenParams, body: people.invitationAcceptRequest, response: people.meResponse },
   // Teams
+  listTeams: { method: 'GET', path: '/teams', summary: 'Own teams; for an admin, every team.', response: people.teamList },
   createTeam: { method: 'POST', path: '/teams', summary: 'Create a team (admin).', body: people.teamCreateRequest, response: people.teamResponse },
   readTeam: { method: 'GET', path: '/teams/:teamId', summary: 'One team.', params: people.teamParams, response: people.teamResponse },
   updateTeam: { method: 'PATCH', path: '/teams/:teamId', summary: 'Rename a team.', params: people.teamParams, body: people.teamUpdateRequest, response: people.teamResponse },
@@ -45,8 +46,8 @@ export const endpoints = {
   readOwnQuota: { method: 'GET', path: '/teams/:teamId/own-quota', summary: 'Own quota and what is used of it.', params: people.teamParams, response: people.ownQuotaResponse },
   // Installation
   listUsers: { method: 'GET', path: '/users', summary: 'All people (admin).', response: people.userList },
-  updateUser: { method: 'PATCH', path: '/users/:userId', summary: 'Disable a person or make an admin (admin).', body: people.userUpdateRequest, response: people.userRow },
-  listAudit: { method: 'GET', path: '/audit', summary: 'Audit events, newest first (admin).', response: people.auditList },
+  updateUser: { method: 'PATCH', path: '/users/:userId', summary: 'Disable a person or make an admin (admin).', params: people.userParams, body: people.userUpdateRequest, response: people.userRow },
+  listAudit: { method: 'GET', path: '/audit', summary: 'Audit events, newest first (admin).', query: people.auditListQuery, response: people.auditList },
   // Unknowns and evidence
   listUnknowns: { method: 'GET', path: '/teams/:teamId/unknowns', summary: 'Unknowns of a team.', params: people.teamParams, query: unknowns.unknownListQuery, response: unknowns.unknownPage },
   createUnknown: { method: 'POST', path: '/teams/:teamId/unknowns', summary: 'Create an unknown.', params: people.teamParams, body: unknowns.unknownCreateRequest, response: unknowns.unknownResponse },
@@ -58,10 +59,10 @@ export const endpoints = {
   restoreRevision: { method: 'POST', path: '/revisions/:revisionId/restore', summary: 'Save an old revision as the newest.', params: unknowns.revisionParams, response: unknowns.revisionResponse },
   listComments: { method: 'GET', path: '/unknowns/:unknownId/comments', summary: 'Comments, oldest first.', params: unknowns.unknownParams, response: unknowns.commentList },
   createComment: { method: 'POST', path: '/unknowns/:unknownId/comments', summary: 'Comment.', params: unknowns.unknownParams, body: unknowns.commentCreateRequest, response: unknowns.commentRow },
-  removeComment: { method: 'DELETE', path: '/comments/:commentId', summary: 'Remove an own comment.' },
+  removeComment: { method: 'DELETE', path: '/comments/:commentId', summary: 'Remove an own comment.', params: unknowns.commentParams },
   listTeamFragments: { method: 'GET', path: '/teams/:teamId/fragments', summary: 'Fragments of the team library.', params: people.teamParams, response: unknowns.teamFragmentList },
   createTeamFragment: { method: 'POST', path: '/teams/:teamId/fragments', summary: 'Add a fragment to the team library.', params: people.teamParams, body: unknowns.teamFragmentCreateRequest, response: unknowns.teamFragmentRow },
-  removeTeamFragment: { method: 'DELETE', path: '/fragments/:fragmentId', summary: 'Remove a fragment from the team library.' },
+  removeTeamFragment: { method: 'DELETE', path: '/fragments/:fragmentId', summary: 'Remove a fragment from the team library.', params: unknowns.teamFragmentParams },
   // Runs
   startRun: { method: 'POST', path: '/unknowns/:unknownId/runs', summary: 'Start a run; 409 quotaExceeded with the figures when the quota does not allow it.', params: unknowns.unknownParams, body: runs.runStartRequest, response: runs.runResponse },
   listRuns: { method: 'GET', path: '/unknowns/:unknownId/runs', summary: 'Runs of an unknown, newest first.', params: unknowns.unknownParams, response: runs.runList },

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { TEAM_ROLES } from '../types/roles.js';
-import { abilities, emailAddress, id, newPassword, timestamp } from './common.js';
+import { abilities, emailAddress, id, newPassword, pageOf, pageQuery, timestamp } from './common.js';
 
 export const teamRole = z.enum(TEAM_ROLES);
 
@@ -12,6 +12,7 @@ export const meResponse = z.object({
   memberships: z.array(z.object({ teamId: id, teamName: z.string(), role: teamRole, isDemo: z.boolean(), abilities: abilities(['readUnknowns', 'createUnknown', 'createFragment', 'manageMembers', 'readUsage', 'setQuotas']) })),
   abilities: abilities(['createTeam', 'manageUsers', 'readAudit']),
 });
+export const sessionParams = z.object({ sessionId: id });
 export const sessionResponse = z.object({ id, createdAt: timestamp, lastUsedAt: timestamp, userAgent: z.string(), isCurrent: z.boolean() });
 export const sessionList = z.object({ sessions: z.array(sessionResponse) });
 
@@ -24,6 +25,7 @@ export const invitationResponse = z.object({ email: z.string(), teamName: z.stri
 
 export const teamParams = z.object({ teamId: id });
 export const teamResponse = z.object({ id, name: z.string(), isDemo: z.boolean(), createdAt: timestamp, abilities: abilities(['update', 'manageMembers', 'readUsage', 'setQuotas']) });
+export const teamList = z.object({ teams: z.array(teamResponse) });
 export const teamCreateRequest = z.object({ name: z.string().trim().min(1, { error: 'expected a name' }).max(120) });
 export const teamUpdateRequest = teamCreateRequest;
 export const memberResponse = z.object({
@@ -52,8 +54,10 @@ export const usageResponse = z.object({
 /** The caller's own standing, shown in the run dialog. */
 export const ownQuotaResponse = z.object({ quota: quotaFigures, usedCpuSeconds: z.number(), reservedCpuSeconds: z.number(), runningCount: z.number() });
 
+export const userParams = z.object({ userId: id });
 export const userRow = z.object({ id, name: z.string(), email: z.string(), isAdmin: z.boolean(), isDisabled: z.boolean(), createdAt: timestamp, teams: z.array(z.object({ teamId: id, teamName: z.string(), role: teamRole })) });
 export const userList = z.object({ users: z.array(userRow) });
 export const userUpdateRequest = z.object({ isAdmin: z.boolean().optional(), isDisabled: z.boolean().optional() });
 export const auditRow = z.object({ id, at: timestamp, actor: z.string(), action: z.string(), subject: z.string(), teamId: id.nullable(), detail: z.record(z.string(), z.unknown()) });
-export const auditList = z.object({ rows: z.array(auditRow), total: z.number(), page: z.number(), pageSize: z.number() });
+export const auditListQuery = pageQuery;
+export const auditList = pageOf(auditRow);

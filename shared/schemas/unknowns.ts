@@ -43,10 +43,12 @@ export const revisionCreateRequest = z.object({
   basedOn: z.number().int().min(0),
 });
 
+export const commentParams = z.object({ commentId: id });
 export const commentRow = z.object({ id, author: personName, text: z.string(), createdAt: timestamp, abilities: abilities(['remove']) });
 export const commentList = z.object({ comments: z.array(commentRow) });
 export const commentCreateRequest = z.object({ text: z.string().trim().min(1, { error: 'expected a text' }).max(4000) });
 
+export const teamFragmentParams = z.object({ fragmentId: id });
 export const teamFragmentRow = z.object({ id, name: z.string(), group: z.string(), smiles: z.string(), createdBy: personName, createdAt: timestamp, abilities: abilities(['remove']) });
 export const teamFragmentList = z.object({ fragments: z.array(teamFragmentRow) });
 export const teamFragmentCreateRequest = z.object({
