@@ -55,7 +55,7 @@ export const usageResponse = z.object({
 export const ownQuotaResponse = z.object({ quota: quotaFigures, usedCpuSeconds: z.number(), reservedCpuSeconds: z.number(), runningCount: z.number() });
 
 export const userParams = z.object({ userId: id });
-export const userRow = z.object({ id, name: z.string(), email: z.string(), isAdmin: z.boolean(), isDisabled: z.boolean(), createdAt: timestamp, teams: z.array(z.object({ teamId: id, teamName: z.string(), role: teamRole })) });
+export const userRow = z.object({ id, name: z.string(), email: z.string(), isAdmin: z.boolean(), isDisabled: z.boolean(), createdAt: timestamp, teams: z.array(z.object({ teamId: id, teamName: z.string(), role: teamRole })), abilities: abilities(['update']) });
 export const userList = z.object({ users: z.array(userRow) });
 export const userUpdateRequest = z.object({ isAdmin: z.boolean().optional(), isDisabled: z.boolean().optional() });
 export const auditRow = z.object({ id, at: timestamp, actor: z.string(), action: z.string(), subject: z.string(), teamId: id.nullable(), detail: z.record(z.string(), z.unknown()) });
