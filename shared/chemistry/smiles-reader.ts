@@ -14,8 +14,8 @@ export interface WrittenAtom {
   readonly position: number;
 }
 
-/** `null` order: no symbol in the text. */
-export type WrittenOrder = 1 | 2 | 3 | 'aromatic' | null;
+/** `null` order: no symbol in the text; `any` is the `~` of query patterns. */
+export type WrittenOrder = 1 | 2 | 3 | 'aromatic' | 'any' | null;
 export interface WrittenBond {
   readonly from: number;
   readonly to: number;
@@ -43,6 +43,9 @@ const ELEMENT_LIST = SUPPORTED_SYMBOLS.join(' ');
 const STEREO_MARK = /@(?:@|(?:TH|AL|SP|TB|OH)\d{1,2})?/y;
 const PLAIN_ATOM = /Cl|Br|[CNOPSFI]|[cnops]/y;
 const MAX_BRACKET_HYDROGENS = 4;
+
+export const PLAIN_BONDS = '-=#:/\\';
+export const QUERY_BONDS = `${PLAIN_BONDS}~`;
 
 interface OpenRing {
   readonly atom: number;
@@ -115,11 +118,12 @@ function unexpectedCharacter(text: string, at: number): SmilesError {
  * Reads the text of a SMILES strictly: every symbol must be understood, every ring and branch closed, no pair of
  * atoms bonded twice. Elements are checked, valences are not.
  *
+ * @param bondSymbols - bond symbols to understand: those of a structure, or with `~` those of a query pattern.
  * @throws SmilesError with the offset of the first fault.
  * @see OpenSMILES specification 1.0, section 3 (grammar); boron, wildcards with several bonds, components and
  * reactions are left out on purpose.
  */
-export function readSmiles(text: string): WrittenSmiles {
+export function readSmiles(text: string, bondSymbols = PLAIN_BONDS): WrittenSmiles {
   const atoms: WrittenAtom[] = [];
   const bonds: WrittenBond[] = [];
   const branches: { atom: number; position: number }[] = [];
@@ -179,9 +183,9 @@ export function readSmiles(text: string): WrittenSmiles {
       hadStereo ||= bracket.hadStereo;
       addAtom(bracket.atom);
       at = bracket.end;
-    } else if ('-=#:/\\'.includes(character)) {
+    } else if (bondSymbols.includes(character)) {
       if (orderPosition >= 0) throw new SmilesError('two bond symbols in a row; keep one', at);
-      order = character === '=' ? 2 : character === '#' ? 3 : character === ':' ? 'aromatic' : 1;
+      order = character === '=' ? 2 : character === '#' ? 3 : character === ':' ? 'aromatic' : character === '~' ? 'any' : 1;
       if (character === '/' || character === '\\') hadStereo = true;
       orderPosition = at;
       at++;

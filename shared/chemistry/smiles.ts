@@ -82,6 +82,7 @@ function draftFrom(written: WrittenSmiles): Draft {
   for (const bond of bonds) {
     const a = index[bond.from]!;
     const b = index[bond.to]!;
+    if (bond.order === 'any') throw new SmilesError('a structure has no ~ bonds; write - = or #', bond.position);
     if (a >= 0 && b >= 0) {
       draft.bondsOf[a]!.push(draft.bonds.length);
       draft.bondsOf[b]!.push(draft.bonds.length);
