@@ -14,9 +14,10 @@ export interface RunSettings {
 /** Part of a run's search tree that one worker does on its own. Opaque outside `workers/enumeration`; JSON-safe. */
 export interface ShardSpec {
   readonly index: number;
-  /** Position in the list of unit choices × hydrogen distributions of the plan. */
-  readonly distribution: number;
-  /** Bond orders of the rows already filled, in filling order; empty = the whole distribution. */
+  /** Hydrogen distributions [first, end) of the plan; more than one only without a prefix. */
+  readonly firstDistribution: number;
+  readonly endDistribution: number;
+  /** Number of rows already filled, then their bond orders in filling order; empty = whole distributions. */
   readonly prefix: readonly number[];
 }
 

@@ -8,13 +8,13 @@ export interface CanonicalForm {
   /** Canonical order: position → vertex. */
   readonly order: Uint8Array;
   /** Upper triangle of the edge labels in canonical order, preceded by the vertex colours' ranks. Comparable with {@link compareCodes}. */
-  readonly code: Uint8Array;
+  readonly code: Uint16Array;
   /** Generators of the automorphism group, vertex → vertex. */
   readonly automorphisms: readonly Uint8Array[];
 }
 
 /** Compares two codes of equal-sized graphs: negative, zero, positive. */
-export function compareCodes(a: Uint8Array, b: Uint8Array): number {
+export function compareCodes(a: Uint16Array, b: Uint16Array): number {
   const length = Math.min(a.length, b.length);
   for (let i = 0; i < length; i++) if (a[i] !== b[i]) return a[i] - b[i];
   return a.length - b.length;
@@ -31,21 +31,21 @@ function mix(hash: number, value: number): number {
  * Computes the canonical form of a coloured graph with labelled edges.
  *
  * @param n - vertices, 1 ≤ n ≤ 255.
- * @param colours - one byte a vertex, part of the identity. Read only.
+ * @param colours - one number a vertex, part of the identity. Read only.
  * @param edges - n × n, row-major, symmetric, 0 = no edge. Read only.
  * @returns order, code and automorphisms; isomorphic inputs get equal codes, others different ones.
  */
-export function canonicalForm(n: number, colours: Uint8Array, edges: Uint8Array): CanonicalForm {
+export function canonicalForm(n: number, colours: Uint16Array, edges: Uint8Array): CanonicalForm {
   const start = Array.from(colours, (colour) => mix(0x51ed270b, colour));
   refine(n, start, edges);
 
-  let best: { trace: number[]; order: Uint8Array; code: Uint8Array } | null = null;
-  let first: { order: Uint8Array; code: Uint8Array; path: number[]; trace: number[] } | null = null;
+  let best: { trace: number[]; order: Uint8Array; code: Uint16Array } | null = null;
+  let first: { order: Uint8Array; code: Uint16Array; path: number[]; trace: number[] } | null = null;
   const automorphisms: Uint8Array[] = [];
   const path: number[] = [];
 
-  const codeOf = (order: Uint8Array): Uint8Array => {
-    const code = new Uint8Array(n + (n * (n - 1)) / 2);
+  const codeOf = (order: Uint8Array): Uint16Array => {
+    const code = new Uint16Array(n + (n * (n - 1)) / 2);
     let k = 0;
     for (let i = 0; i < n; i++) code[k++] = colours[order[i]];
     for (let i = 0; i < n; i++) for (let j = i + 1; j < n; j++) code[k++] = edges[order[i] * n + order[j]];
@@ -106,7 +106,7 @@ export function canonicalForm(n: number, colours: Uint8Array, edges: Uint8Array)
     return -1;
   };
   explore(start, [], true);
-  const found = best as { order: Uint8Array; code: Uint8Array } | null;
+  const found = best as { order: Uint8Array; code: Uint16Array } | null;
   return { order: found!.order, code: found!.code, automorphisms };
 }
 

@@ -1,0 +1,157 @@
+import { elementOf, findElement } from '../../shared/chemistry/elements.js';
+import { countOf, parseFormula } from '../../shared/chemistry/formula.js';
+import { parseSmiles } from '../../shared/chemistry/smiles.js';
+import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
+import type { InputIssue } from '../../shared/schemas/problem.js';
+import { createUnitKind, type UnitKind } from './units.js';
+
+/** Heavy atoms outside units, of one element. */
+export interface FreeElement {
+  readonly atomicNumber: number;
+  readonly valence: number;
+  readonly count: number;
+}
+
+/**
+ * A required fragment of a single atom in its default valence: a demand on the molecule, not a unit. At least `count`
+ * free atoms must have these hydrogens and exactly these bonds, each to another heavy atom.
+ */
+export interface AtomDemand {
+  readonly smiles: string;
+  readonly atomicNumber: number;
+  readonly hydrogens: number;
+  /** Orders of its bonds, falling. */
+  readonly orders: readonly number[];
+  readonly count: number;
+}
+
+/** Bounds on how many carbons of the whole molecule carry h hydrogens, h = 0–4. */
+export interface CarbonCensus {
+  readonly least: readonly number[];
+  readonly most: readonly number[];
+}
+
+/** What is to be enumerated: the molecule taken apart into units, free atoms and hydrogens to share out. */
+export interface SearchProblem {
+  readonly units: readonly UnitKind[];
+  readonly demands: readonly AtomDemand[];
+  readonly free: readonly FreeElement[];
+  /** Hydrogens left for the free atoms. */
+  readonly hydrogens: number;
+  readonly heavyAtomCount: number;
+  readonly census: CarbonCensus;
+  readonly mergeResonanceForms: boolean;
+}
+
+/** Bad input found while the problem was set up: every issue with its field. */
+export class ProblemError extends Error {
+  constructor(readonly issues: readonly InputIssue[]) {
+    super(issues.map((issue) => `${issue.path}: ${issue.message}`).join('; '));
+    this.name = 'ProblemError';
+  }
+}
+
+/**
+ * Sets up the search for an evidence document.
+ *
+ * @param evidence - parsed document; its signals narrow the carbon census (attached hydrogens).
+ * @returns units, demands and what is left of the formula.
+ * @throws ProblemError when formula or fragments cannot be read or exceed one another.
+ */
+export function createProblem(evidence: EvidenceDocument): SearchProblem {
+  const parsed = parseFormula(evidence.formula);
+  if (!parsed.ok) throw new ProblemError([{ path: 'formula', message: parsed.message }]);
+  const remaining = new Map(parsed.counts);
+  const heavyAtomCount = [...remaining].reduce((sum, [symbol, count]) => sum + (symbol === 'H' ? 0 : count), 0);
+  const units: UnitKind[] = [];
+  const demands: AtomDemand[] = [];
+  const issues: InputIssue[] = [];
+
+  const take = (symbol: string, amount: number, path: string): void => {
+    const rest = (remaining.get(symbol) ?? 0) - amount;
+    remaining.set(symbol, rest);
+    if (rest < 0) issues.push({ path, message: `needs more ${symbol} than ${evidence.formula} has` });
+  };
+  evidence.fragments.required.forEach((required, index) => {
+    const path = `fragments.required[${index}].smiles`;
+    const read = parseSmiles(required.smiles);
+    if (!read.ok) {
+      issues.push({ path, message: read.message });
+      return;
+    }
+    const { graph, attachments } = read;
+    const orders = attachments.map((attachment) => attachment.order as number).sort((a, b) => b - a);
+    const isDefaultValence =
+      graph.atomCount === 1 &&
+      graph.charges[0] === 0 &&
+      orders.length > 0 &&
+      graph.hydrogens[0] + orders.reduce((sum, order) => sum + order, 0) === elementOf(graph.atomicNumbers[0]).valences[0];
+    if (isDefaultValence) {
+      demands.push({ smiles: required.smiles, atomicNumber: graph.atomicNumbers[0], hydrogens: graph.hydrogens[0], orders, count: required.count });
+      return;
+    }
+    units.push(createUnitKind(required.smiles, required.count, graph, attachments));
+    for (let atom = 0; atom < graph.atomCount; atom++) {
+      take(elementOf(graph.atomicNumbers[atom]).symbol, required.count, path);
+      take('H', graph.hydrogens[atom] * required.count, path);
+    }
+  });
+  if (issues.length > 0) throw new ProblemError(issues);
+  const free: FreeElement[] = [];
+  for (const [symbol, count] of remaining) {
+    if (symbol === 'H' || count === 0) continue;
+    const element = findElement(symbol)!;
+    free.push({ atomicNumber: element.atomicNumber, valence: element.valences[0], count });
+  }
+  free.sort((a, b) => b.valence - a.valence || a.atomicNumber - b.atomicNumber);
+  return {
+    units: mergeEqualKinds(units),
+    demands: mergeEqualDemands(demands),
+    free,
+    hydrogens: remaining.get('H') ?? 0,
+    heavyAtomCount,
+    census: carbonCensus(evidence, countOf(parsed.counts, 'C')),
+    mergeResonanceForms: evidence.options.mergeResonanceForms,
+  };
+}
+
+/** The same fragment listed twice is one kind with both counts. */
+function mergeEqualKinds(units: readonly UnitKind[]): UnitKind[] {
+  const merged = new Map<string, UnitKind>();
+  for (const unit of units) {
+    const known = merged.get(unit.canonicalKey);
+    merged.set(unit.canonicalKey, known === undefined ? unit : { ...known, count: known.count + unit.count });
+  }
+  return [...merged.values()];
+}
+
+function mergeEqualDemands(demands: readonly AtomDemand[]): AtomDemand[] {
+  const merged = new Map<string, AtomDemand>();
+  for (const demand of demands) {
+    const key = `${demand.atomicNumber}/${demand.hydrogens}/${demand.orders.join()}`;
+    const known = merged.get(key);
+    merged.set(key, known === undefined ? demand : { ...known, count: known.count + demand.count });
+  }
+  return [...merged.values()];
+}
+
+/**
+ * Bounds from 13C signals with known attached hydrogens: every signal needs a carbon of its kind, and where the list
+ * is complete a protonated kind without any signal is absent.
+ */
+function carbonCensus(evidence: EvidenceDocument, carbonCount: number): CarbonCensus {
+  const least = [0, 0, 0, 0, 0];
+  const most = [carbonCount, carbonCount, carbonCount, carbonCount, carbonCount];
+  const signals = evidence.carbonSignals;
+  for (const signal of signals) if (signal.hydrogens !== undefined) least[signal.hydrogens] += signal.count ?? 1;
+  const allKnown = signals.length > 0 && signals.every((signal) => signal.hydrogens !== undefined);
+  if (allKnown && evidence.options.carbonList === 'complete') {
+    for (let h = 1; h <= 4; h++) if (!signals.some((signal) => signal.hydrogens === h)) most[h] = 0;
+    // When every signal says for how many carbons it stands, the protonated kinds are settled.
+    for (let h = 1; h <= 3; h++) {
+      const ofKind = signals.filter((signal) => signal.hydrogens === h);
+      if (ofKind.length > 0 && ofKind.every((signal) => signal.count !== undefined)) most[h] = least[h];
+    }
+  }
+  return { least, most };
+}
