@@ -1,30 +1,30 @@
 import { Suspense } from 'react';
-import { Link, NavLink, Outlet, ScrollRestoration, useNavigation } from 'react-router-dom';
+import { Link, Outlet, ScrollRestoration, useLocation, useNavigation } from 'react-router-dom';
 import { Mark } from '../components/mark';
 import { LoadingState } from '../components/states';
 import { Badge } from '../components/status-word';
 import { classNames } from '../lib/class-names';
 import { useCurrentTeam } from '../lib/session';
 import { AccountMenu } from './account-menu';
-import { navPlaces, type NavPlace } from './nav-places';
+import { isAtPlace, navPlaces, type NavPlace } from './nav-places';
 import { paths } from './paths';
 import { SessionExpiredDialog } from './session-expired-dialog';
 
 function RailLink({ place }: { place: NavPlace }) {
+  const isCurrent = isAtPlace(place, useLocation().pathname);
   const Icon = place.icon;
   return (
-    <NavLink
+    <Link
       to={place.to}
-      className={({ isActive }) =>
-        classNames(
-          'flex min-w-0 flex-1 flex-col items-center gap-0.5 py-1.5 text-small no-underline transition-colors tablet:w-full tablet:flex-none tablet:rounded-panel tablet:py-2',
-          isActive ? 'font-semibold text-indigo tablet:bg-indigo-wash' : 'text-faded hover:text-ink tablet:hover:bg-fold',
-        )
-      }
+      aria-current={isCurrent ? 'page' : undefined}
+      className={classNames(
+        'flex min-w-0 flex-1 flex-col items-center gap-0.5 py-1.5 text-small no-underline transition-colors tablet:w-full tablet:flex-none tablet:rounded-panel tablet:py-2',
+        isCurrent ? 'font-semibold text-indigo tablet:bg-indigo-wash' : 'text-faded hover:text-ink tablet:hover:bg-fold',
+      )}
     >
       <Icon aria-hidden="true" className="size-5" strokeWidth={1.75} />
       <span className="max-w-full truncate">{place.label}</span>
-    </NavLink>
+    </Link>
   );
 }
 

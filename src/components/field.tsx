@@ -76,11 +76,20 @@ export interface SelectOption<V extends string = string> {
   label: string;
 }
 
-export function Select<V extends string>({ label, hint, error, isLabelHidden = false, className, controlClassName, options, ...input }: WithField<Omit<ComponentProps<'select'>, 'children'>> & { options: ReadonlyArray<SelectOption<V>> }) {
+export function Select<V extends string>({ label, hint, error, isLabelHidden = false, className, controlClassName, options, onValueChange, onChange, ...input }: WithField<Omit<ComponentProps<'select'>, 'children'>> & { options: ReadonlyArray<SelectOption<V>>; onValueChange?: (value: V) => void }) {
   return (
     <Field label={label} hint={hint} error={error} isLabelHidden={isLabelHidden} className={className}>
       {(control) => (
-        <select className={classNames('control', controlClassName)} {...input} {...control}>
+        <select
+          className={classNames('control', controlClassName)}
+          {...input}
+          {...control}
+          onChange={(event) => {
+            onChange?.(event);
+            const chosen = options.find((option) => option.value === event.target.value);
+            if (chosen !== undefined) onValueChange?.(chosen.value);
+          }}
+        >
           {options.map((option) => (
             <option key={option.value} value={option.value}>
               {option.label}
