@@ -1,0 +1,55 @@
+import { ConfigError, loadConfig } from './config/config.js';
+import { DataFolderInUse } from './database/data-folder-lock.js';
+import { MariadbError } from './database/mariadb-process.js';
+import { createShutdown } from './shutdown.js';
+import { startServer } from './start-server.js';
+
+/** Start and graceful stop of the server. */
+const shutdown = createShutdown((step, error) => console.error(`Could not close the ${step} cleanly:`, error));
+let isStopping = false;
+
+async function stop(exitCode: number): Promise<void> {
+  isStopping = true;
+  await shutdown.run();
+  process.exit(exitCode);
+}
+
+for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) {
+  process.on(signal, () => {
+    // A terminal and npm may both pass on the same Ctrl-C.
+    if (isStopping) return;
+    console.log('Stopping …');
+    void stop(0);
+  });
+}
+
+process.on('uncaughtException', (error) => {
+  console.error('Fault in the server, stopping:', error);
+  if (!isStopping) void stop(1);
+});
+
+try {
+  const config = loadConfig(process.env);
+  const context = await startServer({ config, shutdown, announce: (line) => console.log(line) });
+  printWelcome(context.config.publicUrl);
+} catch (error) {
+  // Closing what a start under way needs makes it fail: that is no news.
+  if (!isStopping) {
+    console.error(explain(error));
+    await stop(1);
+  }
+}
+
+function printWelcome(publicUrl: string): void {
+  console.log(`\nIsoloom is running: ${publicUrl}\nCtrl-C stops it.`);
+}
+
+/** What the person who started the server can act on is said in one line; anything else is a fault and shown in full. */
+function explain(error: unknown): unknown {
+  if (error instanceof ConfigError) return `The environment has a value that does not fit:\n${error.message}`;
+  if (error instanceof MariadbError || error instanceof DataFolderInUse) return error.message;
+  const code = error instanceof Error ? (error as NodeJS.ErrnoException).code : undefined;
+  if (code === 'EADDRINUSE') return `Port ${process.env.PORT ?? '3210'} is taken by another program. Choose another one with PORT.`;
+  if (code === 'EACCES') return `Not allowed to listen on port ${process.env.PORT ?? '3210'}. Choose one above 1023 with PORT.`;
+  return error;
+}

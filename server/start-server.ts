@@ -1,0 +1,69 @@
+import { once } from 'node:events';
+import { createServer } from 'node:http';
+import { pino } from 'pino';
+import type { AppContext } from './app-context.js';
+import { createApp } from './app.js';
+import { createEmbeddedQueue } from './compute/embedded-queue.js';
+import { createComputePool } from './compute/pool.js';
+import type { Config } from './config/config.js';
+import { connectDatabase } from './database/connect.js';
+import { lockDataFolder } from './database/data-folder-lock.js';
+import { migrate } from './database/migrate.js';
+import { startPrivateMariadb } from './database/private-mariadb.js';
+import { initModels } from './models/init-models.js';
+import type { Shutdown } from './shutdown.js';
+
+export interface StartOptions {
+  readonly config: Config;
+  /** Receives everything that was opened, also when a later step fails. */
+  readonly shutdown: Shutdown;
+  /** Tells people what takes its time. */
+  readonly announce: (line: string) => void;
+}
+
+/** Opens one thing after another, the port last: who gets an answer gets a complete server. */
+export async function startServer({ config, shutdown, announce }: StartOptions): Promise<AppContext> {
+  const logger = pino({ level: config.logLevel });
+  const sequelize = connectDatabase(config.databaseUrl ?? (await openPrivateDatabase(config, shutdown, announce)));
+  shutdown.add('database connections', () => sequelize.close());
+  const migrations = await migrate(sequelize);
+  if (migrations.length > 0) announce(`Database: ${migrations.length} schema changes made.`);
+  initModels(sequelize);
+
+  const compute = createComputePool({ threads: config.computeThreads, onFault: (error) => logger.error({ err: error }, 'compute thread failed') });
+  shutdown.add('compute threads', () => compute.close());
+  const queue = createEmbeddedQueue({ compute, sequelize, logger });
+  shutdown.add('run queue', () => queue.close());
+  await queue.start();
+
+  const mailer = { send: () => Promise.reject(new Error('no mail server')), close: () => undefined };
+  const context: AppContext = { config, sequelize, logger, mailer, compute, queue };
+  await listen(context, shutdown);
+  return context;
+}
+
+async function openPrivateDatabase(config: Config, shutdown: Shutdown, announce: (line: string) => void): Promise<string> {
+  const release = await lockDataFolder(config.dataDirectory);
+  shutdown.add('data folder', release);
+  announce('Starting the database …');
+  const database = await startPrivateMariadb(config.dataDirectory);
+  shutdown.add('database', database.stop);
+  return database.url;
+}
+
+async function listen(context: AppContext, shutdown: Shutdown): Promise<void> {
+  const server = createServer(createApp(context));
+  server.listen(context.config.port, context.config.host);
+  await once(server, 'listening');
+  shutdown.add('web server', async () => {
+    const closed = once(server, 'close');
+    server.close();
+    // Event streams would stay open for ever; requests under way get a moment to finish.
+    server.closeIdleConnections();
+    const lastCall = setTimeout(() => server.closeAllConnections(), LAST_REQUESTS_MS);
+    await closed;
+    clearTimeout(lastCall);
+  });
+}
+
+const LAST_REQUESTS_MS = 1_000;
