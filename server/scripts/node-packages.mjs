@@ -27,8 +27,9 @@ export async function arePackagesCurrent(root) {
   const installed = await readLock(join(root, 'node_modules', '.package-lock.json'));
   if (wanted === null) throw new Error('package-lock.json is missing: this is not a complete checkout.');
   if (installed === null) return false;
-  return Object.entries(wanted).every(([path, { version, optional, devOptional, peer }]) => {
-    if (path === '') return true;
+  return Object.entries(wanted).every(([path, { version, optional, devOptional, peer, extraneous }]) => {
+    // npm notes packages in the lock file that nobody asks for any more, and then does not install them.
+    if (path === '' || extraneous === true) return true;
     const present = installed[path];
     // Packages for other machines are in the lock file but not on this one.
     if (present === undefined) return optional === true || devOptional === true || peer === true;
@@ -38,7 +39,7 @@ export async function arePackagesCurrent(root) {
 
 /**
  * @param {string} file
- * @returns {Promise<Record<string, { version?: string, optional?: boolean, devOptional?: boolean, peer?: boolean }> | null>}
+ * @returns {Promise<Record<string, { version?: string, optional?: boolean, devOptional?: boolean, peer?: boolean, extraneous?: boolean }> | null>}
  */
 async function readLock(file) {
   const text = await readFile(file, 'utf8').catch(() => null);

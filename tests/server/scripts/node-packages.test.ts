@@ -19,8 +19,8 @@ it('wants packages installed when there are none', async () => {
   expect(await arePackagesCurrent(root)).toBe(false);
 });
 
-it('is content when all are there but those for other machines', async () => {
-  write('package-lock.json', locked);
+it('is content when all are there but those for other machines or for nobody', async () => {
+  write('package-lock.json', { ...locked, 'node_modules/left-over': { version: '1.0.0', extraneous: true } });
   write('node_modules/.package-lock.json', { 'node_modules/a': { version: '2.0.0' } });
   expect(await arePackagesCurrent(root)).toBe(true);
 });
