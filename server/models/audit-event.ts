@@ -21,14 +21,14 @@ export class AuditEvent extends Model<InferAttributes<AuditEvent>, InferCreation
 export function initAuditEvent(sequelize: Sequelize): void {
   AuditEvent.init(
     {
-      id: idAttribute,
-      at: timeAttribute,
-      actorId: optionalReferenceAttribute,
+      id: idAttribute(),
+      at: timeAttribute(),
+      actorId: optionalReferenceAttribute(),
       actorName: { type: DataTypes.STRING(120), allowNull: false },
       action: { type: DataTypes.STRING(60), allowNull: false },
       subject: { type: DataTypes.STRING(300), allowNull: false },
-      subjectId: optionalReferenceAttribute,
-      teamId: optionalReferenceAttribute,
+      subjectId: optionalReferenceAttribute(),
+      teamId: optionalReferenceAttribute(),
       detail: { type: DataTypes.JSON, allowNull: false },
     },
     { sequelize, tableName: 'audit_events', underscored: true, timestamps: false },

@@ -31,9 +31,9 @@ export class Candidate extends Model<InferAttributes<Candidate>, InferCreationAt
 export function initCandidate(sequelize: Sequelize): void {
   Candidate.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
-      runId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
+      runId: referenceAttribute(),
       rank: { type: DataTypes.INTEGER, allowNull: false },
       smiles: { type: DataTypes.STRING(600), allowNull: false },
       idcode: { type: DataTypes.STRING(600), allowNull: false },

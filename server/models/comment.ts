@@ -16,12 +16,12 @@ export class Comment extends Model<InferAttributes<Comment>, InferCreationAttrib
 export function initComment(sequelize: Sequelize): void {
   Comment.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
-      unknownId: referenceAttribute,
-      authorId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
+      unknownId: referenceAttribute(),
+      authorId: referenceAttribute(),
       text: { type: DataTypes.TEXT, allowNull: false },
-      createdAt: timeAttribute,
+      createdAt: timeAttribute(),
     },
     { sequelize, tableName: 'comments', underscored: true, updatedAt: false },
   );

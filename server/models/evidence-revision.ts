@@ -26,16 +26,16 @@ export class EvidenceRevision extends Model<InferAttributes<EvidenceRevision>, I
 export function initEvidenceRevision(sequelize: Sequelize): void {
   EvidenceRevision.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
-      unknownId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
+      unknownId: referenceAttribute(),
       number: { type: DataTypes.INTEGER, allowNull: false },
-      authorId: referenceAttribute,
+      authorId: referenceAttribute(),
       comment: { type: DataTypes.STRING(500), allowNull: false },
       formula: { type: DataTypes.STRING(120), allowNull: false },
       evidence: { type: DataTypes.JSON, allowNull: false },
       notes: { type: DataTypes.JSON, allowNull: false },
-      createdAt: timeAttribute,
+      createdAt: timeAttribute(),
     },
     { sequelize, tableName: 'evidence_revisions', underscored: true, updatedAt: false },
   );

@@ -27,16 +27,16 @@ export class Invitation extends Model<InferAttributes<Invitation>, InferCreation
 export function initInvitation(sequelize: Sequelize): void {
   Invitation.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
       email: { type: DataTypes.STRING(254), allowNull: false },
       role: { type: DataTypes.STRING(24), allowNull: false },
       tokenHash: { type: DataTypes.STRING(64), allowNull: false },
-      invitedById: referenceAttribute,
-      createdAt: timeAttribute,
-      expiresAt: timeAttribute,
-      acceptedAt: optionalTimeAttribute,
-      revokedAt: optionalTimeAttribute,
+      invitedById: referenceAttribute(),
+      createdAt: timeAttribute(),
+      expiresAt: timeAttribute(),
+      acceptedAt: optionalTimeAttribute(),
+      revokedAt: optionalTimeAttribute(),
     },
     { sequelize, tableName: 'invitations', underscored: true, updatedAt: false },
   );

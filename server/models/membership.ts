@@ -19,12 +19,12 @@ export class Membership extends Model<InferAttributes<Membership>, InferCreation
 export function initMembership(sequelize: Sequelize): void {
   Membership.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
-      userId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
+      userId: referenceAttribute(),
       role: { type: DataTypes.STRING(24), allowNull: false },
-      createdAt: timeAttribute,
-      updatedAt: timeAttribute,
+      createdAt: timeAttribute(),
+      updatedAt: timeAttribute(),
     },
     { sequelize, tableName: 'memberships', underscored: true },
   );

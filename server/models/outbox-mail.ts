@@ -24,17 +24,17 @@ export class OutboxMail extends Model<InferAttributes<OutboxMail>, InferCreation
 export function initOutboxMail(sequelize: Sequelize): void {
   OutboxMail.init(
     {
-      id: idAttribute,
+      id: idAttribute(),
       recipient: { type: DataTypes.STRING(254), allowNull: false },
       subject: { type: DataTypes.STRING(200), allowNull: false },
       body: { type: DataTypes.TEXT, allowNull: false },
       status: { type: DataTypes.STRING(24), allowNull: false, defaultValue: 'waiting' },
       attempts: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
       lastError: { type: DataTypes.STRING(500), allowNull: true },
-      createdAt: timeAttribute,
-      nextAttemptAt: timeAttribute,
-      expiresAt: timeAttribute,
-      sentAt: optionalTimeAttribute,
+      createdAt: timeAttribute(),
+      nextAttemptAt: timeAttribute(),
+      expiresAt: timeAttribute(),
+      sentAt: optionalTimeAttribute(),
     },
     { sequelize, tableName: 'mail_outbox', underscored: true, updatedAt: false },
   );

@@ -18,12 +18,12 @@ export class PasswordReset extends Model<InferAttributes<PasswordReset>, InferCr
 export function initPasswordReset(sequelize: Sequelize): void {
   PasswordReset.init(
     {
-      id: idAttribute,
-      userId: referenceAttribute,
+      id: idAttribute(),
+      userId: referenceAttribute(),
       tokenHash: { type: DataTypes.STRING(64), allowNull: false },
-      createdAt: timeAttribute,
-      expiresAt: timeAttribute,
-      usedAt: optionalTimeAttribute,
+      createdAt: timeAttribute(),
+      expiresAt: timeAttribute(),
+      usedAt: optionalTimeAttribute(),
     },
     { sequelize, tableName: 'password_resets', underscored: true, updatedAt: false },
   );

@@ -17,14 +17,14 @@ export class Quota extends Model<InferAttributes<Quota>, InferCreationAttributes
 export function initQuota(sequelize: Sequelize): void {
   Quota.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
-      userId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
+      userId: referenceAttribute(),
       cpuSecondsPerMonth: { type: DataTypes.INTEGER, allowNull: true },
       candidatesPerRun: { type: DataTypes.INTEGER, allowNull: true },
       runsAtOnce: { type: DataTypes.INTEGER, allowNull: true },
-      createdAt: timeAttribute,
-      updatedAt: timeAttribute,
+      createdAt: timeAttribute(),
+      updatedAt: timeAttribute(),
     },
     { sequelize, tableName: 'quotas', underscored: true },
   );

@@ -23,9 +23,9 @@ export class RunShard extends Model<InferAttributes<RunShard>, InferCreationAttr
 export function initRunShard(sequelize: Sequelize): void {
   RunShard.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
-      runId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
+      runId: referenceAttribute(),
       // INDEX is a reserved word of SQL.
       index: { type: DataTypes.INTEGER, allowNull: false, field: 'shard_index' },
       spec: { type: DataTypes.JSON, allowNull: false },
@@ -33,7 +33,7 @@ export function initRunShard(sequelize: Sequelize): void {
       attempt: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
       result: { type: DataTypes.JSON, allowNull: true },
       cpuSeconds: { type: DataTypes.DOUBLE, allowNull: false, defaultValue: 0 },
-      finishedAt: optionalTimeAttribute,
+      finishedAt: optionalTimeAttribute(),
     },
     { sequelize, tableName: 'run_shards', underscored: true, timestamps: false },
   );

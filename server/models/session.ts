@@ -27,14 +27,14 @@ export class Session extends Model<InferAttributes<Session>, InferCreationAttrib
 export function initSession(sequelize: Sequelize): void {
   Session.init(
     {
-      id: idAttribute,
-      userId: referenceAttribute,
+      id: idAttribute(),
+      userId: referenceAttribute(),
       refreshTokenHash: { type: DataTypes.STRING(64), allowNull: false },
       userAgent: { type: DataTypes.STRING(300), allowNull: false },
-      createdAt: timeAttribute,
-      lastUsedAt: timeAttribute,
-      expiresAt: timeAttribute,
-      endedAt: optionalTimeAttribute,
+      createdAt: timeAttribute(),
+      lastUsedAt: timeAttribute(),
+      expiresAt: timeAttribute(),
+      endedAt: optionalTimeAttribute(),
       endReason: { type: DataTypes.STRING(24), allowNull: true },
     },
     { sequelize, tableName: 'sessions', underscored: true, updatedAt: false },

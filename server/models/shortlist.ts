@@ -12,7 +12,7 @@ export class Shortlist extends Model<InferAttributes<Shortlist>, InferCreationAt
 
 export function initShortlist(sequelize: Sequelize): void {
   Shortlist.init(
-    { id: idAttribute, teamId: referenceAttribute, unknownId: referenceAttribute, createdAt: timeAttribute },
+    { id: idAttribute(), teamId: referenceAttribute(), unknownId: referenceAttribute(), createdAt: timeAttribute() },
     { sequelize, tableName: 'shortlists', underscored: true, updatedAt: false },
   );
 }

@@ -18,8 +18,8 @@ export function initSignInAttempt(sequelize: Sequelize): void {
     {
       emailHash: { type: DataTypes.STRING(64), primaryKey: true },
       failures: { type: DataTypes.INTEGER, allowNull: false },
-      lockedUntil: optionalTimeAttribute,
-      updatedAt: timeAttribute,
+      lockedUntil: optionalTimeAttribute(),
+      updatedAt: timeAttribute(),
     },
     { sequelize, tableName: 'sign_in_attempts', underscored: true, timestamps: false },
   );

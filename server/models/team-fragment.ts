@@ -20,15 +20,15 @@ export class TeamFragment extends Model<InferAttributes<TeamFragment>, InferCrea
 export function initTeamFragment(sequelize: Sequelize): void {
   TeamFragment.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
       name: { type: DataTypes.STRING(80), allowNull: false },
       // GROUP is a reserved word of SQL.
       group: { type: DataTypes.STRING(40), allowNull: false, field: 'group_name' },
       smiles: { type: DataTypes.STRING(300), allowNull: false },
       canonicalHash: { type: DataTypes.STRING(64), allowNull: false },
-      createdById: referenceAttribute,
-      createdAt: timeAttribute,
+      createdById: referenceAttribute(),
+      createdAt: timeAttribute(),
     },
     { sequelize, tableName: 'fragments', underscored: true, updatedAt: false },
   );

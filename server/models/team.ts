@@ -16,12 +16,12 @@ export class Team extends Model<InferAttributes<Team>, InferCreationAttributes<T
 export function initTeam(sequelize: Sequelize): void {
   Team.init(
     {
-      id: idAttribute,
+      id: idAttribute(),
       name: { type: DataTypes.STRING(120), allowNull: false },
       isDemo: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
       lastUnknownNumber: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
-      createdAt: timeAttribute,
-      updatedAt: timeAttribute,
+      createdAt: timeAttribute(),
+      updatedAt: timeAttribute(),
     },
     { sequelize, tableName: 'teams', underscored: true },
   );

@@ -35,8 +35,8 @@ export const unknownCode = (number: number): string => `U-${String(number).padSt
 export function initUnknown(sequelize: Sequelize): void {
   Unknown.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
       number: { type: DataTypes.INTEGER, allowNull: false },
       code: { type: DataTypes.STRING(16), allowNull: false },
       title: { type: DataTypes.STRING(160), allowNull: false },
@@ -44,10 +44,10 @@ export function initUnknown(sequelize: Sequelize): void {
       purpose: { type: DataTypes.STRING(24), allowNull: false },
       status: { type: DataTypes.STRING(24), allowNull: false, defaultValue: 'new' },
       formula: { type: DataTypes.STRING(120), allowNull: true },
-      currentRevisionId: optionalReferenceAttribute,
-      createdById: referenceAttribute,
-      createdAt: timeAttribute,
-      updatedAt: timeAttribute,
+      currentRevisionId: optionalReferenceAttribute(),
+      createdById: referenceAttribute(),
+      createdAt: timeAttribute(),
+      updatedAt: timeAttribute(),
     },
     { sequelize, tableName: 'unknowns', underscored: true },
   );

@@ -19,15 +19,15 @@ export class UsageEntry extends Model<InferAttributes<UsageEntry>, InferCreation
 export function initUsageEntry(sequelize: Sequelize): void {
   UsageEntry.init(
     {
-      id: idAttribute,
-      teamId: referenceAttribute,
-      userId: referenceAttribute,
-      runId: referenceAttribute,
+      id: idAttribute(),
+      teamId: referenceAttribute(),
+      userId: referenceAttribute(),
+      runId: referenceAttribute(),
       month: { type: DataTypes.STRING(7), allowNull: false },
       kind: { type: DataTypes.STRING(24), allowNull: false },
       cpuSeconds: { type: DataTypes.DOUBLE, allowNull: false },
-      createdAt: timeAttribute,
-      updatedAt: timeAttribute,
+      createdAt: timeAttribute(),
+      updatedAt: timeAttribute(),
     },
     { sequelize, tableName: 'usage_entries', underscored: true },
   );

@@ -19,14 +19,14 @@ export class User extends Model<InferAttributes<User>, InferCreationAttributes<U
 export function initUser(sequelize: Sequelize): void {
   User.init(
     {
-      id: idAttribute,
+      id: idAttribute(),
       email: { type: DataTypes.STRING(254), allowNull: false },
       name: { type: DataTypes.STRING(120), allowNull: false },
       passwordHash: { type: DataTypes.STRING(100), allowNull: false },
       isAdmin: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
       isDisabled: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
-      createdAt: timeAttribute,
-      updatedAt: timeAttribute,
+      createdAt: timeAttribute(),
+      updatedAt: timeAttribute(),
     },
     { sequelize, tableName: 'users', underscored: true },
   );
