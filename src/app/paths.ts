@@ -33,7 +33,8 @@ export const paths = {
   candidate: (candidateId: string) => `/candidates/${candidateId}`,
   fragments: () => '/fragments',
   predict: () => '/predict',
-  team: () => '/team',
+  /** Without an id: the current team. */
+  team: (teamId?: string) => (teamId === undefined ? '/team' : `/team?team=${teamId}`),
   adminPeople: () => '/admin/people',
   adminAudit: () => '/admin/audit',
   account: () => '/account',
