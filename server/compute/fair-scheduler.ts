@@ -1,9 +1,16 @@
-/** A run as the scheduler sees it: a source of tasks that belongs to a team. */
+/** Who asks for a slot. */
 export interface Lane {
-  readonly runId: string;
   readonly teamId: string;
-  /** Takes the next task, or null when nothing can be started at present. A task never rejects. */
-  take(): (() => Promise<void>) | null;
+  readonly runId: string;
+}
+
+interface WaitingTask {
+  readonly start: () => Promise<void>;
+  readonly skip: () => void;
+}
+interface RunQueueOfTasks {
+  readonly runId: string;
+  readonly tasks: WaitingTask[];
 }
 
 /**
@@ -14,49 +21,66 @@ export interface Lane {
 export class FairScheduler {
   readonly #slots: number;
   #busy = 0;
-  /** Teams in turn order, each with its runs in turn order; whoever was served goes to the back. */
-  #teams: { readonly teamId: string; lanes: Lane[] }[] = [];
+  /** In turn order, without empty queues; whoever was served goes to the back. */
+  #teams: { readonly teamId: string; runs: RunQueueOfTasks[] }[] = [];
 
   constructor(slots: number) {
     this.#slots = slots;
   }
 
-  add(lane: Lane): void {
-    const team = this.#teams.find(({ teamId }) => teamId === lane.teamId);
-    // In front: whoever has had nothing yet is next.
-    if (team) team.lanes.unshift(lane);
-    else this.#teams.unshift({ teamId: lane.teamId, lanes: [lane] });
-    this.wake();
+  /** Runs the task when it is its turn. Resolves with null when `drop` came first; the task was then never started. */
+  schedule<T>(lane: Lane, task: () => Promise<T>): Promise<T | null> {
+    return new Promise<T | null>((resolve, reject) => {
+      this.#tasksOf(lane).push({
+        start: () => task().then(resolve, reject),
+        skip: () => resolve(null),
+      });
+      this.#fillSlots();
+    });
   }
 
-  remove(runId: string): void {
-    for (const team of this.#teams) team.lanes = team.lanes.filter((lane) => lane.runId !== runId);
-    this.#teams = this.#teams.filter(({ lanes }) => lanes.length > 0);
+  /** Skips whatever a run still has waiting. */
+  drop(runId: string): void {
+    for (const team of this.#teams) {
+      for (const run of team.runs) if (run.runId === runId) run.tasks.splice(0).forEach(({ skip }) => skip());
+    }
+    this.#removeEmpty();
   }
 
-  /** Fills free slots. To be called whenever a lane may have a new task. */
-  wake(): void {
+  #tasksOf({ teamId, runId }: Lane): WaitingTask[] {
+    // New ones go in front: whoever has had nothing yet is next.
+    let team = this.#teams.find((known) => known.teamId === teamId);
+    if (team === undefined) this.#teams.unshift((team = { teamId, runs: [] }));
+    let run = team.runs.find((known) => known.runId === runId);
+    if (run === undefined) team.runs.unshift((run = { runId, tasks: [] }));
+    return run.tasks;
+  }
+
+  #fillSlots(): void {
     while (this.#busy < this.#slots) {
       const task = this.#takeNext();
-      if (task === null) return;
+      if (task === undefined) return;
       this.#busy += 1;
-      void task().finally(() => {
+      void task.start().finally(() => {
         this.#busy -= 1;
-        this.wake();
+        this.#fillSlots();
       });
     }
   }
 
-  #takeNext(): (() => Promise<void>) | null {
-    for (const team of this.#teams) {
-      for (const lane of team.lanes) {
-        const task = lane.take();
-        if (task === null) continue;
-        team.lanes = [...team.lanes.filter((other) => other !== lane), lane];
-        this.#teams = [...this.#teams.filter((other) => other !== team), team];
-        return task;
-      }
-    }
-    return null;
+  #takeNext(): WaitingTask | undefined {
+    const team = this.#teams.shift();
+    const run = team?.runs.shift();
+    const task = run?.tasks.shift();
+    if (team === undefined || run === undefined) return undefined;
+    team.runs.push(run);
+    this.#teams.push(team);
+    this.#removeEmpty();
+    return task;
+  }
+
+  #removeEmpty(): void {
+    for (const team of this.#teams) team.runs = team.runs.filter(({ tasks }) => tasks.length > 0);
+    this.#teams = this.#teams.filter(({ runs }) => runs.length > 0);
   }
 }

@@ -1,79 +1,75 @@
 import { describe, expect, it } from 'vitest';
-import { FairScheduler, type Lane } from '../../../server/compute/fair-scheduler.js';
+import { FairScheduler } from '../../../server/compute/fair-scheduler.js';
 
-/** A run with a number of tasks; each is released by hand. */
-function createLane(teamId: string, runId: string, taskCount: number, started: string[], releases: (() => void)[]): Lane {
-  let left = taskCount;
-  return {
-    teamId,
-    runId,
-    take: () => {
-      if (left === 0) return null;
-      left -= 1;
-      return () => {
+/** A scheduler whose tasks are released by hand, one after the other. */
+function createBench(slots: number) {
+  const scheduler = new FairScheduler(slots);
+  const started: string[] = [];
+  const releases: (() => void)[] = [];
+  const schedule = (teamId: string, runId: string, count: number) =>
+    Array.from({ length: count }, () =>
+      scheduler.schedule({ teamId, runId }, () => {
         started.push(runId);
-        return new Promise((resolve) => releases.push(resolve));
-      };
-    },
-  };
-}
-
-async function drain(releases: (() => void)[]): Promise<void> {
-  while (releases.length > 0) {
+        return new Promise<string>((resolve) => releases.push(() => resolve(runId)));
+      }),
+    );
+  const releaseOne = async () => {
     releases.shift()?.();
     await new Promise(setImmediate);
-  }
+  };
+  const releaseAll = async () => {
+    while (releases.length > 0) await releaseOne();
+  };
+  return { scheduler, started, schedule, releaseOne, releaseAll };
 }
 
 describe('FairScheduler', () => {
   it('never starts more tasks than there are slots', async () => {
-    const started: string[] = [];
-    const releases: (() => void)[] = [];
-    const scheduler = new FairScheduler(2);
-    scheduler.add(createLane('t1', 'a', 5, started, releases));
+    const { started, schedule, releaseOne, releaseAll } = createBench(2);
+    const results = schedule('t1', 'a', 5);
     expect(started).toEqual(['a', 'a']);
-    releases.shift()?.();
-    await new Promise(setImmediate);
+    await releaseOne();
     expect(started).toHaveLength(3);
-    await drain(releases);
-    expect(started).toHaveLength(5);
+    await releaseAll();
+    expect(await Promise.all(results)).toEqual(['a', 'a', 'a', 'a', 'a']);
   });
 
   it('lets teams take turns, and runs inside a team', async () => {
-    const started: string[] = [];
-    const releases: (() => void)[] = [];
-    const scheduler = new FairScheduler(1);
-    scheduler.add(createLane('t1', 'a1', 4, started, releases));
-    scheduler.add(createLane('t1', 'a2', 4, started, releases));
-    scheduler.add(createLane('t2', 'b1', 4, started, releases));
-    await drain(releases);
-    expect(started.slice(0, 9)).toEqual(['a1', 'b1', 'a2', 'b1', 'a1', 'b1', 'a2', 'b1', 'a1']);
+    const { started, schedule, releaseAll } = createBench(1);
+    schedule('t1', 'a1', 4);
+    schedule('t1', 'a2', 4);
+    schedule('t2', 'b1', 4);
+    await releaseAll();
+    expect(started.slice(0, 8)).toEqual(['a1', 'b1', 'a2', 'b1', 'a1', 'b1', 'a2', 'b1']);
     expect(started).toHaveLength(12);
   });
 
   it('makes a run that comes late wait for one task at most', async () => {
-    const started: string[] = [];
-    const releases: (() => void)[] = [];
-    const scheduler = new FairScheduler(1);
-    scheduler.add(createLane('t1', 'long', 100, started, releases));
-    for (let i = 0; i < 3; i++) {
-      releases.shift()?.();
-      await new Promise(setImmediate);
-    }
-    scheduler.add(createLane('t1', 'late', 1, started, releases));
-    releases.shift()?.();
-    await new Promise(setImmediate);
+    const { started, schedule, releaseOne, releaseAll } = createBench(1);
+    schedule('t1', 'long', 100);
+    await releaseOne();
+    await releaseOne();
+    schedule('t1', 'late', 1);
+    await releaseOne();
     expect(started.at(-1)).toBe('late');
-    await drain(releases);
+    await releaseAll();
   });
 
-  it('starts nothing of a run that was removed', async () => {
-    const started: string[] = [];
-    const releases: (() => void)[] = [];
+  it('skips what a dropped run has waiting and starts the others', async () => {
+    const { scheduler, started, schedule, releaseAll } = createBench(1);
+    const dropped = schedule('t1', 'a', 3);
+    schedule('t1', 'b', 1);
+    scheduler.drop('a');
+    await releaseAll();
+    expect(await Promise.all(dropped)).toEqual(['a', null, null]);
+    expect(started).toEqual(['a', 'b']);
+  });
+
+  it('goes on after a task that failed', async () => {
     const scheduler = new FairScheduler(1);
-    scheduler.add(createLane('t1', 'a', 3, started, releases));
-    scheduler.remove('a');
-    await drain(releases);
-    expect(started).toEqual(['a']);
+    const failing = scheduler.schedule({ teamId: 't', runId: 'a' }, () => Promise.reject(new Error('broken')));
+    const next = scheduler.schedule({ teamId: 't', runId: 'a' }, () => Promise.resolve('next'));
+    await expect(failing).rejects.toThrow('broken');
+    expect(await next).toBe('next');
   });
 });
