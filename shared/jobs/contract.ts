@@ -158,7 +158,13 @@ export interface RunResult {
 
 /** Why a drawn structure is not in a ranking, or where it is. */
 export type Explanation =
-  | { readonly kind: 'rejected'; readonly stage: FunnelStage; readonly reasons: ReadonlyArray<{ reason: string; text: string; atoms: readonly number[] }>; readonly key: string; readonly smiles: string }
+  | {
+      readonly kind: 'rejected';
+      readonly stage: FunnelStage;
+      readonly reasons: ReadonlyArray<{ reason: string; text: string; atoms: readonly number[] }>;
+      readonly key: string;
+      readonly smiles: string;
+    }
   | { readonly kind: 'survives'; readonly score: number; readonly terms: ScoreTerms; readonly key: string; readonly smiles: string }
   | { readonly kind: 'otherFormula'; readonly formula: string; readonly expected: string; readonly smiles: string };
 
@@ -172,9 +178,18 @@ export type JobResult<T> = { readonly ok: true; readonly value: T } | { readonly
 
 /** Every message that crosses the thread boundary. Input is structured-cloneable; counters are shared memory. */
 export interface JobContract {
-  plan: { input: { evidence: EvidenceDocument; settings: RunSettings; targetShards: number }; output: { shards: readonly ShardSpec[]; notes: readonly string[] } };
+  plan: {
+    input: { evidence: EvidenceDocument; settings: RunSettings; targetShards: number };
+    output: { shards: readonly ShardSpec[]; notes: readonly string[] };
+  };
   shard: {
-    input: { evidence: EvidenceDocument; settings: RunSettings; shard: ShardSpec; counters: SharedArrayBuffer; deadlineEpochMs: number | null };
+    input: {
+      evidence: EvidenceDocument;
+      settings: RunSettings;
+      shard: ShardSpec;
+      counters: SharedArrayBuffer;
+      deadlineEpochMs: number | null;
+    };
     output: ShardResult;
   };
   finish: {
@@ -183,6 +198,9 @@ export interface JobContract {
   };
   explain: { input: { evidence: EvidenceDocument; settings: RunSettings; smiles: string }; output: Explanation };
   predict: { input: { smiles: string; solvent: string }; output: PredictedSpectra & { smiles: string; notes: readonly string[] } };
-  estimate: { input: { evidence: EvidenceDocument; probes: number; seed: number; maxSeconds: number }; output: { estimate: number; low: number; high: number; cpuSeconds: number; seconds: number } };
+  estimate: {
+    input: { evidence: EvidenceDocument; probes: number; seed: number; maxSeconds: number };
+    output: { estimate: number; low: number; high: number; cpuSeconds: number; seconds: number };
+  };
 }
 export type JobName = keyof JobContract;

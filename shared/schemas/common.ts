@@ -13,7 +13,10 @@ export const pageOf = <T extends z.ZodType>(row: T) =>
 export const abilities = <const A extends readonly [string, ...string[]]>(actions: A) =>
   z.object(Object.fromEntries(actions.map((action) => [action, z.boolean()])) as { [K in A[number]]: z.ZodBoolean });
 export const personName = z.object({ id, name: z.string() });
-export const emailAddress = z.email({ error: 'expected an e-mail address' }).max(254).transform((text) => text.toLowerCase());
+export const emailAddress = z
+  .email({ error: 'expected an e-mail address' })
+  .max(254)
+  .transform((text) => text.toLowerCase());
 /** bcrypt reads 72 bytes only: longer passwords are refused, not cut. */
 export const newPassword = z
   .string()

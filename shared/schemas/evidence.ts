@@ -56,9 +56,14 @@ export const protonSignal = z.strictObject({
   multiplicity: z
     .string()
     .trim()
-    .regex(MULTIPLICITY_PATTERN, { error: 'expected the usual letters: s d t q quint sext sept oct non m br, or combinations such as dd, dt, br s' })
+    .regex(MULTIPLICITY_PATTERN, {
+      error: 'expected the usual letters: s d t q quint sext sept oct non m br, or combinations such as dd, dt, br s',
+    })
     .optional(),
-  couplings: z.array(between(0, 100, ' Hz')).max(EVIDENCE_LIMITS.couplings).optional(),
+  couplings: z
+    .array(between(0, 100, ' Hz'))
+    .max(EVIDENCE_LIMITS.couplings)
+    .optional(),
   /** Set when people know that the proton exchanges (OH, NH, SH). */
   exchangeable: z.boolean().optional(),
 });
@@ -72,9 +77,18 @@ export const massPeak = z.strictObject({ mz: between(1, 5000, ' Th'), intensity:
 const protonShift = between(-5, 25, ' ppm');
 const carbonShift = between(-50, 300, ' ppm');
 export const correlations = z.strictObject({
-  cosy: z.array(z.tuple([protonShift, protonShift])).max(EVIDENCE_LIMITS.correlations).default([]),
-  hsqc: z.array(z.tuple([carbonShift, protonShift])).max(EVIDENCE_LIMITS.correlations).default([]),
-  hmbc: z.array(z.tuple([protonShift, carbonShift])).max(EVIDENCE_LIMITS.correlations).default([]),
+  cosy: z
+    .array(z.tuple([protonShift, protonShift]))
+    .max(EVIDENCE_LIMITS.correlations)
+    .default([]),
+  hsqc: z
+    .array(z.tuple([carbonShift, protonShift]))
+    .max(EVIDENCE_LIMITS.correlations)
+    .default([]),
+  hmbc: z
+    .array(z.tuple([protonShift, carbonShift]))
+    .max(EVIDENCE_LIMITS.correlations)
+    .default([]),
 });
 
 export const ringSizeLimits = z
@@ -103,14 +117,21 @@ export const evidenceOptions = z.strictObject({
 export type EvidenceOptions = z.infer<typeof evidenceOptions>;
 
 const list = <T extends z.ZodType>(item: T, max: number, what: string) =>
-  z.array(item).max(max, { error: `expected at most ${max} ${what}` }).default([]);
+  z
+    .array(item)
+    .max(max, { error: `expected at most ${max} ${what}` })
+    .default([]);
 
 /**
  * The evidence document (DESIGN.md 6): what API, command line, tests and export use. Only `formula` is needed.
  * Shape only; whether the pieces agree with one another is `checkEvidence` (shared/chemistry/check-evidence).
  */
 export const evidenceDocument = z.strictObject({
-  formula: z.string({ error: 'expected a molecular formula such as C9H10O2' }).trim().min(1, { error: 'expected a molecular formula such as C9H10O2' }).max(60),
+  formula: z
+    .string({ error: 'expected a molecular formula such as C9H10O2' })
+    .trim()
+    .min(1, { error: 'expected a molecular formula such as C9H10O2' })
+    .max(60),
   fragments: z
     .strictObject({
       required: list(requiredFragment, EVIDENCE_LIMITS.fragments, 'fragments'),

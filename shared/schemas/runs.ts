@@ -6,7 +6,9 @@ import { EVIDENCE_LIMITS } from './evidence.js';
 
 export const funnelSchema = z.array(
   z.object({
-    stage: z.enum(FUNNEL_STAGES), entered: z.number(), passed: z.number(),
+    stage: z.enum(FUNNEL_STAGES),
+    entered: z.number(),
+    passed: z.number(),
     rejections: z.array(z.object({ reason: z.string(), text: z.string(), count: z.number() })),
   }),
 );
@@ -18,17 +20,41 @@ export const runStartRequest = z.object({
   maxSeconds: z.number().min(1).max(EVIDENCE_LIMITS.seconds).nullable().optional(),
 });
 export const runProgressSchema = z.object({
-  stage: z.enum(RUN_STAGES), shardsDone: z.number(), shardCount: z.number(), constitutionsSeen: z.number(), survivors: z.number(),
-  ratePerSecond: z.number(), elapsedSeconds: z.number(), secondsLeft: z.number().nullable(),
+  stage: z.enum(RUN_STAGES),
+  shardsDone: z.number(),
+  shardCount: z.number(),
+  constitutionsSeen: z.number(),
+  survivors: z.number(),
+  ratePerSecond: z.number(),
+  elapsedSeconds: z.number(),
+  secondsLeft: z.number().nullable(),
 });
 export const runResponse = z.object({
-  id, unknownId: id, unknownCode: z.string(), unknownTitle: z.string(), teamId: id, number: z.number().int(), status: z.enum(RUN_STATUSES), complete: z.boolean(),
-  revisionId: id, revisionNumber: z.number().int(), formula: z.string(),
+  id,
+  unknownId: id,
+  unknownCode: z.string(),
+  unknownTitle: z.string(),
+  teamId: id,
+  number: z.number().int(),
+  status: z.enum(RUN_STATUSES),
+  complete: z.boolean(),
+  revisionId: id,
+  revisionNumber: z.number().int(),
+  formula: z.string(),
   settings: z.object({ keep: z.number(), maxSeconds: z.number().nullable() }),
-  startedBy: personName, createdAt: timestamp, startedAt: timestamp.nullable(), finishedAt: timestamp.nullable(),
-  constitutionCount: z.number().nullable(), multigraphCount: z.number().nullable(), survivorCount: z.number().nullable(), keptCount: z.number(),
-  cpuSeconds: z.number(), noneOfTheseProbability: z.number().nullable(), funnel: funnelSchema.nullable(),
-  failure: z.object({ code: z.string(), message: z.string() }).nullable(), progress: runProgressSchema.nullable(),
+  startedBy: personName,
+  createdAt: timestamp,
+  startedAt: timestamp.nullable(),
+  finishedAt: timestamp.nullable(),
+  constitutionCount: z.number().nullable(),
+  multigraphCount: z.number().nullable(),
+  survivorCount: z.number().nullable(),
+  keptCount: z.number(),
+  cpuSeconds: z.number(),
+  noneOfTheseProbability: z.number().nullable(),
+  funnel: funnelSchema.nullable(),
+  failure: z.object({ code: z.string(), message: z.string() }).nullable(),
+  progress: runProgressSchema.nullable(),
   abilities: abilities(['cancel', 'export', 'editShortlist']),
 });
 export const runList = z.object({ runs: z.array(runResponse) });
@@ -36,11 +62,32 @@ export const runPage = pageOf(runResponse);
 export const runListQuery = pageQuery.extend({ status: z.union([z.enum(RUN_STATUSES), z.literal('all')]).default('all') });
 /** Server-sent events of a run: `progress` carries runProgressSchema, `run` a full runResponse whenever the status changes. */
 
-export const scoreTerms = z.object({ carbon13: z.number().optional(), proton1: z.number().optional(), multiplicity: z.number().optional(), integral: z.number().optional(), plausibility: z.number().optional() });
-export const remarkSchema = z.object({ kind: z.enum(['stereo', 'plausibility', 'fit', 'signal']), tone: z.enum(['supports', 'doubts', 'notes']), text: z.string(), atoms: z.array(z.number()) });
+export const scoreTerms = z.object({
+  carbon13: z.number().optional(),
+  proton1: z.number().optional(),
+  multiplicity: z.number().optional(),
+  integral: z.number().optional(),
+  plausibility: z.number().optional(),
+});
+export const remarkSchema = z.object({
+  kind: z.enum(['stereo', 'plausibility', 'fit', 'signal']),
+  tone: z.enum(['supports', 'doubts', 'notes']),
+  text: z.string(),
+  atoms: z.array(z.number()),
+});
 export const candidateRow = z.object({
-  id, runId: id, rank: z.number().int(), smiles: z.string(), idcode: z.string(), probability: z.number(), score: z.number(), terms: scoreTerms,
-  carbonDeviation: z.number().nullable(), protonDeviation: z.number().nullable(), remarks: z.array(remarkSchema), shortlistItemId: id.nullable(),
+  id,
+  runId: id,
+  rank: z.number().int(),
+  smiles: z.string(),
+  idcode: z.string(),
+  probability: z.number(),
+  score: z.number(),
+  terms: scoreTerms,
+  carbonDeviation: z.number().nullable(),
+  protonDeviation: z.number().nullable(),
+  remarks: z.array(remarkSchema),
+  shortlistItemId: id.nullable(),
 });
 export const candidateListQuery = pageQuery.extend({
   pageSize: z.coerce.number().int().min(1).max(1000).default(200),
@@ -48,28 +95,80 @@ export const candidateListQuery = pageQuery.extend({
   direction: z.enum(['ascending', 'descending']).default('ascending'),
 });
 export const candidatePage = pageOf(candidateRow);
-export const predictedCarbon = z.object({ atoms: z.array(z.number()), shift: z.number(), sd: z.number(), hydrogens: z.number(), basis: z.string() });
-export const predictedProton = z.object({ atoms: z.array(z.number()), shift: z.number(), sd: z.number(), count: z.number(), multiplicity: z.string(), couplings: z.array(z.number()), exchangeable: z.boolean(), basis: z.string() });
+export const predictedCarbon = z.object({
+  atoms: z.array(z.number()),
+  shift: z.number(),
+  sd: z.number(),
+  hydrogens: z.number(),
+  basis: z.string(),
+});
+export const predictedProton = z.object({
+  atoms: z.array(z.number()),
+  shift: z.number(),
+  sd: z.number(),
+  count: z.number(),
+  multiplicity: z.string(),
+  couplings: z.array(z.number()),
+  exchangeable: z.boolean(),
+  basis: z.string(),
+});
 export const predictedSpectra = z.object({ carbons: z.array(predictedCarbon), protons: z.array(predictedProton) });
-export const signalMatch = z.object({ nucleus: z.enum(['13C', '1H']), observedIndex: z.number().nullable(), predictedIndexes: z.array(z.number()), deviation: z.number().nullable(), term: z.number(), remark: z.string().nullable() });
+export const signalMatch = z.object({
+  nucleus: z.enum(['13C', '1H']),
+  observedIndex: z.number().nullable(),
+  predictedIndexes: z.array(z.number()),
+  deviation: z.number().nullable(),
+  term: z.number(),
+  remark: z.string().nullable(),
+});
 export const candidateParams = z.object({ candidateId: id });
 /** Atom numbers follow `smiles`, from 0. `previousId`/`nextId` by rank. */
-export const candidateResponse = candidateRow.extend({ unknownId: id, spectra: predictedSpectra, matches: z.array(signalMatch), previousId: id.nullable(), nextId: id.nullable(), abilities: abilities(['editShortlist']) });
+export const candidateResponse = candidateRow.extend({
+  unknownId: id,
+  spectra: predictedSpectra,
+  matches: z.array(signalMatch),
+  previousId: id.nullable(),
+  nextId: id.nullable(),
+  abilities: abilities(['editShortlist']),
+});
 
 export const explanationRequest = z.object({ smiles: z.string().trim().min(1, { error: 'expected a structure' }).max(300) });
 export const explanationResponse = z.discriminatedUnion('kind', [
-  z.object({ kind: z.literal('rejected'), smiles: z.string(), stage: z.enum(FUNNEL_STAGES), reasons: z.array(z.object({ reason: z.string(), text: z.string(), atoms: z.array(z.number()) })) }),
+  z.object({
+    kind: z.literal('rejected'),
+    smiles: z.string(),
+    stage: z.enum(FUNNEL_STAGES),
+    reasons: z.array(z.object({ reason: z.string(), text: z.string(), atoms: z.array(z.number()) })),
+  }),
   z.object({ kind: z.literal('ranked'), smiles: z.string(), rank: z.number().int(), candidateId: id, probability: z.number() }),
   /** Survives every filter but scored below the kept ones. */
   z.object({ kind: z.literal('notKept'), smiles: z.string(), score: z.number(), lowestKeptScore: z.number().nullable() }),
   z.object({ kind: z.literal('otherFormula'), smiles: z.string(), formula: z.string(), expected: z.string() }),
 ]);
-export const exportQuery = z.object({ format: z.enum(['smiles', 'sdf', 'csv']), limit: z.coerce.number().int().min(1).max(EVIDENCE_LIMITS.keep).optional() });
+export const exportQuery = z.object({
+  format: z.enum(['smiles', 'sdf', 'csv']),
+  limit: z.coerce.number().int().min(1).max(EVIDENCE_LIMITS.keep).optional(),
+});
 
 export const shortlistItem = z.object({
-  id, unknownId: id, smiles: z.string(), idcode: z.string(), verdict: z.enum(VERDICTS), note: z.string(), addedBy: personName, addedAt: timestamp,
+  id,
+  unknownId: id,
+  smiles: z.string(),
+  idcode: z.string(),
+  verdict: z.enum(VERDICTS),
+  note: z.string(),
+  addedBy: personName,
+  addedAt: timestamp,
   /** Snapshot of the candidate: survives its run. */
-  snapshot: z.object({ candidateId: id.nullable(), runId: id.nullable(), runNumber: z.number(), rank: z.number(), probability: z.number(), carbonDeviation: z.number().nullable(), protonDeviation: z.number().nullable() }),
+  snapshot: z.object({
+    candidateId: id.nullable(),
+    runId: id.nullable(),
+    runNumber: z.number(),
+    rank: z.number(),
+    probability: z.number(),
+    carbonDeviation: z.number().nullable(),
+    protonDeviation: z.number().nullable(),
+  }),
   abilities: abilities(['update', 'remove']),
 });
 export const shortlistResponse = z.object({ items: z.array(shortlistItem) });
@@ -77,7 +176,16 @@ export const shortlistAddRequest = z.object({ candidateId: id, note: z.string().
 export const shortlistItemParams = z.object({ itemId: id });
 export const shortlistUpdateRequest = z.object({ verdict: z.enum(VERDICTS).optional(), note: z.string().trim().max(4000).optional() });
 
-export const predictRequest = z.object({ smiles: z.string().trim().min(1, { error: 'expected a structure' }).max(300), solvent: z.string().trim().max(60).default('CDCl3') });
+export const predictRequest = z.object({
+  smiles: z.string().trim().min(1, { error: 'expected a structure' }).max(300),
+  solvent: z.string().trim().max(60).default('CDCl3'),
+});
 export const predictResponse = predictedSpectra.extend({ smiles: z.string(), notes: z.array(z.string()) });
 /** Before a run: what the figures of the caller's quota allow, and the size of the search by random probing. */
-export const estimateResponse = z.object({ estimate: z.number(), low: z.number(), high: z.number(), cpuSeconds: z.number(), seconds: z.number() });
+export const estimateResponse = z.object({
+  estimate: z.number(),
+  low: z.number(),
+  high: z.number(),
+  cpuSeconds: z.number(),
+  seconds: z.number(),
+});

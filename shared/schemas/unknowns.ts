@@ -20,22 +20,55 @@ export const unknownCreateRequest = z.object({
 });
 export const unknownUpdateRequest = unknownCreateRequest.partial().extend({ status: unknownStatus.optional() });
 
-export const runBrief = z.object({ id, number: z.number().int(), status: z.enum(RUN_STATUSES), constitutionCount: z.number().nullable(), survivorCount: z.number().nullable(), funnel: funnelSchema.nullable(), finishedAt: timestamp.nullable() });
+export const runBrief = z.object({
+  id,
+  number: z.number().int(),
+  status: z.enum(RUN_STATUSES),
+  constitutionCount: z.number().nullable(),
+  survivorCount: z.number().nullable(),
+  funnel: funnelSchema.nullable(),
+  finishedAt: timestamp.nullable(),
+});
 export const unknownRow = z.object({
-  id, teamId: id, code: z.string(), title: z.string(), status: unknownStatus, formula: z.string().nullable(),
-  createdBy: personName, createdAt: timestamp, updatedAt: timestamp, lastRun: runBrief.nullable(),
+  id,
+  teamId: id,
+  code: z.string(),
+  title: z.string(),
+  status: unknownStatus,
+  formula: z.string().nullable(),
+  createdBy: personName,
+  createdAt: timestamp,
+  updatedAt: timestamp,
+  lastRun: runBrief.nullable(),
 });
 export const unknownPage = pageOf(unknownRow);
 export const unknownResponse = unknownRow.extend({
-  description: z.string(), purpose: z.enum(['research', 'regulated']), isDemo: z.boolean(),
-  revisionCount: z.number().int(), currentRevisionId: id.nullable(), shortlistCount: z.number().int(),
+  description: z.string(),
+  purpose: z.enum(['research', 'regulated']),
+  isDemo: z.boolean(),
+  revisionCount: z.number().int(),
+  currentRevisionId: id.nullable(),
+  shortlistCount: z.number().int(),
   abilities: abilities(['update', 'shelve', 'saveEvidence', 'startRun', 'editShortlist', 'comment']),
 });
 
 export const revisionParams = z.object({ revisionId: id });
-export const revisionRow = z.object({ id, number: z.number().int(), author: personName, comment: z.string(), createdAt: timestamp, formula: z.string(), isCurrent: z.boolean() });
+export const revisionRow = z.object({
+  id,
+  number: z.number().int(),
+  author: personName,
+  comment: z.string(),
+  createdAt: timestamp,
+  formula: z.string(),
+  isCurrent: z.boolean(),
+});
 export const revisionList = z.object({ revisions: z.array(revisionRow) });
-export const revisionResponse = revisionRow.extend({ unknownId: id, evidence: evidenceDocument, notes: z.array(z.string()), abilities: abilities(['restore']) });
+export const revisionResponse = revisionRow.extend({
+  unknownId: id,
+  evidence: evidenceDocument,
+  notes: z.array(z.string()),
+  abilities: abilities(['restore']),
+});
 export const revisionCreateRequest = z.object({
   evidence: evidenceDocument,
   comment: z.string().trim().max(500).default(''),
@@ -49,7 +82,15 @@ export const commentList = z.object({ comments: z.array(commentRow) });
 export const commentCreateRequest = z.object({ text: z.string().trim().min(1, { error: 'expected a text' }).max(4000) });
 
 export const teamFragmentParams = z.object({ fragmentId: id });
-export const teamFragmentRow = z.object({ id, name: z.string(), group: z.string(), smiles: z.string(), createdBy: personName, createdAt: timestamp, abilities: abilities(['remove']) });
+export const teamFragmentRow = z.object({
+  id,
+  name: z.string(),
+  group: z.string(),
+  smiles: z.string(),
+  createdBy: personName,
+  createdAt: timestamp,
+  abilities: abilities(['remove']),
+});
 export const teamFragmentList = z.object({ fragments: z.array(teamFragmentRow) });
 export const teamFragmentCreateRequest = z.object({
   name: z.string().trim().min(1, { error: 'expected a name' }).max(80),

@@ -121,7 +121,16 @@ export interface SearchLayout extends FillLayout {
 export function createLayout(problem: SearchProblem, distribution: Distribution): SearchLayout {
   const { units } = problem;
   const n = problem.heavyAtomCount;
-  interface Row { atomicNumber: number; hydrogens: number; charge: number; valence: number; quota: readonly number[] | null; unit: number; atom: number; classKey: string }
+  interface Row {
+    atomicNumber: number;
+    hydrogens: number;
+    charge: number;
+    valence: number;
+    quota: readonly number[] | null;
+    unit: number;
+    atom: number;
+    classKey: string;
+  }
   const instances: { kind: number; unit: UnitKind }[] = [];
   units.forEach((unit, kind) => {
     for (let copy = 0; copy < unit.count; copy++) instances.push({ kind, unit });
@@ -203,9 +212,10 @@ export function createLayout(problem: SearchProblem, distribution: Distribution)
 /** Writes the bonds of one Kekulé form of a unit into a graph. */
 export function placeForm(graph: MolecularGraph, unit: UnitKind, form: Uint8Array, vertices: readonly number[]): void {
   const size = unit.graph.atomCount;
-  for (let i = 0; i < size; i++) for (let j = 0; j < size; j++) {
-    if (unit.labels[i * size + j] !== 0) graph.bondOrders[vertices[i] * graph.atomCount + vertices[j]] = form[i * size + j];
-  }
+  for (let i = 0; i < size; i++)
+    for (let j = 0; j < size; j++) {
+      if (unit.labels[i * size + j] !== 0) graph.bondOrders[vertices[i] * graph.atomCount + vertices[j]] = form[i * size + j];
+    }
 }
 
 /** All moves of whole units among their kind, combined with the symmetries of each, on the tied vertices. */
@@ -220,7 +230,9 @@ function listTiedPermutations(units: readonly UnitKind[], tied: number): Uint8Ar
       if (slots.length === unit.count) {
         ofKind.push(images);
         if (ofKind.length * list.length > MAX_TIED_PERMUTATIONS) {
-          throw new TooSymmetricError(`${unit.count} copies of ${unit.smiles} are more than the search can tell apart; ask for fewer copies or a larger fragment`);
+          throw new TooSymmetricError(
+            `${unit.count} copies of ${unit.smiles} are more than the search can tell apart; ask for fewer copies or a larger fragment`,
+          );
         }
         return;
       }

@@ -3,7 +3,7 @@ import type { FillLayout } from './layout.js';
 /** What a search asks of its caller. Return true to stop the search. */
 export interface FillEvents {
   /** A complete canonical matrix: `open` × `open`, row-major, reused buffer. */
-  onLeaf(bondOrders: Uint8Array): void;
+  onLeaf(bondOrders: Uint8Array): boolean;
   /** Rows [0, row) are filled and `stopRow` was reached: entries in filling order, fresh array. */
   onPrefix?(prefix: number[]): void;
   /** Called every few thousand rows; true ends the search. */
@@ -30,11 +30,9 @@ export function createFiller(layout: FillLayout): {
   /**
    * Searches below a prefix (empty = from the root). With `stopRow` > 0 the search reports prefixes of that many rows
    * instead of going deeper; leaves that are complete before are reported as leaves.
-   * @returns false when `shouldStop` ended it.
+   * @returns false when an event ended it.
    */
   run(prefix: readonly number[], stopRow: number, events: FillEvents): boolean;
-  /** Rows of the deepest useful prefix. */
-  readonly rowCount: number;
 } {
   const n = layout.open;
   const { tied, bondQuota, classOf, unitOf, tiedPermutations } = layout;
@@ -198,7 +196,7 @@ export function createFiller(layout: FillLayout): {
       }
     }
     if (i >= n - 1) {
-      if (n === 0 || left[n - 1] === 0) events!.onLeaf(a);
+      if ((n === 0 || left[n - 1] === 0) && events!.onLeaf(a)) stopped = true;
       return;
     }
     if (i === stopRow && stopRow > 0) {
@@ -209,7 +207,8 @@ export function createFiller(layout: FillLayout): {
     // Columns to the right can take this much of the row's valence; a row that needs more has no completion.
     const line = i * width;
     capacity[line + n] = 0;
-    for (let j = n - 1; j >= first; j--) capacity[line + j] = capacity[line + j + 1] + (left[j] < highestOrder[j] ? left[j] : highestOrder[j]);
+    for (let j = n - 1; j >= first; j--)
+      capacity[line + j] = capacity[line + j + 1] + (left[j] < highestOrder[j] ? left[j] : highestOrder[j]);
     // While the row equals its predecessor's and both were interchangeable, it must not grow beyond it.
     const tight = i > tied && same[(i - 1) * width + i] === 1 ? 1 : 0;
     fillEntry(i, first, tight);
@@ -449,7 +448,6 @@ export function createFiller(layout: FillLayout): {
   }
 
   return {
-    rowCount: n,
     run(prefix, stopAt, handler) {
       events = handler;
       stopRow = stopAt;

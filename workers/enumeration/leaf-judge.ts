@@ -1,7 +1,7 @@
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { perceiveAromaticity } from '../graph/aromaticity.js';
 import { canonicalForm, compareCodes } from '../graph/canonical.js';
-import { atomColour } from './atom-colour.js';
+import { atomColour } from '../graph/atom-colour.js';
 import { placeForm, type SearchLayout } from './distributions.js';
 import { forEachKekuleForm, hasAlternatingCycle } from './kekule.js';
 import { constitutionCode, listPlacementSets, meetsDemands, placementCode } from './placements.js';
@@ -38,7 +38,8 @@ export function createLeafJudge(problem: SearchProblem, layout: SearchLayout): (
   for (const { kind, vertices } of layout.placedUnits) {
     const { labels, graph: unitGraph } = units[kind];
     const size = unitGraph.atomCount;
-    for (let i = 0; i < size; i++) for (let j = 0; j < size; j++) if (labels[i * size + j] === RESONANT_BOND) inner[vertices[i] * n + vertices[j]] = 1;
+    for (let i = 0; i < size; i++)
+      for (let j = 0; j < size; j++) if (labels[i * size + j] === RESONANT_BOND) inner[vertices[i] * n + vertices[j]] = 1;
   }
   const formChoices = listFormChoices(problem, layout);
   const colours = Uint16Array.from({ length: n }, (_, atom) => atomColour(base, atom));
@@ -99,7 +100,8 @@ export function createLeafJudge(problem: SearchProblem, layout: SearchLayout): (
       }
     }
     if (!merge) return { multigraphs, graphs: distinct };
-    if (!hasAlternatingCycle(n, graph.bondOrders, inner)) return greatestHere ? { multigraphs, graphs: [graph] } : { multigraphs, graphs: [] };
+    if (!hasAlternatingCycle(n, graph.bondOrders, inner))
+      return greatestHere ? { multigraphs, graphs: [graph] } : { multigraphs, graphs: [] };
     const aromaticity = perceiveAromaticity(graph);
     const form: MolecularGraph = { ...graph };
     const beaten = forEachKekuleForm(graph, aromaticity, (bondOrders) => !isGreatestIn({ ...form, bondOrders }, code, false));

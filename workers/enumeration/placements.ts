@@ -1,6 +1,6 @@
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { canonicalForm } from '../graph/canonical.js';
-import { atomColour } from './atom-colour.js';
+import { atomColour } from '../graph/atom-colour.js';
 import type { AtomDemand } from './problem.js';
 import { RESONANT_BOND, type UnitKind } from './units.js';
 

@@ -87,7 +87,13 @@ export function createProblem(evidence: EvidenceDocument): SearchProblem {
       orders.length > 0 &&
       graph.hydrogens[0] + orders.reduce((sum, order) => sum + order, 0) === elementOf(graph.atomicNumbers[0]).valences[0];
     if (isDefaultValence) {
-      demands.push({ smiles: required.smiles, atomicNumber: graph.atomicNumbers[0], hydrogens: graph.hydrogens[0], orders, count: required.count });
+      demands.push({
+        smiles: required.smiles,
+        atomicNumber: graph.atomicNumbers[0],
+        hydrogens: graph.hydrogens[0],
+        orders,
+        count: required.count,
+      });
       return;
     }
     units.push(createUnitKind(required.smiles, required.count, graph, attachments));

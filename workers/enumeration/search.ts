@@ -22,8 +22,10 @@ export function createSearch(evidence: EvidenceDocument): Search {
 export interface ConstitutionSink {
   onConstitution(graph: MolecularGraph): void;
   onMultigraphs(count: number): void;
-  /** Called about once a millisecond; true ends the shard early. */
+  /** Called every few thousand rows; true ends the shard early. */
   shouldStop(): boolean;
+  /** Asked after each constitution; cheap. True ends the shard early. */
+  stopRequested(): boolean;
 }
 
 /**
@@ -40,6 +42,7 @@ export function enumerateShard(search: Search, shard: ShardSpec, sink: Constitut
         const verdict = judge(filled);
         if (verdict.multigraphs !== 0) sink.onMultigraphs(verdict.multigraphs);
         for (const graph of verdict.graphs) sink.onConstitution(graph);
+        return sink.stopRequested();
       },
       shouldStop: () => sink.shouldStop(),
     });
@@ -65,7 +68,11 @@ export function planShards(search: Search, target: number): ShardSpec[] {
       prefix: [],
     }));
   }
-  let nodes: Omit<ShardSpec, 'index'>[] = search.distributions.map((_, d) => ({ firstDistribution: d, endDistribution: d + 1, prefix: [] }));
+  let nodes: Omit<ShardSpec, 'index'>[] = search.distributions.map((_, d) => ({
+    firstDistribution: d,
+    endDistribution: d + 1,
+    prefix: [],
+  }));
   for (let rows = 1; rows <= MAX_PREFIX_ROWS && nodes.length < target; rows++) {
     nodes = nodes.flatMap((node) => {
       if (node.prefix.length > 0 && node.prefix[0] !== rows - 1) return [node];
@@ -85,7 +92,10 @@ function expandNode(search: Search, node: Omit<ShardSpec, 'index'>, rows: number
   const prefixes: number[][] = [];
   let leaves = 0;
   createFiller(layout).run(node.prefix, rows, {
-    onLeaf: () => leaves++,
+    onLeaf: () => {
+      leaves++;
+      return false;
+    },
     onPrefix: (prefix) => prefixes.push(prefix),
     shouldStop: () => false,
   });

@@ -3,7 +3,7 @@ import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { perceiveAromaticity } from '../graph/aromaticity.js';
 import { canonicalForm } from '../graph/canonical.js';
 import { createGraph } from '../graph/pack.js';
-import { atomColour } from './atom-colour.js';
+import { atomColour } from '../graph/atom-colour.js';
 import { forEachKekuleForm } from './kekule.js';
 
 /** Label of a bond inside a unit that is single in one Kekulé form and double in another. */
@@ -97,7 +97,13 @@ function listForms(graph: MolecularGraph, attachments: readonly Attachment[]): U
 }
 
 /** One form of each orbit under the automorphisms that fix every open atom. */
-function formsApart(n: number, forms: readonly Uint8Array[], labels: Uint8Array, colours: Uint16Array, openAtoms: readonly number[]): Uint8Array[] {
+function formsApart(
+  n: number,
+  forms: readonly Uint8Array[],
+  labels: Uint8Array,
+  colours: Uint16Array,
+  openAtoms: readonly number[],
+): Uint8Array[] {
   if (forms.length === 1) return [forms[0]];
   const fixed = colours.slice();
   openAtoms.forEach((atom, k) => (fixed[atom] = 0xff00 + k));

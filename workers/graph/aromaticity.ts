@@ -19,7 +19,17 @@ const OUTER_ELECTRONS: Readonly<Record<number, number>> = { 5: 3, 6: 4, 7: 5, 8:
 const DEFAULT_VALENCE: Readonly<Record<number, number>> = { 5: 3, 6: 4, 7: 3, 8: 2, 14: 4, 15: 3, 16: 2 };
 /** Pauling order of the elements at hand, for "does the partner pull the electron out of the ring". */
 const ELECTRONEGATIVITY: Readonly<Record<number, number>> = {
-  5: 2.04, 6: 2.55, 7: 3.04, 8: 3.44, 9: 3.98, 14: 1.9, 15: 2.19, 16: 2.58, 17: 3.16, 35: 2.96, 53: 2.66,
+  5: 2.04,
+  6: 2.55,
+  7: 3.04,
+  8: 3.44,
+  9: 3.98,
+  14: 1.9,
+  15: 2.19,
+  16: 2.58,
+  17: 3.16,
+  35: 2.96,
+  53: 2.66,
 };
 
 /**

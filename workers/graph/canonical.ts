@@ -117,7 +117,13 @@ function compareTraces(a: readonly number[], b: readonly number[]): number {
 }
 
 /** Is `vertex` the image of a tried one under automorphisms that fix the path point by point? */
-function inKnownOrbit(n: number, vertex: number, tried: readonly number[], path: readonly number[], automorphisms: readonly Uint8Array[]): boolean {
+function inKnownOrbit(
+  n: number,
+  vertex: number,
+  tried: readonly number[],
+  path: readonly number[],
+  automorphisms: readonly Uint8Array[],
+): boolean {
   const parent = Array.from({ length: n }, (_, i) => i);
   const find = (i: number): number => {
     while (parent[i] !== i) i = parent[i] = parent[parent[i]];

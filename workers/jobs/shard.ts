@@ -1,0 +1,79 @@
+import { addToCounter, isCancelled } from '../../shared/jobs/counters.js';
+import type { JobContract, ShardResult } from '../../shared/jobs/contract.js';
+import { enumerateShard } from '../enumeration/search.js';
+import { createEvaluator } from '../ranking/evaluator.js';
+import { BestCandidates } from './best-candidates.js';
+import { FunnelCounter } from './funnel-counter.js';
+import { searchFor } from './search-cache.js';
+
+/** Constitutions between two looks at the clock; each can cost up to a millisecond with many fragments. */
+const CONSTITUTIONS_BETWEEN_CHECKS = 64;
+
+/** Enumerates, filters, scores and keeps the best of one shard. Depends on nothing but its input. */
+export function runShard(input: JobContract['shard']['input']): ShardResult {
+  const { evidence, settings, shard, counters, deadlineEpochMs } = input;
+  const startedMs = performance.now();
+  const search = searchFor(evidence);
+  const evaluator = createEvaluator(evidence, settings);
+  const funnel = new FunnelCounter();
+  const best = settings.mode === 'count' ? null : new BestCandidates(settings.keep, evidence.options.mergeResonanceForms);
+  let constitutionCount = 0;
+  let multigraphCount = 0;
+  let survivors = 0;
+  let reportedConstitutions = 0;
+  let reportedSurvivors = 0;
+  // Running log Σ exp(score), kept as the largest score and the sum relative to it.
+  let highest = -Infinity;
+  let relativeSum = 0;
+  let mustStop = false;
+  let untilCheck = CONSTITUTIONS_BETWEEN_CHECKS;
+
+  const look = (): boolean => {
+    addToCounter(counters, 'constitutionsSeen', constitutionCount - reportedConstitutions);
+    addToCounter(counters, 'survivors', survivors - reportedSurvivors);
+    reportedConstitutions = constitutionCount;
+    reportedSurvivors = survivors;
+    mustStop ||= isCancelled(counters) || (deadlineEpochMs !== null && Date.now() >= deadlineEpochMs);
+    return mustStop;
+  };
+  const complete = enumerateShard(search, shard, {
+    onMultigraphs(count) {
+      multigraphCount += count;
+    },
+    onConstitution(graph) {
+      constitutionCount++;
+      funnel.arrive();
+      if (--untilCheck === 0) {
+        untilCheck = CONSTITUTIONS_BETWEEN_CHECKS;
+        look();
+      }
+      const evaluation = evaluator.evaluate(graph);
+      if (evaluation.kind === 'rejected') {
+        funnel.reject(evaluation.stage, evaluation.reason);
+        return;
+      }
+      survivors++;
+      const { score } = evaluation;
+      if (score > highest) {
+        relativeSum = relativeSum * Math.exp(highest - score) + 1;
+        highest = score;
+      } else {
+        relativeSum += Math.exp(score - highest);
+      }
+      best?.offer(graph, score, evaluation.terms);
+    },
+    shouldStop: () => mustStop || look(),
+    stopRequested: () => mustStop,
+  });
+  look();
+  return {
+    index: shard.index,
+    constitutionCount,
+    multigraphCount,
+    funnel: funnel.funnel(),
+    kept: best?.list() ?? [],
+    logSumExp: survivors === 0 ? null : highest + Math.log(relativeSum),
+    cpuSeconds: (performance.now() - startedMs) / 1000,
+    complete,
+  };
+}

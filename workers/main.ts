@@ -1,0 +1,60 @@
+/**
+ * Entry of the compute threads: one handler per job of shared/jobs/contract. A handler never throws across the thread
+ * boundary (a thrown error would lose its code); it returns a failure that says what was wrong with the input, or that
+ * the fault is ours.
+ */
+import { parseSmiles } from '../shared/chemistry/smiles.js';
+import type { JobContract, JobName, JobResult } from '../shared/jobs/contract.js';
+import { estimateSearch } from './enumeration/estimate.js';
+import { TooSymmetricError } from './enumeration/distributions.js';
+import { ProblemError } from './enumeration/problem.js';
+import { planShards } from './enumeration/search.js';
+import { explainStructure } from './jobs/explain.js';
+import { searchFor } from './jobs/search-cache.js';
+import { runShard } from './jobs/shard.js';
+import { predictSpectra } from './prediction/predict-spectra.js';
+import { finishRanking } from './ranking/finish.js';
+
+function handler<K extends JobName>(work: (input: JobContract[K]['input']) => JobContract[K]['output']) {
+  return (input: JobContract[K]['input']): JobResult<JobContract[K]['output']> => {
+    try {
+      return { ok: true, value: work(input) };
+    } catch (error) {
+      if (error instanceof ProblemError) return { ok: false, failure: { code: 'badInput', message: error.message, issues: error.issues } };
+      if (error instanceof TooSymmetricError) {
+        return {
+          ok: false,
+          failure: { code: 'badInput', message: error.message, issues: [{ path: 'fragments.required', message: error.message }] },
+        };
+      }
+      return { ok: false, failure: { code: 'internal', message: error instanceof Error ? (error.stack ?? error.message) : String(error) } };
+    }
+  };
+}
+
+export const plan = handler<'plan'>(({ evidence, targetShards }) => ({ shards: planShards(searchFor(evidence), targetShards), notes: [] }));
+
+export const shard = handler<'shard'>(runShard);
+
+export const finish = handler<'finish'>(finishRanking);
+
+export const explain = handler<'explain'>(explainStructure);
+
+export const predict = handler<'predict'>(({ smiles, solvent }) => {
+  const read = parseSmiles(smiles);
+  if (!read.ok) throw new ProblemError([{ path: 'smiles', message: read.message }]);
+  if (read.attachments.length > 0) throw new ProblemError([{ path: 'smiles', message: 'expected a whole structure without *' }]);
+  return { ...predictSpectra(read.graph, solvent), smiles, notes: read.notes };
+});
+
+export const estimate = handler<'estimate'>(({ evidence, probes, seed, maxSeconds }) => {
+  const startedMs = performance.now();
+  const result = estimateSearch(searchFor(evidence), probes, seed, maxSeconds, () => performance.now());
+  return {
+    estimate: result.estimate,
+    low: result.low,
+    high: result.high,
+    cpuSeconds: result.cpuSeconds,
+    seconds: (performance.now() - startedMs) / 1000,
+  };
+});
