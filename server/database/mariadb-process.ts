@@ -133,6 +133,8 @@ export async function startMariadb({ directory, port, initStatements, durable }:
   const stop = () => stopChild(child, exited);
   try {
     await waitForGreeting(port, exited);
+    // It has been read, and it holds the password.
+    await rm(initFile, { force: true });
   } catch (error) {
     await stop();
     const text = await readFile(logFile, 'utf8').catch(() => '');
