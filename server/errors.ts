@@ -37,6 +37,9 @@ export class NotFoundError extends HttpError {
   }
 }
 
+/** The same answer for links that never were, have run out, were used or withdrawn. */
+export const linkUsedUp = (): NotFoundError => new NotFoundError('linkUsedUp', 'This link does not work any more. Ask for a new one.');
+
 /** The request is fine by itself but does not go with the present state. */
 export class ConflictError extends HttpError {
   readonly status = 409;

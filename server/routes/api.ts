@@ -1,8 +1,24 @@
 import type { AppContext } from '../app-context.js';
+import { auditRoutes } from './audit/audit-routes.js';
+import { installationRoutes } from './installation/installation-routes.js';
+import { invitationRoutes } from './invitations/invitation-routes.js';
+import { memberRoutes } from './members/member-routes.js';
+import { passwordResetRoutes } from './password-resets/password-reset-routes.js';
 import type { Route } from './route.js';
 import { sessionRoutes } from './session/session-routes.js';
+import { teamRoutes } from './teams/team-routes.js';
+import { userRoutes } from './users/user-routes.js';
 
-/** Every route of the API. */
+/** Every route of the API; a test holds the list against the endpoint table. */
 export function apiRoutes(context: AppContext): Route[] {
-  return [...sessionRoutes(context)];
+  return [
+    ...installationRoutes(context),
+    ...sessionRoutes(context),
+    ...invitationRoutes(context),
+    ...passwordResetRoutes(context),
+    ...teamRoutes(context),
+    ...memberRoutes(context),
+    ...userRoutes(context),
+    ...auditRoutes(),
+  ];
 }
