@@ -2,7 +2,7 @@ import { ConfigError, loadConfig } from './config/config.js';
 import { DataFolderInUse } from './database/data-folder-lock.js';
 import { MariadbError } from './database/mariadb-process.js';
 import { createShutdown } from './shutdown.js';
-import { startServer } from './start-server.js';
+import { type StartedServer, startServer } from './start-server.js';
 
 /** Start and graceful stop of the server. */
 const shutdown = createShutdown((step, error) => console.error(`Could not close the ${step} cleanly:`, error));
@@ -30,8 +30,7 @@ process.on('uncaughtException', (error) => {
 
 try {
   const config = loadConfig(process.env);
-  const context = await startServer({ config, shutdown, announce: (line) => console.log(line) });
-  printWelcome(context.config.publicUrl);
+  printWelcome(await startServer({ config, shutdown, announce: (line) => console.log(line) }));
 } catch (error) {
   // Closing what a start under way needs makes it fail: that is no news.
   if (!isStopping) {
@@ -40,8 +39,15 @@ try {
   }
 }
 
-function printWelcome(publicUrl: string): void {
-  console.log(`\nIsoloom is running: ${publicUrl}\nCtrl-C stops it.`);
+function printWelcome({ context, firstAdmin }: StartedServer): void {
+  const { config, demoAccounts = [] } = context;
+  if (firstAdmin !== null) console.log(`\nFirst admin; write the password down, it is shown only now:\n  ${firstAdmin.email}  ${firstAdmin.password}`);
+  if (demoAccounts.length > 0) {
+    console.log('\nDemo accounts of an invented laboratory:');
+    const width = Math.max(...demoAccounts.map(({ email }) => email.length));
+    for (const { email, password, role } of demoAccounts) console.log(`  ${email.padEnd(width)}  ${password}  (${role})`);
+  }
+  console.log(`\nIsoloom is running: ${config.publicUrl}\nCtrl-C stops it.`);
 }
 
 /** What the person who started the server can act on is said in one line; anything else is a fault and shown in full. */

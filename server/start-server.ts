@@ -5,13 +5,20 @@ import type { AppContext } from './app-context.js';
 import { createApp } from './app.js';
 import { createEmbeddedQueue } from './compute/embedded-queue.js';
 import { createComputePool } from './compute/pool.js';
+import { ensureFirstAdmin } from './commands/create-first-admin.js';
+import { purgeExpired } from './commands/purge-expired.js';
 import type { Config } from './config/config.js';
 import { connectDatabase } from './database/connect.js';
 import { lockDataFolder } from './database/data-folder-lock.js';
 import { migrate } from './database/migrate.js';
 import { startPrivateMariadb } from './database/private-mariadb.js';
+import { createMailer } from './mail/mailer.js';
+import { startOutboxSender } from './mail/outbox-sender.js';
 import { initModels } from './models/init-models.js';
 import type { Shutdown } from './shutdown.js';
+
+const LAST_REQUESTS_MS = 1_000;
+const UPKEEP_INTERVAL_MS = 6 * 3_600_000;
 
 export interface StartOptions {
   readonly config: Config;
@@ -21,8 +28,14 @@ export interface StartOptions {
   readonly announce: (line: string) => void;
 }
 
+export interface StartedServer {
+  readonly context: AppContext;
+  /** Only at the start that made this account; the password is kept nowhere. */
+  readonly firstAdmin: { readonly email: string; readonly password: string } | null;
+}
+
 /** Opens one thing after another, the port last: who gets an answer gets a complete server. */
-export async function startServer({ config, shutdown, announce }: StartOptions): Promise<AppContext> {
+export async function startServer({ config, shutdown, announce }: StartOptions): Promise<StartedServer> {
   const logger = pino({ level: config.logLevel });
   const sequelize = connectDatabase(config.databaseUrl ?? (await openPrivateDatabase(config, shutdown, announce)));
   shutdown.add('database connections', () => sequelize.close());
@@ -36,10 +49,26 @@ export async function startServer({ config, shutdown, announce }: StartOptions):
   shutdown.add('run queue', () => queue.close());
   await queue.start();
 
-  const mailer = { send: () => Promise.reject(new Error('no mail server')), close: () => undefined };
+  const mailer = createMailer(config);
+  shutdown.add('mail connection', () => mailer.close());
   const context: AppContext = { config, sequelize, logger, mailer, compute, queue };
+  const outbox = startOutboxSender(context);
+  shutdown.add('mail outbox', () => outbox.stop());
+  shutdown.add('upkeep', startUpkeep(context));
+  const firstAdmin = await ensureFirstAdmin(context);
   await listen(context, shutdown);
-  return context;
+  return { context, firstAdmin };
+}
+
+/** Removes what has expired, now and every few hours; returns what ends it. */
+function startUpkeep(context: AppContext): () => Promise<void> {
+  const purge = () => purgeExpired(context, new Date()).catch((error: unknown) => context.logger.error({ err: error }, 'upkeep failed'));
+  let current = purge();
+  const timer = setInterval(() => (current = purge()), UPKEEP_INTERVAL_MS);
+  return async () => {
+    clearInterval(timer);
+    await current;
+  };
 }
 
 async function openPrivateDatabase(config: Config, shutdown: Shutdown, announce: (line: string) => void): Promise<string> {
@@ -65,5 +94,3 @@ async function listen(context: AppContext, shutdown: Shutdown): Promise<void> {
     clearTimeout(lastCall);
   });
 }
-
-const LAST_REQUESTS_MS = 1_000;
