@@ -10,6 +10,7 @@ import { TooSymmetricError } from './enumeration/distributions.js';
 import { ProblemError } from './enumeration/problem.js';
 import { planShards } from './enumeration/search.js';
 import { explainStructure } from './jobs/explain.js';
+import { layOut } from './jobs/layout.js';
 import { searchFor } from './jobs/search-cache.js';
 import { runShard } from './jobs/shard.js';
 import { predictSpectra } from './prediction/predict-spectra.js';
@@ -58,3 +59,5 @@ export const estimate = handler<'estimate'>(({ evidence, probes, seed, maxSecond
     seconds: (performance.now() - startedMs) / 1000,
   };
 });
+
+export const layout = handler<'layout'>(({ smiles }) => ({ structures: smiles.map(layOut) }));

@@ -13,7 +13,7 @@ export interface PoolOptions {
 }
 
 /** Jobs that people wait for while looking at the screen. They have a thread of their own, so that a long run never holds them up. */
-const INTERACTIVE_JOBS: ReadonlySet<JobName> = new Set(['explain', 'predict', 'estimate']);
+const INTERACTIVE_JOBS: ReadonlySet<JobName> = new Set(['explain', 'predict', 'estimate', 'layout']);
 /** A shard keeps its memory flat; a thread that needs more than this has gone astray and must not take the server with it. */
 const WORKER_HEAP_MEGABYTES = 768;
 const MAX_WAITING_JOBS = 256;

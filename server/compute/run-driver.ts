@@ -333,7 +333,7 @@ export class RunDriver {
 
   /** Turns whatever went wrong into a reason that people can read. */
   #asStop(error: unknown): Stop {
-    if (error instanceof ComputeFailure) {
+    if (error instanceof ComputeFailure && error.failure.code !== 'internal') {
       const issues = (error.failure.issues ?? []).map(({ path, message }) => `${path}: ${message}`);
       const message = issues.length === 0 ? error.message : `${error.message} (${issues.join('; ')})`;
       return { kind: 'failed', code: error.failure.code, message };

@@ -176,6 +176,16 @@ export interface JobFailure {
 }
 export type JobResult<T> = { readonly ok: true; readonly value: T } | { readonly ok: false; readonly failure: JobFailure };
 
+/** A structure laid out on a plane for files and drawings. Atoms in the order of the SMILES; one Kekulé form. */
+export interface LaidOutStructure {
+  /** Equal for every numbering and Kekulé form; attachment points count as atoms. */
+  readonly idcode: string;
+  /** x, y: drawing units, bond length about 1, y upwards. */
+  readonly atoms: ReadonlyArray<{ readonly symbol: string; readonly charge: number; readonly x: number; readonly y: number }>;
+  /** Indexes into `atoms`, from 0. */
+  readonly bonds: ReadonlyArray<{ readonly from: number; readonly to: number; readonly order: number }>;
+}
+
 /** Every message that crosses the thread boundary. Input is structured-cloneable; counters are shared memory. */
 export interface JobContract {
   plan: {
@@ -202,5 +212,7 @@ export interface JobContract {
     input: { evidence: EvidenceDocument; probes: number; seed: number; maxSeconds: number };
     output: { estimate: number; low: number; high: number; cpuSeconds: number; seconds: number };
   };
+  /** Order of the answer = order of the question. */
+  layout: { input: { smiles: readonly string[] }; output: { structures: readonly LaidOutStructure[] } };
 }
 export type JobName = keyof JobContract;

@@ -4,9 +4,9 @@ import { ComputeFailure, type ComputeService, type JobOptions, WorkerCrash } fro
 
 /**
  * What a shard does when it is started: give its result, wait for its flag, deadline or `release`, end its thread,
- * ignore its flag until its thread is ended, or fail.
+ * ignore its flag until its thread is ended, fail by a fault of its own, or refuse its input.
  */
-export type ShardBehaviour = 'done' | 'waits' | 'crashes' | 'ignoresFlag' | 'fails';
+export type ShardBehaviour = 'done' | 'waits' | 'crashes' | 'ignoresFlag' | 'fails' | 'refuses';
 
 export interface FakeComputeOptions {
   readonly threadCount?: number;
@@ -81,6 +81,7 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
     addToCounter(counters, 'constitutionsSeen', 10);
     if (behaviour === 'crashes') throw new WorkerCrash('worker exited with code: 1');
     if (behaviour === 'fails') throw new ComputeFailure({ code: 'internal', message: 'the engine lost a bond' });
+    if (behaviour === 'refuses') throw new ComputeFailure({ code: 'badInput', message: 'the search cannot be started', issues: [{ path: 'fragments.required', message: 'too symmetric' }] });
     if (behaviour === 'done') return result;
     return await new Promise((resolve, reject) => {
       const finish = (action: () => void) => {
@@ -116,6 +117,13 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
     explain: async () => answer('explain'),
     predict: async () => answer('predict'),
     estimate: async () => answer('estimate'),
+    layout: async ({ smiles }) => ({
+      structures: smiles.map((text) => ({
+        idcode: `id-${text}`,
+        atoms: [...text].map((symbol, index) => ({ symbol, charge: 0, x: index, y: 0 })),
+        bonds: [...text].slice(1).map((_, index) => ({ from: index, to: index + 1, order: 1 })),
+      })),
+    }),
   };
   function answer<K extends keyof FakeCompute['answers']>(name: K): JobContract[K]['output'] {
     const given = answers[name];

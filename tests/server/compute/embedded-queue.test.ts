@@ -81,9 +81,15 @@ describe('a run in the embedded queue', () => {
     expect((await usageOf(run)).kind).toBe('settled');
   });
 
-  it('fails with the reason that the engine gives', async () => {
+  it('fails with the reason when the engine refuses the evidence', async () => {
+    const run = await runToEnd(createQueue(createFakeCompute({ onShard: (index) => (index === 1 ? 'refuses' : 'waits') })), await createRun());
+    expect(run).toMatchObject({ status: 'failed', failure: { code: 'badInput', message: 'the search cannot be started (fragments.required: too symmetric)' } });
+  });
+
+  it('says that the fault is ours, without its inner details, when the engine fails', async () => {
     const run = await runToEnd(createQueue(createFakeCompute({ onShard: (index) => (index === 1 ? 'fails' : 'waits') })), await createRun());
-    expect(run).toMatchObject({ status: 'failed', failure: { code: 'internal', message: 'the engine lost a bond' } });
+    expect(run).toMatchObject({ status: 'failed', failure: { code: 'internal' } });
+    expect(run.failure?.message).not.toContain('lost a bond');
   });
 
   it('tries the ranking again when its thread ended', async () => {

@@ -8,7 +8,7 @@ const faults: Error[] = [];
 const pool = createComputePool({ threads: 1, workerUrl: new URL('./fixtures/jobs.ts', import.meta.url), onFault: (error) => faults.push(error) });
 const evidence = evidenceDocument.parse({ formula: 'C2H6O' });
 const settings = { keep: 10, maxSeconds: null, mode: 'rank' } as const;
-const shardInput = (counters: SharedArrayBuffer) => ({ evidence, settings, shard: { index: 0, distribution: 0, prefix: [] }, counters, deadlineEpochMs: null });
+const shardInput = (counters: SharedArrayBuffer) => ({ evidence, settings, shard: { index: 0, firstDistribution: 0, endDistribution: 1, prefix: [] }, counters, deadlineEpochMs: null });
 const until = async (condition: () => boolean) => {
   while (!condition()) await new Promise((resolve) => setTimeout(resolve, 5));
 };
