@@ -13,6 +13,9 @@ export interface FillEvents {
 /** Rows between two calls of `shouldStop`: about a millisecond. */
 const ROWS_BETWEEN_CHECKS = 2048;
 const ANY_ORDER = 255;
+const ALIVE = 255;
+/** Cells hold at most 40 entries, so one entry of a higher order outweighs all of the lower ones. */
+const WEIGHT = [0, 1, 64, 4096] as const;
 
 /**
  * Orderly generation of connectivity matrices, row by row, larger entries first; no table of seen matrices.
@@ -44,13 +47,31 @@ export function createFiller(layout: FillLayout): {
   const same = new Uint8Array((n + 1) * width);
   /** capacity[j]: what columns [j, n) can still take from the current row; one line a row. */
   const capacity = new Uint16Array((n + 1) * width);
-  const component = new Uint8Array((n + 1) * n);
+  /** Components of the bonds placed so far: union by size without path compression, so that bonds can be taken back. */
+  const componentParent = new Uint8Array(n);
+  const componentSize = new Uint8Array(n);
+  /** Free valence left in a component, at its root. */
   const componentLeft = new Uint16Array(n);
+  /** For each bond (i < j): 1 + the root that it attached, 0 when both ends hung together already. */
+  const attachedRoot = new Uint8Array(n * n);
+  let componentCount = 0;
+  let totalLeft = 0;
   /** Vertices that change places with their predecessor without changing the matrix. */
   const isTwin = new Uint8Array(n);
   const twinRoot = new Uint8Array(n);
   const image = new Uint8Array((n + 1) * n);
   const orbit = new Uint8Array(n);
+  /** End of the cell that starts at a row's own position, earlier rows considered. */
+  const cellEnd = new Uint8Array(n + 1);
+  /**
+   * deadAt[k * n + v]: last row of the test in which putting vertex v at position k (positions before k fixed) was found
+   * to give something smaller whatever follows; ALIVE while that is open. An entry of this row or a later one is stale.
+   */
+  const deadAt = new Uint8Array(n * n);
+  let tiedDeadAt = new Uint8Array(0);
+  /** Set by a search that met a vertex whose row is not filled yet: its result is not final. */
+  let isOpen = false;
+  let orbitsKnown = false;
   /** Per depth: the search call that last tried a twin root. */
   const seenRoot = new Uint32Array(n * n);
   let seenStamp = 0;
@@ -75,8 +96,20 @@ export function createFiller(layout: FillLayout): {
     left.set(layout.freeValence);
     quota.set(bondQuota);
     isTwin.fill(0);
-    // The first vertex of each unit names its component.
-    for (let v = 0; v < n; v++) component[v] = unitOf.indexOf(unitOf[v]);
+    componentLeft.fill(0);
+    componentSize.fill(0);
+    componentCount = 0;
+    totalLeft = 0;
+    for (let v = 0; v < n; v++) {
+      // The first vertex of each unit is the root of its component.
+      const root = unitOf.indexOf(unitOf[v]);
+      componentParent[v] = root;
+      componentSize[root]++;
+      componentLeft[root] += left[v];
+      totalLeft += left[v];
+      if (root === v) componentCount++;
+    }
+    deadAt.fill(ALIVE);
     for (let j = tied + 1; j < n; j++) same[j] = classOf[j - 1] === classOf[j] ? 1 : 0;
     same[tied] = 0;
   }
@@ -92,7 +125,12 @@ export function createFiller(layout: FillLayout): {
   function orderFits(i: number, j: number, order: number): boolean {
     return (isPrescribed[i] === 0 || quota[4 * i + order] > 0) && (isPrescribed[j] === 0 || quota[4 * j + order] > 0);
   }
-  function addBond(i: number, j: number, order: number): void {
+  function rootOf(v: number): number {
+    while (componentParent[v] !== v) v = componentParent[v];
+    return v;
+  }
+  /** Takes the bond; false when a component is then saturated, or too few bonds are left, before all hangs together. */
+  function addBond(i: number, j: number, order: number): boolean {
     a[i * n + j] = a[j * n + i] = order;
     left[i] -= order;
     left[j] -= order;
@@ -100,7 +138,27 @@ export function createFiller(layout: FillLayout): {
       if (isPrescribed[i] === 1) quota[4 * i + order]--;
       if (isPrescribed[j] === 1) quota[4 * j + order]--;
     }
+    totalLeft -= 2 * order;
+    let root = rootOf(i);
+    let other = rootOf(j);
+    if (root === other) {
+      attachedRoot[i * n + j] = 0;
+      componentLeft[root] -= 2 * order;
+    } else {
+      if (componentSize[root] < componentSize[other]) {
+        const swap = root;
+        root = other;
+        other = swap;
+      }
+      componentParent[other] = root;
+      componentSize[root] += componentSize[other];
+      componentLeft[root] += componentLeft[other] - 2 * order;
+      componentCount--;
+      attachedRoot[i * n + j] = other + 1;
+    }
+    return componentCount === 1 || (componentLeft[root] !== 0 && totalLeft >= 2 * (componentCount - 1));
   }
+  /** Takes back the bond that was added last. */
   function removeBond(i: number, j: number, order: number): void {
     a[i * n + j] = a[j * n + i] = 0;
     left[i] += order;
@@ -109,6 +167,18 @@ export function createFiller(layout: FillLayout): {
       if (isPrescribed[i] === 1) quota[4 * i + order]++;
       if (isPrescribed[j] === 1) quota[4 * j + order]++;
     }
+    totalLeft += 2 * order;
+    const attached = attachedRoot[i * n + j];
+    if (attached === 0) {
+      componentLeft[rootOf(i)] += 2 * order;
+      return;
+    }
+    const other = attached - 1;
+    const root = componentParent[other];
+    componentParent[other] = other;
+    componentSize[root] -= componentSize[other];
+    componentLeft[root] -= componentLeft[other] - 2 * order;
+    componentCount++;
   }
 
   // ---- tied block: all pairs of tied vertices of different units, then the permutations that keep it ----
@@ -123,8 +193,7 @@ export function createFiller(layout: FillLayout): {
     const j = tiedPairs[pair + 1];
     for (let x = largestOrder(i, j); x > 0; x--) {
       if (hasPrescribed && !orderFits(i, j, x)) continue;
-      addBond(i, j, x);
-      fillTied(pair + 2);
+      if (addBond(i, j, x)) fillTied(pair + 2);
       removeBond(i, j, x);
     }
     fillTied(pair + 2);
@@ -145,46 +214,12 @@ export function createFiller(layout: FillLayout): {
     }
     const saved = stabiliser;
     stabiliser = keep;
-    const labels = component.slice(0, n);
-    let alive = true;
-    for (let k = 0; k < tiedPairs.length; k += 2) {
-      if (a[tiedPairs[k] * n + tiedPairs[k + 1]] !== 0) mergeComponents(0, component[tiedPairs[k]], component[tiedPairs[k + 1]]);
-    }
-    if (!componentsAlive(0)) alive = false;
-    if (alive) startRow(0);
-    component.set(labels, 0);
+    tiedDeadAt = new Uint8Array(keep.length).fill(ALIVE);
+    startRow(0);
     stabiliser = saved;
   }
 
   // ---- rows ----
-
-  function mergeComponents(line: number, keep: number, drop: number): void {
-    if (keep === drop) return;
-    const start = line * n;
-    for (let v = 0; v < n; v++) if (component[start + v] === drop) component[start + v] = keep;
-  }
-
-  /** False when a component is saturated before everything hangs together, or too few bonds are left to join them. */
-  function componentsAlive(line: number): boolean {
-    const start = line * n;
-    componentLeft.fill(0);
-    let total = 0;
-    for (let v = 0; v < n; v++) {
-      componentLeft[component[start + v]] += left[v];
-      total += left[v];
-    }
-    let count = 0;
-    let saturated = 0;
-    for (let v = 0; v < n; v++) {
-      const label = component[start + v];
-      if (componentLeft[label] === 0xffff) continue;
-      count++;
-      if (componentLeft[label] === 0) saturated++;
-      componentLeft[label] = 0xffff;
-    }
-    if (count === 1) return true;
-    return saturated === 0 && total >= 2 * (count - 1);
-  }
 
   function startRow(i: number): void {
     if (stopped) return;
@@ -204,6 +239,9 @@ export function createFiller(layout: FillLayout): {
       return;
     }
     const first = i < tied ? tied : i + 1;
+    let end = i + 1;
+    if (i >= tied) while (end < n && same[i * width + end] === 1) end++;
+    cellEnd[i] = end;
     // Columns to the right can take this much of the row's valence; a row that needs more has no completion.
     const line = i * width;
     capacity[line + n] = 0;
@@ -233,8 +271,7 @@ export function createFiller(layout: FillLayout): {
     const least = need - capacity[i * width + j + 1];
     for (let x = most; x > 0 && x >= least; x--) {
       if (hasPrescribed && !orderFits(i, j, x)) continue;
-      addBond(i, j, x);
-      fillEntry(i, j + 1, tight === 1 && x === bound ? 1 : 0);
+      if (addBond(i, j, x)) fillEntry(i, j + 1, tight === 1 && x === bound ? 1 : 0);
       removeBond(i, j, x);
       if (stopped) return;
     }
@@ -248,16 +285,14 @@ export function createFiller(layout: FillLayout): {
     for (let j = first; j < n; j++) {
       same[nextLine + j] = j > first && same[line + j] === 1 && a[i * n + j] === a[i * n + j - 1] ? 1 : 0;
     }
-    const from = i * n;
-    const to = from + n;
-    for (let v = 0; v < n; v++) component[to + v] = component[from + v];
-    for (let j = first; j < n; j++) if (a[i * n + j] !== 0) mergeComponents(i + 1, component[to + i], component[to + j]);
-    if (!componentsAlive(i + 1)) return;
     isTwin[i] = tight;
     // With the last but one row the last is known too.
     const filled = i === n - 2 ? n : i + 1;
-    if (filled === n) isTwin[n - 1] = i >= tied ? same[line + n - 1] : 0;
-    if ((i >= tied || stabiliser.length > 1) && !isLargest(filled)) return;
+    if (filled === n) {
+      isTwin[n - 1] = i >= tied ? same[line + n - 1] : 0;
+      cellEnd[n - 1] = n;
+    }
+    if ((i >= tied || stabiliser.length > 1) && !isLargest(i, filled)) return;
     startRow(i + 1);
   }
 
@@ -313,53 +348,107 @@ export function createFiller(layout: FillLayout): {
     return v;
   }
 
-  /** Is the matrix with rows [0, filled) known the largest of its orbit, as far as the known rows tell? */
-  function isLargest(filled: number): boolean {
-    for (let v = 0; v < n; v++) orbit[v] = v;
-    for (let v = tied; v < filled; v++) twinRoot[v] = isTwin[v] === 1 ? twinRoot[v - 1] : v;
-    const top = filled;
+  /**
+   * Is the matrix with rows [0, filled) known the largest of its orbit, as far as the known rows tell?
+   *
+   * @param row - the row filled last; what earlier tests settled for good is not looked at again.
+   */
+  function isLargest(row: number, filled: number): boolean {
+    orbitsKnown = false;
     // Identity on the tied vertices: from the deepest row upwards, so that automorphisms found below save work above.
-    for (let v = tied; v < n; v++) image[tied * n + v] = v;
-    for (let k = top - 1; k >= tied; k--) {
-      const line = k * width;
+    for (let k = filled - 2; k >= tied; k--) {
+      const end = cellEnd[k] < filled ? cellEnd[k] : filled;
       const here = k * n;
-      let end = k + 1;
-      while (end < n && same[line + end] === 1) end++;
-      if (end > top) end = top;
       for (let v = k + 1; v < end; v++) {
-        if (isTwin[v] === 1 && v - 1 >= k) continue;
+        if (v < row && deadAt[here + v] < row) continue;
+        deadAt[here + v] = ALIVE;
+        if (isTwin[v] === 1) continue;
+        let difference = compareRow(k, v);
+        if (difference > 0) return false;
+        if (difference < 0) {
+          deadAt[here + v] = row;
+          continue;
+        }
+        if (!orbitsKnown) startOrbits(filled);
         if (findOrbit(v) !== v && orbitReachesBelow(v, k)) continue;
         for (let p = k; p < n; p++) image[here + p] = p;
         image[here + k] = v;
         image[here + v] = k;
-        const difference = matchRow(k, v);
-        if (difference > 0) return false;
-        if (difference < 0) continue;
-        const result = search(k + 1, top);
+        difference = matchRow(k, v);
+        isOpen = false;
+        const result = search(k + 1, filled);
         if (result === 1) return false;
         if (result === 2) {
-          image[top * n + k] = v;
-          for (let p = k; p < top; p++) joinOrbits(p, image[top * n + p]);
+          image[filled * n + k] = v;
+          for (let p = k; p < filled; p++) joinOrbits(p, image[filled * n + p]);
+        } else if (!isOpen) {
+          deadAt[here + v] = row;
         }
       }
     }
     for (let w = 1; w < stabiliser.length; w++) {
+      if (tiedDeadAt[w] < row) continue;
+      tiedDeadAt[w] = ALIVE;
       const permutation = stabiliser[w];
       for (let v = tied; v < n; v++) image[v] = v;
       let difference = 0;
-      for (let i = 0; i < tied && i < top && difference === 0; i++) {
+      isOpen = false;
+      for (let i = 0; i < tied && i < filled && difference === 0; i++) {
         // A tied row is known only when it is among the filled ones.
-        if (permutation[i] >= top) {
-          difference = -1;
+        if (permutation[i] >= filled) {
+          isOpen = true;
           break;
         }
         difference = matchRow(i, permutation[i]);
       }
       if (difference > 0) return false;
-      if (difference < 0 || top <= tied) continue;
-      if (search(tied, top) === 1) return false;
+      if (difference === 0 && !isOpen) {
+        if (filled <= tied) continue;
+        if (!orbitsKnown) startOrbits(filled);
+        const result = search(tied, filled);
+        if (result === 1) return false;
+        if (result === 2) continue;
+      }
+      if (!isOpen) tiedDeadAt[w] = row;
     }
     return true;
+  }
+
+  /**
+   * Compares the row of vertex v, put at position k with v and k exchanged, with row k: only how many entries of each
+   * order fall into each cell matters.
+   * @returns 1 larger, −1 smaller, 0 equal
+   */
+  function compareRow(k: number, v: number): number {
+    const line = k * width;
+    const own = k * n;
+    const row = v * n;
+    let p = k + 1;
+    while (p < n) {
+      let end = p + 1;
+      while (end < n && same[line + end] === 1) end++;
+      if (end === p + 1) {
+        const x = a[row + (p === v ? k : p)];
+        const y = a[own + p];
+        if (x !== y) return x > y ? 1 : -1;
+      } else {
+        // Difference of the counts of orders 3, 2 and 1, packed so that the highest order decides.
+        let balance = 0;
+        for (let q = p; q < end; q++) balance += WEIGHT[a[row + (q === v ? k : q)]] - WEIGHT[a[own + q]];
+        if (balance !== 0) return balance > 0 ? 1 : -1;
+      }
+      p = end;
+    }
+    return 0;
+  }
+
+  function startOrbits(filled: number): void {
+    orbitsKnown = true;
+    for (let v = 0; v < n; v++) orbit[v] = v;
+    for (let v = tied; v < filled; v++) {
+      twinRoot[v] = isTwin[v] === 1 ? twinRoot[v - 1] : v;
+      if (isTwin[v] === 1) joinOrbits(v, v - 1);
+    }
   }
 
   function orbitReachesBelow(v: number, k: number): boolean {
@@ -381,7 +470,10 @@ export function createFiller(layout: FillLayout): {
     const stamp = ++seenStamp;
     for (let p = i; p < end; p++) {
       const v = image[here + p];
-      if (v >= top) continue;
+      if (v >= top) {
+        isOpen = true;
+        continue;
+      }
       const root = twinRoot[v];
       if (seenRoot[here + root] === stamp) continue;
       seenRoot[here + root] = stamp;
@@ -417,10 +509,7 @@ export function createFiller(layout: FillLayout): {
     let k = 1;
     for (let p = 0; p < tiedPairs.length; p += 2) {
       const order = prefix[k++];
-      if (order > 0) {
-        addBond(tiedPairs[p], tiedPairs[p + 1], order);
-        mergeComponents(0, component[tiedPairs[p]], component[tiedPairs[p + 1]]);
-      }
+      if (order > 0) addBond(tiedPairs[p], tiedPairs[p + 1], order);
     }
     stabiliser = tiedPermutations.filter((permutation) => {
       for (let p = 0; p < tiedPairs.length; p += 2) {
@@ -428,6 +517,7 @@ export function createFiller(layout: FillLayout): {
       }
       return true;
     });
+    tiedDeadAt = new Uint8Array(stabiliser.length).fill(ALIVE);
     for (let i = 0; i < rows; i++) {
       const first = i < tied ? tied : i + 1;
       let tight = i > tied && same[(i - 1) * width + i] === 1 ? 1 : 0;
@@ -440,10 +530,9 @@ export function createFiller(layout: FillLayout): {
       for (let j = first; j < n; j++) {
         same[(i + 1) * width + j] = j > first && same[i * width + j] === 1 && a[i * n + j] === a[i * n + j - 1] ? 1 : 0;
       }
-      for (let v = 0; v < n; v++) component[(i + 1) * n + v] = component[i * n + v];
-      for (let j = first; j < n; j++) {
-        if (a[i * n + j] !== 0) mergeComponents(i + 1, component[(i + 1) * n + i], component[(i + 1) * n + j]);
-      }
+      let end = i + 1;
+      if (i >= tied) while (end < n && same[i * width + end] === 1) end++;
+      cellEnd[i] = end;
     }
   }
 
