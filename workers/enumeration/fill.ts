@@ -230,10 +230,11 @@ export function createFiller(layout: FillLayout): {
         return;
       }
     }
-    if (i >= n - 1) {
-      if ((n === 0 || left[n - 1] === 0) && events!.onLeaf(a)) stopped = true;
+    if (totalLeft === 0) {
+      finishMatrix(i - 1);
       return;
     }
+    if (i >= n - 1) return;
     if (i === stopRow && stopRow > 0) {
       events!.onPrefix!(currentPrefix(i));
       return;
@@ -253,29 +254,37 @@ export function createFiller(layout: FillLayout): {
   }
 
   function fillEntry(i: number, j: number, tight: number): void {
-    const need = left[i];
-    if (j === n) {
-      if (need === 0) finishRow(i, tight);
-      return;
-    }
-    if (need === 0 && tight === 0) {
-      finishRow(i, 0);
-      return;
-    }
-    let most = need < left[j] ? need : left[j];
-    if (most > 3) most = 3;
     const first = i < tied ? tied : i + 1;
-    if (j > first && same[i * width + j] === 1 && a[i * n + j - 1] < most) most = a[i * n + j - 1];
-    const bound = tight === 1 ? a[(i - 1) * n + j] : 3;
-    if (bound < most) most = bound;
-    const least = need - capacity[i * width + j + 1];
-    for (let x = most; x > 0 && x >= least; x--) {
-      if (hasPrescribed && !orderFits(i, j, x)) continue;
-      if (addBond(i, j, x)) fillEntry(i, j + 1, tight === 1 && x === bound ? 1 : 0);
-      removeBond(i, j, x);
-      if (stopped) return;
+    const own = i * n;
+    const line = i * width;
+    const need = left[i];
+    // Each turn leaves column j empty after every larger entry was tried, so the call depth grows with bonds only.
+    for (;;) {
+      if (need === 0) {
+        while (tight === 1 && j < n) {
+          if (a[own - n + j] !== 0) tight = 0;
+          j++;
+        }
+        finishRow(i, tight);
+        return;
+      }
+      if (j === n) return;
+      let most = need < left[j] ? need : left[j];
+      if (most > 3) most = 3;
+      if (j > first && same[line + j] === 1 && a[own + j - 1] < most) most = a[own + j - 1];
+      const bound = tight === 1 ? a[own - n + j] : 3;
+      if (bound < most) most = bound;
+      const least = need - capacity[line + j + 1];
+      for (let x = most; x > 0 && x >= least; x--) {
+        if (hasPrescribed && !orderFits(i, j, x)) continue;
+        if (addBond(i, j, x)) fillEntry(i, j + 1, tight === 1 && x === bound ? 1 : 0);
+        removeBond(i, j, x);
+        if (stopped) return;
+      }
+      if (least > 0) return;
+      if (bound !== 0) tight = 0;
+      j++;
     }
-    if (least <= 0) fillEntry(i, j + 1, tight === 1 && bound === 0 ? 1 : 0);
   }
 
   function finishRow(i: number, tight: number): void {
@@ -286,14 +295,29 @@ export function createFiller(layout: FillLayout): {
       same[nextLine + j] = j > first && same[line + j] === 1 && a[i * n + j] === a[i * n + j - 1] ? 1 : 0;
     }
     isTwin[i] = tight;
-    // With the last but one row the last is known too.
-    const filled = i === n - 2 ? n : i + 1;
-    if (filled === n) {
-      isTwin[n - 1] = i >= tied ? same[line + n - 1] : 0;
-      cellEnd[n - 1] = n;
+    if (totalLeft === 0) {
+      finishMatrix(i);
+      return;
     }
-    if ((i >= tied || stabiliser.length > 1) && !isLargest(i, filled)) return;
+    if ((i >= tied || stabiliser.length > 1) && !isLargest(i, i + 1, i + 1)) return;
     startRow(i + 1);
+  }
+
+  /** No bond is left to place: the rows after `row` are empty, so the whole matrix is known and one test decides. */
+  function finishMatrix(row: number): void {
+    if (componentCount > 1) return;
+    for (let i = row + 1; i < n; i++) {
+      const line = i * width;
+      let end = i + 1;
+      if (i >= tied) while (end < n && same[line + end] === 1) end++;
+      cellEnd[i] = end;
+      let twin = i > tied && same[line - width + i] === 1 ? 1 : 0;
+      for (let j = i + 1; twin === 1 && j < n; j++) if (a[(i - 1) * n + j] !== 0) twin = 0;
+      isTwin[i] = twin;
+      const first = i < tied ? tied : i + 1;
+      for (let j = first; j < n; j++) same[line + width + j] = j > first ? same[line + j] : 0;
+    }
+    if (isLargest(row, row + 1 < tied ? tied : row + 1, n) && events!.onLeaf(a)) stopped = true;
   }
 
   // ---- canonicity ----
@@ -352,12 +376,14 @@ export function createFiller(layout: FillLayout): {
    * Is the matrix with rows [0, filled) known the largest of its orbit, as far as the known rows tell?
    *
    * @param row - the row filled last; what earlier tests settled for good is not looked at again.
+   * @param filled - rows to compare: the filled ones, or all that hold a bond to the right.
+   * @param known - vertices [0, known) have all their entries known: the filled ones, or all.
    */
-  function isLargest(row: number, filled: number): boolean {
+  function isLargest(row: number, filled: number, known: number): boolean {
     orbitsKnown = false;
     // Identity on the tied vertices: from the deepest row upwards, so that automorphisms found below save work above.
-    for (let k = filled - 2; k >= tied; k--) {
-      const end = cellEnd[k] < filled ? cellEnd[k] : filled;
+    for (let k = filled - 1; k >= tied; k--) {
+      const end = cellEnd[k] < known ? cellEnd[k] : known;
       const here = k * n;
       for (let v = k + 1; v < end; v++) {
         if (v < row && deadAt[here + v] < row) continue;
@@ -369,18 +395,18 @@ export function createFiller(layout: FillLayout): {
           deadAt[here + v] = row;
           continue;
         }
-        if (!orbitsKnown) startOrbits(filled);
+        if (!orbitsKnown) startOrbits(known);
         if (findOrbit(v) !== v && orbitReachesBelow(v, k)) continue;
         for (let p = k; p < n; p++) image[here + p] = p;
         image[here + k] = v;
         image[here + v] = k;
         difference = matchRow(k, v);
         isOpen = false;
-        const result = search(k + 1, filled);
+        const result = search(k + 1, filled, known);
         if (result === 1) return false;
         if (result === 2) {
           image[filled * n + k] = v;
-          for (let p = k; p < filled; p++) joinOrbits(p, image[filled * n + p]);
+          for (let p = k; p < known; p++) joinOrbits(p, image[filled * n + p]);
         } else if (!isOpen) {
           deadAt[here + v] = row;
         }
@@ -395,7 +421,7 @@ export function createFiller(layout: FillLayout): {
       isOpen = false;
       for (let i = 0; i < tied && i < filled && difference === 0; i++) {
         // A tied row is known only when it is among the filled ones.
-        if (permutation[i] >= filled) {
+        if (permutation[i] >= known) {
           isOpen = true;
           break;
         }
@@ -404,8 +430,8 @@ export function createFiller(layout: FillLayout): {
       if (difference > 0) return false;
       if (difference === 0 && !isOpen) {
         if (filled <= tied) continue;
-        if (!orbitsKnown) startOrbits(filled);
-        const result = search(tied, filled);
+        if (!orbitsKnown) startOrbits(known);
+        const result = search(tied, filled, known);
         if (result === 1) return false;
         if (result === 2) continue;
       }
@@ -442,10 +468,10 @@ export function createFiller(layout: FillLayout): {
     return 0;
   }
 
-  function startOrbits(filled: number): void {
+  function startOrbits(known: number): void {
     orbitsKnown = true;
     for (let v = 0; v < n; v++) orbit[v] = v;
-    for (let v = tied; v < filled; v++) {
+    for (let v = tied; v < known; v++) {
       twinRoot[v] = isTwin[v] === 1 ? twinRoot[v - 1] : v;
       if (isTwin[v] === 1) joinOrbits(v, v - 1);
     }
@@ -461,7 +487,7 @@ export function createFiller(layout: FillLayout): {
   }
 
   /** @returns 1 when some completion is larger, 2 when one is equal up to `top`, 0 when all are smaller. */
-  function search(i: number, top: number): number {
+  function search(i: number, top: number, known: number): number {
     if (i >= top) return 2;
     const line = i * width;
     const here = i * n;
@@ -470,7 +496,7 @@ export function createFiller(layout: FillLayout): {
     const stamp = ++seenStamp;
     for (let p = i; p < end; p++) {
       const v = image[here + p];
-      if (v >= top) {
+      if (v >= known) {
         isOpen = true;
         continue;
       }
@@ -482,7 +508,7 @@ export function createFiller(layout: FillLayout): {
       const difference = matchRow(i, v);
       if (difference > 0) return 1;
       if (difference === 0) {
-        const result = search(i + 1, top);
+        const result = search(i + 1, top, known);
         if (result !== 0) {
           image[top * n + i] = v;
           return result;
