@@ -86,6 +86,8 @@ export async function installMariadb(directory: string): Promise<void> {
     '--no-defaults',
     `--datadir=${unfinished}`,
     '--skip-test-db',
+    // The name of a machine need not resolve, least of all in a container: accounts are by address.
+    '--force',
     '--innodb-log-file-size=16M',
     ...userArguments(),
   ]);

@@ -45,7 +45,7 @@ function isInstalled(name) {
  * @param {readonly string[]} packages
  */
 async function installAll(prefix, packages) {
-  const [command = '', ...rest] = [...prefix, 'env', 'DEBIAN_FRONTEND=noninteractive', 'apt-get', '-y', '-q'];
+  const [command = '', ...rest] = [...prefix, 'env', 'DEBIAN_FRONTEND=noninteractive', 'apt-get', '-y', '-qq', '-o', 'Dpkg::Use-Pty=0'];
   await run(command, [...rest, 'update']);
   return (await run(command, [...rest, 'install', '--no-install-recommends', ...packages])) === 0;
 }
