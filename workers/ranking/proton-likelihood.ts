@@ -73,16 +73,34 @@ export class ProtonLikelihood {
     );
   }
 
-  /** Hydrogens of row r that were laid on the signal with evidence index i (with counts), or 1 (without). */
+  /** Hydrogens of a row that were laid on the signal with this evidence index (with counts), or 1 (without). */
   laidOn(row: number, signal: number): number {
     return this.solver.flow[row * this.observed.size + this.order.indexOf(signal)];
   }
 
-  /** True when nothing was laid on the signal with evidence index i. */
-  isOutlier(signal: number): boolean {
+  /** What the signal with this evidence index costs in the best assignment, by term; overlap and outliers are in `shift`. */
+  signalCost(signal: number): { shift: number; pattern: number } {
+    const { solver, observed, rowSupply } = this;
     const column = this.order.indexOf(signal);
-    for (let r = 0; r < this.rowCount; r++) if (this.solver.flow[r * this.observed.size + column] > 0) return false;
-    return true;
+    let shift = solver.columnLeft[column] * solver.columnRest[column];
+    let pattern = 0;
+    let environments = 0;
+    for (let r = 0; r < this.rowCount; r++) {
+      const k = r * observed.size + column;
+      const isUnder = this.rowUnder[r] === signal;
+      if (solver.flow[k] === 0 && !isUnder) continue;
+      const part = observed.isCounted ? solver.flow[k] / rowSupply[r] : 1;
+      shift += isUnder ? solver.rowRest[r] - this.patternCosts[k] : part * this.shiftCost[k];
+      pattern += part * this.patternCosts[k];
+      environments++;
+    }
+    if (observed.isCounted && environments > 1) shift += (environments - 1) * this.overlap;
+    return { shift, pattern };
+  }
+
+  /** Cost of a row that no signal shows. */
+  missingCost(row: number): number {
+    return this.restOf(row);
   }
 
   /** Scores a structure; results are in the term fields. Arguments as in CarbonLikelihood.score, read only. */

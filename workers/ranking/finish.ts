@@ -1,0 +1,91 @@
+import type { JobContract, RankedCandidate, ShardCandidate, SignalMatch } from '../../shared/jobs/contract.js';
+import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
+import { analyseStructure } from '../graph/analysis.js';
+import { findEquivalence } from '../graph/equivalence.js';
+import { canonicalStructure, reorderGraph } from '../graph/openchemlib.js';
+import { unpackGraph } from '../graph/pack.js';
+import { predictSpectra } from '../prediction/predict-spectra.js';
+import { Environments } from './environments.js';
+import { noneOfTheseLogLikelihood } from './none-of-these.js';
+import { readCarbonObservations, readProtonObservations } from './observations.js';
+import { selectRules } from './plausibility/active-rules.js';
+import { createPosterior, type Posterior } from './posterior.js';
+import { fitRemarks, plausibilityRemarks, stereoRemarks } from './remarks.js';
+import { SCORE_MODEL } from './score-model.js';
+import { Scorer } from './scorer.js';
+import { SignalCensus } from './signal-census.js';
+import { listCarbonMatches, listProtonMatches } from './signal-matches.js';
+
+/**
+ * Works out everything that is shown of the kept constitutions: SMILES, predicted spectra, the assignment signal by
+ * signal, remarks, and probabilities over all survivors of the run, kept or not, and "none of these".
+ *
+ * @param input - `kept` in any order; `logSumExp` and `funnel` of all shards together.
+ * @returns candidates by falling score, equal scores by key.
+ */
+export function finishRanking(input: JobContract['finish']['input']): JobContract['finish']['output'] {
+  const { evidence, settings, kept, logSumExp, funnel } = input;
+  const survivorCount = funnel.find(({ stage }) => stage === 'ranked')?.entered ?? kept.length;
+  const posterior = createPosterior({
+    logSumExp,
+    survivorCount,
+    noneOfTheseLogLikelihood: noneOfTheseLogLikelihood(readCarbonObservations(evidence), readProtonObservations(evidence), SCORE_MODEL),
+    noneOfThesePrior: SCORE_MODEL.noneOfThesePrior,
+  });
+  const describe = createDescriber(evidence, settings.mode === 'rank');
+  const ordered = [...kept].sort((a, b) => b.score - a.score || (a.key < b.key ? -1 : a.key > b.key ? 1 : 0));
+  return {
+    candidates: ordered.map((candidate, index) => describe(candidate, index + 1, posterior)),
+    // Without scores there is nothing to weigh the list against.
+    noneOfTheseProbability: settings.mode === 'rank' ? posterior.noneOfTheseProbability : 0,
+  };
+}
+
+/** Without ranking nothing is laid on signals: a list of structures with their spectra and remarks on stereo and plausibility. */
+function createDescriber(evidence: EvidenceDocument, isRanked: boolean): (candidate: ShardCandidate, rank: number, posterior: Posterior) => RankedCandidate {
+  const { soft } = selectRules(evidence);
+  const scorer = new Scorer(evidence, soft);
+  const census = new SignalCensus(evidence);
+  const environments = new Environments();
+  const { temperature } = SCORE_MODEL;
+
+  return (candidate, rank, posterior) => {
+    const packed = unpackGraph(candidate.packed);
+    const { smiles, idcode, order } = canonicalStructure(packed);
+    const graph = reorderGraph(packed, order);
+    const structure = analyseStructure(graph);
+    const spectra = predictSpectra(graph, evidence.options.solvent);
+    const matches: SignalMatch[] = [];
+    if (isRanked) {
+      environments.find(structure);
+      census.check(structure, environments);
+      scorer.score(structure, environments, census.equivalence);
+      if (scorer.carbon !== null) matches.push(...listCarbonMatches(scorer.carbon, evidence, spectra, temperature));
+      if (scorer.proton !== null) matches.push(...listProtonMatches(scorer.proton, evidence, spectra, temperature));
+    }
+    return {
+      rank,
+      key: candidate.key,
+      smiles,
+      idcode,
+      probability: isRanked ? posterior.probabilityOf(candidate.score) : 0,
+      score: candidate.score,
+      terms: candidate.terms,
+      carbonDeviation: meanDeviation(matches, '13C'),
+      protonDeviation: meanDeviation(matches, '1H'),
+      spectra,
+      matches,
+      remarks: [
+        ...plausibilityRemarks(structure, soft),
+        ...fitRemarks(structure, evidence, spectra, matches),
+        ...stereoRemarks(findEquivalence(graph, structure)),
+      ],
+    };
+  };
+}
+
+/** Mean absolute deviation of the matched signals of a nucleus, ppm; null without any. */
+function meanDeviation(matches: readonly SignalMatch[], nucleus: SignalMatch['nucleus']): number | null {
+  const deviations = matches.flatMap((match) => (match.nucleus === nucleus && match.deviation !== null ? [Math.abs(match.deviation)] : []));
+  return deviations.length === 0 ? null : deviations.reduce((sum, value) => sum + value, 0) / deviations.length;
+}
