@@ -1,4 +1,4 @@
-import { CircleAlert } from 'lucide-react';
+import { ChevronDown, CircleAlert } from 'lucide-react';
 import { useId, type ComponentProps, type ReactNode } from 'react';
 import { classNames } from '../lib/class-names';
 
@@ -32,12 +32,12 @@ export function Field({ label, hint, error, isLabelHidden = false, className, ch
         {label}
       </label>
       {children({ id, 'aria-invalid': error === undefined ? undefined : true, 'aria-describedby': describedBy === '' ? undefined : describedBy })}
+      <InlineError id={errorId} message={error} />
       {hint === undefined ? null : (
         <p id={hintId} className="mt-1 text-small text-faded">
           {hint}
         </p>
       )}
-      <InlineError id={errorId} message={error} />
     </div>
   );
 }
@@ -48,7 +48,7 @@ export function InlineError({ id, message }: { id?: string; message: string | un
   return (
     <p id={id} role="alert" className="mt-1 flex items-start gap-1.5 text-small text-madder">
       <CircleAlert aria-hidden="true" className="mt-0.5 size-3.5 shrink-0" />
-      <span>{message}</span>
+      <span className="block first-letter:uppercase">{message}</span>
     </p>
   );
 }
@@ -80,22 +80,25 @@ export function Select<V extends string>({ label, hint, error, isLabelHidden = f
   return (
     <Field label={label} hint={hint} error={error} isLabelHidden={isLabelHidden} className={className}>
       {(control) => (
-        <select
-          className={classNames('control', controlClassName)}
-          {...input}
-          {...control}
-          onChange={(event) => {
-            onChange?.(event);
-            const chosen = options.find((option) => option.value === event.target.value);
-            if (chosen !== undefined) onValueChange?.(chosen.value);
-          }}
-        >
-          {options.map((option) => (
-            <option key={option.value} value={option.value}>
-              {option.label}
-            </option>
-          ))}
-        </select>
+        <span className="relative block">
+          <select
+            className={classNames('control appearance-none pr-8', controlClassName)}
+            {...input}
+            {...control}
+            onChange={(event) => {
+              onChange?.(event);
+              const chosen = options.find((option) => option.value === event.target.value);
+              if (chosen !== undefined) onValueChange?.(chosen.value);
+            }}
+          >
+            {options.map((option) => (
+              <option key={option.value} value={option.value}>
+                {option.label}
+              </option>
+            ))}
+          </select>
+          <ChevronDown aria-hidden="true" className="pointer-events-none absolute top-1/2 right-2.5 size-4 -translate-y-1/2 text-faded" />
+        </span>
       )}
     </Field>
   );

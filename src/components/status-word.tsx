@@ -22,7 +22,7 @@ export function Badge({ tone = 'neutral', children, className }: { tone?: Tone; 
 /** A state: an icon and a word, coloured the same. */
 export function StatusWord({ tone, icon: Icon, children }: { tone: Tone; icon: LucideIcon; children: ReactNode }) {
   return (
-    <span className={classNames('inline-flex items-center gap-1.5 whitespace-nowrap', TEXT[tone])}>
+    <span className={classNames('inline-flex items-center gap-1.5 align-bottom whitespace-nowrap', TEXT[tone])}>
       <Icon aria-hidden="true" className="size-4 shrink-0" />
       {children}
     </span>

@@ -24,7 +24,7 @@ const alignClass = (align: Align) => (align === 'right' ? 'text-right' : 'text-l
 
 export function HeaderCell({ align = 'left', className, children, ...rest }: Omit<ComponentProps<'th'>, 'align'> & { align?: Align }) {
   return (
-    <th scope="col" className={classNames('h-8 px-3 font-semibold whitespace-nowrap', alignClass(align), className)} {...rest}>
+    <th scope="col" className={classNames('h-8 px-3 font-semibold whitespace-nowrap first:pl-4 last:pr-4', alignClass(align), className)} {...rest}>
       {children}
     </th>
   );
@@ -49,5 +49,5 @@ export function Row({ isSelected = false, className, ...rest }: ComponentProps<'
 }
 
 export function Cell({ align = 'left', className, ...rest }: Omit<ComponentProps<'td'>, 'align'> & { align?: Align }) {
-  return <td className={classNames('h-9 px-3 py-1', alignClass(align), className)} {...rest} />;
+  return <td className={classNames('h-9 px-3 py-1 first:pl-4 last:pr-4', alignClass(align), className)} {...rest} />;
 }

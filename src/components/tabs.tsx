@@ -1,5 +1,5 @@
-import { useId, useRef, type KeyboardEvent, type ReactNode } from 'react';
-import { NavLink } from 'react-router-dom';
+import { useEffect, useId, useRef, type KeyboardEvent, type ReactNode } from 'react';
+import { NavLink, useLocation } from 'react-router-dom';
 import { classNames } from '../lib/class-names';
 
 const tabClass = (isCurrent: boolean) =>
@@ -18,8 +18,15 @@ export interface TabLink {
 
 /** Tabs that are addresses: each is a link, back works. */
 export function TabLinks({ label, links }: { label: string; links: readonly TabLink[] }) {
+  const bar = useRef<HTMLElement>(null);
+  const { pathname } = useLocation();
+  useEffect(() => {
+    // On a narrow screen the bar scrolls; the current tab must not stay outside.
+    const current = bar.current?.querySelector<HTMLElement>('[aria-current="page"]');
+    if (bar.current !== null && current !== null && current !== undefined) bar.current.scrollLeft = current.offsetLeft - (bar.current.clientWidth - current.offsetWidth) / 2;
+  }, [pathname]);
   return (
-    <nav aria-label={label} className={barClass}>
+    <nav ref={bar} aria-label={label} className={classNames(barClass, 'relative')}>
       {links.map((link) => (
         <NavLink key={link.to} to={link.to} className={({ isActive }) => tabClass(isActive)}>
           {link.label}

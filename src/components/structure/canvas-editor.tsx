@@ -3,7 +3,7 @@ import { useEffect, useRef } from 'react';
 import { parseStructure, writeStructure } from './parse-structure';
 
 /** The drawing surface; in its own chunk. `smiles` goes in when it differs from what was drawn last. */
-export function CanvasSurface({ smiles, height, onDrawn, onReadable }: { smiles: string; height: number; onDrawn: (smiles: string) => void; onReadable: (isReadable: boolean) => void }) {
+export function CanvasSurface({ smiles, height, onDrawn }: { smiles: string; height: number; onDrawn: (smiles: string) => void }) {
   const host = useRef<HTMLDivElement>(null);
   const editor = useRef<CanvasEditor>(null);
   const lastDrawn = useRef<string | null>(null);
@@ -35,12 +35,12 @@ export function CanvasSurface({ smiles, height, onDrawn, onReadable }: { smiles:
     try {
       editor.current.setMolecule(smiles.trim() === '' ? new Molecule(32, 32) : parseStructure(smiles));
       lastDrawn.current = smiles;
-      onReadable(true);
     } catch {
-      // Half-typed text: the last drawing stays and the field says that the text cannot be read.
-      onReadable(false);
+      // Half-typed text: the last drawing stays, and the text field says what is wrong.
+      lastDrawn.current = null;
     }
-  }, [smiles, onReadable]);
+  }, [smiles]);
 
-  return <div ref={host} className="w-full overflow-hidden rounded-small" style={{ height }} />;
+  // The library draws on white only; in the dark its picture is turned around, hues kept.
+  return <div ref={host} className="w-full overflow-hidden rounded-small dark:hue-rotate-180 dark:invert-[0.88]" style={{ height }} />;
 }

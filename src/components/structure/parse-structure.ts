@@ -9,6 +9,8 @@ import { Molecule } from 'openchemlib';
 export function parseStructure(smiles: string): Molecule {
   // Astatine stands in while reading: it occurs in no formula the product accepts.
   const molecule = Molecule.fromSmiles(smiles.replaceAll(/\[\*\]|\*/g, '[At]'));
+  // The library reads "((" as an empty molecule.
+  if (molecule.getAllAtoms() === 0) throw new Error(`no structure in "${smiles}"`);
   for (let atom = 0; atom < molecule.getAllAtoms(); atom++) {
     if (molecule.getAtomicNo(atom) === ASTATINE) molecule.setAtomicNo(atom, ATTACHMENT);
   }

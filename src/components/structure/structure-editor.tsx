@@ -1,4 +1,5 @@
-import { lazy, Suspense, useCallback, useState } from 'react';
+import { lazy, Suspense } from 'react';
+import { parseSmiles } from '../../../shared/chemistry/smiles';
 import { TextInput } from '../field';
 import { LoadingState } from '../states';
 import { StructureDrawing } from './structure-drawing';
@@ -18,8 +19,9 @@ interface StructureEditorProps {
 
 /** Draw a structure or write its SMILES; both show the same thing. The text field serves those who cannot use the surface. */
 export function StructureEditor({ label, value, onValueChange, kind = 'structure', error, height = 340 }: StructureEditorProps) {
-  const [isReadable, setIsReadable] = useState(true);
-  const onReadable = useCallback((readable: boolean) => setIsReadable(readable), []);
+  const text = value.trim();
+  const parsed = text === '' ? null : parseSmiles(text);
+  const isReadable = parsed?.ok === true;
   const onAtomClick = async (atom: number) => {
     const { toggleAttachment } = await import('./attachment-points');
     onValueChange(toggleAttachment(value, atom));
@@ -28,15 +30,7 @@ export function StructureEditor({ label, value, onValueChange, kind = 'structure
     <div className="space-y-3">
       <div role="group" aria-label={`${label}: drawing surface`} className="rounded-panel border border-selvage bg-cloth p-1">
         <Suspense fallback={<LoadingState label="Loading the drawing surface" className="h-80" />}>
-          <LazySurface
-            smiles={value}
-            height={height}
-            onReadable={onReadable}
-            onDrawn={(smiles) => {
-              setIsReadable(true);
-              onValueChange(smiles);
-            }}
-          />
+          <LazySurface smiles={value} height={height} onDrawn={onValueChange} />
         </Suspense>
       </div>
       <TextInput
@@ -45,11 +39,11 @@ export function StructureEditor({ label, value, onValueChange, kind = 'structure
         spellCheck={false}
         autoComplete="off"
         value={value}
-        error={isReadable ? error : (error ?? 'This is not a SMILES yet: check brackets, ring numbers and element symbols.')}
+        error={error ?? (parsed?.ok === false ? parsed.message : undefined)}
         hint={kind === 'fragment' ? 'Write * for each attachment point: *C(C)C is isopropyl, C=* asks for a double bond.' : undefined}
         onChange={(event) => onValueChange(event.target.value)}
       />
-      {kind === 'fragment' && isReadable && value.trim() !== '' ? (
+      {kind === 'fragment' && isReadable ? (
         <div className="flex flex-wrap items-center gap-4 rounded-panel border border-seam p-3">
           <StructureDrawing
             smiles={value}

@@ -11,6 +11,22 @@ const asWords = (code: string) =>
 
 const valueText = (value: unknown): string => (typeof value === 'string' ? value : JSON.stringify(value));
 
+function Detail({ detail }: { detail: AuditRow['detail'] }) {
+  const entries = Object.entries(detail);
+  if (entries.length === 0) return null;
+  return (
+    <dl className="flex flex-wrap gap-x-4">
+      {entries.map(([key, value]) => (
+        <div key={key} className="flex min-w-0 gap-1">
+          <dt className="text-faded">{asWords(key)}</dt>
+          <dd className="wrap-anywhere">{valueText(value)}</dd>
+        </div>
+      ))}
+    </dl>
+  );
+}
+
+/** On a phone who, subject and detail fold into two columns. */
 export function AuditTable({ rows }: { rows: readonly AuditRow[] }) {
   return (
     <Table
@@ -18,30 +34,30 @@ export function AuditTable({ rows }: { rows: readonly AuditRow[] }) {
       head={
         <>
           <HeaderCell>When</HeaderCell>
-          <HeaderCell>Who</HeaderCell>
+          <HeaderCell className="hidden tablet:table-cell">Who</HeaderCell>
           <HeaderCell>What</HeaderCell>
-          <HeaderCell>On what</HeaderCell>
-          <HeaderCell>Detail</HeaderCell>
+          <HeaderCell className="hidden tablet:table-cell">On what</HeaderCell>
+          <HeaderCell className="hidden tablet:table-cell">Detail</HeaderCell>
         </>
       }
     >
       {rows.map((row) => (
         <Row key={row.id}>
-          <Cell className="align-top whitespace-nowrap text-faded">
+          <Cell className="py-1.5 align-top text-faded">
             <Time iso={row.at} />
+            <span className="block text-ink tablet:hidden">{row.actor}</span>
           </Cell>
-          <Cell className="align-top whitespace-nowrap">{row.actor}</Cell>
-          <Cell className="align-top whitespace-nowrap">{asWords(row.action)}</Cell>
-          <Cell className="align-top font-mono text-small break-all">{row.subject}</Cell>
-          <Cell className="min-w-56 align-top">
-            <dl className="flex flex-wrap gap-x-4">
-              {Object.entries(row.detail).map(([key, value]) => (
-                <div key={key} className="flex min-w-0 gap-1">
-                  <dt className="text-faded">{asWords(key)}</dt>
-                  <dd className="break-all">{valueText(value)}</dd>
-                </div>
-              ))}
-            </dl>
+          <Cell className="hidden align-top whitespace-nowrap tablet:table-cell">{row.actor}</Cell>
+          <Cell className="py-1.5 align-top">
+            {asWords(row.action)}
+            <span className="block tablet:hidden">
+              <span className="font-mono text-small wrap-anywhere">{row.subject}</span>
+              <Detail detail={row.detail} />
+            </span>
+          </Cell>
+          <Cell className="hidden align-top font-mono text-small wrap-anywhere tablet:table-cell">{row.subject}</Cell>
+          <Cell className="hidden align-top tablet:table-cell">
+            <Detail detail={row.detail} />
           </Cell>
         </Row>
       ))}

@@ -49,7 +49,7 @@ export function PeopleTable({ people }: { people: readonly Person[] }) {
                 {person.isAdmin ? <Badge tone="indigo">admin</Badge> : null}
                 {person.isDisabled ? <Badge tone="madder">disabled</Badge> : null}
               </span>
-              <span className="block break-all text-faded">{person.email}</span>
+              <span className="block wrap-anywhere text-faded">{person.email}</span>
             </Cell>
             <Cell>
               {person.teams.length === 0 ? (

@@ -25,7 +25,7 @@ export function Component() {
               {me.user.name} {me.user.isAdmin ? <Badge tone="indigo">admin</Badge> : null}
             </dd>
             <dt className="text-faded">E-mail</dt>
-            <dd className="break-all">{me.user.email}</dd>
+            <dd className="wrap-anywhere">{me.user.email}</dd>
             <dt className="text-faded">Teams</dt>
             <dd>
               {me.memberships.length === 0

@@ -25,7 +25,7 @@ export function InvitationTable({ teamId, invitations }: { teamId: string; invit
     >
       {invitations.map((invitation) => (
         <Row key={invitation.id}>
-          <Cell className="break-all">{invitation.email}</Cell>
+          <Cell className="wrap-anywhere">{invitation.email}</Cell>
           <Cell>{roleLabel(invitation.role)}</Cell>
           <Cell className="hidden text-faded tablet:table-cell">{invitation.invitedBy}</Cell>
           <Cell className="text-faded">

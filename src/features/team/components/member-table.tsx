@@ -33,7 +33,7 @@ export function MemberTable({ teamId, members }: { teamId: string; members: read
           <Row key={member.userId}>
             <Cell>
               <span className="font-semibold">{member.name}</span>
-              <span className="block text-small break-all text-faded tablet:hidden">{member.email}</span>
+              <span className="block text-small wrap-anywhere text-faded tablet:hidden">{member.email}</span>
             </Cell>
             <Cell className="hidden text-faded tablet:table-cell">{member.email}</Cell>
             <Cell>

@@ -40,11 +40,6 @@ export function QuotaDialog({ teamId, person, onClose }: { teamId: string; perso
       onClose={onClose}
       footer={
         <>
-          {person.isOverridden ? (
-            <Button className="mr-auto" disabled={setQuota.isPending} onClick={() => setQuota.mutate({ userId: person.userId, quota: {} }, { onSuccess: onClose })}>
-              Back to the role
-            </Button>
-          ) : null}
           <Button onClick={onClose}>Cancel</Button>
           <Button type="submit" form={formId} variant="primary" isBusy={setQuota.isPending}>
             Set quota
@@ -56,7 +51,14 @@ export function QuotaDialog({ teamId, person, onClose }: { teamId: string; perso
         {FIELDS.map(({ key, label, unit }) => (
           <NumberInput key={key} label={label} {...(unit === undefined ? {} : { unit })} value={figures[key]} error={issues[key] ?? issueFor(setQuota.error, key)} onValueChange={(value) => setFigures({ ...figures, [key]: value })} />
         ))}
-        <p className="text-small text-faded">An empty field follows the role.</p>
+        <p className="flex flex-wrap items-center justify-between gap-2 text-small text-faded">
+          An empty field follows the role.
+          {person.isOverridden ? (
+            <Button size="small" variant="quiet" disabled={setQuota.isPending} onClick={() => setQuota.mutate({ userId: person.userId, quota: {} }, { onSuccess: onClose })}>
+              Back to the role
+            </Button>
+          ) : null}
+        </p>
         {setQuota.isError && !(setQuota.error instanceof ApiError && setQuota.error.issues.length > 0) ? <Notice tone="madder">{errorMessage(setQuota.error)}</Notice> : null}
       </form>
     </Dialog>

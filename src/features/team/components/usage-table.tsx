@@ -20,8 +20,10 @@ export function UsageTable({ teamId, people, canSetQuotas }: { teamId: string; p
         head={
           <>
             <HeaderCell>Name</HeaderCell>
-            <HeaderCell className="min-w-48">CPU time this month</HeaderCell>
-            <HeaderCell align="right">Runs</HeaderCell>
+            <HeaderCell>CPU time this month</HeaderCell>
+            <HeaderCell align="right" className="hidden tablet:table-cell">
+              Runs
+            </HeaderCell>
             <HeaderCell align="right" className="hidden tablet:table-cell">
               Candidates a run
             </HeaderCell>
@@ -44,6 +46,9 @@ export function UsageTable({ teamId, people, canSetQuotas }: { teamId: string; p
                   <Badge tone="indigo">own figures</Badge>
                 </>
               ) : null}
+              <span className="block text-small text-faded tablet:hidden">
+                {formatCount(person.runCount)} run{person.runCount === 1 ? '' : 's'}
+              </span>
             </Cell>
             <Cell className="py-1.5">
               <Meter
@@ -54,7 +59,9 @@ export function UsageTable({ teamId, people, canSetQuotas }: { teamId: string; p
                 text={`${formatSeconds(person.usedCpuSeconds)} of ${formatSeconds(person.quota.cpuSecondsPerMonth)}${person.reservedCpuSeconds > 0 ? `, ${formatSeconds(person.reservedCpuSeconds)} reserved` : ''}`}
               />
             </Cell>
-            <Cell align="right">{formatCount(person.runCount)}</Cell>
+            <Cell align="right" className="hidden tablet:table-cell">
+              {formatCount(person.runCount)}
+            </Cell>
             <Cell align="right" className="hidden tablet:table-cell">
               {formatCount(person.quota.candidatesPerRun)}
             </Cell>

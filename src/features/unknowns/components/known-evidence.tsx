@@ -1,7 +1,9 @@
 import { useQuery } from '@tanstack/react-query';
+import type { ReactNode } from 'react';
 import { Link } from 'react-router-dom';
 import type { EvidenceDocument } from '../../../../shared/schemas/evidence';
 import { paths } from '../../../app/paths';
+import { Formula } from '../../../components/chemistry-text';
 import { StructureDrawing } from '../../../components/structure/structure-drawing';
 import { ErrorState, LoadingState } from '../../../components/states';
 import { revisionQuery, type UnknownDetail } from '../../../lib/unknown-queries';
@@ -27,14 +29,14 @@ function FragmentRow({ title, fragments }: { title: string; fragments: ReadonlyA
 const plural = (count: number, one: string, many: string) => `${count} ${count === 1 ? one : many}`;
 
 /** Other evidence and limits worth a line. */
-function furtherLines(evidence: EvidenceDocument): string[] {
+function furtherLines(evidence: EvidenceDocument): ReactNode[] {
   const { correlations, options } = evidence;
   const correlationCount = correlations.cosy.length + correlations.hsqc.length + correlations.hmbc.length;
-  const lines: string[] = [];
+  const lines: ReactNode[] = [];
   if (evidence.infraredBands.length > 0) lines.push(plural(evidence.infraredBands.length, 'IR band', 'IR bands'));
   if (evidence.massPeaks.length > 0) lines.push(plural(evidence.massPeaks.length, 'mass peak', 'mass peaks'));
   if (correlationCount > 0) lines.push(plural(correlationCount, '2D correlation', '2D correlations'));
-  if (evidence.carbonSignals.length + evidence.protonSignals.length > 0 && options.solvent !== '') lines.push(`in ${options.solvent}`);
+  if (evidence.carbonSignals.length + evidence.protonSignals.length > 0 && options.solvent !== '') lines.push(<>in <Formula formula={options.solvent} /></>);
   if (options.ringSizes.min > 3 || options.ringSizes.max !== null) lines.push(`rings ${options.ringSizes.min}–${options.ringSizes.max ?? 'any'}`);
   if (!options.plausibility) lines.push('plausibility rules off');
   return lines;
@@ -69,7 +71,11 @@ function CurrentRevision({ revisionId }: { revisionId: string }) {
       {evidence.protonSignals.length > 0 ? <SignalStrip nucleus="1H" shifts={evidence.protonSignals.map((signal) => signal.shift)} /> : null}
       <FragmentRow title="Required fragments" fragments={evidence.fragments.required} />
       <FragmentRow title="Excluded fragments" fragments={evidence.fragments.excluded} />
-      {lines.length === 0 ? null : <p className="text-table text-faded">{lines.join(' · ')}</p>}
+      {lines.length === 0 ? null : <ul className="flex flex-wrap gap-x-3 text-table text-faded">
+          {lines.map((line, index) => (
+            <li key={index}>{line}</li>
+          ))}
+        </ul>}
       <p className="text-small text-faded">Revision {number}</p>
     </div>
   );

@@ -39,7 +39,7 @@ export function Component() {
   const isFiltered = filter.search !== '' || filter.status !== 'all';
   return (
     <>
-      <PageHeader title="Unknowns" lead={membership?.teamName} actions={canCreate ? <NewUnknownButton teamId={teamId} /> : undefined} />
+      <PageHeader title="Unknowns" lead={<span className="hidden tablet:inline">{membership?.teamName}</span>} actions={canCreate ? <NewUnknownButton teamId={teamId} /> : undefined} />
       <div className="mb-3 flex flex-wrap gap-3">
         <SearchField label="Search code, title, formula" value={filter.search} onApply={(search) => setFilter({ search }, { replace: true })} />
         <Select label="Status" isLabelHidden className="w-full tablet:w-44" options={STATUS_OPTIONS} value={filter.status} onValueChange={(status) => setFilter({ status })} />
