@@ -3,13 +3,14 @@ import type { AppContext } from '../../app-context.js';
 import { endSession } from '../../commands/end-session.js';
 import { refreshSession } from '../../commands/refresh-session.js';
 import { signIn } from '../../commands/sign-in.js';
+import { signOut } from '../../commands/sign-out.js';
 import { UnauthenticatedError } from '../../errors.js';
 import { Session } from '../../models/session.js';
 import { authorize } from '../../policies/authorize.js';
 import { presentMe } from '../../presenters/me.js';
 import { presentSession } from '../../presenters/session.js';
 import { findMembershipsOf } from '../../queries/memberships.js';
-import { clearSessionCookies, readCookie, REFRESH_COOKIE } from '../../sessions/cookies.js';
+import { ACCESS_COOKIE, clearSessionCookies, readCookie, REFRESH_COOKIE } from '../../sessions/cookies.js';
 import { publicRoute, route, type Route } from '../route.js';
 import { answerWithSession } from './answer-with-session.js';
 
@@ -33,9 +34,9 @@ export function sessionRoutes(context: AppContext): Route[] {
         throw error;
       }
     }),
-    route('signOut', async ({ actor, response }) => {
-      const session = authorize(actor, 'session.end', await Session.findByPk(actor.sessionId));
-      await endSession(context, actor, session, 'signedOut');
+    // Public, so that it also works when the access token has just run out, and twice.
+    publicRoute('signOut', async ({ request, response }) => {
+      await signOut(context, readCookie(request, ACCESS_COOKIE), readCookie(request, REFRESH_COOKIE));
       clearSessionCookies(response, cookieSecure);
     }),
     route('me', async ({ actor }) => presentMe(actor, await findMembershipsOf(actor.userId))),
@@ -48,7 +49,7 @@ export function sessionRoutes(context: AppContext): Route[] {
     }),
     route('endSession', async ({ actor, params }) => {
       const session = authorize(actor, 'session.end', await Session.findByPk(params.sessionId));
-      await endSession(context, actor, session, 'ended');
+      await endSession(context, actor, session);
     }),
   ];
 }

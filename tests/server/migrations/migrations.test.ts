@@ -100,7 +100,7 @@ describe('migrations', () => {
         type: expectedType((attribute.type as { toSql(): string }).toSql()),
         isNullable: attribute.primaryKey !== true && attribute.allowNull !== false,
       }));
-      const byColumn = (a: { column?: string }, b: { column?: string }) => String(a.column).localeCompare(String(b.column));
+      const byColumn = (a: { column: string | undefined }, b: { column: string | undefined }) => String(a.column).localeCompare(String(b.column));
       expect(actual.sort(byColumn), table).toEqual(declared.sort(byColumn));
     }
   });
