@@ -18,6 +18,12 @@ export async function findCandidate(actor: Actor, candidateId: string): Promise<
   });
 }
 
+/** The unknown a candidate was found for. Its run must have been loaded with it. */
+export function unknownOf({ run }: Candidate): string {
+  if (run === undefined) throw new Error('The run was not loaded with the candidate.');
+  return run.unknownId;
+}
+
 /** One page of a run's candidates, sorted by the database. */
 export async function listCandidates(runId: string, query: CandidateListQuery): Promise<{ rows: Candidate[]; total: number }> {
   const { rows, count } = await Candidate.findAndCountAll({

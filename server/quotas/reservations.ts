@@ -27,13 +27,13 @@ const reservationStep = (figures: QuotaFigures): number =>
   Math.min(LARGEST_STEP_SECONDS, Math.max(SMALLEST_STEP_SECONDS, figures.cpuSecondsPerMonth * STEP_SHARE));
 
 /**
- * Checks a run against the quota of its owner. The membership stays locked until the transaction ends, so that two
- * runs started at the same time are counted one after the other.
+ * Checks a run against the quota of its owner.
+ * @param figures - read by `readQuota` in the same transaction: it keeps the membership locked, so that two runs
+ * started at the same time are counted one after the other
  * @returns the CPU seconds to reserve
  * @throws ConflictError `quotaExceeded` with the figures
  */
-export async function checkQuota(transaction: Transaction, demand: RunDemand, now: Date): Promise<number> {
-  const { figures } = await readQuota(transaction, demand.teamId, demand.userId);
+export async function checkQuota(transaction: Transaction, figures: QuotaFigures, demand: RunDemand, now: Date): Promise<number> {
   const { usedCpuSeconds, reservedCpuSeconds } = await readUsage(transaction, demand.teamId, demand.userId, usageMonth(now));
   const runningCount = await Run.count({ where: { teamId: demand.teamId, startedById: demand.userId, status: ['queued', 'running'] }, transaction });
   if (runningCount >= figures.runsAtOnce) {
