@@ -1,6 +1,9 @@
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { perceiveAromaticity, type Aromaticity } from '../graph/aromaticity.js';
 
+/** Scratch of {@link hasAlternatingCycle}: atoms whose double bond can still lie in a cycle. */
+const hasDouble = new Uint8Array(64);
+
 /**
  * Tells whether a cycle of alternating double and single bonds exists that is not made of `inner` bonds alone.
  * Without one, no other Kekulé form of the structure exists (outside the inner bonds), because two forms differ by
@@ -10,14 +13,46 @@ import { perceiveAromaticity, type Aromaticity } from '../graph/aromaticity.js';
  * @param inner - n × n flags of bonds that do not count by themselves, or null.
  */
 export function hasAlternatingCycle(n: number, bondOrders: Uint8Array, inner: Uint8Array | null): boolean {
-  let doubles = 0;
-  for (let i = 0; i < n; i++) for (let j = i + 1; j < n; j++) if (bondOrders[i * n + j] === 2) doubles++;
-  if (doubles < 2) return false;
+  // A double bond lies in such a cycle only when from both its ends a single bond leads to another double bond that
+  // does: peel the others off first, which settles nearly every structure.
+  let doubleAtoms = 0;
+  for (let i = 0; i < n; i++) {
+    hasDouble[i] = 0;
+    for (let j = 0; j < n; j++) {
+      if (bondOrders[i * n + j] === 2) {
+        hasDouble[i] = 1;
+        doubleAtoms++;
+        break;
+      }
+    }
+  }
+  if (doubleAtoms < 4) return false;
+  for (let changed = true; changed;) {
+    changed = false;
+    for (let i = 0; i < n; i++) {
+      if (hasDouble[i] === 0) continue;
+      let goesOn = false;
+      let partnerLeft = false;
+      for (let j = 0; j < n; j++) {
+        if (hasDouble[j] === 0) continue;
+        const order = bondOrders[i * n + j];
+        if (order === 1) goesOn = true;
+        else if (order === 2) partnerLeft = true;
+      }
+      if (goesOn && partnerLeft) continue;
+      hasDouble[i] = 0;
+      changed = true;
+    }
+  }
+  let isEmpty = true;
+  for (let i = 0; i < n && isEmpty; i++) isEmpty = hasDouble[i] === 0;
+  if (isEmpty) return false;
   const visited = new Uint8Array(n);
+  const core = hasDouble.slice(0, n);
   /** Continues over a single bond from `atom`; `target` closes the cycle. */
   const walk = (atom: number, target: number, leftInner: boolean): boolean => {
     for (let next = 0; next < n; next++) {
-      if (bondOrders[atom * n + next] !== 1) continue;
+      if (core[next] === 0 || bondOrders[atom * n + next] !== 1) continue;
       const outside = leftInner || inner === null || inner[atom * n + next] === 0;
       if (next === target && visited[next] === 1) {
         if (outside) return true;
@@ -25,7 +60,7 @@ export function hasAlternatingCycle(n: number, bondOrders: Uint8Array, inner: Ui
       }
       if (visited[next] === 1) continue;
       for (let partner = 0; partner < n; partner++) {
-        if (bondOrders[next * n + partner] !== 2 || visited[partner] === 1) continue;
+        if (core[partner] === 0 || bondOrders[next * n + partner] !== 2 || visited[partner] === 1) continue;
         visited[next] = visited[partner] = 1;
         const found = walk(partner, target, outside || inner === null || inner[next * n + partner] === 0);
         visited[next] = visited[partner] = 0;
@@ -36,7 +71,7 @@ export function hasAlternatingCycle(n: number, bondOrders: Uint8Array, inner: Ui
   };
   for (let i = 0; i < n; i++) {
     for (let j = i + 1; j < n; j++) {
-      if (bondOrders[i * n + j] !== 2) continue;
+      if (core[i] === 0 || core[j] === 0 || bondOrders[i * n + j] !== 2) continue;
       visited[i] = visited[j] = 1;
       const found = walk(j, i, inner === null || inner[i * n + j] === 0);
       visited[i] = visited[j] = 0;

@@ -18,11 +18,10 @@ const INSIDE = 8;
 export function findPlacements(graph: MolecularGraph, unit: UnitKind): Placement[] {
   const n = graph.atomCount;
   const size = unit.graph.atomCount;
-  const order = searchOrder(unit);
+  const order = unit.searchOrder;
   const image = new Array<number>(size).fill(-1);
   const used = new Uint8Array(n);
   const found: Placement[] = [];
-  const seen = new Set<string>();
 
   const fits = (atom: number, vertex: number): boolean => {
     if (used[vertex] === 1) return false;
@@ -57,10 +56,7 @@ export function findPlacements(graph: MolecularGraph, unit: UnitKind): Placement
   const place = (k: number): void => {
     if (k === size) {
       if (!isClosed()) return;
-      const key = [...image].sort((a, b) => a - b).join();
-      if (seen.has(key)) return;
-      seen.add(key);
-      found.push([...image]);
+      if (!found.some((placement) => placement.every((vertex) => used[vertex] === 1))) found.push([...image]);
       return;
     }
     const atom = order[k].atom;
@@ -77,22 +73,6 @@ export function findPlacements(graph: MolecularGraph, unit: UnitKind): Placement
   };
   place(0);
   return found;
-}
-
-/** Unit atoms so that each but the first is bonded to an earlier one. */
-function searchOrder(unit: UnitKind): { atom: number; anchor: number }[] {
-  const size = unit.graph.atomCount;
-  const order = [{ atom: 0, anchor: -1 }];
-  const reached = new Set([0]);
-  for (let head = 0; head < order.length; head++) {
-    const { atom } = order[head];
-    for (let other = 0; other < size; other++) {
-      if (reached.has(other) || unit.labels[atom * size + other] === 0) continue;
-      reached.add(other);
-      order.push({ atom: other, anchor: atom });
-    }
-  }
-  return order;
 }
 
 export interface PlacedKind {

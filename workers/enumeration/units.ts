@@ -25,6 +25,8 @@ export interface UnitKind {
   readonly closedAtoms: readonly number[];
   /** n × n: 0 none, 1–3 the bond order, {@link RESONANT_BOND} where Kekulé forms differ. */
   readonly labels: Uint8Array;
+  /** Atoms so that each but the first is bonded to an earlier one, its anchor (−1 for the first). */
+  readonly searchOrder: readonly { readonly atom: number; readonly anchor: number }[];
   /** Kekulé forms (n × n bond orders) that no automorphism fixing the open atoms carries into one another; at least one. */
   readonly forms: readonly Uint8Array[];
   /** Permutations of `openAtoms` positions by automorphisms of the unit, identity first. */
@@ -57,7 +59,35 @@ export function createUnitKind(smiles: string, count: number, graph: MolecularGr
   const { automorphisms, code } = canonicalForm(n, colours, labels);
   const openSymmetries = closeGroup(automorphisms, openAtoms);
   const forms = formsApart(n, allForms, labels, colours, openAtoms);
-  return { smiles, canonicalKey: code.join(), count, graph, bondQuota, freeValence, openAtoms, closedAtoms, labels, forms, openSymmetries };
+  const searchOrder = orderForSearch(n, labels);
+  return {
+    smiles,
+    searchOrder,
+    canonicalKey: code.join(),
+    count,
+    graph,
+    bondQuota,
+    freeValence,
+    openAtoms,
+    closedAtoms,
+    labels,
+    forms,
+    openSymmetries,
+  };
+}
+
+function orderForSearch(n: number, labels: Uint8Array): { atom: number; anchor: number }[] {
+  const order = [{ atom: 0, anchor: -1 }];
+  const reached = new Set([0]);
+  for (let head = 0; head < order.length; head++) {
+    const { atom } = order[head];
+    for (let other = 0; other < n; other++) {
+      if (reached.has(other) || labels[atom * n + other] === 0) continue;
+      reached.add(other);
+      order.push({ atom: other, anchor: atom });
+    }
+  }
+  return order;
 }
 
 /** Element, hydrogens, charge and attachments of each atom as one number, the same in every unit. */

@@ -86,6 +86,7 @@ function listCycleFamilies(core: readonly number[], neighbours: readonly (readon
   const distance = new Int16Array(n);
   const reachable = new Uint8Array(n);
   const parents: number[][] = Array.from({ length: n }, () => []);
+  const paths: number[][][] = Array.from({ length: n }, () => []);
   for (const root of core) {
     distance.fill(-1);
     reachable.fill(0);
@@ -107,13 +108,25 @@ function listCycleFamilies(core: readonly number[], neighbours: readonly (readon
         }
       }
     }
+    // Shortest paths root–…–y through lower atoms, in order of distance, so that a parent's paths are there already.
+    for (const y of queue) {
+      if (y === root) {
+        paths[y] = [[root]];
+        continue;
+      }
+      if (reachable[y] === 0) continue;
+      const inner = parents[y]!;
+      const own: number[][] = [];
+      for (const parent of inner) for (const path of paths[parent]!) own.push([...path, y]);
+      paths[y] = own;
+      for (let a = 0; a < inner.length; a++) {
+        for (let b = a + 1; b < inner.length; b++) joinPaths(paths[inner[a]!]!, paths[inner[b]!]!, y, cycles);
+      }
+    }
     for (const y of queue) {
       if (y === root || reachable[y] === 0) continue;
-      const inner = parents[y]!;
-      for (let a = 0; a < inner.length; a++)
-        for (let b = a + 1; b < inner.length; b++) joinPaths(root, inner[a]!, inner[b]!, y, parents, cycles);
       for (const z of neighbours[y]!) {
-        if (z < y && reachable[z] === 1 && distance[z] === distance[y]) joinPaths(root, y, z, -1, parents, cycles);
+        if (z < y && reachable[z] === 1 && distance[z] === distance[y]) joinPaths(paths[y]!, paths[z]!, -1, cycles);
       }
     }
   }
@@ -121,15 +134,17 @@ function listCycleFamilies(core: readonly number[], neighbours: readonly (readon
 }
 
 /** Pushes every ring root–…–p (–middle–) q–…–root made of two shortest paths that meet only in the root. */
-function joinPaths(root: number, p: number, q: number, middle: number, parents: readonly (readonly number[])[], cycles: number[][]): void {
-  const pathsOf = (end: number): number[][] => {
-    if (end === root) return [[root]];
-    return parents[end]!.flatMap((parent) => pathsOf(parent).map((path) => [...path, end]));
-  };
-  for (const left of pathsOf(p)) {
-    for (const right of pathsOf(q)) {
-      if (right.some((atom) => atom !== root && left.includes(atom))) continue;
-      if (middle !== -1 && (left.includes(middle) || right.includes(middle))) continue;
+function joinPaths(
+  lefts: readonly (readonly number[])[],
+  rights: readonly (readonly number[])[],
+  middle: number,
+  cycles: number[][],
+): void {
+  for (const left of lefts) {
+    for (const right of rights) {
+      let meets = false;
+      for (let i = 1; i < right.length && !meets; i++) meets = left.includes(right[i]!);
+      if (meets) continue;
       const ring = middle === -1 ? [...left] : [...left, middle];
       for (let i = right.length - 1; i > 0; i--) ring.push(right[i]!);
       if (ring.length >= 3) cycles.push(ring);
