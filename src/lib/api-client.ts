@@ -75,11 +75,17 @@ async function send(endpoint: Endpoint, options: RawOptions): Promise<Response> 
 let refreshing: Promise<boolean> | null = null;
 
 /**
- * Exchanges the refresh cookie once for all calls that wait. Tabs take turns through a lock, because a refresh
+ * Exchanges the refresh cookie once for all calls that wait; false when the session has ended. Tabs take turns through a lock, because a refresh
  * token used twice counts as stolen and ends the session.
  */
 function refreshSession(): Promise<boolean> {
-  const exchange = async () => (await send(endpoints.refreshSession, {})).ok;
+  const exchange = async () => {
+    const response = await send(endpoints.refreshSession, {});
+    if (response.ok) return true;
+    // A server that stumbles does not end the session.
+    if (response.status !== 401 && response.status !== 403) throw await failure(response);
+    return false;
+  };
   refreshing ??= ('locks' in navigator ? navigator.locks.request('isoloom-session-refresh', exchange) : exchange()).finally(() => {
     refreshing = null;
   });
