@@ -1,0 +1,110 @@
+import type { Funnel, RankedCandidate, RunSettings, ShardSpec } from '../../shared/jobs/contract.js';
+import { cancelRun, createCounters, readCounter } from '../../shared/jobs/counters.js';
+import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
+import type { ComputeService } from '../compute/compute-service.js';
+import { ShardMerger } from '../compute/merge-shards.js';
+import { InterruptedError } from './cli-error.js';
+import type { Interrupt } from './interrupt.js';
+
+/** Outcome of a run without a database. */
+export interface LocalRun {
+  /** Constitutions that passed every hard constraint. */
+  readonly survivorCount: number;
+  /** Valence multigraphs before resonance forms are merged and before any filter. */
+  readonly multigraphCount: number;
+  readonly funnel: Funnel;
+  readonly candidates: readonly RankedCandidate[];
+  /** Null when nothing was ranked. */
+  readonly noneOfTheseProbability: number | null;
+  /** False when the time limit or Ctrl-C cut the enumeration short. */
+  readonly isComplete: boolean;
+  readonly seconds: number;
+}
+
+export interface LocalProgress {
+  readonly constitutionsSeen: number;
+  readonly survivors: number;
+  readonly shardsDone: number;
+  readonly shardCount: number;
+  readonly seconds: number;
+}
+
+/** The plan is the same for any number of threads, so that counts and rankings are, too. */
+const TARGET_SHARDS = 192;
+const PROGRESS_MS = 500;
+
+/**
+ * Takes evidence through plan, shards and finish on the compute threads.
+ *
+ * @param onProgress - called about twice a second while shards run
+ * @throws ComputeFailure, WorkerCrash as the jobs do; InterruptedError when stopped before the plan was made
+ */
+export async function runLocally(
+  compute: ComputeService,
+  evidence: EvidenceDocument,
+  settings: RunSettings,
+  interrupt: Interrupt,
+  onProgress?: (progress: LocalProgress) => void,
+): Promise<LocalRun> {
+  const started = performance.now();
+  const seconds = (): number => (performance.now() - started) / 1000;
+  const deadlineEpochMs = settings.maxSeconds === null ? null : Date.now() + settings.maxSeconds * 1000;
+  const { shards } = await abortable(interrupt, (signal) => compute.runJob('plan', { evidence, settings, targetShards: TARGET_SHARDS }, { signal }));
+
+  const counters = createCounters();
+  const merger = new ShardMerger(settings.keep);
+  const stopListening = interrupt.onRequest(() => cancelRun(counters));
+  const ticker =
+    onProgress === undefined
+      ? undefined
+      : setInterval(
+          () =>
+            onProgress({
+              constitutionsSeen: readCounter(counters, 'constitutionsSeen'),
+              survivors: readCounter(counters, 'survivors'),
+              shardsDone: merger.shardCount,
+              shardCount: shards.length,
+              seconds: seconds(),
+            }),
+          PROGRESS_MS,
+        );
+  const isOver = (): boolean => interrupt.isRequested || (deadlineEpochMs !== null && Date.now() >= deadlineEpochMs);
+  const open: Iterator<ShardSpec> = shards[Symbol.iterator]();
+  const work = async (): Promise<void> => {
+    for (let next = open.next(); next.done !== true && !isOver(); next = open.next()) {
+      merger.add(await compute.runJob('shard', { evidence, settings, shard: next.value, counters, deadlineEpochMs }));
+    }
+  };
+  try {
+    await Promise.all(Array.from({ length: compute.threadCount }, work));
+  } finally {
+    clearInterval(ticker);
+    stopListening();
+  }
+
+  const merged = merger.merged();
+  const finished = settings.mode === 'count' ? null : await compute.runJob('finish', { evidence, settings, kept: merged.kept, logSumExp: merged.logSumExp, funnel: merged.funnel });
+  return {
+    survivorCount: merged.survivorCount,
+    multigraphCount: merged.multigraphCount,
+    funnel: merged.funnel,
+    candidates: finished?.candidates ?? [],
+    noneOfTheseProbability: finished?.noneOfTheseProbability ?? null,
+    isComplete: merged.complete && merger.shardCount === shards.length,
+    seconds: seconds(),
+  };
+}
+
+/** Runs a job that knows no flag to stop by: Ctrl-C ends its thread. */
+export async function abortable<T>(interrupt: Interrupt, job: (signal: AbortSignal) => Promise<T>): Promise<T> {
+  const abort = new AbortController();
+  const stopListening = interrupt.onRequest(() => abort.abort());
+  try {
+    return await job(abort.signal);
+  } catch (error) {
+    if (interrupt.isRequested) throw new InterruptedError();
+    throw error;
+  } finally {
+    stopListening();
+  }
+}
