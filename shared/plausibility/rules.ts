@@ -38,6 +38,7 @@ export const PLAUSIBILITY_RULES = [
   hard('alleneInSmallRing', 'Cumulated C=C=C in a ring of fewer than 9 atoms', 'Cumulated double bonds C=C=C do not fit into a ring of fewer than 9 atoms.', `${TABLE}; limit from memory`),
   hard('twistedRingAlkene', 'C=C at a bridgehead, or trans in a ring of fewer than 8 atoms', 'A C=C bond at a bridgehead would be trans in a ring of fewer than 8 atoms (Bredt).', `${TABLE}; J. Bredt, Liebigs Ann. Chem. 1924, 437, 1 (from memory)`),
 
+  soft('heterocumuleneInSmallRing', STRONG, 'Cumulated C=C=N, N=C=N and the like in a ring of fewer than 9 atoms', 'Cumulated double bonds do not fit into a ring of fewer than 9 atoms.'),
   soft('cumulatedDoubleBonds', PLAIN, 'Cumulated double bonds of an unusual kind', 'Cumulated double bonds other than allene, ketene, isocyanate, isothiocyanate, carbodiimide, azide or diazo are rare.'),
   soft('peroxide', STRONG, 'O–O bond', 'Peroxides rarely reach the NMR tube unnoticed.'),
   soft('nitrogenOxygenBond', STRONG, 'N–O bond outside nitro, oxime, N-oxide and isoxazole', 'An N–O single bond outside nitro, oxime, N-oxide and isoxazole groups is unusual.'),

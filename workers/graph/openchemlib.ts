@@ -1,5 +1,7 @@
 import { Canonizer, Molecule } from 'openchemlib';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
+import { atomColour } from './atom-colour.js';
+import { canonicalForm } from './canonical.js';
 
 /** A constitution as people and other programs get it. */
 export interface CanonicalStructure {
@@ -48,21 +50,35 @@ export function moleculeFromGraph(graph: MolecularGraph): Molecule {
  *
  * The library's SMILES follows the Kekulé form it starts from, so it is written from the molecule that the id code
  * describes; for a few strained fused arenes the first id code does so too, so the one returned is that of the SMILES.
+ * Structures that the library takes for aromatic by mistake (arynes, cyclic cumulenes) lose hydrogens on the way and are
+ * written with their double bonds instead, from a canonical numbering of our own.
  *
  * @param graph - read only, not kept.
- * @throws Error when the SMILES does not describe the same molecule; that would be a fault of this module.
+ * @throws Error when no SMILES describes the same molecule; that would be a fault of this module.
  */
 export function canonicalStructure(graph: MolecularGraph): CanonicalStructure {
   const canonizer = new Canonizer(moleculeFromGraph(graph), { neglectAnyStereoInformation: true });
-  const smiles = Molecule.fromIDCode(canonizer.getIDCode(), false).toIsomericSmiles();
+  const found =
+    readBack(graph, canonizer, Molecule.fromIDCode(canonizer.getIDCode(), false).toIsomericSmiles()) ??
+    readBack(graph, canonizer, moleculeFromGraph(reorderGraph(graph, canonicalOrder(graph))).toIsomericSmiles({ kekulizedOutput: true }));
+  if (found === null) throw new Error(`canonicalStructure: no faithful SMILES for ${moleculeFromGraph(graph).toIsomericSmiles()}`);
+  return found;
+}
+
+/** Reads a SMILES of the graph and lays it on the graph; null when it describes something else. */
+function readBack(graph: MolecularGraph, canonizer: Canonizer, smiles: string): CanonicalStructure | null {
   const written = graphFromMolecule(Molecule.fromSmiles(smiles, { noCoordinates: true, noStereo: true }));
   const writtenCanonizer = new Canonizer(moleculeFromGraph(written), { neglectAnyStereoInformation: true });
   const atomOfRank = new Map<number, number>();
   canonizer.getFinalRank().forEach((rank, atom) => atomOfRank.set(rank, atom));
   let order: readonly number[] | null = writtenCanonizer.getFinalRank().map((rank) => atomOfRank.get(rank) ?? -1);
   if (!isSameSkeleton(written, graph, order)) order = findSkeletonMatch(written, graph);
-  if (order === null) throw new Error(`canonicalStructure: ${smiles} reads back as another structure`);
-  return { smiles, idcode: writtenCanonizer.getIDCode(), order };
+  return order === null ? null : { smiles, idcode: writtenCanonizer.getIDCode(), order };
+}
+
+function canonicalOrder(graph: MolecularGraph): readonly number[] {
+  const colours = Uint16Array.from({ length: graph.atomCount }, (_, atom) => atomColour(graph, atom));
+  return Array.from(canonicalForm(graph.atomCount, colours, graph.bondOrders).order);
 }
 
 /** True when `order` lays every atom of `a` on an atom of `b` with the same element, charge, hydrogens and neighbours. */

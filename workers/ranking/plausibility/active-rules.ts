@@ -12,8 +12,8 @@ import {
   findAcylHalidesWithNucleophile, findAldehydesWithAmine, findBetaKetoAcids, findCarbamicAcids, findCarbonicHalfEsters, findIsocyanatesWithNucleophile,
 } from './incompatible-groups.js';
 import {
-  findAllenesInSmallRings, findAlkynesInSmallRings, findFourMemberedRings, findFusedSmallRings, findSmallRingAlkenes, findThreeMemberedRings,
-  findTwistedRingAlkenes,
+  findAllenesInSmallRings, findAlkynesInSmallRings, findFourMemberedRings, findFusedSmallRings, findHeterocumulenesInSmallRings, findSmallRingAlkenes,
+  findThreeMemberedRings, findTwistedRingAlkenes,
 } from './ring-geometry.js';
 import {
   findEnamines, findEnethiols, findEnols, findImidicAcids, findNitrosoWithHydrogens, findThioaldehydes, findThioketones, findUnsubstitutedImines,
@@ -29,6 +29,7 @@ const TESTS: Readonly<Record<PlausibilityRuleId, { readonly test: RuleTest; read
   alkyneInSmallRing: { test: findAlkynesInSmallRings, needs: { C: 2 } },
   alleneInSmallRing: { test: findAllenesInSmallRings, needs: { C: 3 } },
   twistedRingAlkene: { test: findTwistedRingAlkenes, needs: { C: 4 } },
+  heterocumuleneInSmallRing: { test: findHeterocumulenesInSmallRings, needs: {} },
   cumulatedDoubleBonds: { test: findCumulatedDoubleBonds, needs: {} },
   peroxide: { test: findPeroxides, needs: { O: 2 } },
   nitrogenOxygenBond: { test: findNitrogenOxygenBonds, needs: { N: 1, O: 1 } },

@@ -47,7 +47,7 @@ function isAcylNitrogen(s: StructureAnalysis, nitrogen: number): boolean {
   return false;
 }
 
-/** Uncharged nitrogens between two others, outside aromatic rings; triazenes and azides have double bonds and charges. */
+/** Uncharged nitrogens between two others, outside aromatic rings: triazanes and triazenes, but not azides, whose middle is charged. */
 export function findNitrogenChains(s: StructureAnalysis, report: OccurrenceReport): number {
   const { atomCount: n, atomicNumbers, charges } = s.graph;
   let count = 0;
@@ -102,18 +102,17 @@ function isOrdinaryCumulene(s: StructureAnalysis, centre: number, a: number, b: 
   return (low === OXYGEN || low === SULFUR) && (high === OXYGEN || high === SULFUR);
 }
 
-/** Atoms with two double bonds that are no ordinary cumulene, or that sit in a ring of fewer than nine atoms. Sulfones do not count. */
+/** Atoms with two double bonds outside rings that are no ordinary cumulene. Sulfones do not count. */
 export function findCumulatedDoubleBonds(s: StructureAnalysis, report: OccurrenceReport): number {
   const { atomCount: n } = s.graph;
   let count = 0;
   for (let a = 0; a < n; a++) {
-    if (s.hybridisation[a] !== 1 || s.degrees[a] !== 2) continue;
+    if (s.hybridisation[a] !== 1 || s.degrees[a] !== 2 || s.ringBondCounts[a] > 0) continue;
     const b = findNeighbour(s, a, 0, 2);
     if (b === -1) continue;
     const c = findNeighbour(s, a, 0, 2, b);
     if (c === -1) continue;
-    const inSmallRing = s.ringBondCounts[a] > 0 && s.smallestRingOfAtom[a] < 9;
-    if (!inSmallRing && isOrdinaryCumulene(s, a, b, c)) continue;
+    if (isOrdinaryCumulene(s, a, b, c)) continue;
     count++;
     report?.([b, a, c]);
   }

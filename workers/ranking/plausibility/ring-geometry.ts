@@ -10,7 +10,8 @@ export function findAlkynesInSmallRings(s: StructureAnalysis, report: Occurrence
   const n = s.graph.atomCount;
   let count = 0;
   for (let a = 0; a < n; a++) {
-    if (s.ringBondCounts[a] === 0 || s.hybridisation[a] !== 1) continue;
+    // Not by hybridisation: the ring electrons of an aryne count as aromatic.
+    if (s.ringBondCounts[a] === 0 || s.smallestRingOfAtom[a] >= SMALLEST_ALKYNE_RING) continue;
     const b = findNeighbour(s, a, 0, 3);
     if (b < a) continue;
     const size = s.smallestRingOfBond[a * n + b];
@@ -25,12 +26,29 @@ export function findAllenesInSmallRings(s: StructureAnalysis, report: Occurrence
   const n = s.graph.atomCount;
   let count = 0;
   for (let a = 0; a < n; a++) {
-    if (s.ringBondCounts[a] === 0 || s.smallestRingOfAtom[a] >= SMALLEST_ALLENE_RING || s.hybridisation[a] !== 1 || s.graph.atomicNumbers[a] !== CARBON) continue;
+    if (s.ringBondCounts[a] === 0 || s.smallestRingOfAtom[a] >= SMALLEST_ALLENE_RING || s.graph.atomicNumbers[a] !== CARBON) continue;
     const b = findNeighbour(s, a, CARBON, 2);
     if (b === -1) continue;
     const c = findNeighbour(s, a, CARBON, 2, b);
     // The middle carbon has no third bond, so a ring through it holds both double bonds.
     if (c === -1) continue;
+    count++;
+    report?.([b, a, c]);
+  }
+  return count;
+}
+
+/** X=C=Y or X=N⁺=Y in a ring of fewer than nine atoms, C=C=C apart. */
+export function findHeterocumulenesInSmallRings(s: StructureAnalysis, report: OccurrenceReport): number {
+  let count = 0;
+  for (let a = 0; a < s.graph.atomCount; a++) {
+    if (s.ringBondCounts[a] === 0 || s.smallestRingOfAtom[a] >= SMALLEST_ALLENE_RING || s.degrees[a] !== 2) continue;
+    const b = findNeighbour(s, a, 0, 2);
+    if (b === -1) continue;
+    const c = findNeighbour(s, a, 0, 2, b);
+    if (c === -1) continue;
+    const { atomicNumbers } = s.graph;
+    if (atomicNumbers[a] === CARBON && atomicNumbers[b] === CARBON && atomicNumbers[c] === CARBON) continue;
     count++;
     report?.([b, a, c]);
   }
