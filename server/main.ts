@@ -1,43 +1,17 @@
 import { ConfigError, loadConfig } from './config/config.js';
 import { DataFolderInUse } from './database/data-folder-lock.js';
 import { MariadbError } from './database/mariadb-process.js';
-import { createShutdown } from './shutdown.js';
+import { runUntilSignal } from './run-until-signal.js';
 import { type StartedServer, startServer } from './start-server.js';
 
-/** Start and graceful stop of the server. */
-const shutdown = createShutdown((step, error) => console.error(`Could not close the ${step} cleanly:`, error));
-let isStopping = false;
-
-async function stop(exitCode: number): Promise<void> {
-  isStopping = true;
-  await shutdown.run();
-  process.exit(exitCode);
-}
-
-for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) {
-  process.on(signal, () => {
-    // A terminal and npm may both pass on the same Ctrl-C.
-    if (isStopping) return;
-    console.log('Stopping …');
-    void stop(0);
-  });
-}
-
-process.on('uncaughtException', (error) => {
-  console.error('Fault in the server, stopping:', error);
-  if (!isStopping) void stop(1);
+/** The server as `npm start` runs it. */
+runUntilSignal({
+  start: async (shutdown) => {
+    const config = loadConfig(process.env);
+    printWelcome(await startServer({ config, shutdown, announce: (line) => console.log(line) }));
+  },
+  explain,
 });
-
-try {
-  const config = loadConfig(process.env);
-  printWelcome(await startServer({ config, shutdown, announce: (line) => console.log(line) }));
-} catch (error) {
-  // Closing what a start under way needs makes it fail: that is no news.
-  if (!isStopping) {
-    console.error(explain(error));
-    await stop(1);
-  }
-}
 
 function printWelcome({ context, firstAdmin }: StartedServer): void {
   const { config, demoAccounts = [] } = context;

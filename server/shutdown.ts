@@ -2,7 +2,10 @@
 export interface Shutdown {
   /** Registers something that was opened; `close` runs once, at most `STEP_TIMEOUT_MS` long. */
   add(name: string, close: () => Promise<unknown> | void): void;
-  /** Closes everything, newest first. A step that fails or hangs is reported and does not stop the others. */
+  /**
+   * Closes everything, newest first. A step that fails or hangs is reported and does not stop the others. May be called
+   * again for what was added since.
+   */
   run(): Promise<void>;
 }
 
@@ -10,7 +13,7 @@ const STEP_TIMEOUT_MS = 35_000;
 
 export function createShutdown(onError: (step: string, error: unknown) => void, stepTimeoutMs: number = STEP_TIMEOUT_MS): Shutdown {
   const steps: Array<{ name: string; close: () => Promise<unknown> | void }> = [];
-  let running: Promise<void> | null = null;
+  let running: Promise<void> = Promise.resolve();
 
   async function closeAll(): Promise<void> {
     for (let step = steps.pop(); step !== undefined; step = steps.pop()) {
@@ -24,7 +27,7 @@ export function createShutdown(onError: (step: string, error: unknown) => void, 
 
   return {
     add: (name, close) => void steps.push({ name, close }),
-    run: () => (running ??= closeAll()),
+    run: () => (running = running.then(closeAll)),
   };
 }
 

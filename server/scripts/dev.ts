@@ -1,63 +1,51 @@
 import { spawn } from 'node:child_process';
 import { once } from 'node:events';
-import { createServer } from 'vite';
+import { createRequire } from 'node:module';
+import { dirname, join } from 'node:path';
 import { loadConfig } from '../config/config.js';
 import { lockDataFolder } from '../database/data-folder-lock.js';
+import { findFreePort, isPortFree } from '../database/mariadb-process.js';
 import { startPrivateMariadb } from '../database/private-mariadb.js';
-import { createShutdown } from '../shutdown.js';
+import { runUntilSignal } from '../run-until-signal.js';
+import type { Shutdown } from '../shutdown.js';
+
+const USUAL_CLIENT_PORT = 5173;
 
 /**
  * `npm run dev`: the private database, the API (started again when a source of it changes) and Vite's development
- * server for the client, which hands /api on to the API.
+ * server for the client, which hands /api on to the API. Both are processes of their own: each has its own idea of what
+ * to do on a signal, and the database stops after them.
  */
-const shutdown = createShutdown((step, error) => console.error(`Could not stop the ${step} cleanly:`, error));
-let isStopping = false;
+runUntilSignal({
+  start: async (shutdown, stop) => {
+    const config = loadConfig({ NODE_ENV: 'development', ...process.env });
+    const databaseUrl = config.databaseUrl ?? (await openPrivateDatabase(config.dataDirectory, shutdown));
+    const clientPort = (await isPortFree(USUAL_CLIENT_PORT)) ? USUAL_CLIENT_PORT : await findFreePort();
+    const environment = { ...process.env, NODE_ENV: 'development', DATABASE_URL: databaseUrl, PUBLIC_URL: process.env.PUBLIC_URL ?? `http://127.0.0.1:${clientPort}` };
+    const startProcess = (name: string, args: readonly string[]) => {
+      // A group of its own: Ctrl-C reaches this process alone, which then stops everything in order.
+      const child = spawn(process.execPath, args, { detached: true, stdio: ['ignore', 'inherit', 'inherit'], env: environment });
+      const ended = once(child, 'exit');
+      shutdown.add(name, async () => {
+        child.kill('SIGTERM');
+        await ended;
+      });
+      void ended.then(() => stop(1));
+    };
+    startProcess('client', [viteProgram(), '--port', String(clientPort), '--strictPort']);
+    startProcess('API', ['--watch', '--watch-preserve-output', '--import', 'tsx', 'server/main.ts']);
+  },
+  explain: (error) => (error instanceof Error ? error.message : error),
+});
 
-async function stop(exitCode: number): Promise<never> {
-  isStopping = true;
-  await shutdown.run();
-  process.exit(exitCode);
+async function openPrivateDatabase(dataDirectory: string, shutdown: Shutdown): Promise<string> {
+  shutdown.add('data folder', await lockDataFolder(dataDirectory));
+  const database = await startPrivateMariadb(dataDirectory);
+  shutdown.add('database', database.stop);
+  return database.url;
 }
 
-async function start(): Promise<void> {
-  const config = loadConfig({ NODE_ENV: 'development', ...process.env });
-  let databaseUrl = config.databaseUrl;
-  if (databaseUrl === null) {
-    const release = await lockDataFolder(config.dataDirectory);
-    shutdown.add('data folder', release);
-    const database = await startPrivateMariadb(config.dataDirectory);
-    shutdown.add('database', database.stop);
-    databaseUrl = database.url;
-  }
-  const vite = await createServer();
-  await vite.listen();
-  shutdown.add('client', () => vite.close());
-  const address = vite.resolvedUrls?.local[0];
-  // A group of its own: Ctrl-C reaches this process alone, and the database stops after its client.
-  const api = spawn(process.execPath, ['--watch', '--watch-preserve-output', '--import', 'tsx', 'server/main.ts'], {
-    detached: true,
-    stdio: ['ignore', 'inherit', 'inherit'],
-    env: { ...process.env, NODE_ENV: 'development', DATABASE_URL: databaseUrl, PUBLIC_URL: process.env.PUBLIC_URL ?? address },
-  });
-  const apiEnded = once(api, 'exit');
-  shutdown.add('API', async () => {
-    api.kill('SIGTERM');
-    await apiEnded;
-  });
-  void apiEnded.then(() => {
-    if (!isStopping) void stop(1);
-  });
-  console.log(`\nClient with live reload: ${address}\n`);
-}
-
-for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) {
-  process.on(signal, () => {
-    if (!isStopping) void stop(0);
-  });
-}
-try {
-  await start();
-} catch (error) {
-  console.error(error instanceof Error ? error.message : error);
-  await stop(1);
+/** Its own file: a signal to `npx` would not reach it. */
+function viteProgram(): string {
+  return join(dirname(createRequire(import.meta.url).resolve('vite/package.json')), 'bin', 'vite.js');
 }

@@ -16,3 +16,12 @@ it('closes everything once, newest first, and goes on after a step that fails or
   expect(closed).toEqual(['server', 'database']);
   expect(failures).toEqual(['failing', 'hanging']);
 });
+
+it('closes what a start under way added too late', async () => {
+  const closed: string[] = [];
+  const shutdown = createShutdown(() => undefined);
+  await shutdown.run();
+  shutdown.add('database', () => void closed.push('database'));
+  await shutdown.run();
+  expect(closed).toEqual(['database']);
+});
