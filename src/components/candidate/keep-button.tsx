@@ -7,7 +7,8 @@ export function KeepButton({ isKept, isBusy, onKeep, variant = 'secondary', size
     return (
       <span className="inline-flex items-center gap-1.5 text-table whitespace-nowrap text-verdigris">
         <BookmarkCheck aria-hidden="true" className="size-4" />
-        On the shortlist
+        <span className={size === 'small' ? 'sr-only' : undefined}>On the shortlist</span>
+        {size === 'small' ? <span aria-hidden="true">Kept</span> : null}
       </span>
     );
   }

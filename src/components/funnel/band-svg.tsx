@@ -10,15 +10,17 @@ interface BandSvgProps {
   isIncomplete: boolean;
   /** Numbers on the gates, for layouts that explain them in a list. */
   hasGateNumbers?: boolean;
+  /** For lists: gates step back behind the threads. */
+  isSmall?: boolean;
 }
 
 /**
  * The threads themselves. A thread is undyed until its fate is known: madder where it is cut, weld where it is only
  * not kept, verdigris where it arrives. Decoration for the words beside it, hence hidden from screen readers.
  */
-export function BandSvg({ band, geometry, frame, isIncomplete, hasGateNumbers = false }: BandSvgProps) {
+export function BandSvg({ band, geometry, frame, isIncomplete, hasGateNumbers = false, isSmall = false }: BandSvgProps) {
   const id = useId();
-  const threadWidth = Math.max(0.75, frame.pitch * 0.55);
+  const threadWidth = Math.max(0.75, frame.pitch * (isSmall ? 0.65 : 0.55));
   const cutColour = (gate: number) => (band.gates[gate]?.stage === 'ranked' ? 'var(--color-weld)' : 'var(--color-madder)');
   return (
     <svg aria-hidden="true" width={frame.width} height={frame.height} viewBox={`0 0 ${frame.width} ${frame.height}`} className="block overflow-visible" fill="none" strokeWidth={threadWidth}>
@@ -49,10 +51,10 @@ export function BandSvg({ band, geometry, frame, isIncomplete, hasGateNumbers = 
       {geometry.left.map((path) => (
         <path key={path.key} d={path.d} stroke={geometry.reachesEnd ? `url(#${id}-left)` : 'var(--color-faded)'} />
       ))}
-      <path d={`M${frame.left} ${frame.top - 4}V${(geometry.gates[0]?.y2 ?? frame.top) + 0}`} stroke="var(--color-ink)" strokeWidth="2" strokeLinecap="round" />
+      <path d={`M${frame.left} ${frame.top - 4}V${geometry.gates[0]?.y2 ?? frame.top}`} stroke="var(--color-ink)" strokeWidth={isSmall ? 1.5 : 2} strokeLinecap="round" />
       {geometry.gates.map((gate, index) => (
         <g key={gate.x}>
-          <path d={`M${gate.x} ${gate.y1}V${gate.y2}`} stroke={gate.isOpen ? 'var(--color-selvage)' : 'var(--color-ink)'} strokeWidth="1" strokeDasharray={gate.isOpen ? '2 3' : undefined} />
+          <path d={`M${gate.x} ${gate.y1}V${gate.y2}`} stroke={gate.isOpen || isSmall ? 'var(--color-selvage)' : 'var(--color-ink)'} strokeWidth={isSmall ? 0.75 : 1} strokeDasharray={gate.isOpen ? '2 3' : undefined} />
           {hasGateNumbers ? (
             <text x={gate.x} y={gate.y1 - 4} textAnchor="middle" fill="var(--color-faded)" stroke="none" fontSize="12" fontWeight="600">
               {index + 1}

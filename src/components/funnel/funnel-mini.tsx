@@ -3,7 +3,7 @@ import { layOutBand, type BandFrame } from './band-geometry';
 import { BandSvg } from './band-svg';
 import { bandFromFunnel, bandFromProgress, describeBand, type Funnel } from './funnel-stages';
 
-const FRAME: BandFrame = { width: 132, height: 32, left: 2, top: 5, pitch: 0.95, threadsPerDecade: 3 };
+const FRAME: BandFrame = { width: 132, height: 36, left: 2, top: 5, pitch: 1.5, threadsPerDecade: 2 };
 
 interface FunnelMiniProps {
   funnel: Funnel | null;
@@ -18,7 +18,7 @@ export function FunnelMini({ funnel, progress = null, isIncomplete = false }: Fu
   const band = funnel === null ? bandFromProgress(progress) : bandFromFunnel(funnel);
   return (
     <span role="img" aria-label={describeBand(band, formatCount)} className="inline-block align-middle">
-      <BandSvg band={band} geometry={layOutBand(band, FRAME)} frame={FRAME} isIncomplete={isIncomplete} />
+      <BandSvg band={band} geometry={layOutBand(band, FRAME)} frame={FRAME} isIncomplete={isIncomplete} isSmall />
     </span>
   );
 }

@@ -7,13 +7,13 @@ import { FunnelTable } from './funnel-table';
 import type { Band, BandGate } from './funnel-stages';
 import { useElementWidth } from './use-element-width';
 
-const THREADS_PER_DECADE = 4;
+const THREADS_PER_DECADE = 6;
 /** Below this width the stages are explained in a list under the picture. */
 const COLUMNS_FROM_PX = 680;
 const REASONS_SHOWN = 2;
 
-function CutNote({ gate, isCompact = false }: { gate: BandGate; isCompact?: boolean }) {
-  if (gate.left === null) return null;
+function CutNote({ gate, isCompact = false, isLive }: { gate: BandGate; isCompact?: boolean; isLive: boolean }) {
+  if (gate.left === null || (isLive && gate.cut === 0)) return null;
   if (gate.cut === 0) return <p className="text-faded">{isCompact ? 'none cut' : 'None cut'}</p>;
   const isHard = gate.stage !== 'ranked';
   const shown = gate.reasons.slice(0, REASONS_SHOWN);
@@ -81,7 +81,7 @@ export function FunnelPicture({ band, isIncomplete = false, isLive = false }: Fu
             {band.gates.map((gate) => (
               <li key={gate.stage} className="px-2">
                 <span className="sr-only">{gate.name}: </span>
-                <CutNote gate={gate} />
+                <CutNote gate={gate} isLive={isLive} />
               </li>
             ))}
           </ul>
@@ -100,7 +100,7 @@ export function FunnelPicture({ band, isIncomplete = false, isLive = false }: Fu
                 </span>
                 <div>
                   <p>{gate.name}</p>
-                  <CutNote gate={gate} isCompact />
+                  <CutNote gate={gate} isCompact isLive={isLive} />
                 </div>
                 <p className="font-semibold">
                   {leftText(gate.left)} {gate.left === null ? null : <span className="font-normal text-faded">left</span>}
@@ -110,7 +110,7 @@ export function FunnelPicture({ band, isIncomplete = false, isLive = false }: Fu
           </ol>
         </>
       )}
-      {isLive ? <p className="mt-2 text-small text-faded">Threads without colour have been cut; by which stage is counted when their shard is merged.</p> : null}
+      {isLive ? <p className="mt-2 text-small text-faded">Grey threads that leave the band have been cut; at which stage and why is counted when their shard is done.</p> : null}
       {hasReasons ? (
         <details className="mt-3 text-small">
           <summary className="w-fit rounded-small text-indigo">Every count and reason as a table</summary>

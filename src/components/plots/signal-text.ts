@@ -12,6 +12,17 @@ export function carbonTypeText(hydrogens: number): string {
   return ['C', 'CH', 'CH₂', 'CH₃'][hydrogens] ?? `CH${hydrogens}`;
 }
 
+/** Carbons under a signal: "CH₂", "2 × CH", "2 C" when the type is not known; empty when nothing is known. */
+export function carbonCountText(count: number | null, kind: string): string {
+  if (kind === '') return count === null ? '' : `${count}\u2009C`;
+  return count === null || count === 1 ? kind : `${count}\u2009×\u2009${kind}`;
+}
+
+/** Hydrogens under a signal with its shape: "2 H, d"; either part may be unknown. */
+export function protonCountText(count: number | null, multiplicity: string): string {
+  return [count === null ? '' : `${count}\u2009H`, multiplicity].filter((part) => part !== '').join(', ');
+}
+
 /** Atom numbers as people see them, from 1, with runs joined: 1, 3–5. */
 export function atomNumbersText(atoms: readonly number[]): string {
   const sorted = [...new Set(atoms)].sort((a, b) => a - b).map((atom) => atom + 1);

@@ -8,7 +8,7 @@ import { axisTicks, panRange, wholeRange, zoomRange, type ShiftRange } from './s
 import { Sticks } from './sticks';
 
 const MARGIN = { top: 4, right: 10, bottom: 0, left: 10 };
-const AXIS_HEIGHT = 36;
+const AXIS_HEIGHT = 40;
 const NOTHING_ACTIVE: ReadonlySet<string> = new Set();
 const ignore = () => undefined;
 
@@ -83,7 +83,7 @@ export function StickChart({ nucleus, label, observed, predicted, links = [], ac
               tick={{ fill: 'var(--color-faded)', fontSize: 12 }}
               tickLine={{ stroke: 'var(--color-selvage)' }}
               axisLine={{ stroke: 'var(--color-selvage)' }}
-              label={{ value: 'δ / ppm', position: 'insideBottomRight', offset: 0, fill: 'var(--color-faded)', fontSize: 12 }}
+              label={{ value: 'δ / ppm', position: 'insideBottomRight', offset: 5, fill: 'var(--color-faded)', fontSize: 12 }}
             />
             <YAxis hide domain={[0, 1]} />
             <Sticks nucleus={nucleus} observed={observed} predicted={predicted} links={links} range={range} activeKeys={activeKeys} onActive={onActive} onZoomTo={(next) => setZoomed(zoomRange(next, 1, (next.low + next.high) / 2, whole))} />

@@ -13,7 +13,7 @@ export interface StickPlotProps {
   onActive?: (key: string | null) => void;
 }
 
-export const STICK_PLOT_HEIGHT = { both: 264, predictedOnly: 172 } as const;
+export const STICK_PLOT_HEIGHT = { both: 268, predictedOnly: 176 } as const;
 const TOOLBAR_HEIGHT = 28;
 
 const LazyChart = lazy(async () => ({ default: (await import('./stick-chart')).StickChart }));

@@ -35,7 +35,8 @@ export function Sticks({ nucleus, observed, predicted, links, range, activeKeys,
   const scale = useXAxisScale();
   const inverse = useXAxisInverseScale();
   const [drag, setDrag] = useState<{ from: number; to: number } | null>(null);
-  if (area === undefined || scale === undefined) return null;
+  // In its first pass the chart has no axis yet and its scale gives no numbers.
+  if (area === undefined || scale === undefined || !Number.isFinite(Number(scale(range.low)))) return null;
 
   const isVisible = (shift: number) => shift >= range.low && shift <= range.high;
   const place = (list: readonly Stick[]): PlacedStick[] => list.filter((stick) => isVisible(stick.shift)).map((stick) => ({ stick, x: Number(scale(stick.shift)) }));

@@ -1,5 +1,5 @@
 import type { EvidenceDocument } from '../../../../shared/schemas/evidence';
-import { atomNumbersText, carbonTypeText, shiftText } from '../../../components/plots/signal-text';
+import { atomNumbersText, carbonCountText, carbonTypeText, protonCountText, shiftText } from '../../../components/plots/signal-text';
 import type { Nucleus, Stick, StickLink } from '../../../components/plots/stick-plot-layout';
 import type { CandidateDetail } from '../../../lib/queries/candidate-queries';
 
@@ -112,11 +112,10 @@ export function plotSticks(rows: readonly SignalRow[]): { observed: Stick[]; pre
   const links: StickLink[] = [];
   for (const row of rows) {
     const { nucleus } = row;
-    const unit = nucleus === '13C' ? 'C' : 'H';
     if (row.observed !== null) {
       const key = observedKey(nucleus, row.observed.index);
       const nuclei = row.observed.nuclei ?? Math.max(1, row.predicted.reduce((sum, signal) => sum + signal.nuclei, 0));
-      const kind = [row.observed.kind, row.observed.nuclei === null ? '' : `${row.observed.nuclei}\u2009${unit}`].filter((part) => part !== '').join(', ');
+      const kind = nucleus === '13C' ? carbonCountText(row.observed.nuclei, row.observed.kind) : protonCountText(row.observed.nuclei, row.observed.kind);
       observed.set(key, { key, shift: row.observed.shift, nuclei, text: `observed δ ${shiftText(row.observed.shift, nucleus)}${kind === '' ? '' : ` (${kind})`}` });
     }
     for (const signal of row.predicted) {

@@ -1,7 +1,7 @@
 import { CircleAlert, TriangleAlert } from 'lucide-react';
 import { useState, type KeyboardEvent, type ReactNode } from 'react';
 import { Coupling } from '../../../components/chemistry-text';
-import { atomNumbersText, shiftText } from '../../../components/plots/signal-text';
+import { atomNumbersText, carbonCountText, protonCountText, shiftText } from '../../../components/plots/signal-text';
 import type { Nucleus } from '../../../components/plots/stick-plot-layout';
 import { classNames } from '../../../lib/class-names';
 import { formatSigned } from '../../../lib/numbers';
@@ -27,18 +27,19 @@ function Deviation({ row }: { row: SignalRow }) {
   );
 }
 
-/** "d, J = 8.1 Hz" of either side. */
-function Shape({ kind, couplings }: { kind: string; couplings: readonly number[] }) {
-  if (kind === '' && couplings.length === 0) return <span className="text-faded">–</span>;
+/** What is under a signal: "2 × CH", "2 H, d, J = 8.1 Hz". */
+function Count({ nucleus, signal }: { nucleus: Nucleus; signal: Pick<PredictedSignal, 'kind' | 'couplings'> & { readonly nuclei: number | null; readonly isExchangeable?: boolean } }) {
+  const text = nucleus === '13C' ? carbonCountText(signal.nuclei, signal.kind) : protonCountText(signal.nuclei, signal.kind);
   return (
-    <span className="whitespace-nowrap">
-      {kind}
-      {couplings.length === 0 ? null : (
+    <span className="block whitespace-nowrap">
+      {text === '' && signal.couplings.length === 0 ? '–' : text}
+      {signal.couplings.length === 0 ? null : (
         <span className="text-faded">
-          {kind === '' ? '' : ', '}
-          <Coupling values={couplings} />
+          {text === '' ? '' : ', '}
+          <Coupling values={signal.couplings} />
         </span>
       )}
+      {signal.isExchangeable === true ? <span className="text-faded">, exchanges</span> : null}
     </span>
   );
 }
@@ -75,7 +76,6 @@ export function SignalTable({ nucleus, rows, litKeys, onPoint }: SignalTableProp
     event.preventDefault();
     target.focus();
   };
-  const unit = isProton ? 'H' : 'C';
   return (
     <div className="overflow-x-auto">
       <table className="w-full border-collapse text-left text-table" onPointerLeave={() => onPoint(null)}>
@@ -110,21 +110,12 @@ export function SignalTable({ nucleus, rows, litKeys, onPoint }: SignalTableProp
             >
               <td className="h-7 px-2 text-right font-semibold text-indigo">{row.observed === null ? <span className="font-normal text-faded">none</span> : shiftText(row.observed.shift, nucleus)}</td>
               <td className="px-2 whitespace-nowrap">
-                {row.observed === null ? null : (
-                  <>
-                    {row.observed.nuclei === null ? null : `${row.observed.nuclei}\u2009${unit} `}
-                    <Shape kind={row.observed.kind} couplings={row.observed.couplings} />
-                  </>
-                )}
+                {row.observed === null ? null : <Count nucleus={nucleus} signal={row.observed} />}
               </td>
               <td className="px-2 text-right">{row.predicted.length === 0 ? <span className="text-faded">none</span> : <PredictedShift signals={row.predicted} nucleus={nucleus} />}</td>
               <td className="px-2 text-faded">
                 {row.predicted.map((signal) => (
-                  <span key={signal.index} className="block whitespace-nowrap">
-                    {isProton || signal.nuclei > 1 ? `${signal.nuclei}\u2009${unit} ` : null}
-                    <Shape kind={signal.kind} couplings={signal.couplings} />
-                    {signal.isExchangeable ? ', exchanges' : null}
-                  </span>
+                  <Count key={signal.index} nucleus={nucleus} signal={signal} />
                 ))}
               </td>
               <td className="px-2 text-right">

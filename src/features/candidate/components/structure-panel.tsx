@@ -11,8 +11,9 @@ import type { Highlight } from './use-highlight';
 export function StructurePanel({ candidate, highlight, haloTone }: { candidate: CandidateDetail; highlight: Highlight; haloTone: AtomHalo['tone'] }) {
   const [frame, width] = useElementWidth<HTMLDivElement>();
   return (
-    <div className="space-y-4 desk:sticky desk:top-4 desk:max-h-[calc(100dvh-2rem)] desk:overflow-y-auto">
-      <Panel>
+    // On a phone the score comes after the spectra, so the parts become items of the page's grid there.
+    <div className="contents desk:sticky desk:top-4 desk:order-1 desk:block desk:max-h-[calc(100dvh-2rem)] desk:space-y-4 desk:overflow-y-auto">
+      <Panel className="order-1">
         <div ref={frame} className="flex min-h-[260px] items-center justify-center">
           {width === 0 ? null : (
             <StructureDrawing
@@ -34,7 +35,7 @@ export function StructurePanel({ candidate, highlight, haloTone }: { candidate: 
         </div>
       </Panel>
       {candidate.remarks.length === 0 ? null : (
-        <Panel title="Remarks">
+        <Panel title="Remarks" className="order-1">
           <ul className="space-y-1 text-table">
             {candidate.remarks.map((remark) => (
               <li key={`${remark.kind}${remark.text}`} className="rounded-small px-1 hover:bg-fold" onPointerEnter={() => highlight.pointAtAtoms(remark.atoms)} onPointerLeave={() => highlight.pointAtAtoms(null)}>
@@ -44,7 +45,7 @@ export function StructurePanel({ candidate, highlight, haloTone }: { candidate: 
           </ul>
         </Panel>
       )}
-      <Panel title="Score">
+      <Panel title="Score" className="order-3">
         <ScoreList candidate={candidate} />
         <p className="mt-2 text-small text-faded">Natural logarithm of the likelihood of the evidence under this structure; higher is better.</p>
       </Panel>

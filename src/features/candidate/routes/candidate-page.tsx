@@ -22,6 +22,10 @@ import { StructurePanel } from '../components/structure-panel';
 import { useHighlight } from '../components/use-highlight';
 
 const CONFLICT_MISFIT = 3;
+const ORDER_OPTIONS = [
+  { value: 'misfit', label: 'Worst fit first' },
+  { value: 'shift', label: 'By shift, high to low' },
+];
 
 export async function loader({ params }: LoaderFunctionArgs) {
   const candidate = await queryClient.ensureQueryData(candidateQuery(params['candidateId'] ?? ''));
@@ -100,6 +104,7 @@ function CandidateView({ candidate }: { candidate: CandidateDetail }) {
         lead={`Of ${formatCount(run.survivorCount ?? run.keptCount)} under this model; not an identification.`}
         actions={
           <>
+            <Select label="Order of the signals" isLabelHidden options={ORDER_OPTIONS} value={order} onChange={(event) => setSearch(event.target.value === 'shift' ? { order: 'shift' } : {}, { replace: true, preventScrollReset: true })} />
             <NeighbourLink to={candidate.previousId === null ? null : neighbour(candidate.previousId)} label="Previous rank" icon="left" />
             <NeighbourLink to={candidate.nextId === null ? null : neighbour(candidate.nextId)} label="Next rank" icon="right" />
             {isKept || candidate.abilities.editShortlist ? <KeepButton isKept={isKept} isBusy={keep.isPending} onKeep={() => keep.mutate(candidate)} variant="primary" size="regular" /> : null}
@@ -107,22 +112,9 @@ function CandidateView({ candidate }: { candidate: CandidateDetail }) {
         }
       />
       {unknownRow?.purpose === 'regulated' ? <RegulatedNotice className="mb-4" /> : null}
-      <div className="grid items-start gap-4 desk:grid-cols-[minmax(300px,380px)_minmax(0,1fr)]">
+      <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-4 desk:grid-cols-[minmax(300px,380px)_minmax(0,1fr)]">
         <StructurePanel candidate={candidate} highlight={highlight} haloTone={hasConflict ? 'madder' : 'indigo'} />
-        <div className="min-w-0 space-y-4">
-          <div className="flex justify-end">
-            <Select
-              label="Order of the signals"
-              isLabelHidden
-              controlClassName="min-h-7! py-0.5! text-table"
-              options={[
-                { value: 'misfit', label: 'Worst fit first' },
-                { value: 'shift', label: 'By shift, high to low' },
-              ]}
-              value={order}
-              onChange={(event) => setSearch(event.target.value === 'shift' ? { order: 'shift' } : {}, { replace: true, preventScrollReset: true })}
-            />
-          </div>
+        <div className="order-2 min-w-0 space-y-4">
           <SpectrumPanel nucleus="13C" rows={carbonRows} order={order} meanDeviation={candidate.carbonDeviation} highlight={highlight} />
           <SpectrumPanel nucleus="1H" rows={protonRows} order={order} meanDeviation={candidate.protonDeviation} highlight={highlight} />
         </div>

@@ -40,8 +40,8 @@ export function Component() {
     <>
       <title>Predict – Isoloom</title>
       <PageHeader title="Predict" lead="Shifts, multiplicities and couplings of a structure, by the rules that also rank candidates." />
-      <div className="grid items-start gap-4 desk:grid-cols-[minmax(0,420px)_minmax(0,1fr)]">
-        <div className="space-y-4">
+      <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-4 desk:grid-cols-[minmax(0,420px)_minmax(0,1fr)]">
+        <div className="min-w-0 space-y-4">
           <Panel>
             <StructureEditor label="Structure" value={smiles} onValueChange={setSmiles} error={fieldError} />
           </Panel>

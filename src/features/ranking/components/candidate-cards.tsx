@@ -9,12 +9,11 @@ const GAP = 12;
 const NARROWEST_CARD = 216;
 
 /** Distance of an element from the top of the page, kept current while things above it grow and shrink. */
-function usePageOffset(element: { readonly current: HTMLElement | null }): number {
+function usePageOffset(element: HTMLElement | null): number {
   const [offset, setOffset] = useState(0);
   useLayoutEffect(() => {
-    const measure = () => {
-      if (element.current !== null) setOffset(Math.round(element.current.getBoundingClientRect().top + window.scrollY));
-    };
+    if (element === null) return undefined;
+    const measure = () => setOffset(Math.round(element.getBoundingClientRect().top + window.scrollY));
     measure();
     const observer = new ResizeObserver(measure);
     observer.observe(document.body);
@@ -26,8 +25,8 @@ function usePageOffset(element: { readonly current: HTMLElement | null }): numbe
 /** Candidates as cards in a grid that scrolls with the page; only the rows on screen exist. */
 export function CandidateCards({ rows, total, selectedIndex, onShown, onSelect, onOpen, onLeave, onKeep, isKept, keepingId, canKeep }: CandidateListProps) {
   const id = useId();
-  const [frame, width] = useElementWidth<HTMLDivElement>();
-  const offset = usePageOffset(frame);
+  const [frame, width, element] = useElementWidth<HTMLDivElement>();
+  const offset = usePageOffset(element);
   const columns = Math.max(1, Math.floor((width + GAP) / (NARROWEST_CARD + GAP)));
   const virtualizer = useWindowVirtualizer({ count: width === 0 ? 0 : Math.ceil(total / columns), estimateSize: () => CARD_HEIGHT + GAP, overscan: 2, scrollMargin: offset });
   const items = virtualizer.getVirtualItems();

@@ -10,6 +10,8 @@ import { formatSigned } from '../../../lib/numbers';
 import type { CandidateRow, CandidateSort } from '../../../lib/queries/candidate-queries';
 import { DeferredDrawing } from './deferred-drawing';
 
+const SHORT_TERM_NAMES: Readonly<Record<ScoreTermName, string>> = { carbon13: '¹³C', proton1: '¹H', multiplicity: 'Mult.', integral: 'Integral', plausibility: 'Plausib.' };
+
 export const ROW_HEIGHT = 68;
 
 export interface CellState {
@@ -28,6 +30,8 @@ export interface CandidateColumn {
   readonly width: string;
   readonly sort?: CandidateSort;
   readonly align?: 'right';
+  /** Stays in view at the right edge where the screen is wide enough. */
+  readonly isSticky?: boolean;
   readonly cell: (candidate: CandidateRow, state: CellState) => ReactNode;
 }
 
@@ -42,7 +46,7 @@ const deviation = (value: number | null, digits: number) => (value === null ? '�
 export function candidateColumns(terms: readonly ScoreTermName[]): CandidateColumn[] {
   return [
     {
-      key: 'rank', head: 'Rank', width: '64px', sort: 'rank',
+      key: 'rank', head: 'Rank', width: '72px', sort: 'rank',
       cell: (candidate, { isSelected, onLeave }) => (
         <Link to={paths.candidate(candidate.id)} onClick={onLeave} tabIndex={isSelected ? 0 : -1} className="rounded-small text-lead font-semibold text-ink no-underline hover:text-indigo hover:underline">
           <span className="sr-only">Open rank </span>
@@ -50,16 +54,16 @@ export function candidateColumns(terms: readonly ScoreTermName[]): CandidateColu
         </Link>
       ),
     },
-    { key: 'drawing', head: 'Structure', width: '132px', cell: (candidate) => <DeferredDrawing smiles={candidate.smiles} width={112} height={60} alt={`Structure of rank ${candidate.rank}`} /> },
-    { key: 'probability', head: 'Probability', width: '120px', cell: (candidate) => <ProbabilityThread probability={candidate.probability} length={32} /> },
+    { key: 'drawing', head: 'Structure', width: '124px', cell: (candidate) => <DeferredDrawing smiles={candidate.smiles} width={112} height={60} alt={`Structure of rank ${candidate.rank}`} /> },
+    { key: 'probability', head: 'Probability', width: '112px', cell: (candidate) => <ProbabilityThread probability={candidate.probability} length={32} /> },
     { key: 'carbon', head: '¹³C misfit', hint: 'Mean absolute deviation of the matched ¹³C signals, ppm', width: '104px', sort: 'carbonDeviation', align: 'right', cell: (candidate) => deviation(candidate.carbonDeviation, 2) },
     { key: 'proton', head: '¹H misfit', hint: 'Mean absolute deviation of the matched ¹H signals, ppm', width: '100px', sort: 'protonDeviation', align: 'right', cell: (candidate) => deviation(candidate.protonDeviation, 3) },
-    { key: 'score', head: 'Score', hint: 'Sum of the terms: log-likelihood, higher is better', width: '80px', align: 'right', cell: (candidate) => <span className="font-semibold">{formatSigned(candidate.score, 1)}</span> },
+    { key: 'score', head: 'Score', hint: 'Sum of the terms: log-likelihood, higher is better', width: '72px', align: 'right', cell: (candidate) => <span className="font-semibold">{formatSigned(candidate.score, 1)}</span> },
     ...terms.map((term): CandidateColumn => ({
       key: term,
-      head: SCORE_TERM_NAMES[term],
+      head: SHORT_TERM_NAMES[term],
       hint: `${SCORE_TERM_NAMES[term]}: part of the score`,
-      width: '104px',
+      width: '92px',
       align: 'right',
       cell: (candidate) => {
         const value = candidate.terms[term];
@@ -78,7 +82,7 @@ export function candidateColumns(terms: readonly ScoreTermName[]): CandidateColu
         </ul>
       ),
     },
-    { key: 'smiles', head: 'SMILES', width: '190px', sort: 'smiles', cell: (candidate) => <span className="block truncate font-mono text-small text-faded" title={candidate.smiles}>{candidate.smiles}</span> },
-    { key: 'keep', head: <span className="sr-only">Shortlist</span>, width: '150px', align: 'right', cell: (_candidate, { isSelected, isKept, isKeeping, canKeep, onKeep }) => (isKept || canKeep ? <KeepButton isKept={isKept} isBusy={isKeeping} onKeep={onKeep} tabIndex={isSelected ? 0 : -1} /> : null) },
+    { key: 'smiles', head: 'SMILES', width: '160px', sort: 'smiles', cell: (candidate) => <span className="block truncate font-mono text-small text-faded" title={candidate.smiles}>{candidate.smiles}</span> },
+    { key: 'keep', head: <span className="sr-only">Shortlist</span>, width: '104px', align: 'right', isSticky: true, cell: (_candidate, { isSelected, isKept, isKeeping, canKeep, onKeep }) => (isKept || canKeep ? <KeepButton isKept={isKept} isBusy={isKeeping} onKeep={onKeep} tabIndex={isSelected ? 0 : -1} /> : null) },
   ];
 }

@@ -10,6 +10,8 @@ import type { CandidateListProps } from './candidate-list-props';
 
 const HEAD_HEIGHT = 36;
 
+const stickyClass = (isSelected: boolean) => classNames('tablet:sticky tablet:right-0 flex h-full items-center justify-end', isSelected ? 'bg-indigo-wash' : 'bg-cloth group-hover/row:bg-fold');
+
 function ColumnHead({ column, order, onOrder }: { column: CandidateColumn; order: CandidateOrder; onOrder: (order: CandidateOrder) => void }) {
   const { sort } = column;
   const isCurrent = sort !== undefined && order.sort === sort;
@@ -93,7 +95,7 @@ export function CandidateTable({ rows, total, order, selectedIndex, onShown, onS
                 aria-rowindex={item.index + 2}
                 aria-selected={isSelected}
                 onClick={() => onSelect(item.index)}
-                className={classNames('absolute inset-x-0 top-0 grid items-center border-b border-seam', isSelected ? 'bg-indigo-wash' : 'hover:bg-fold')}
+                className={classNames('group/row absolute inset-x-0 top-0 grid items-center border-b border-seam', isSelected ? 'bg-indigo-wash' : 'hover:bg-fold')}
                 style={{ ...template, height: ROW_HEIGHT, transform: `translateY(${item.start}px)` }}
               >
                 {candidate === undefined ? (
@@ -103,7 +105,7 @@ export function CandidateTable({ rows, total, order, selectedIndex, onShown, onS
                   </div>
                 ) : (
                   columns.map((column) => (
-                    <div key={column.key} role="gridcell" className={classNames('min-w-0 px-3', column.align === 'right' && 'text-right')}>
+                    <div key={column.key} role="gridcell" className={classNames('min-w-0 px-3', column.align === 'right' && 'text-right', column.isSticky === true && stickyClass(isSelected))}>
                       {column.cell(candidate, { isSelected, isKept: isKept(candidate), isKeeping: keepingId === candidate.id, canKeep, onKeep: () => onKeep(candidate), onLeave: () => onLeave(candidate) })}
                     </div>
                   ))

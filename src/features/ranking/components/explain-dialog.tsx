@@ -41,7 +41,7 @@ export function ExplainDialog({ runId, asked, onAsk, onClose }: ExplainDialogPro
         </>
       }
     >
-      <div className="grid gap-6 desk:grid-cols-[minmax(0,1fr)_minmax(0,360px)]">
+      <div className="grid grid-cols-[minmax(0,1fr)] gap-6 desk:grid-cols-[minmax(0,1fr)_minmax(0,360px)]">
         <StructureEditor label="Structure" value={smiles} onValueChange={setSmiles} error={isAnswered && error !== null ? (issueFor(error, 'smiles') ?? undefined) : undefined} />
         <div aria-live="polite" className="min-w-0">
           {asked === '' ? (

@@ -3,8 +3,6 @@ import { Link } from 'react-router-dom';
 import { paths } from '../../../app/paths';
 import { ProbabilityThread } from '../../../components/plots/probability-thread';
 import { Notice } from '../../../components/status-word';
-import { Time } from '../../../components/time';
-import { formatSeconds } from '../../../lib/dates';
 import { formatCount } from '../../../lib/numbers';
 import type { CandidateRow } from '../../../lib/queries/candidate-queries';
 import type { Run } from '../../../lib/queries/run-queries';
@@ -40,19 +38,6 @@ export function RunSummary({ run, best }: { run: Run; best: CandidateRow | undef
           </Fact>
         )}
         {misfit === '' ? null : <Fact label="Mean misfit of rank 1">{misfit}</Fact>}
-        <Fact label="Constitutions">
-          {run.constitutionCount === null ? '–' : formatCount(run.constitutionCount)}
-          {run.multigraphCount === null || run.multigraphCount === run.constitutionCount ? null : <span className="block text-small text-faded">{formatCount(run.multigraphCount)} before merging resonance forms</span>}
-        </Fact>
-        <Fact label="Kept">
-          {formatCount(run.keptCount)} of at most {formatCount(run.settings.keep)}
-        </Fact>
-        <Fact label="Computed">
-          {run.finishedAt === null ? '–' : <Time iso={run.finishedAt} />}
-          <span className="block text-small text-faded">
-            {formatSeconds(run.cpuSeconds)} of CPU time{run.settings.maxSeconds === null ? '' : `, limit ${formatSeconds(run.settings.maxSeconds)}`}, {run.startedBy.name}
-          </span>
-        </Fact>
         <Fact label="Evidence">
           <Link className="text-indigo" to={paths.unknownRevisions(run.unknownId)}>
             revision {run.revisionNumber}

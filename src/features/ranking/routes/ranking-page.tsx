@@ -19,6 +19,7 @@ import { Candidates } from '../components/candidates';
 import { ExplainDialog } from '../components/explain-dialog';
 import { ExportMenu } from '../components/export-menu';
 import { ReadingNotes } from '../components/reading-notes';
+import { RunFootnotes } from '../components/run-footnotes';
 import { RunLive } from '../components/run-live';
 import { RunOutcome } from '../components/run-outcome';
 import { RunSummary } from '../components/run-summary';
@@ -100,8 +101,11 @@ function EndedRun({ run }: { run: Run }) {
     <div className="space-y-5">
       <RunOutcome run={run} />
       <Panel>
-        <div className="grid gap-x-8 gap-y-6 desk:grid-cols-[minmax(0,300px)_minmax(0,1fr)]">
-          <RunSummary run={run} best={firstPage?.rows[0]} />
+        <div className="grid grid-cols-[minmax(0,1fr)] gap-x-8 gap-y-6 desk:grid-cols-[minmax(0,264px)_minmax(0,1fr)]">
+          <div className="flex flex-col justify-between gap-6">
+            <RunSummary run={run} best={firstPage?.rows[0]} />
+            <RunFootnotes run={run} />
+          </div>
           <div className="min-w-0">{run.funnel === null ? <p className="text-faded">This run ended before anything was counted.</p> : <FunnelPicture band={bandFromFunnel(run.funnel)} isIncomplete={!run.complete} />}</div>
         </div>
       </Panel>

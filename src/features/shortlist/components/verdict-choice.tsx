@@ -15,7 +15,7 @@ export function VerdictChoice({ verdict, onChoose }: { verdict: Verdict; onChoos
   const name = useId();
   if (onChoose === null) return <VerdictWord verdict={verdict} />;
   return (
-    <fieldset className="inline-flex max-w-full flex-wrap overflow-hidden rounded-panel border border-selvage">
+    <fieldset className="grid w-full grid-cols-2 overflow-hidden rounded-panel border border-selvage tablet:inline-flex tablet:w-auto">
       <legend className="sr-only">Verdict</legend>
       {VERDICTS.map((option) => {
         const { icon: Icon, word } = VERDICT_LOOKS[option];
