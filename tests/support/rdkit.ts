@@ -1,13 +1,12 @@
-import initRDKitModule from '@rdkit/rdkit';
-import type { RDKitModule } from '@rdkit/rdkit';
+import initRDKitModule, { type MainModule } from '@rdkit/rdkit';
 import { elementOf } from '../../shared/chemistry/elements.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 
-let loading: Promise<RDKitModule> | null = null;
+let loading: Promise<MainModule> | null = null;
 
 /** RDKit as an independent reference; loaded once a test file. */
-export function loadRdkit(): Promise<RDKitModule> {
-  loading ??= (initRDKitModule as unknown as () => Promise<RDKitModule>)();
+export function loadRdkit(): Promise<MainModule> {
+  loading ??= initRDKitModule();
   return loading;
 }
 
@@ -43,7 +42,7 @@ export function molfileOf(graph: MolecularGraph): string {
 }
 
 /** RDKit's canonical SMILES of a graph, aromatic rings perceived. */
-export function rdkitSmiles(rdkit: RDKitModule, graph: MolecularGraph): string {
+export function rdkitSmiles(rdkit: MainModule, graph: MolecularGraph): string {
   const molecule = rdkit.get_mol(molfileOf(graph));
   if (molecule === null) throw new Error('RDKit cannot read the molecule');
   const smiles = molecule.get_smiles();
