@@ -1,13 +1,12 @@
 import { MAX_ATOMS, type StructureAnalysis } from '../graph/analysis.js';
-import type { Equivalence } from '../graph/equivalence.js';
 import type { PredictedShifts } from '../prediction/predicted-shifts.js';
 import { TransportSolver } from './assignment.js';
 import type { Environments } from './environments.js';
 import { UNKNOWN_HYDROGENS, type CarbonObservations } from './observations.js';
 import type { ScoreModel } from './score-model.js';
+import type { SignalBounds } from './signal-bounds.js';
 import { StudentT } from './student-t.js';
 
-const CARBON = 6;
 const TYPE_COUNT = 4;
 /** What became of an environment in the best assignment. */
 export const OWN_SIGNAL = 0;
@@ -42,8 +41,7 @@ export class CarbonLikelihood {
   private readonly rowScale = new Float64Array(MAX_ATOMS);
   private readonly rowIsTwin = new Uint8Array(MAX_ATOMS);
   private readonly nearest = new Int32Array(MAX_ATOMS);
-  private readonly seenClass = new Uint8Array(MAX_ATOMS);
-  private readonly seenOrbit = new Uint8Array(MAX_ATOMS);
+  private readonly classesOfType = new Int32Array(TYPE_COUNT);
   private readonly covered: Int32Array;
   /** Signals by shift: all of them, and those of each type. */
   private readonly all: Int32Array;
@@ -63,14 +61,11 @@ export class CarbonLikelihood {
   }
 
   /**
-   * @param s - structure. @param environments - of it. @param exact - its exact equivalence where that was needed, else null.
-   * @param shifts - predicted for it. All read only.
+   * @param s - structure. @param environments, bounds - of it. @param shifts - predicted for it. All read only.
    * @returns ln likelihood, untempered.
    */
-  score(s: StructureAnalysis, environments: Environments, exact: Equivalence | null, shifts: PredictedShifts): number {
-    this.rowCount = 0;
-    if (exact === null) this.addRows(s, environments, shifts);
-    else this.addExactRows(s, exact, shifts);
+  score(s: StructureAnalysis, environments: Environments, bounds: SignalBounds, shifts: PredictedShifts): number {
+    this.addRows(s, environments, bounds, shifts);
     this.signalCost.fill(0);
     this.covered.fill(0);
     let cost = 0;
@@ -86,26 +81,29 @@ export class CarbonLikelihood {
     return -(cost + this.countMismatches());
   }
 
-  private addRows(s: StructureAnalysis, environments: Environments, shifts: PredictedShifts): void {
+  /** A row for each class; two for a class that can show twice, where the list has more signals of the type than classes. */
+  private addRows(s: StructureAnalysis, environments: Environments, bounds: SignalBounds, shifts: PredictedShifts): void {
+    const { classesOfType, observed, byType } = this;
+    this.rowCount = 0;
+    classesOfType.fill(0);
+    let classes = 0;
     for (let c = 0; c < environments.classCount; c++) {
+      if (bounds.carbonSignals[c] === 0) continue;
+      classesOfType[Math.min(s.graph.hydrogens[environments.first[c]], TYPE_COUNT - 1)]++;
+      classes++;
+    }
+    for (let c = 0; c < environments.classCount; c++) {
+      if (bounds.carbonSignals[c] === 0) continue;
       const atom = environments.first[c];
-      if (s.graph.atomicNumbers[atom] === CARBON) this.addRow(s, atom, environments.size[c], 0, shifts);
-    }
-  }
-
-  private addExactRows(s: StructureAnalysis, exact: Equivalence, shifts: PredictedShifts): void {
-    const { shiftClasses, orbits } = exact;
-    this.seenClass.fill(0);
-    this.seenOrbit.fill(0);
-    for (let a = 0; a < s.graph.atomCount; a++) {
-      if (s.graph.atomicNumbers[a] === CARBON) this.seenClass[shiftClasses[a]]++;
-    }
-    for (let a = 0; a < s.graph.atomCount; a++) {
-      const size = this.seenClass[shiftClasses[a]];
-      if (s.graph.atomicNumbers[a] !== CARBON || size === 0) continue;
-      this.seenClass[shiftClasses[a]] = 0;
-      this.addRow(s, a, size, this.seenOrbit[orbits[a]], shifts);
-      this.seenOrbit[orbits[a]] = 1;
+      const type = Math.min(s.graph.hydrogens[atom], TYPE_COUNT - 1);
+      const showsTwice = bounds.carbonSignals[c] === 2 && (observed.isTyped ? byType[type].length > classesOfType[type] : observed.size > classes);
+      const size = environments.size[c];
+      if (!showsTwice) {
+        this.addRow(s, atom, size, 0, shifts);
+        continue;
+      }
+      this.addRow(s, atom, size >> 1, 0, shifts);
+      this.addRow(s, atom, size - (size >> 1), 1, shifts);
     }
   }
 

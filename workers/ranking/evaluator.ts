@@ -8,6 +8,7 @@ import { selectRules } from './plausibility/active-rules.js';
 import { describeReason } from './reasons.js';
 import { checkRingSizes } from './ring-sizes.js';
 import { Scorer } from './scorer.js';
+import { SignalBounds } from './signal-bounds.js';
 import { SignalCensus } from './signal-census.js';
 
 export { describeReason } from './reasons.js';
@@ -32,6 +33,7 @@ export interface Evaluator {
 export function createEvaluator(evidence: EvidenceDocument, settings: RunSettings): Evaluator {
   const scratch = new AnalysisScratch();
   const environments = new Environments();
+  const bounds = new SignalBounds();
   const excluded = compileExcludedFragments(evidence);
   const { hard, soft } = selectRules(evidence);
   const census = new SignalCensus(evidence);
@@ -61,11 +63,12 @@ export function createEvaluator(evidence: EvidenceDocument, settings: RunSetting
       for (let k = 0; k < hard.length; k++) if (hard[k].test(structure, null) > 0) return reject('plausibility', hard[k].reason);
       if (hasSignals) {
         environments.find(structure);
-        const reason = census.check(structure, environments);
+        bounds.find(structure, environments);
+        const reason = census.check(structure, environments, bounds);
         if (reason !== null) return reject('signals', reason);
       }
       if (scorer === null) return unscored;
-      scored.score = scorer.score(structure, environments, hasSignals ? census.equivalence : null);
+      scored.score = scorer.score(structure, environments, bounds);
       scored.terms = scorer.terms;
       return scored;
     },
@@ -87,6 +90,8 @@ export function explainEvaluation(evidence: EvidenceDocument, settings: RunSetti
   const structure = analyseStructure(graph);
   const environments = new Environments(Math.max(graph.atomCount, 1));
   environments.find(structure);
+  const bounds = new SignalBounds();
+  bounds.find(structure, environments);
   const reasons: { stage: FunnelStage; reason: string; text: string; atoms: readonly number[] }[] = [];
   const add = (stage: FunnelStage, reason: string, atoms: readonly number[]): void => {
     reasons.push({ stage, reason, text: describeReason(reason), atoms });
@@ -106,7 +111,7 @@ export function explainEvaluation(evidence: EvidenceDocument, settings: RunSetti
     test(structure, (found) => found.forEach((atom) => atoms.add(atom)));
     if (atoms.size > 0) add('plausibility', reason, [...atoms]);
   }
-  for (const { reason, atoms } of new SignalCensus(evidence).checkAll(structure, environments)) add('signals', reason, atoms);
+  for (const { reason, atoms } of new SignalCensus(evidence).checkAll(structure, environments, bounds)) add('signals', reason, atoms);
   if (reasons.length > 0) {
     return { kind: 'rejected', stage: reasons[0].stage, reasons: reasons.map(({ reason, text, atoms }) => ({ reason, text, atoms })) };
   }

@@ -13,7 +13,7 @@ import { createPosterior, type Posterior } from './posterior.js';
 import { fitRemarks, plausibilityRemarks, stereoRemarks } from './remarks.js';
 import { SCORE_MODEL } from './score-model.js';
 import { Scorer } from './scorer.js';
-import { SignalCensus } from './signal-census.js';
+import { SignalBounds } from './signal-bounds.js';
 import { listCarbonMatches, listProtonMatches } from './signal-matches.js';
 
 /**
@@ -45,8 +45,8 @@ export function finishRanking(input: JobContract['finish']['input']): JobContrac
 function createDescriber(evidence: EvidenceDocument, isRanked: boolean): (candidate: ShardCandidate, rank: number, posterior: Posterior) => RankedCandidate {
   const { soft } = selectRules(evidence);
   const scorer = new Scorer(evidence, soft);
-  const census = new SignalCensus(evidence);
   const environments = new Environments();
+  const bounds = new SignalBounds();
   const { temperature } = SCORE_MODEL;
 
   return (candidate, rank, posterior) => {
@@ -58,8 +58,8 @@ function createDescriber(evidence: EvidenceDocument, isRanked: boolean): (candid
     const matches: SignalMatch[] = [];
     if (isRanked) {
       environments.find(structure);
-      census.check(structure, environments);
-      scorer.score(structure, environments, census.equivalence);
+      bounds.find(structure, environments);
+      scorer.score(structure, environments, bounds);
       if (scorer.carbon !== null) matches.push(...listCarbonMatches(scorer.carbon, evidence, spectra, temperature));
       if (scorer.proton !== null) matches.push(...listProtonMatches(scorer.proton, evidence, spectra, temperature));
     }

@@ -1,12 +1,12 @@
 import type { ProtonSignal } from '../../shared/schemas/evidence.js';
 import { MAX_ATOMS, type StructureAnalysis } from '../graph/analysis.js';
-import type { Equivalence } from '../graph/equivalence.js';
 import type { PredictedShifts } from '../prediction/predicted-shifts.js';
 import { TransportSolver } from './assignment.js';
 import { createPredictedPattern, patternCost, predictPattern, readPattern, type ObservedPattern, type PredictedPattern } from './coupling-patterns.js';
 import type { Environments } from './environments.js';
 import type { ProtonObservations } from './observations.js';
 import type { ScoreModel } from './score-model.js';
+import type { SignalBounds } from './signal-bounds.js';
 import { StudentT } from './student-t.js';
 
 /**
@@ -41,9 +41,8 @@ export class ProtonLikelihood {
   private readonly hasPatterns: boolean;
   private readonly rowShift = new Float64Array(MAX_ATOMS);
   private readonly rowScale = new Float64Array(MAX_ATOMS);
-  /** Hydrogens on each atom of the row, and atoms in it. */
-  private readonly rowHydrogens = new Int32Array(MAX_ATOMS);
-  private readonly rowSize = new Int32Array(MAX_ATOMS);
+  /** 1 where the hydrogens of the row can show as two signals. */
+  private readonly rowShowsTwice = new Uint8Array(MAX_ATOMS);
   private readonly rowPatterns: readonly PredictedPattern[];
   private readonly nearest = new Int32Array(MAX_ATOMS);
   /** Shift and multiplicity cost of laying a row on a signal, whole row, row-major over columns. */
@@ -51,7 +50,6 @@ export class ProtonLikelihood {
   private readonly patternCosts: Float64Array;
   /** Signals by shift. */
   private readonly order: Int32Array;
-  private readonly classSize = new Uint8Array(MAX_ATOMS);
 
   constructor(
     private readonly observed: ProtonObservations,
@@ -104,58 +102,44 @@ export class ProtonLikelihood {
   }
 
   /** Scores a structure; results are in the term fields. Arguments as in CarbonLikelihood.score, read only. */
-  score(s: StructureAnalysis, environments: Environments, exact: Equivalence | null, shifts: PredictedShifts): void {
+  score(s: StructureAnalysis, environments: Environments, bounds: SignalBounds, shifts: PredictedShifts): void {
     this.rowCount = 0;
-    if (exact === null) {
-      for (let c = 0; c < environments.classCount; c++) this.addRow(s, environments.first[c], environments.size[c], environments.classOf, shifts);
-    } else this.addExactRows(s, exact, shifts);
+    for (let c = 0; c < environments.classCount; c++) {
+      if (bounds.protonSignals[c] > 0) this.addRow(s, environments, c, bounds.protonSignals[c] > 1 ? 1 : 0, shifts);
+    }
     this.shiftTerm = this.multiplicityTerm = this.integralTerm = 0;
     this.fillCosts();
     if (this.observed.isCounted) this.solveCounted();
     else this.solveUncounted();
   }
 
-  private addExactRows(s: StructureAnalysis, exact: Equivalence, shifts: PredictedShifts): void {
-    const { shiftClasses } = exact;
-    const n = s.graph.atomCount;
-    this.classSize.fill(0, 0, n);
-    for (let a = 0; a < n; a++) this.classSize[shiftClasses[a]]++;
-    for (let a = 0; a < n; a++) {
-      const size = this.classSize[shiftClasses[a]];
-      this.classSize[shiftClasses[a]] = 0;
-      if (size > 0) this.addRow(s, a, size, shiftClasses, shifts);
-    }
-  }
-
   /** Inserts a row in order of shift, then of everything else that the result can depend on. */
-  private addRow(s: StructureAnalysis, atom: number, size: number, classOf: Uint8Array, shifts: PredictedShifts): void {
-    const hydrogens = s.graph.hydrogens[atom];
-    if (hydrogens === 0) return;
-    const { rowAtom, rowSupply, rowIsExchangeable, rowShift, rowScale, rowHydrogens, rowSize, model } = this;
+  private addRow(s: StructureAnalysis, environments: Environments, c: number, showsTwice: number, shifts: PredictedShifts): void {
+    const { rowAtom, rowSupply, rowIsExchangeable, rowShift, rowScale, rowShowsTwice, model } = this;
+    const atom = environments.first[c];
+    const supply = environments.size[c] * s.graph.hydrogens[atom];
     const z = s.graph.atomicNumbers[atom];
     const isExchangeable = z === 7 || z === 8 || z === 16 ? 1 : 0;
     const shift = shifts.protonShift[atom];
     const scale = (isExchangeable === 1 ? Math.max(shifts.protonSd[atom], model.exchangeableSpread) : shifts.protonSd[atom]) * model.scale;
     let at = this.rowCount++;
-    while (at > 0 && (rowShift[at - 1] > shift || (rowShift[at - 1] === shift && rowSupply[at - 1] * 4 + rowHydrogens[at - 1] > size * hydrogens * 4 + hydrogens))) {
+    while (at > 0 && (rowShift[at - 1] > shift || (rowShift[at - 1] === shift && rowSupply[at - 1] * 2 + rowShowsTwice[at - 1] > supply * 2 + showsTwice))) {
       rowAtom[at] = rowAtom[at - 1];
       rowSupply[at] = rowSupply[at - 1];
       rowIsExchangeable[at] = rowIsExchangeable[at - 1];
       rowShift[at] = rowShift[at - 1];
       rowScale[at] = rowScale[at - 1];
-      rowHydrogens[at] = rowHydrogens[at - 1];
-      rowSize[at] = rowSize[at - 1];
+      rowShowsTwice[at] = rowShowsTwice[at - 1];
       if (this.hasPatterns) copyPattern(this.rowPatterns[at - 1], this.rowPatterns[at]);
       at--;
     }
     rowAtom[at] = atom;
-    rowSupply[at] = size * hydrogens;
+    rowSupply[at] = supply;
     rowIsExchangeable[at] = isExchangeable;
     rowShift[at] = shift;
     rowScale[at] = scale;
-    rowHydrogens[at] = hydrogens;
-    rowSize[at] = size;
-    if (this.hasPatterns) predictPattern(s, classOf, atom, this.rowPatterns[at]);
+    rowShowsTwice[at] = showsTwice;
+    if (this.hasPatterns) predictPattern(s, environments.classOf, atom, this.rowPatterns[at]);
   }
 
   private fillCosts(): void {
@@ -211,7 +195,7 @@ export class ProtonLikelihood {
       }
       if (parts > 1) {
         // Two halves: CH2 hydrogens or groups that stereochemistry tells apart. Anything else does not happen by itself.
-        const isHalved = parts === 2 && largest * 2 === rowSupply[r] && (this.rowHydrogens[r] === 2 || this.rowSize[r] % 2 === 0);
+        const isHalved = parts === 2 && largest * 2 === rowSupply[r] && this.rowShowsTwice[r] === 1;
         sharing += isHalved ? model.split : (parts - 1) * model.unevenSplit;
       }
     }
@@ -275,8 +259,7 @@ export class ProtonLikelihood {
       if (this.solver.flow[r * this.observed.size + column] > 0 || (this.solver.rowLeft[r] > 0 && this.nearest[r] === column)) covered += this.rowSupply[r];
     }
     const stated = this.observed.count[this.order[column]];
-    // Half of an environment is what a diastereotopic pair of signals shows.
-    return covered === stated || covered === 0 ? 0 : covered === 2 * stated ? this.model.split : this.model.unevenSplit;
+    return covered === stated || covered === 0 ? 0 : this.model.unevenSplit;
   }
 }
 

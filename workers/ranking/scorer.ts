@@ -1,7 +1,6 @@
 import type { ScoreTerms } from '../../shared/jobs/contract.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { StructureAnalysis } from '../graph/analysis.js';
-import type { Equivalence } from '../graph/equivalence.js';
 import { createShiftPredictor } from '../prediction/create-shift-predictor.js';
 import { createPredictedShifts, type ShiftPredictor } from '../prediction/predicted-shifts.js';
 import { CarbonLikelihood } from './carbon-likelihood.js';
@@ -10,6 +9,7 @@ import { readCarbonObservations, readProtonObservations } from './observations.j
 import type { ActiveRule } from './plausibility/active-rules.js';
 import { ProtonLikelihood } from './proton-likelihood.js';
 import { SCORE_MODEL, type ScoreModel } from './score-model.js';
+import type { SignalBounds } from './signal-bounds.js';
 
 /**
  * Log posterior of a structure up to a constant: tempered log-likelihood of each kind of evidence plus the log prior of
@@ -39,20 +39,19 @@ export class Scorer {
   }
 
   /**
-   * @param s - structure. @param environments - of it, unused without signals. @param exact - its exact equivalence
-   * where that was needed, else null. All read only.
+   * @param s - structure. @param environments, bounds - of it, unused without signals. All read only.
    * @returns the score, finite; its parts are in `terms`.
    */
-  score(s: StructureAnalysis, environments: Environments, exact: Equivalence | null): number {
+  score(s: StructureAnalysis, environments: Environments, bounds: SignalBounds): number {
     const { terms, carbon, proton, shifts } = this;
     let score = 0;
     if (carbon !== null || proton !== null) this.predictor.predictInto(s.graph, s, shifts);
     if (carbon !== null) {
-      terms.carbon13 = carbon.score(s, environments, exact, shifts) / this.model.temperature;
+      terms.carbon13 = carbon.score(s, environments, bounds, shifts) / this.model.temperature;
       score += terms.carbon13;
     }
     if (proton !== null) {
-      proton.score(s, environments, exact, shifts);
+      proton.score(s, environments, bounds, shifts);
       terms.proton1 = proton.shiftTerm / this.model.temperature;
       score += terms.proton1;
       if (this.hasMultiplicities) {

@@ -1,8 +1,8 @@
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
-import { MAX_ATOMS, NEIGHBOUR_STRIDE, type StructureAnalysis } from '../graph/analysis.js';
-import { findEquivalence, type Equivalence } from '../graph/equivalence.js';
+import type { StructureAnalysis } from '../graph/analysis.js';
 import type { Environments } from './environments.js';
 import { readCarbonObservations, readProtonObservations, UNKNOWN_HYDROGENS, type CarbonObservations, type ProtonObservations } from './observations.js';
+import type { SignalBounds } from './signal-bounds.js';
 import { ALL_TYPES, SIGNAL_REASONS, type SignalReasonKind } from './signal-reasons.js';
 
 const CARBON = 6;
@@ -34,10 +34,9 @@ export class SignalCensus {
   private readonly boundUnder: number;
 
   private readonly atoms = new Int32Array(TYPE_COUNT);
-  private readonly classes = new Int32Array(TYPE_COUNT);
-  private readonly largestClass = new Int32Array(TYPE_COUNT);
-  private readonly sizes = new Uint8Array(MAX_ATOMS);
-  private exact: Equivalence | null = null;
+  /** Most signals the structure can show of a type, and the most carbons that one of them must stand for. */
+  private readonly most = new Int32Array(TYPE_COUNT);
+  private readonly largest = new Int32Array(TYPE_COUNT);
 
   constructor(evidence: EvidenceDocument) {
     this.carbons = readCarbonObservations(evidence);
@@ -65,67 +64,56 @@ export class SignalCensus {
     this.boundUnder = bound;
   }
 
-  /** Exact equivalence of the structure tested last, null when no test had to ask for it. */
-  get equivalence(): Equivalence | null {
-    return this.exact;
-  }
-
   /**
    * First contradiction, cheapest tests first.
    *
-   * @param s - read only. @param environments - of the same structure, read only.
+   * @param s - read only. @param environments, bounds - of the same structure, read only.
    * @returns its reason code, null when the structure fits.
    */
-  check(s: StructureAnalysis, environments: Environments): string | null {
-    return this.run(s, environments, null);
+  check(s: StructureAnalysis, environments: Environments, bounds: SignalBounds): string | null {
+    return this.run(s, environments, bounds, null);
   }
 
   /** All contradictions with the atoms they are about. */
-  checkAll(s: StructureAnalysis, environments: Environments): SignalContradiction[] {
+  checkAll(s: StructureAnalysis, environments: Environments, bounds: SignalBounds): SignalContradiction[] {
     const all: SignalContradiction[] = [];
-    this.run(s, environments, all);
+    this.run(s, environments, bounds, all);
     return all;
   }
 
   /** Collects into `all`, or returns the first reason when that is null. */
-  private run(s: StructureAnalysis, environments: Environments, all: SignalContradiction[] | null): string | null {
-    this.exact = null;
-    this.countCarbons(s, environments);
-    const { signals, carbonsUnder, isCounted, largestCount, atoms, classes, largestClass, carbons } = this;
+  private run(s: StructureAnalysis, environments: Environments, bounds: SignalBounds, all: SignalContradiction[] | null): string | null {
+    this.countCarbons(s, environments, bounds);
+    const { signals, carbonsUnder, isCounted, largestCount, atoms, most, largest, carbons } = this;
     let totalAtoms = 0;
-    let totalClasses = 0;
+    let totalMost = 0;
     for (let type = 0; type < TYPE_COUNT; type++) {
       totalAtoms += atoms[type];
-      totalClasses += classes[type];
+      totalMost += most[type];
       const isShown = carbons.isComplete && type > 0;
       if (carbonsUnder[type] > atoms[type] && this.meet('tooFewCarbons', type, s, all)) return SIGNAL_REASONS.tooFewCarbons[type];
       if (isShown && signals[type] === 0 && atoms[type] > 0 && this.meet('carbonAbsent', type, s, all)) return SIGNAL_REASONS.carbonAbsent[type];
-      if (isShown && signals[type] > 0 && isCounted[type] === 1 && carbonsUnder[type] < atoms[type] && this.meet('carbonCount', type, s, all)) {
-        return SIGNAL_REASONS.carbonCount[type];
+      if (signals[type] > most[type] && signals[type] <= atoms[type] && this.meet('carbonEnvironments', type, s, all)) {
+        return SIGNAL_REASONS.carbonEnvironments[type];
       }
+      if (!isShown || signals[type] === 0 || isCounted[type] === 0) continue;
+      if (carbonsUnder[type] < atoms[type] && this.meet('carbonCount', type, s, all)) return SIGNAL_REASONS.carbonCount[type];
+      if (largest[type] > largestCount[type] && this.meet('equivalentCarbons', type, s, all)) return SIGNAL_REASONS.equivalentCarbons[type];
     }
     if (this.totalCarbonsUnder > totalAtoms && this.meet('tooFewCarbons', ALL_TYPES, s, all)) return SIGNAL_REASONS.tooFewCarbons[ALL_TYPES];
+    if (!carbons.isTyped && carbons.size > totalMost && carbons.size <= totalAtoms && this.meet('carbonEnvironments', ALL_TYPES, s, all)) {
+      return SIGNAL_REASONS.carbonEnvironments[ALL_TYPES];
+    }
     if (this.exchangeableUnder > 0 || this.boundUnder > 0) {
       const bound = countBoundHydrogens(s);
       const exchangeable = countHydrogens(s) - bound;
       if (this.exchangeableUnder > exchangeable && this.meet('exchangeableProtons', ALL_TYPES, s, all)) return SIGNAL_REASONS.exchangeableProtons[ALL_TYPES];
       if (this.boundUnder > bound && this.meet('boundProtons', ALL_TYPES, s, all)) return SIGNAL_REASONS.boundProtons[ALL_TYPES];
     }
-    for (let type = 0; type < TYPE_COUNT; type++) {
-      // The hashed classes are never more than the exact ones: only where they fall short, the exact ones are asked for.
-      if (signals[type] > classes[type] && signals[type] > this.countExactClasses(s, type) && this.meet('carbonEnvironments', type, s, all)) {
-        return SIGNAL_REASONS.carbonEnvironments[type];
-      }
-      const mustShowAlike = carbons.isComplete && type > 0 && signals[type] > 0 && isCounted[type] === 1;
-      if (mustShowAlike && largestClass[type] > largestCount[type] && this.largestExactClass(s, type) > largestCount[type]) {
-        if (this.meet('equivalentCarbons', type, s, all)) return SIGNAL_REASONS.equivalentCarbons[type];
-      }
-    }
-    if (!carbons.isTyped && carbons.size > totalClasses && carbons.size > this.countExactClasses(s, ALL_TYPES)) {
-      if (this.meet('carbonEnvironments', ALL_TYPES, s, all)) return SIGNAL_REASONS.carbonEnvironments[ALL_TYPES];
-    }
-    if (this.protons.size > countProtonClasses(s, environments) && this.protons.size > this.countExactProtons(s)) {
-      if (this.meet('protonEnvironments', ALL_TYPES, s, all)) return SIGNAL_REASONS.protonEnvironments[ALL_TYPES];
+    if (this.protons.size > 0) {
+      let protonSignals = 0;
+      for (let c = 0; c < environments.classCount; c++) protonSignals += bounds.protonSignals[c];
+      if (this.protons.size > protonSignals && this.meet('protonEnvironments', ALL_TYPES, s, all)) return SIGNAL_REASONS.protonEnvironments[ALL_TYPES];
     }
     return null;
   }
@@ -137,94 +125,27 @@ export class SignalCensus {
     return false;
   }
 
-  private countCarbons(s: StructureAnalysis, environments: Environments): void {
-    const { atoms, classes, largestClass } = this;
+  private countCarbons(s: StructureAnalysis, environments: Environments, bounds: SignalBounds): void {
+    const { atoms, most, largest } = this;
     atoms.fill(0);
-    classes.fill(0);
-    largestClass.fill(0);
-    const { atomicNumbers, hydrogens } = s.graph;
+    most.fill(0);
+    largest.fill(0);
     for (let c = 0; c < environments.classCount; c++) {
-      const atom = environments.first[c];
-      if (atomicNumbers[atom] !== CARBON) continue;
-      const type = carbonType(hydrogens[atom]);
+      const signals = bounds.carbonSignals[c];
+      if (signals === 0) continue;
+      const type = carbonType(s.graph.hydrogens[environments.first[c]]);
       const size = environments.size[c];
       atoms[type] += size;
-      classes[type]++;
-      if (size > largestClass[type]) largestClass[type] = size;
+      most[type] += signals;
+      // Members that can show apart need not all lie under one signal.
+      const together = Math.ceil(size / signals);
+      if (together > largest[type]) largest[type] = together;
     }
-  }
-
-  private exactOf(s: StructureAnalysis): Equivalence {
-    this.exact ??= findEquivalence(s.graph, s);
-    return this.exact;
-  }
-
-  /**
-   * Fills `sizes` with the carbons of a type in each exact shift class; returns how many signals these can give at most:
-   * one each, two where something beyond the constitution can part the members.
-   */
-  private countExactClasses(s: StructureAnalysis, type: number): number {
-    const { atomCount: n, atomicNumbers, hydrogens } = s.graph;
-    const { shiftClasses, shiftClassCount } = this.exactOf(s);
-    const most = this.mayPart(s) ? 2 : 1;
-    this.sizes.fill(0, 0, shiftClassCount);
-    let count = 0;
-    for (let a = 0; a < n; a++) {
-      if (atomicNumbers[a] !== CARBON || (type !== ALL_TYPES && carbonType(hydrogens[a]) !== type)) continue;
-      if (this.sizes[shiftClasses[a]]++ < most) count++;
-    }
-    return count;
-  }
-
-  /**
-   * True when constitutionally equivalent groups may show apart although the substitution test finds them alike:
-   * slow rotation about N–C(=X) and N–N=O, slow inversion of nitrogen in three-membered rings, allenes, cages whose
-   * bridges differ, and pairs of equivalent stereocentres, which have unsymmetrical stereoisomers or come as a mixture.
-   */
-  private mayPart(s: StructureAnalysis): boolean {
-    const { orbits, stereocentres } = this.exactOf(s);
-    for (let i = 0; i < stereocentres.length; i++) {
-      for (let j = i + 1; j < stereocentres.length; j++) if (orbits[stereocentres[i]] === orbits[stereocentres[j]]) return true;
-    }
-    return hasSlowNitrogen(s) || hasAllene(s) || hasCage(s);
-  }
-
-  private largestExactClass(s: StructureAnalysis, type: number): number {
-    this.countExactClasses(s, type);
-    let largest = 0;
-    for (let c = 0; c < this.exactOf(s).shiftClassCount; c++) if (this.sizes[c] > largest) largest = this.sizes[c];
-    return largest;
-  }
-
-  /** Most ¹H signals the structure can show: one for each class, two where the hydrogens of a CH2 differ. */
-  private countExactProtons(s: StructureAnalysis): number {
-    const { atomCount: n, atomicNumbers, hydrogens } = s.graph;
-    const { shiftClasses, shiftClassCount, hydrogenTopicity } = this.exactOf(s);
-    const isParted = this.mayPart(s);
-    this.sizes.fill(0, 0, shiftClassCount);
-    let count = 0;
-    for (let a = 0; a < n; a++) {
-      if (hydrogens[a] === 0) continue;
-      // The hydrogens of NH2 and the like differ when the bond to them does not turn, as in primary amides.
-      const canDiffer = hydrogens[a] === 2 && (atomicNumbers[a] !== CARBON || isParted || hydrogenTopicity[a] === 'diastereotopic');
-      const most = (canDiffer ? 2 : 1) * (isParted ? 2 : 1);
-      const given = Math.min(canDiffer ? 2 : 1, most - this.sizes[shiftClasses[a]]);
-      this.sizes[shiftClasses[a]] += given;
-      count += given;
-    }
-    return count;
   }
 }
 
 /** Methane counts as CH3: no signal can say more. */
 const carbonType = (hydrogens: number): number => Math.min(hydrogens, TYPE_COUNT - 1);
-
-/** Classes with hydrogen: a lower bound of the proton environments. */
-function countProtonClasses(s: StructureAnalysis, environments: Environments): number {
-  let count = 0;
-  for (let c = 0; c < environments.classCount; c++) if (s.graph.hydrogens[environments.first[c]] > 0) count++;
-  return count;
-}
 
 function countHydrogens(s: StructureAnalysis): number {
   let count = 0;
@@ -238,45 +159,6 @@ function countBoundHydrogens(s: StructureAnalysis): number {
   let count = 0;
   for (let a = 0; a < n; a++) if (atomicNumbers[a] === CARBON || atomicNumbers[a] === 14) count += hydrogens[a];
   return count;
-}
-
-/** Tertiary nitrogen that turns slowly (lone pair taken up by a double bond beside it) or inverts slowly (aziridines). */
-function hasSlowNitrogen(s: StructureAnalysis): boolean {
-  const { atomCount: n, atomicNumbers, charges } = s.graph;
-  for (let a = 0; a < n; a++) {
-    if (atomicNumbers[a] !== 7 || charges[a] !== 0 || s.degrees[a] !== 3 || s.hybridisation[a] !== 3) continue;
-    if (s.smallestRingOfAtom[a] === 3) return true;
-    for (let k = 0; k < 3; k++) {
-      const b = s.neighbours[a * NEIGHBOUR_STRIDE + k];
-      if (s.hybridisation[b] === 2 && s.aromaticAtoms[b] === 0 && charges[b] === 0) return true;
-    }
-  }
-  return false;
-}
-
-/** C=C=C, whose ends lie in crossed planes. */
-function hasAllene(s: StructureAnalysis): boolean {
-  const { atomCount: n, atomicNumbers } = s.graph;
-  for (let a = 0; a < n; a++) {
-    if (atomicNumbers[a] === CARBON && s.hybridisation[a] === 1 && s.degrees[a] === 2 && s.graph.bondOrders[a * n + s.neighbours[a * NEIGHBOUR_STRIDE]] === 2) return true;
-  }
-  return false;
-}
-
-/** Two rings with more than one common bond, such as norbornane. */
-function hasCage(s: StructureAnalysis): boolean {
-  let fusionAtoms = 0;
-  for (let a = 0; a < s.graph.atomCount; a++) if (s.ringBondCounts[a] >= 3) fusionAtoms++;
-  if (fusionAtoms < 2) return false;
-  const { rings } = s;
-  for (let i = 0; i < rings.length; i++) {
-    for (let j = i + 1; j < rings.length; j++) {
-      let shared = 0;
-      for (const atom of rings[i]) if (rings[j].includes(atom)) shared++;
-      if (shared > 2) return true;
-    }
-  }
-  return false;
 }
 
 function atomsConcerned(kind: SignalReasonKind, type: number, s: StructureAnalysis): number[] {
