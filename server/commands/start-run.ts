@@ -1,3 +1,4 @@
+import { Transaction } from 'sequelize';
 import type { z } from 'zod';
 import type { runStartRequest } from '../../shared/schemas/runs.js';
 import type { AppContext } from '../app-context.js';
@@ -18,7 +19,8 @@ import { requireConsistentEvidence } from './save-revision.js';
 export async function startRun(context: AppContext, actor: Actor, unknownId: string, input: z.output<typeof runStartRequest>): Promise<Run> {
   const { compute, queue, sequelize } = context;
   if (compute === undefined || queue === undefined) throw new UnavailableError('noCompute', 'The server runs without its compute threads.');
-  const run = await sequelize.transaction(async (transaction) => {
+  // Read committed: what is counted once the membership is locked must include what others committed while it was waited for.
+  const run = await sequelize.transaction({ isolationLevel: Transaction.ISOLATION_LEVELS.READ_COMMITTED }, async (transaction) => {
     const now = new Date();
     const known = await Unknown.findByPk(unknownId, { attributes: ['teamId'], transaction, rejectOnEmpty: true });
     // The membership is locked first, here and wherever quotas are counted; only then the unknown.

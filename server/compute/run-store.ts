@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { Op, type Sequelize, type Transaction } from 'sequelize';
+import { Op, type Sequelize, Transaction } from 'sequelize';
 import { z } from 'zod';
 import type { Funnel, RankedCandidate, ShardResult, ShardSpec } from '../../shared/jobs/contract.js';
 import type { RunStatus } from '../../shared/types/states.js';
@@ -64,7 +64,9 @@ export class RunStore {
 
   /** @returns CPU seconds set aside for the run now */
   extendReservation(runId: string, usedSeconds: number): Promise<number> {
-    return this.#sequelize.transaction((transaction) => extendReservation(transaction, runId, usedSeconds));
+    // Read committed: usage is counted after waiting for the lock on the membership, and must be that of then.
+    const isolationLevel = Transaction.ISOLATION_LEVELS.READ_COMMITTED;
+    return this.#sequelize.transaction({ isolationLevel }, (transaction) => extendReservation(transaction, runId, usedSeconds));
   }
 
   /** Gives a run back, so that the next process goes on with it. */

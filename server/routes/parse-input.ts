@@ -6,6 +6,8 @@ const TYPE_NAMES: Readonly<Record<string, string>> = {
   string: 'a text', number: 'a number', int: 'a whole number', boolean: 'true or false', array: 'a list', object: 'an object', record: 'an object',
 };
 
+const countedUnit = (origin: string): string => (origin === 'string' ? ' characters' : origin === 'array' ? ' entries' : '');
+
 /** Says what a field should be where the schema itself gives no message of its own. */
 function plainMessage(issue: z.core.$ZodRawIssue): string | undefined {
   switch (issue.code) {
@@ -16,9 +18,9 @@ function plainMessage(issue: z.core.$ZodRawIssue): string | undefined {
     case 'invalid_format':
       return issue.format === 'uuid' ? 'expected an id' : issue.format === 'email' ? 'expected an e-mail address' : undefined;
     case 'too_small':
-      return issue.origin === 'string' ? `expected at least ${issue.minimum} characters` : `expected at least ${issue.minimum}`;
+      return `expected at least ${issue.minimum}${countedUnit(issue.origin)}`;
     case 'too_big':
-      return issue.origin === 'string' ? `expected at most ${issue.maximum} characters` : `expected at most ${issue.maximum}`;
+      return `expected at most ${issue.maximum}${countedUnit(issue.origin)}`;
     default:
       return undefined;
   }

@@ -21,7 +21,7 @@ export async function sendCandidates(context: AppContext, run: Run, { format, li
   );
   // The first piece before the headers: a failure up to there is answered as such.
   let piece = await pieces.next();
-  response.attachment(exportFileName(origin, format));
+  response.setHeader('Content-Disposition', `attachment; filename="${exportFileName(origin, format)}"`);
   response.setHeader('Content-Type', EXPORT_TYPES[format].contentType);
   while (piece.done !== true && !response.destroyed) {
     if (!response.write(piece.value)) await Promise.race([once(response, 'drain'), once(response, 'close')]);

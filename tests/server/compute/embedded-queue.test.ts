@@ -9,7 +9,7 @@ import { RunShard } from '../../../server/models/run-shard.js';
 import { UsageEntry } from '../../../server/models/usage-entry.js';
 import { createTestDatabase, type TestDatabase } from '../../support/database.js';
 import { createFakeCompute, type FakeCompute, fakeShardResult, until } from '../../support/fake-compute.js';
-import { createLaboratory, createRunRow, createUnknownRow, type Laboratory } from '../../support/laboratory.js';
+import { createLaboratory, createQueuedRun, createUnknownWithEvidence, type Laboratory } from '../../support/laboratory.js';
 
 let database: TestDatabase;
 let laboratory: Laboratory;
@@ -34,7 +34,7 @@ function createQueue(compute: FakeCompute, hardStopMs = 5_000): RunQueue {
 function kill(queue: RunQueue): void {
   queues.splice(queues.indexOf(queue), 1);
 }
-const createRun = async (options: Parameters<typeof createRunRow>[2] = {}) => createRunRow(laboratory, await createUnknownRow(laboratory), options);
+const createRun = async (options: Parameters<typeof createQueuedRun>[2] = {}) => createQueuedRun(laboratory, await createUnknownWithEvidence(laboratory), options);
 const usageOf = async (run: Run) => (await UsageEntry.findOne({ where: { runId: run.id }, rejectOnEmpty: true })).get();
 async function runToEnd(queue: RunQueue, run: Run): Promise<Run> {
   queue.submit(run.id);
@@ -178,13 +178,13 @@ describe('a run in the embedded queue', () => {
   });
 
   it('shares the threads between teams', async () => {
-    const other = await createLaboratory('Other');
+    const other = await createLaboratory();
     const compute = createFakeCompute({ threadCount: 1, shardCount: 5, onShard: () => 'waits' });
     const queue = createQueue(compute);
-    const busy = await createRunRow(laboratory, await createUnknownRow(laboratory, { formula: 'C6H12O' }));
+    const busy = await createQueuedRun(laboratory, await createUnknownWithEvidence(laboratory, { formula: 'C6H12O' }));
     queue.submit(busy.id);
     await until(() => compute.started.length === 1);
-    const late = await createRunRow(other, await createUnknownRow(other, { formula: 'C5H10O' }));
+    const late = await createQueuedRun(other, await createUnknownWithEvidence(other, { formula: 'C5H10O' }));
     queue.submit(late.id);
     const pump = setInterval(() => compute.release(), 10);
     await Promise.all([queue.settled(busy.id), queue.settled(late.id)]);
