@@ -6,8 +6,8 @@ import type { Action, Resource, RowOf, VerbOf } from './policies.js';
 /** Asks one rule. */
 export function can<A extends Action>(actor: Actor, action: A, row: RowOf<A>): boolean {
   // The row type goes with the action by the signature above; the union of all rules cannot show it.
-  const rule = policies[action] as ((actor: Actor, row: RowOf<A>) => boolean) | undefined;
-  return rule !== undefined && rule(actor, row);
+  const rule = policies[action] as (actor: Actor, row: RowOf<A>) => boolean;
+  return Object.hasOwn(policies, action) && rule(actor, row);
 }
 
 /**

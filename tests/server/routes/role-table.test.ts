@@ -5,7 +5,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { endpoints, type Endpoint, type EndpointName } from '../../../shared/schemas/endpoints.js';
 import type { RunQueue } from '../../../server/compute/queue.js';
-import { Candidate } from '../../../server/models/candidate.js';
+import type { Candidate } from '../../../server/models/candidate.js';
 import { Invitation } from '../../../server/models/invitation.js';
 import { PasswordReset } from '../../../server/models/password-reset.js';
 import type { Run } from '../../../server/models/run.js';
