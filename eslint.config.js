@@ -17,7 +17,12 @@ const zones = [
   { target: './src', from: ['./server', './workers', './tests'] },
   { target: './src/lib', from: ['./src/app', './src/features', './src/components'] },
   { target: './src/components', from: ['./src/app', './src/features'] },
-  { target: './src/features', from: './src/app', except: ['./paths.ts'], message: 'Features know the paths of the app and nothing else of it.' },
+  {
+    target: './src/features',
+    from: './src/app',
+    except: ['./paths.ts'],
+    message: 'Features know the paths of the app and nothing else of it.',
+  },
   ...features.map((feature) => ({
     target: `./${featureFolder}/${feature}`,
     from: `./${featureFolder}`,
@@ -39,12 +44,16 @@ export default defineConfig(
     },
     rules: {
       eqeqeq: 'error',
-      'no-console': 'off',
+      // It does not see reads inside of functions that are called in between.
+      'no-useless-assignment': 'off',
       'import-x/no-restricted-paths': ['error', { zones }],
       'import-x/no-default-export': 'error',
       'import-x/no-cycle': 'error',
       '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_' }],
-      '@typescript-eslint/consistent-type-imports': ['error', { fixStyle: 'inline-type-imports', prefer: 'type-imports', disallowTypeAnnotations: false }],
+      '@typescript-eslint/consistent-type-imports': [
+        'error',
+        { fixStyle: 'inline-type-imports', prefer: 'type-imports', disallowTypeAnnotations: false },
+      ],
     },
   },
   {
@@ -60,14 +69,24 @@ export default defineConfig(
   },
   {
     files: ['**/*.{js,mjs}'],
-    languageOptions: { globals: { process: 'readonly', console: 'readonly', URL: 'readonly', setTimeout: 'readonly', clearTimeout: 'readonly' } },
+    languageOptions: {
+      globals: { process: 'readonly', console: 'readonly', URL: 'readonly', setTimeout: 'readonly', clearTimeout: 'readonly' },
+    },
   },
   {
     files: ['server/**/*.ts'],
     rules: {
       '@typescript-eslint/no-restricted-imports': [
         'error',
-        { patterns: [{ regex: '(^|/)workers/', allowTypeImports: true, message: 'The server starts workers by file URL; only types may be imported.' }] },
+        {
+          patterns: [
+            {
+              regex: '(^|/)workers/',
+              allowTypeImports: true,
+              message: 'The server starts workers by file URL; only types may be imported.',
+            },
+          ],
+        },
       ],
     },
   },

@@ -15,7 +15,8 @@ runUntilSignal({
 
 function printWelcome({ context, firstAdmin }: StartedServer): void {
   const { config, demoAccounts = [] } = context;
-  if (firstAdmin !== null) console.log(`\nFirst admin; write the password down, it is shown only now:\n  ${firstAdmin.email}  ${firstAdmin.password}`);
+  if (firstAdmin !== null)
+    console.log(`\nFirst admin; write the password down, it is shown only now:\n  ${firstAdmin.email}  ${firstAdmin.password}`);
   if (demoAccounts.length > 0) {
     console.log('\nDemo accounts of an invented laboratory:');
     const width = Math.max(...demoAccounts.map(({ email }) => email.length));

@@ -43,7 +43,10 @@ export async function startServer({ config, shutdown, announce }: StartOptions):
   if (migrations.length > 0) announce(`Database: ${migrations.length} schema changes made.`);
   initModels(sequelize);
 
-  const compute = createComputePool({ threads: config.computeThreads, onFault: (error) => logger.error({ err: error }, 'compute thread failed') });
+  const compute = createComputePool({
+    threads: config.computeThreads,
+    onFault: (error) => logger.error({ err: error }, 'compute thread failed'),
+  });
   shutdown.add('compute threads', () => compute.close());
   const queue = createEmbeddedQueue({ compute, sequelize, logger });
   shutdown.add('run queue', () => queue.close());
@@ -64,7 +67,9 @@ export async function startServer({ config, shutdown, announce }: StartOptions):
 function startUpkeep(context: AppContext): () => Promise<void> {
   const purge = () => purgeExpired(context, new Date()).catch((error: unknown) => context.logger.error({ err: error }, 'upkeep failed'));
   let current = purge();
-  const timer = setInterval(() => (current = purge()), UPKEEP_INTERVAL_MS);
+  const timer = setInterval(() => {
+    current = purge();
+  }, UPKEEP_INTERVAL_MS);
   return async () => {
     clearInterval(timer);
     await current;

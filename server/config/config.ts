@@ -45,10 +45,12 @@ const wholeNumber = (from: number, to: number) => {
 };
 const yesOrNo = z.enum(['true', 'false'], expected('true or false')).transform((text) => text === 'true');
 const address = (...protocols: string[]) =>
-  z.string().refine(
-    (text) => URL.canParse(text) && protocols.includes(new URL(text).protocol),
-    expected(`an address that begins with ${protocols.map((protocol) => `${protocol}//`).join(' or ')}`),
-  );
+  z
+    .string()
+    .refine(
+      (text) => URL.canParse(text) && protocols.includes(new URL(text).protocol),
+      expected(`an address that begins with ${protocols.map((protocol) => `${protocol}//`).join(' or ')}`),
+    );
 
 const databaseAddress = address('mariadb:', 'mysql:').refine(
   (text) => !URL.canParse(text) || new URL(text).pathname.length > 1,

@@ -24,7 +24,9 @@ export async function lockDataFolder(directory: string): Promise<() => Promise<v
     const holder = await readFile(file, 'utf8').catch(() => '');
     const pid = Number(holder.split(' ')[0]);
     if (pid > 0 && (await identityOf(pid)) === holder) {
-      throw new DataFolderInUse(`${directory} is in use by a server that is already running (process ${pid}). Stop that one, or choose another folder with ISOLOOM_DATA_DIR.`);
+      throw new DataFolderInUse(
+        `${directory} is in use by a server that is already running (process ${pid}). Stop that one, or choose another folder with ISOLOOM_DATA_DIR.`,
+      );
     }
     await rm(file, { force: true });
   }

@@ -36,12 +36,20 @@ const STOP_TIMEOUT_MS = 30_000;
 /** Debian keeps servers in sbin, which is not on the path of every user. */
 export function findExecutable(name: string): string | null {
   const folders = [...(process.env.PATH ?? '').split(delimiter), '/usr/sbin', '/usr/local/sbin', '/usr/local/bin', '/usr/bin'];
-  return folders.filter((folder) => folder !== '').map((folder) => join(folder, name)).find((path) => existsSync(path)) ?? null;
+  return (
+    folders
+      .filter((folder) => folder !== '')
+      .map((folder) => join(folder, name))
+      .find((path) => existsSync(path)) ?? null
+  );
 }
 
 function requireExecutable(name: string): string {
   const path = findExecutable(name);
-  if (path === null) throw new MariadbError(`${name} was not found. Install MariaDB (on Debian as root: apt-get install mariadb-server-core mariadb-client-core) or set DATABASE_URL.`);
+  if (path === null)
+    throw new MariadbError(
+      `${name} was not found. Install MariaDB (on Debian as root: apt-get install mariadb-server-core mariadb-client-core) or set DATABASE_URL.`,
+    );
   return path;
 }
 
@@ -61,7 +69,9 @@ export async function findFreePort(): Promise<number> {
     probe.once('error', reject);
     probe.listen(0, '127.0.0.1', () => {
       const address = probe.address();
-      probe.close(() => (address !== null && typeof address === 'object' ? resolve(address.port) : reject(new MariadbError('No free port was found.'))));
+      probe.close(() =>
+        address !== null && typeof address === 'object' ? resolve(address.port) : reject(new MariadbError('No free port was found.')),
+      );
     });
   });
 }

@@ -19,7 +19,14 @@ export function serveClient(directory: string = builtClient()): Router {
   // Names of built assets carry a hash of their content: they never change.
   router.use('/assets', express.static(join(directory, 'assets'), { immutable: true, maxAge: '1y', index: false, redirect: false }));
   router.use('/assets', (_request, response) => void response.status(404).end());
-  router.use(express.static(directory, { index: false, redirect: false, cacheControl: false, setHeaders: (response) => void response.setHeader('Cache-Control', 'no-cache') }));
+  router.use(
+    express.static(directory, {
+      index: false,
+      redirect: false,
+      cacheControl: false,
+      setHeaders: (response) => void response.setHeader('Cache-Control', 'no-cache'),
+    }),
+  );
   router.get('/{*path}', (request, response, next) => {
     if (request.path === '/api' || request.path.startsWith('/api/') || !request.accepts('html') || !existsSync(page)) {
       next();

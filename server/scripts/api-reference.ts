@@ -51,20 +51,31 @@ export function renderApiReference({ endpoints, schemas }: ApiReferenceInput): s
     ([name, { method, path, summary, query, body, response }]) =>
       `| ${name} | ${method} | \`${path}\` | ${summary} | ${link(query)} | ${link(body)} | ${link(response)} |`,
   );
-  const requests = new Set(Object.values(endpoints).flatMap(({ query, body }) => [query, body]).filter((schema) => schema !== undefined));
+  const requests = new Set(
+    Object.values(endpoints)
+      .flatMap(({ query, body }) => [query, body])
+      .filter((schema) => schema !== undefined),
+  );
   const definitions = new Map<string, string>();
   const define = (names: readonly string[], generated: Readonly<Record<string, JsonSchema>>) => {
     const pending = [...names];
     for (let name = pending.pop(); name !== undefined; name = pending.pop()) {
       const json = generated[name];
       if (json === undefined) throw new Error(`No schema is called ${name}.`);
-      if (!definitions.has(name)) definitions.set(name, typeText(json, '', (reference) => pending.push(reference)));
+      if (!definitions.has(name))
+        definitions.set(
+          name,
+          typeText(json, '', (reference) => pending.push(reference)),
+        );
     }
   };
   // What both sides use is shown as a caller may send it: with the fields that have defaults optional.
   const isRequest = (name: string) => requests.has(schemas[name] as z.ZodType);
   define([...used].filter(isRequest), jsonSchemas(schemas, 'input'));
-  define([...used].filter((name) => !isRequest(name)), jsonSchemas(schemas, 'output'));
+  define(
+    [...used].filter((name) => !isRequest(name)),
+    jsonSchemas(schemas, 'output'),
+  );
   return [
     '# API reference',
     '',
@@ -133,7 +144,9 @@ function remarkOn(schema: JsonSchema): string {
     subject.format ?? '',
     rangeText('', lower, upper),
     subject.exclusiveMinimum === undefined ? '' : `above ${subject.exclusiveMinimum}`,
-    subject.exclusiveMaximum === undefined || subject.exclusiveMaximum === Number.MAX_SAFE_INTEGER ? '' : `below ${subject.exclusiveMaximum}`,
+    subject.exclusiveMaximum === undefined || subject.exclusiveMaximum === Number.MAX_SAFE_INTEGER
+      ? ''
+      : `below ${subject.exclusiveMaximum}`,
     rangeText(' characters', subject.minLength, subject.maxLength),
     rangeText(' items', subject.minItems, subject.maxItems),
     schema.default === undefined ? '' : `default ${JSON.stringify(schema.default)}`,

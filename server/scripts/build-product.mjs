@@ -71,7 +71,11 @@ export async function fingerprintOf(root, sources) {
   const hash = createHash('sha256');
   for (const source of sources) {
     for (const file of await filesBelow(join(root, source))) {
-      hash.update(relative(root, file)).update('\0').update(await readFile(file)).update('\0');
+      hash
+        .update(relative(root, file))
+        .update('\0')
+        .update(await readFile(file))
+        .update('\0');
     }
   }
   return hash.digest('hex');
@@ -148,7 +152,11 @@ function runTool(root, tool, args) {
   return new Promise((resolvePromise, reject) => {
     // The test runner sets NODE_ENV=test, which must not get into a build.
     const env = { ...process.env, NODE_ENV: 'production' };
-    const child = spawn(process.execPath, [join(root, 'node_modules', tool), ...args], { cwd: root, env, stdio: ['ignore', 'inherit', 'inherit'] });
+    const child = spawn(process.execPath, [join(root, 'node_modules', tool), ...args], {
+      cwd: root,
+      env,
+      stdio: ['ignore', 'inherit', 'inherit'],
+    });
     child.once('error', reject);
     child.once('exit', (code) => (code === 0 ? resolvePromise() : reject(new Error(`${tool} ended with code ${code}`))));
   });

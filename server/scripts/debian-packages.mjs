@@ -9,7 +9,10 @@ import { run } from './run-command.mjs';
  * set up a database service for the whole machine, which we do not use.
  */
 const needs = {
-  MariaDB: { packages: ['mariadb-server-core', 'mariadb-client-core'], programs: [['mariadbd'], ['mariadb-install-db'], ['my_print_defaults']] },
+  MariaDB: {
+    packages: ['mariadb-server-core', 'mariadb-client-core'],
+    programs: [['mariadbd'], ['mariadb-install-db'], ['my_print_defaults']],
+  },
   Chromium: { packages: ['chromium'], programs: [['chromium']] },
   nauty: { packages: ['nauty'], programs: [['geng', 'nauty-geng']] },
 };

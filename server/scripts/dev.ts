@@ -21,7 +21,12 @@ runUntilSignal({
     const config = loadConfig({ NODE_ENV: 'development', ...process.env });
     const databaseUrl = config.databaseUrl ?? (await openPrivateDatabase(config.dataDirectory, shutdown));
     const clientPort = (await isPortFree(USUAL_CLIENT_PORT)) ? USUAL_CLIENT_PORT : await findFreePort();
-    const environment = { ...process.env, NODE_ENV: 'development', DATABASE_URL: databaseUrl, PUBLIC_URL: process.env.PUBLIC_URL ?? `http://127.0.0.1:${clientPort}` };
+    const environment = {
+      ...process.env,
+      NODE_ENV: 'development',
+      DATABASE_URL: databaseUrl,
+      PUBLIC_URL: process.env.PUBLIC_URL ?? `http://127.0.0.1:${clientPort}`,
+    };
     const startProcess = (name: string, args: readonly string[]) => {
       // A group of its own: Ctrl-C reaches this process alone, which then stops everything in order.
       const child = spawn(process.execPath, args, { detached: true, stdio: ['ignore', 'inherit', 'inherit'], env: environment });

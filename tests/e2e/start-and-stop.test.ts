@@ -7,7 +7,8 @@ import { createTemporaryFolder } from '../support/config.js';
 
 let folder: string;
 let server: BuiltServer;
-const start = (environment: Record<string, string> = {}) => startBuiltServer({ dataDirectory: join(folder, 'data'), environment: { DEMO: 'false', ...environment } });
+const start = (environment: Record<string, string> = {}) =>
+  startBuiltServer({ dataDirectory: join(folder, 'data'), environment: { DEMO: 'false', ...environment } });
 const databaseProcess = () => Number(readFileSync(join(folder, 'data', 'mariadb', 'm.pid'), 'utf8'));
 
 beforeAll(async () => {

@@ -27,7 +27,10 @@ describe('the environment', () => {
   });
 
   it('asks for secure cookies when people reach the product over https, unless told otherwise', () => {
-    expect(parseEnvironment({ PUBLIC_URL: 'https://isoloom.example.org/' })).toMatchObject({ publicUrl: 'https://isoloom.example.org', cookieSecure: true });
+    expect(parseEnvironment({ PUBLIC_URL: 'https://isoloom.example.org/' })).toMatchObject({
+      publicUrl: 'https://isoloom.example.org',
+      cookieSecure: true,
+    });
     expect(parseEnvironment({ PUBLIC_URL: 'https://isoloom.example.org', COOKIE_SECURE: 'false' }).cookieSecure).toBe(false);
   });
 

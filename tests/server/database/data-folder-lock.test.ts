@@ -15,7 +15,9 @@ it('lets one server have a data folder, and the next when it is given back', asy
   await expect(lockDataFolder(folder)).rejects.toThrow(DataFolderInUse);
   await expect(lockDataFolder(folder)).rejects.toThrow(`process ${process.pid}`);
   await release();
-  await (await lockDataFolder(folder))();
+  await (
+    await lockDataFolder(folder)
+  )();
 });
 
 it('takes over the lock of a server that crashed', async () => {

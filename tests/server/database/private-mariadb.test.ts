@@ -46,7 +46,10 @@ describe('the private database', () => {
 
   it('writes times as UTC and text as utf8mb4', async () => {
     running = await startPrivateMariadb(folder);
-    const rows = await query(running.url, 'SELECT @@global.time_zone AS zone, @@character_set_database AS charset, @@bind_address AS address');
+    const rows = await query(
+      running.url,
+      'SELECT @@global.time_zone AS zone, @@character_set_database AS charset, @@bind_address AS address',
+    );
     expect(rows).toEqual([{ zone: '+00:00', charset: 'utf8mb4', address: '127.0.0.1' }]);
   });
 

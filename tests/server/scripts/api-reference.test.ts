@@ -16,7 +16,9 @@ it('shows optional fields, limits, null and references to other schemas', () => 
     schemas: { colour, paintRequest },
   });
   expect(text).toContain('| paint | POST | `/walls/:wallId` | Paint a wall. | – | [paintRequest](#paintrequest) | – |');
-  expect(text).toContain('  colour: colour;\n  coats?: number; // whole number, 1 to 5, default 2\n  note: string | null; // at most 80 characters\n');
+  expect(text).toContain(
+    '  colour: colour;\n  coats?: number; // whole number, 1 to 5, default 2\n  note: string | null; // at most 80 characters\n',
+  );
   expect(text).toContain('### colour\n\n```ts\n"red" | "blue"\n```');
 });
 

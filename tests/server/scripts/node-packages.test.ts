@@ -12,7 +12,11 @@ beforeEach(() => {
 afterEach(() => rmSync(root, { recursive: true, force: true }));
 
 const write = (file: string, packages: object) => writeFileSync(join(root, file), JSON.stringify({ packages }));
-const locked = { '': { version: '1.0.0' }, 'node_modules/a': { version: '2.0.0' }, 'node_modules/for-windows': { version: '1.0.0', optional: true } };
+const locked = {
+  '': { version: '1.0.0' },
+  'node_modules/a': { version: '2.0.0' },
+  'node_modules/for-windows': { version: '1.0.0', optional: true },
+};
 
 it('wants packages installed when there are none', async () => {
   write('package-lock.json', locked);
