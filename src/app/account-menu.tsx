@@ -49,7 +49,10 @@ export function AccountMenu({ placement }: { placement: 'right-up' | 'left-down'
                     void navigate(paths.unknowns(membership.teamId));
                   }}
                 >
-                  <Check aria-hidden="true" className={membership.teamId === team?.teamId ? 'size-4 shrink-0 text-indigo' : 'invisible size-4 shrink-0'} />
+                  <Check
+                    aria-hidden="true"
+                    className={membership.teamId === team?.teamId ? 'size-4 shrink-0 text-indigo' : 'invisible size-4 shrink-0'}
+                  />
                   <span className="min-w-0 flex-1 truncate">{membership.teamName}</span>
                   {membership.isDemo ? <Badge tone="weld">Invented</Badge> : null}
                 </button>

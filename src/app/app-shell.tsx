@@ -35,7 +35,10 @@ export function Component() {
   const places = team === null ? [] : navPlaces(team.teamId);
   return (
     <div className="min-h-dvh tablet:pl-[88px]">
-      <a href="#content" className="sr-only z-40 rounded-panel bg-indigo px-4 py-2 text-on-indigo focus:not-sr-only focus:fixed focus:top-2 focus:left-2">
+      <a
+        href="#content"
+        className="sr-only z-40 rounded-panel bg-indigo px-4 py-2 text-on-indigo focus:not-sr-only focus:fixed focus:top-2 focus:left-2"
+      >
         Go to the content
       </a>
       <header className="flex items-center gap-3 border-b border-seam bg-cloth px-4 py-2 tablet:fixed tablet:inset-y-0 tablet:left-0 tablet:z-20 tablet:w-[88px] tablet:flex-col tablet:border-r tablet:border-b-0 tablet:px-2 tablet:py-4">
@@ -44,7 +47,10 @@ export function Component() {
         </Link>
         <p className="min-w-0 flex-1 truncate text-table font-semibold tablet:hidden">{team?.teamName ?? 'Isoloom'}</p>
         {places.length === 0 ? null : (
-          <nav aria-label="Places" className="fixed inset-x-0 bottom-0 z-20 flex border-t border-seam bg-cloth px-1 pb-[env(safe-area-inset-bottom)] tablet:static tablet:mt-4 tablet:w-full tablet:flex-col tablet:gap-1 tablet:border-t-0 tablet:p-0">
+          <nav
+            aria-label="Places"
+            className="fixed inset-x-0 bottom-0 z-20 flex border-t border-seam bg-cloth px-1 pb-[env(safe-area-inset-bottom)] tablet:static tablet:mt-4 tablet:w-full tablet:flex-col tablet:gap-1 tablet:border-t-0 tablet:p-0"
+          >
             {places.map((place) => (
               <RailLink key={place.to} place={place} />
             ))}
@@ -61,10 +67,15 @@ export function Component() {
       {team?.isDemo === true ? (
         <p className="flex items-center justify-center gap-2 border-b border-seam bg-weld-wash px-4 py-1 text-center text-table">
           <Badge tone="weld">Invented data</Badge>
-          <span className="hidden tablet:inline">{team.teamName} is a made-up laboratory to try things with. Nothing here was measured.</span>
+          <span className="hidden tablet:inline">
+            {team.teamName} is a made-up laboratory to try things with. Nothing here was measured.
+          </span>
         </p>
       ) : null}
-      <div aria-hidden="true" className={classNames('fixed inset-x-0 top-0 z-40 h-0.5 bg-indigo transition-opacity', isMoving ? 'opacity-100' : 'opacity-0')} />
+      <div
+        aria-hidden="true"
+        className={classNames('fixed inset-x-0 top-0 z-40 h-0.5 bg-indigo transition-opacity', isMoving ? 'opacity-100' : 'opacity-0')}
+      />
       <main id="content" tabIndex={-1} className="mx-auto max-w-[1520px] px-4 pt-5 pb-24 outline-none tablet:px-8 tablet:pt-7 tablet:pb-12">
         <Suspense fallback={<LoadingState />}>
           <Outlet />

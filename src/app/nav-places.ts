@@ -10,7 +10,8 @@ export interface NavPlace {
 }
 
 /** Whether an address lies in a place. */
-export const isAtPlace = (place: NavPlace, pathname: string): boolean => place.roots.some((root) => pathname === root || pathname.startsWith(`${root}/`));
+export const isAtPlace = (place: NavPlace, pathname: string): boolean =>
+  place.roots.some((root) => pathname === root || pathname.startsWith(`${root}/`));
 
 /** The places of the left rail, for a person with a team. */
 export function navPlaces(teamId: string): readonly NavPlace[] {

@@ -61,7 +61,12 @@ export const router = createBrowserRouter([
           },
         ],
       },
-      { path: '*', loader: () => { throw new Response(null, { status: 404 }); } },
+      {
+        path: '*',
+        loader: () => {
+          throw new Response(null, { status: 404 });
+        },
+      },
     ],
   },
 ]);

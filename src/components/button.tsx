@@ -31,10 +31,30 @@ interface ButtonLook {
 }
 
 /** A button with a verb on it. One `primary` a view. */
-export function Button({ variant = 'secondary', size = 'regular', icon, isBusy = false, className, children, disabled, type = 'button', ...rest }: ComponentProps<'button'> & ButtonLook & { isBusy?: boolean }) {
+export function Button({
+  variant = 'secondary',
+  size = 'regular',
+  icon,
+  isBusy = false,
+  className,
+  children,
+  disabled,
+  type = 'button',
+  ...rest
+}: ComponentProps<'button'> & ButtonLook & { isBusy?: boolean }) {
   return (
-    <button type={type} className={buttonClass(variant, size, className)} disabled={disabled === true || isBusy} aria-busy={isBusy || undefined} {...rest}>
-      {isBusy ? <span aria-hidden="true" className="size-3.5 animate-spin rounded-full border-2 border-current border-t-transparent" /> : icon}
+    <button
+      type={type}
+      className={buttonClass(variant, size, className)}
+      disabled={disabled === true || isBusy}
+      aria-busy={isBusy || undefined}
+      {...rest}
+    >
+      {isBusy ? (
+        <span aria-hidden="true" className="size-3.5 animate-spin rounded-full border-2 border-current border-t-transparent" />
+      ) : (
+        icon
+      )}
       {children}
     </button>
   );

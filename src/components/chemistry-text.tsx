@@ -4,7 +4,11 @@ import { classNames } from '../lib/class-names';
 /** A molecular formula with real subscripts: C₉H₁₀O₂. Copies as plain text. */
 export function Formula({ formula, className }: { formula: string; className?: string }) {
   const parts = formula.match(/[A-Z][a-z]?|\d+|./g) ?? [];
-  return <span className={classNames('whitespace-nowrap', className)}>{parts.map((part, index): ReactNode => (/^\d+$/.test(part) ? <sub key={index}>{part}</sub> : part))}</span>;
+  return (
+    <span className={classNames('whitespace-nowrap', className)}>
+      {parts.map((part, index): ReactNode => (/^\d+$/.test(part) ? <sub key={index}>{part}</sub> : part))}
+    </span>
+  );
 }
 
 /** Name of a nucleus: ¹³C, ¹H. */

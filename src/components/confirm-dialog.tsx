@@ -4,7 +4,25 @@ import { Dialog } from './dialog';
 import { InlineError } from './field';
 
 /** Asks before something that cannot be taken back. `confirmLabel` is the verb: "Strike out", "Remove member". */
-export function ConfirmDialog({ title, children, confirmLabel, isDestructive = false, isBusy = false, error, onConfirm, onCancel }: { title: ReactNode; children: ReactNode; confirmLabel: string; isDestructive?: boolean; isBusy?: boolean; error?: string | undefined; onConfirm: () => void; onCancel: () => void }) {
+export function ConfirmDialog({
+  title,
+  children,
+  confirmLabel,
+  isDestructive = false,
+  isBusy = false,
+  error,
+  onConfirm,
+  onCancel,
+}: {
+  title: ReactNode;
+  children: ReactNode;
+  confirmLabel: string;
+  isDestructive?: boolean;
+  isBusy?: boolean;
+  error?: string | undefined;
+  onConfirm: () => void;
+  onCancel: () => void;
+}) {
   return (
     <Dialog
       title={title}

@@ -43,7 +43,10 @@ export function Dialog({ title, children, footer, onClose, width = 'regular' }: 
       onMouseDown={(event) => {
         if (event.target === ref.current) onClose?.();
       }}
-      className={classNames('m-auto max-h-[calc(100dvh-2rem)] w-[calc(100vw-2rem)] flex-col overflow-hidden rounded-panel border border-seam bg-cloth p-0 text-ink open:flex', WIDTHS[width])}
+      className={classNames(
+        'm-auto max-h-[calc(100dvh-2rem)] w-[calc(100vw-2rem)] flex-col overflow-hidden rounded-panel border border-seam bg-cloth p-0 text-ink open:flex',
+        WIDTHS[width],
+      )}
     >
       <header className="flex items-center justify-between gap-4 border-b border-seam py-2.5 pr-3 pl-5">
         <h2 id={titleId} className="text-lead">

@@ -3,7 +3,17 @@ import { Notice } from './status-word';
 import { Time } from './time';
 
 /** Offers an edit that was never saved: after an ended session, a closed tab, a crash. */
-export function DraftOffer({ savedAt, what, onTake, onDecline }: { savedAt: string; what: string; onTake: () => void; onDecline: () => void }) {
+export function DraftOffer({
+  savedAt,
+  what,
+  onTake,
+  onDecline,
+}: {
+  savedAt: string;
+  what: string;
+  onTake: () => void;
+  onDecline: () => void;
+}) {
   return (
     <Notice tone="weld" title={`Unsaved ${what}`} className="mb-4">
       <p>

@@ -21,7 +21,14 @@ interface FieldProps {
 }
 
 /** Label, control, hint and inline error as one. */
-export function Field({ label, hint, error, isLabelHidden = false, className, children }: FieldProps & { children: (control: FieldControl) => ReactNode }) {
+export function Field({
+  label,
+  hint,
+  error,
+  isLabelHidden = false,
+  className,
+  children,
+}: FieldProps & { children: (control: FieldControl) => ReactNode }) {
   const id = useId();
   const hintId = `${id}-hint`;
   const errorId = `${id}-error`;
@@ -31,7 +38,11 @@ export function Field({ label, hint, error, isLabelHidden = false, className, ch
       <label htmlFor={id} className={isLabelHidden ? 'sr-only' : 'mb-1 block text-table font-semibold'}>
         {label}
       </label>
-      {children({ id, 'aria-invalid': error === undefined ? undefined : true, 'aria-describedby': describedBy === '' ? undefined : describedBy })}
+      {children({
+        id,
+        'aria-invalid': error === undefined ? undefined : true,
+        'aria-describedby': describedBy === '' ? undefined : describedBy,
+      })}
       <InlineError id={errorId} message={error} />
       {hint === undefined ? null : (
         <p id={hintId} className="mt-1 text-small text-faded">
@@ -55,7 +66,15 @@ export function InlineError({ id, message }: { id?: string; message: string | un
 
 type WithField<P> = Omit<P, 'id' | 'aria-invalid' | 'aria-describedby' | 'className'> & FieldProps & { controlClassName?: string };
 
-export function TextInput({ label, hint, error, isLabelHidden = false, className, controlClassName, ...input }: WithField<ComponentProps<'input'>>) {
+export function TextInput({
+  label,
+  hint,
+  error,
+  isLabelHidden = false,
+  className,
+  controlClassName,
+  ...input
+}: WithField<ComponentProps<'input'>>) {
   return (
     <Field label={label} hint={hint} error={error} isLabelHidden={isLabelHidden} className={className}>
       {(control) => <input type="text" className={classNames('control', controlClassName)} {...input} {...control} />}
@@ -63,7 +82,16 @@ export function TextInput({ label, hint, error, isLabelHidden = false, className
   );
 }
 
-export function TextArea({ label, hint, error, isLabelHidden = false, className, controlClassName, rows = 3, ...input }: WithField<ComponentProps<'textarea'>>) {
+export function TextArea({
+  label,
+  hint,
+  error,
+  isLabelHidden = false,
+  className,
+  controlClassName,
+  rows = 3,
+  ...input
+}: WithField<ComponentProps<'textarea'>>) {
   return (
     <Field label={label} hint={hint} error={error} isLabelHidden={isLabelHidden} className={className}>
       {(control) => <textarea rows={rows} className={classNames('control resize-y', controlClassName)} {...input} {...control} />}
@@ -76,7 +104,21 @@ export interface SelectOption<V extends string = string> {
   label: string;
 }
 
-export function Select<V extends string>({ label, hint, error, isLabelHidden = false, className, controlClassName, options, onValueChange, onChange, ...input }: WithField<Omit<ComponentProps<'select'>, 'children'>> & { options: ReadonlyArray<SelectOption<V>>; onValueChange?: (value: V) => void }) {
+export function Select<V extends string>({
+  label,
+  hint,
+  error,
+  isLabelHidden = false,
+  className,
+  controlClassName,
+  options,
+  onValueChange,
+  onChange,
+  ...input
+}: WithField<Omit<ComponentProps<'select'>, 'children'>> & {
+  options: ReadonlyArray<SelectOption<V>>;
+  onValueChange?: (value: V) => void;
+}) {
   return (
     <Field label={label} hint={hint} error={error} isLabelHidden={isLabelHidden} className={className}>
       {(control) => (
@@ -104,12 +146,23 @@ export function Select<V extends string>({ label, hint, error, isLabelHidden = f
   );
 }
 
-export function Checkbox({ label, hint, className, ...input }: Omit<ComponentProps<'input'>, 'type'> & { label: ReactNode; hint?: ReactNode }) {
+export function Checkbox({
+  label,
+  hint,
+  className,
+  ...input
+}: Omit<ComponentProps<'input'>, 'type'> & { label: ReactNode; hint?: ReactNode }) {
   const id = useId();
   return (
     <div className={className}>
       <label htmlFor={id} className="inline-flex items-start gap-2">
-        <input id={id} type="checkbox" className="mt-[3px] size-4 shrink-0 accent-indigo" aria-describedby={hint === undefined ? undefined : `${id}-hint`} {...input} />
+        <input
+          id={id}
+          type="checkbox"
+          className="mt-[3px] size-4 shrink-0 accent-indigo"
+          aria-describedby={hint === undefined ? undefined : `${id}-hint`}
+          {...input}
+        />
         <span>{label}</span>
       </label>
       {hint === undefined ? null : (

@@ -2,7 +2,14 @@ import type { ComponentProps, ReactNode } from 'react';
 import { classNames } from '../lib/class-names';
 
 /** A button that is only an icon; `label` is what it does, for screen readers and as a hint. */
-export function IconButton({ label, icon, tone = 'plain', className, type = 'button', ...rest }: Omit<ComponentProps<'button'>, 'children'> & { label: string; icon: ReactNode; tone?: 'plain' | 'danger' }) {
+export function IconButton({
+  label,
+  icon,
+  tone = 'plain',
+  className,
+  type = 'button',
+  ...rest
+}: Omit<ComponentProps<'button'>, 'children'> & { label: string; icon: ReactNode; tone?: 'plain' | 'danger' }) {
   return (
     <button
       type={type}

@@ -45,14 +45,27 @@ export function Menu({ label, trigger, triggerClassName, placement, children }: 
         if (event.relatedTarget !== null && !event.currentTarget.contains(event.relatedTarget)) close();
       }}
     >
-      <button ref={button} type="button" aria-label={label} aria-expanded={isOpen} aria-controls={panelId} className={triggerClassName} onClick={() => setIsOpen(!isOpen)}>
+      <button
+        ref={button}
+        type="button"
+        aria-label={label}
+        aria-expanded={isOpen}
+        aria-controls={panelId}
+        className={triggerClassName}
+        onClick={() => setIsOpen(!isOpen)}
+      >
         {trigger}
       </button>
-      <div id={panelId} hidden={!isOpen} className={classNames('absolute z-30 w-64 rounded-panel border border-selvage bg-cloth py-1', PLACEMENTS[placement])}>
+      <div
+        id={panelId}
+        hidden={!isOpen}
+        className={classNames('absolute z-30 w-64 rounded-panel border border-selvage bg-cloth py-1', PLACEMENTS[placement])}
+      >
         {isOpen ? children(close) : null}
       </div>
     </div>
   );
 }
 
-export const menuItemClass = 'flex w-full items-center gap-2.5 px-3 py-1.5 text-left text-ink no-underline hover:bg-fold focus-visible:outline-offset-[-2px]';
+export const menuItemClass =
+  'flex w-full items-center gap-2.5 px-3 py-1.5 text-left text-ink no-underline hover:bg-fold focus-visible:outline-offset-[-2px]';

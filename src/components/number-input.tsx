@@ -18,14 +18,31 @@ interface NumberInputProps extends Omit<ComponentProps<'input'>, 'value' | 'onCh
 }
 
 /** A number as text, so that half-typed and wrong input stays visible and gets a message instead of vanishing. */
-export function NumberInput({ label, hint, error, isLabelHidden = false, className, controlClassName, value, onValueChange, unit, ...input }: NumberInputProps) {
+export function NumberInput({
+  label,
+  hint,
+  error,
+  isLabelHidden = false,
+  className,
+  controlClassName,
+  value,
+  onValueChange,
+  unit,
+  ...input
+}: NumberInputProps) {
   const [text, setText] = useState(value === null || Number.isNaN(value) ? '' : String(value));
   const read = parseNumberText(text);
   const textValue = read.kind === 'number' ? read.value : read.kind === 'empty' ? null : Number.NaN;
   // The value was changed from outside (pasted, restored): show it instead of what was typed.
   if (!Object.is(textValue, value)) setText(value === null || Number.isNaN(value) ? (Number.isNaN(value) ? text : '') : String(value));
   return (
-    <Field label={label} hint={hint} error={read.kind === 'notNumber' ? (error ?? 'expected a number') : error} isLabelHidden={isLabelHidden} {...(className === undefined ? {} : { className })}>
+    <Field
+      label={label}
+      hint={hint}
+      error={read.kind === 'notNumber' ? (error ?? 'expected a number') : error}
+      isLabelHidden={isLabelHidden}
+      {...(className === undefined ? {} : { className })}
+    >
       {(control) => (
         <span className="relative block">
           <input

@@ -2,10 +2,27 @@ import { useId, type ReactNode } from 'react';
 import { classNames } from '../lib/class-names';
 
 /** A piece of cloth on the linen: seam around it, title and actions above a second seam. */
-export function Panel({ title, actions, children, className, bodyClassName, isFlush = false }: { title?: ReactNode; actions?: ReactNode; children: ReactNode; className?: string; bodyClassName?: string; isFlush?: boolean }) {
+export function Panel({
+  title,
+  actions,
+  children,
+  className,
+  bodyClassName,
+  isFlush = false,
+}: {
+  title?: ReactNode;
+  actions?: ReactNode;
+  children: ReactNode;
+  className?: string;
+  bodyClassName?: string;
+  isFlush?: boolean;
+}) {
   const id = useId();
   return (
-    <section aria-labelledby={title === undefined ? undefined : id} className={classNames('min-w-0 rounded-panel border border-seam bg-cloth', className)}>
+    <section
+      aria-labelledby={title === undefined ? undefined : id}
+      className={classNames('min-w-0 rounded-panel border border-seam bg-cloth', className)}
+    >
       {title === undefined && actions === undefined ? null : (
         <header className="flex min-h-11 flex-wrap items-center justify-between gap-x-4 gap-y-2 border-b border-seam px-4 py-1.5">
           <h2 id={id} className="text-body font-semibold">

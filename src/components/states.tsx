@@ -9,7 +9,15 @@ import { Notice } from './status-word';
 export function EmptyState({ title, children, action }: { title: ReactNode; children?: ReactNode; action?: ReactNode }) {
   return (
     <div className="flex flex-col items-center px-6 py-12 text-center">
-      <svg aria-hidden="true" viewBox="0 0 96 32" className="mb-4 h-8 w-24 text-seam" fill="none" stroke="currentColor" strokeWidth="2" strokeLinecap="round">
+      <svg
+        aria-hidden="true"
+        viewBox="0 0 96 32"
+        className="mb-4 h-8 w-24 text-seam"
+        fill="none"
+        stroke="currentColor"
+        strokeWidth="2"
+        strokeLinecap="round"
+      >
         <path d="M2 6h92M2 16h92M2 26h92" strokeDasharray="6 8" />
       </svg>
       <h2 className="text-lead">{title}</h2>
@@ -32,7 +40,15 @@ export function LoadingState({ label = 'Loading', lines = 5, className }: { labe
 }
 
 /** What failed and a way to try again. */
-export function ErrorState({ title = 'This could not be loaded', error, onRetry }: { title?: ReactNode; error: unknown; onRetry?: () => void }) {
+export function ErrorState({
+  title = 'This could not be loaded',
+  error,
+  onRetry,
+}: {
+  title?: ReactNode;
+  error: unknown;
+  onRetry?: () => void;
+}) {
   return (
     <div role="alert" className="p-4">
       <Notice tone="madder" title={title}>

@@ -1,11 +1,32 @@
-import { Archive, Ban, Check, CircleAlert, CircleDashed, CircleDot, Clock, Hourglass, Info, Pause, ThumbsDown, ThumbsUp, TriangleAlert, type LucideIcon } from 'lucide-react';
+import {
+  Archive,
+  Ban,
+  Check,
+  CircleAlert,
+  CircleDashed,
+  CircleDot,
+  Clock,
+  Hourglass,
+  Info,
+  Pause,
+  ThumbsDown,
+  ThumbsUp,
+  TriangleAlert,
+  type LucideIcon,
+} from 'lucide-react';
 import type { ReactNode } from 'react';
 import type { RunStatus, UnknownStatus, Verdict } from '../../shared/types/states';
 import { classNames } from '../lib/class-names';
 
 export type Tone = 'neutral' | 'indigo' | 'verdigris' | 'weld' | 'madder';
 
-const TEXT: Record<Tone, string> = { neutral: 'text-faded', indigo: 'text-indigo', verdigris: 'text-verdigris', weld: 'text-weld', madder: 'text-madder' };
+const TEXT: Record<Tone, string> = {
+  neutral: 'text-faded',
+  indigo: 'text-indigo',
+  verdigris: 'text-verdigris',
+  weld: 'text-weld',
+  madder: 'text-madder',
+};
 const WASH: Record<Tone, string> = {
   neutral: 'bg-fold text-faded',
   indigo: 'bg-indigo-wash text-indigo',
@@ -16,7 +37,17 @@ const WASH: Record<Tone, string> = {
 
 /** A short mark on a wash of its dye. */
 export function Badge({ tone = 'neutral', children, className }: { tone?: Tone; children: ReactNode; className?: string }) {
-  return <span className={classNames('inline-flex items-center gap-1 rounded-small px-1.5 text-small font-semibold whitespace-nowrap', WASH[tone], className)}>{children}</span>;
+  return (
+    <span
+      className={classNames(
+        'inline-flex items-center gap-1 rounded-small px-1.5 text-small font-semibold whitespace-nowrap',
+        WASH[tone],
+        className,
+      )}
+    >
+      {children}
+    </span>
+  );
 }
 
 /** A state: an icon and a word, coloured the same. */
@@ -69,7 +100,17 @@ export const RunStatusWord = ({ status }: { status: RunStatus }) => <LookWord lo
 export const VerdictWord = ({ verdict }: { verdict: Verdict }) => <LookWord look={VERDICT_LOOKS[verdict]} />;
 
 /** A remark in the flow of a page: icon, wash, sentence. */
-export function Notice({ tone = 'neutral', title, children, className }: { tone?: Tone; title?: ReactNode; children?: ReactNode; className?: string }) {
+export function Notice({
+  tone = 'neutral',
+  title,
+  children,
+  className,
+}: {
+  tone?: Tone;
+  title?: ReactNode;
+  children?: ReactNode;
+  className?: string;
+}) {
   const Icon = tone === 'madder' ? CircleAlert : tone === 'weld' ? TriangleAlert : tone === 'verdigris' ? Check : Info;
   return (
     <div className={classNames('flex items-start gap-2.5 rounded-panel px-3 py-2', WASH[tone], className)}>

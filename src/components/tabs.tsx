@@ -23,7 +23,8 @@ export function TabLinks({ label, links }: { label: string; links: readonly TabL
   useEffect(() => {
     // On a narrow screen the bar scrolls; the current tab must not stay outside.
     const current = bar.current?.querySelector<HTMLElement>('[aria-current="page"]');
-    if (bar.current !== null && current !== null && current !== undefined) bar.current.scrollLeft = current.offsetLeft - (bar.current.clientWidth - current.offsetWidth) / 2;
+    if (bar.current !== null && current !== null && current !== undefined)
+      bar.current.scrollLeft = current.offsetLeft - (bar.current.clientWidth - current.offsetWidth) / 2;
   }, [pathname]);
   return (
     <nav ref={bar} aria-label={label} className={classNames(barClass, 'relative')}>
@@ -43,13 +44,26 @@ export interface TabItem<K extends string> {
 }
 
 /** Tabs inside one view; arrow keys move between them. The panel is what `children` gives for the current key. */
-export function Tabs<K extends string>({ label, items, current, onSelect, children }: { label: string; items: ReadonlyArray<TabItem<K>>; current: K; onSelect: (key: K) => void; children: ReactNode }) {
+export function Tabs<K extends string>({
+  label,
+  items,
+  current,
+  onSelect,
+  children,
+}: {
+  label: string;
+  items: ReadonlyArray<TabItem<K>>;
+  current: K;
+  onSelect: (key: K) => void;
+  children: ReactNode;
+}) {
   const id = useId();
   const bar = useRef<HTMLDivElement>(null);
   const onKeyDown = (event: KeyboardEvent) => {
     const index = items.findIndex((item) => item.key === current);
     const step = event.key === 'ArrowRight' ? 1 : event.key === 'ArrowLeft' ? -1 : 0;
-    const target = event.key === 'Home' ? 0 : event.key === 'End' ? items.length - 1 : step === 0 ? -1 : (index + step + items.length) % items.length;
+    const target =
+      event.key === 'Home' ? 0 : event.key === 'End' ? items.length - 1 : step === 0 ? -1 : (index + step + items.length) % items.length;
     const item = items[target];
     if (item === undefined) return;
     event.preventDefault();

@@ -24,7 +24,14 @@ export function ThemeSwitch() {
             current === value ? 'bg-indigo-wash font-semibold text-indigo' : 'text-faded hover:bg-fold',
           )}
         >
-          <input type="radio" className="sr-only" name={name} value={value} checked={current === value} onChange={() => chooseTheme(value)} />
+          <input
+            type="radio"
+            className="sr-only"
+            name={name}
+            value={value}
+            checked={current === value}
+            onChange={() => chooseTheme(value)}
+          />
           <Icon aria-hidden="true" className="size-4" />
           {label}
         </label>

@@ -15,7 +15,10 @@ export function Toaster() {
       {toasts.map((toast) => {
         const Icon = ICONS[toast.tone];
         return (
-          <div key={toast.id} className="pointer-events-auto flex max-w-[560px] items-start gap-2.5 rounded-panel border border-selvage bg-cloth py-2 pr-2 pl-3">
+          <div
+            key={toast.id}
+            className="pointer-events-auto flex max-w-[560px] items-start gap-2.5 rounded-panel border border-selvage bg-cloth py-2 pr-2 pl-3"
+          >
             <Icon aria-hidden="true" className={classNames('mt-[3px] size-4 shrink-0', TONES[toast.tone])} />
             <p className="min-w-0 py-px">{toast.text}</p>
             <IconButton label="Dismiss" icon={<X className="size-4" />} className="-my-0.5" onClick={() => dismissToast(toast.id)} />

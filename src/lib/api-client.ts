@@ -27,7 +27,8 @@ type BodySlot<N extends EndpointName> = Slot<'body', BodyInput<N>>;
 export type CallOptions<N extends EndpointName> = ParamsSlot<N> & QuerySlot<N> & BodySlot<N> & { signal?: AbortSignal };
 export type EndpointResponse<N extends EndpointName> = EndpointOf<N> extends { response: infer R extends z.ZodType } ? z.output<R> : void;
 
-type Arguments<N extends EndpointName> = Record<never, never> extends CallOptions<N> ? [options?: CallOptions<N>] : [options: CallOptions<N>];
+type Arguments<N extends EndpointName> =
+  Record<never, never> extends CallOptions<N> ? [options?: CallOptions<N>] : [options: CallOptions<N>];
 
 interface RawOptions {
   params?: Readonly<Record<string, string>>;
@@ -51,7 +52,10 @@ function buildUrl(path: string, options: RawOptions): string {
 }
 
 /** Address of an endpoint, for event streams and file links, which the browser fetches itself. */
-export function endpointUrl<N extends EndpointName>(name: N, ...rest: Record<never, never> extends ParamsSlot<N> ? [options?: ParamsSlot<N> & QuerySlot<N>] : [options: ParamsSlot<N> & QuerySlot<N>]): string {
+export function endpointUrl<N extends EndpointName>(
+  name: N,
+  ...rest: Record<never, never> extends ParamsSlot<N> ? [options?: ParamsSlot<N> & QuerySlot<N>] : [options: ParamsSlot<N> & QuerySlot<N>]
+): string {
   return buildUrl(endpoints[name].path, (rest[0] ?? {}) as RawOptions);
 }
 
@@ -60,7 +64,11 @@ async function send(endpoint: Endpoint, options: RawOptions): Promise<Response> 
     method: endpoint.method,
     credentials: 'same-origin',
     // The server asks for this header on every change: a foreign page cannot send it.
-    headers: { Accept: 'application/json', 'X-Isoloom-Request': '1', ...(options.body === undefined ? {} : { 'Content-Type': 'application/json' }) },
+    headers: {
+      Accept: 'application/json',
+      'X-Isoloom-Request': '1',
+      ...(options.body === undefined ? {} : { 'Content-Type': 'application/json' }),
+    },
     ...(options.body === undefined ? {} : { body: JSON.stringify(options.body) }),
     ...(options.signal === undefined ? {} : { signal: options.signal }),
   };
@@ -104,7 +112,16 @@ async function failure(response: Response): Promise<ApiError> {
 }
 
 /** Signing in is where a 401 means a wrong password, not an old session. */
-const WITHOUT_SESSION: ReadonlySet<EndpointName> = new Set(['readInstallation', 'signIn', 'signOut', 'refreshSession', 'requestPasswordReset', 'resetPassword', 'readInvitation', 'acceptInvitation']);
+const WITHOUT_SESSION: ReadonlySet<EndpointName> = new Set([
+  'readInstallation',
+  'signIn',
+  'signOut',
+  'refreshSession',
+  'requestPasswordReset',
+  'resetPassword',
+  'readInvitation',
+  'acceptInvitation',
+]);
 
 /**
  * Calls one endpoint of the API table and returns the parsed response.
@@ -123,7 +140,11 @@ export async function callEndpoint<N extends EndpointName>(name: N, ...rest: Arg
   if (endpoint.response === undefined || response.status === 204) return undefined as EndpointResponse<N>;
   const parsed = endpoint.response.safeParse(await response.json().catch(() => null));
   if (!parsed.success) {
-    throw new ApiError({ status: response.status, code: 'unexpectedResponse', message: 'The server sent something this page does not understand. Reload the page.' });
+    throw new ApiError({
+      status: response.status,
+      code: 'unexpectedResponse',
+      message: 'The server sent something this page does not understand. Reload the page.',
+    });
   }
   // The schema of the table has just proved the shape that EndpointResponse derives from it.
   return parsed.data as EndpointResponse<N>;

@@ -1,4 +1,4 @@
-import { Molecule } from 'openchemlib';
+import type { Molecule } from 'openchemlib';
 import { ATTACHMENT, parseStructure } from './parse-structure';
 
 /** Length of a bond in drawing units; every other length is in the same units. */
@@ -37,7 +37,19 @@ export interface Depiction {
   readonly bounds: { readonly left: number; readonly top: number; readonly width: number; readonly height: number };
 }
 
-const NAMES: Readonly<Record<string, string>> = { C: 'carbon', H: 'hydrogen', N: 'nitrogen', O: 'oxygen', S: 'sulfur', P: 'phosphorus', F: 'fluorine', Cl: 'chlorine', Br: 'bromine', I: 'iodine', Si: 'silicon' };
+const NAMES: Readonly<Record<string, string>> = {
+  C: 'carbon',
+  H: 'hydrogen',
+  N: 'nitrogen',
+  O: 'oxygen',
+  S: 'sulfur',
+  P: 'phosphorus',
+  F: 'fluorine',
+  Cl: 'chlorine',
+  Br: 'bromine',
+  I: 'iodine',
+  Si: 'silicon',
+};
 const SIDES: ReadonlyArray<readonly [Side, number]> = [
   ['right', 0],
   ['left', Math.PI],
@@ -87,12 +99,18 @@ function ringCentre(molecule: Molecule, bond: number, at: (atom: number) => Poin
   let chosen = -1;
   for (let ring = 0; ring < rings.getSize(); ring++) {
     if (!rings.isBondMember(ring, bond)) continue;
-    const isBetter = chosen < 0 || (rings.isAromatic(ring) && !rings.isAromatic(chosen)) || (rings.isAromatic(ring) === rings.isAromatic(chosen) && rings.getRingSize(ring) < rings.getRingSize(chosen));
+    const isBetter =
+      chosen < 0 ||
+      (rings.isAromatic(ring) && !rings.isAromatic(chosen)) ||
+      (rings.isAromatic(ring) === rings.isAromatic(chosen) && rings.getRingSize(ring) < rings.getRingSize(chosen));
     if (isBetter) chosen = ring;
   }
   if (chosen < 0) return null;
   const members = rings.getRingAtoms(chosen).map(at);
-  return { x: members.reduce((sum, point) => sum + point.x, 0) / members.length, y: members.reduce((sum, point) => sum + point.y, 0) / members.length };
+  return {
+    x: members.reduce((sum, point) => sum + point.x, 0) / members.length,
+    y: members.reduce((sum, point) => sum + point.y, 0) / members.length,
+  };
 }
 
 /**
@@ -105,7 +123,10 @@ export function depictStructure(smiles: string): Depiction {
   const molecule = parseStructure(smiles);
   const count = molecule.getAllAtoms();
   const scale = BOND / (molecule.getAverageBondLength(false) || 1);
-  const points: Point[] = Array.from({ length: count }, (_, atom) => ({ x: molecule.getAtomX(atom) * scale, y: molecule.getAtomY(atom) * scale }));
+  const points: Point[] = Array.from({ length: count }, (_, atom) => ({
+    x: molecule.getAtomX(atom) * scale,
+    y: molecule.getAtomY(atom) * scale,
+  }));
   const at = (atom: number): Point => points[atom] ?? { x: 0, y: 0 };
 
   const atoms: DrawnAtom[] = points.map((point, atom) => {
@@ -141,7 +162,12 @@ export function depictStructure(smiles: string): Depiction {
   return { atoms, bonds, bounds: boundsOf(atoms) };
 }
 
-function bondLines(molecule: Molecule, bond: number, atoms: readonly DrawnAtom[], at: (atom: number) => Point): Array<readonly [Point, Point]> {
+function bondLines(
+  molecule: Molecule,
+  bond: number,
+  atoms: readonly DrawnAtom[],
+  at: (atom: number) => Point,
+): Array<readonly [Point, Point]> {
   const begin = molecule.getBondAtom(0, bond);
   const end = molecule.getBondAtom(1, bond);
   const a = at(begin);
@@ -185,7 +211,12 @@ function boundsOf(atoms: readonly DrawnAtom[]): Depiction['bounds'] {
   const box = { left: Infinity, top: Infinity, right: -Infinity, bottom: -Infinity };
   for (const atom of atoms) {
     const letters = atom.isLabelled ? 9 : 4;
-    const side = (wanted: Side) => (atom.isLabelled && atom.hydrogens > 0 && atom.hydrogenSide === wanted ? 14 : atom.isLabelled && wanted === 'right' && atom.charge !== 0 ? 8 : 0);
+    const side = (wanted: Side) =>
+      atom.isLabelled && atom.hydrogens > 0 && atom.hydrogenSide === wanted
+        ? 14
+        : atom.isLabelled && wanted === 'right' && atom.charge !== 0
+          ? 8
+          : 0;
     box.left = Math.min(box.left, atom.x - letters - side('left'));
     box.right = Math.max(box.right, atom.x + letters + side('right'));
     box.top = Math.min(box.top, atom.y - letters - side('up'));

@@ -45,9 +45,19 @@ export function StructureDrawing({ isExpandable = false, ...drawing }: Structure
   return (
     <div className={classNames('group/drawing relative', className)} style={{ width, maxWidth: '100%' }}>
       {svg}
-      <IconButton label="Show larger" icon={<Maximize2 className="size-3.5" />} className="absolute top-0 right-0 opacity-0 group-hover/drawing:opacity-100 focus-visible:opacity-100" onClick={() => setIsLarge(true)} />
+      <IconButton
+        label="Show larger"
+        icon={<Maximize2 className="size-3.5" />}
+        className="absolute top-0 right-0 opacity-0 group-hover/drawing:opacity-100 focus-visible:opacity-100"
+        onClick={() => setIsLarge(true)}
+      />
       {isLarge ? (
-        <Dialog title="Structure" width="wide" onClose={() => setIsLarge(false)} footer={<CopyButton text={drawing.smiles} label="Copy SMILES" />}>
+        <Dialog
+          title="Structure"
+          width="wide"
+          onClose={() => setIsLarge(false)}
+          footer={<CopyButton text={drawing.smiles} label="Copy SMILES" />}
+        >
           <div className="flex justify-center">
             <Suspense fallback={null}>
               <LazySvg {...drawing} width={880} height={520} hasAtomNumbers className="" />

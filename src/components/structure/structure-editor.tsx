@@ -51,9 +51,13 @@ export function StructureEditor({ label, value, onValueChange, kind = 'structure
             height={130}
             alt={`Attachment points of ${value}`}
             onAtomClick={(atom) => void onAtomClick(atom)}
-            atomActionLabel={(atom, name) => (name === 'attachment point' ? 'Close this attachment point' : `Open a bond at ${name} ${atom + 1}`)}
+            atomActionLabel={(atom, name) =>
+              name === 'attachment point' ? 'Close this attachment point' : `Open a bond at ${name} ${atom + 1}`
+            }
           />
-          <p className="max-w-[36ch] min-w-0 flex-1 text-table text-faded">Choose an atom to open a bond there; choose a wave to close it again. Everything else stays as drawn, hydrogens included.</p>
+          <p className="max-w-[36ch] min-w-0 flex-1 text-table text-faded">
+            Choose an atom to open a bond there; choose a wave to close it again. Everything else stays as drawn, hydrogens included.
+          </p>
         </div>
       ) : null}
     </div>

@@ -4,7 +4,19 @@ import type { AtomHalo, StructureDrawingProps } from './structure-drawing';
 
 const FONT_SIZE = 14;
 /** Advance widths of the letters in em, close enough to place hydrogens beside them. */
-const LETTER_WIDTH: Readonly<Record<string, number>> = { N: 0.65, O: 0.68, C: 0.57, S: 0.54, P: 0.58, F: 0.52, I: 0.27, Cl: 0.83, Br: 0.94, Si: 0.79, H: 0.66 };
+const LETTER_WIDTH: Readonly<Record<string, number>> = {
+  N: 0.65,
+  O: 0.68,
+  C: 0.57,
+  S: 0.54,
+  P: 0.58,
+  F: 0.52,
+  I: 0.27,
+  Cl: 0.83,
+  Br: 0.94,
+  Si: 0.79,
+  H: 0.66,
+};
 const PADDING = 6;
 /** A small molecule is not blown up beyond this. */
 const LARGEST_SCALE = 1.25;
@@ -15,17 +27,20 @@ const chargeText = (charge: number) => `${Math.abs(charge) > 1 ? Math.abs(charge
 const cache = new Map<string, Depiction | null>();
 const CACHE_SIZE = 2000;
 
+function tryToDepict(smiles: string): Depiction | null {
+  try {
+    return depictStructure(smiles);
+  } catch {
+    // Not a SMILES: the caller shows the text itself instead of a drawing.
+    return null;
+  }
+}
+
 /** Layout of a SMILES, kept because lists draw the same structures again and again; null = unreadable. */
 function depict(smiles: string): Depiction | null {
   const known = cache.get(smiles);
   if (known !== undefined) return known;
-  let depiction: Depiction | null = null;
-  try {
-    depiction = depictStructure(smiles);
-  } catch {
-    // Not a SMILES: the caller shows the text itself instead of a drawing.
-    depiction = null;
-  }
+  const depiction = tryToDepict(smiles);
   if (cache.size >= CACHE_SIZE) cache.delete(cache.keys().next().value ?? '');
   cache.set(smiles, depiction);
   return depiction;
@@ -74,7 +89,8 @@ function attachmentWave(atom: DrawnAtom, neighbour: Point): string {
   const length = Math.hypot(atom.x - neighbour.x, atom.y - neighbour.y) || 1;
   const across = { x: -(atom.y - neighbour.y) / length, y: (atom.x - neighbour.x) / length };
   const along = { x: (atom.x - neighbour.x) / length, y: (atom.y - neighbour.y) / length };
-  const at = (step: number, bend: number) => `${(atom.x + across.x * step + along.x * bend).toFixed(2)} ${(atom.y + across.y * step + along.y * bend).toFixed(2)}`;
+  const at = (step: number, bend: number) =>
+    `${(atom.x + across.x * step + along.x * bend).toFixed(2)} ${(atom.y + across.y * step + along.y * bend).toFixed(2)}`;
   return `M${at(-8, 0)} Q${at(-6, -3.4)} ${at(-4, 0)} T${at(0, 0)} T${at(4, 0)} T${at(8, 0)}`;
 }
 
@@ -82,7 +98,13 @@ function Halos({ depiction, halos }: { depiction: Depiction; halos: readonly Ato
   return halos.map((halo, index) => {
     const members = new Set(halo.atoms);
     return (
-      <g key={index} style={{ color: `var(--color-${halo.tone})` }} opacity={halo.isFaint === true ? 0.16 : 0.32} stroke="currentColor" fill="currentColor">
+      <g
+        key={index}
+        style={{ color: `var(--color-${halo.tone})` }}
+        opacity={halo.isFaint === true ? 0.16 : 0.32}
+        stroke="currentColor"
+        fill="currentColor"
+      >
         {depiction.bonds.map((bond, position) => {
           const a = depiction.atoms[bond.begin];
           const b = depiction.atoms[bond.end];
@@ -99,12 +121,26 @@ function Halos({ depiction, halos }: { depiction: Depiction; halos: readonly Ato
 }
 
 /** The drawing itself; in its own chunk because it brings the chemistry library along. */
-export function StructureSvg({ smiles, width = 200, height = 150, alt, hasAtomNumbers = false, halos = [], onAtomHover, onAtomClick, atomActionLabel, className }: StructureDrawingProps) {
+export function StructureSvg({
+  smiles,
+  width = 200,
+  height = 150,
+  alt,
+  hasAtomNumbers = false,
+  halos = [],
+  onAtomHover,
+  onAtomClick,
+  atomActionLabel,
+  className,
+}: StructureDrawingProps) {
   const titleId = useId();
   const depiction = depict(smiles);
   if (depiction === null) {
     return (
-      <p className="flex items-center justify-center overflow-hidden p-2 text-center font-mono text-small break-all text-faded" style={{ width, height, maxWidth: '100%' }}>
+      <p
+        className="flex items-center justify-center overflow-hidden p-2 text-center font-mono text-small break-all text-faded"
+        style={{ width, height, maxWidth: '100%' }}
+      >
         {smiles}
       </p>
     );
@@ -134,12 +170,18 @@ export function StructureSvg({ smiles, width = 200, height = 150, alt, hasAtomNu
       <title id={titleId}>{alt ?? `Structure ${smiles}`}</title>
       <Halos depiction={depiction} halos={halos} />
       <g stroke="currentColor" strokeWidth={strokeWidth} strokeLinecap="round" fill="none">
-        {bonds.flatMap((bond, index) => bond.lines.map(([a, b], line) => <line key={`${index}-${line}`} x1={a.x} y1={a.y} x2={b.x} y2={b.y} />))}
+        {bonds.flatMap((bond, index) =>
+          bond.lines.map(([a, b], line) => <line key={`${index}-${line}`} x1={a.x} y1={a.y} x2={b.x} y2={b.y} />),
+        )}
         {atoms.map((atom, index) => {
           if (!atom.isAttachment) return null;
           const bond = bonds.find((candidate) => candidate.begin === index || candidate.end === index);
           const neighbour = bond === undefined ? undefined : atoms[bond.begin === index ? bond.end : bond.begin];
-          return neighbour === undefined ? <circle key={index} cx={atom.x} cy={atom.y} r={4} /> : <path key={index} d={attachmentWave(atom, neighbour)} />;
+          return neighbour === undefined ? (
+            <circle key={index} cx={atom.x} cy={atom.y} r={4} />
+          ) : (
+            <path key={index} d={attachmentWave(atom, neighbour)} />
+          );
         })}
       </g>
       {atoms.map((atom, index) => (
@@ -149,7 +191,14 @@ export function StructureSvg({ smiles, width = 200, height = 150, alt, hasAtomNu
         ? atoms.map((atom, index) => {
             const distance = atom.isLabelled ? 15 : 10;
             return atom.isAttachment ? null : (
-              <text key={index} x={atom.x + atom.gap.x * distance} y={atom.y + atom.gap.y * distance + 3.2} textAnchor="middle" fontSize={9.5} fill="var(--color-faded)">
+              <text
+                key={index}
+                x={atom.x + atom.gap.x * distance}
+                y={atom.y + atom.gap.y * distance + 3.2}
+                textAnchor="middle"
+                fontSize={9.5}
+                fill="var(--color-faded)"
+              >
                 {index + 1}
               </text>
             );
@@ -157,7 +206,13 @@ export function StructureSvg({ smiles, width = 200, height = 150, alt, hasAtomNu
         : null}
       {isInteractive
         ? atoms.map((atom, index) => {
-            const target = { cx: atom.x, cy: atom.y, r: 13, fill: 'transparent', ...(onAtomHover === undefined ? {} : { onPointerEnter: () => onAtomHover(index) }) };
+            const target = {
+              cx: atom.x,
+              cy: atom.y,
+              r: 13,
+              fill: 'transparent',
+              ...(onAtomHover === undefined ? {} : { onPointerEnter: () => onAtomHover(index) }),
+            };
             if (onAtomClick === undefined) return <circle key={index} {...target} onPointerLeave={() => onAtomHover?.(null)} />;
             const onKeyDown = (event: KeyboardEvent) => {
               if (event.key !== 'Enter' && event.key !== ' ') return;

@@ -21,7 +21,8 @@ export const CANDIDATE_PAGE_SIZE = 200;
 export const candidatePageQuery = (runId: string, order: CandidateOrder, page: number) =>
   queryOptions({
     queryKey: candidateKeys.page(runId, order, page),
-    queryFn: ({ signal }) => callEndpoint('listCandidates', { params: { runId }, query: { ...order, page, pageSize: CANDIDATE_PAGE_SIZE }, signal }),
+    queryFn: ({ signal }) =>
+      callEndpoint('listCandidates', { params: { runId }, query: { ...order, page, pageSize: CANDIDATE_PAGE_SIZE }, signal }),
     staleTime: Infinity,
   });
 

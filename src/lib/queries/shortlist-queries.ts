@@ -33,11 +33,17 @@ const mapByIdcode = (list: Shortlist): ReadonlyMap<string, ShortlistItem> => new
 export function useKeepCandidate(unknownId: string) {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (candidate: { readonly id: string; readonly rank: number }) => callEndpoint('addToShortlist', { params: { unknownId }, body: { candidateId: candidate.id } }),
+    mutationFn: (candidate: { readonly id: string; readonly rank: number }) =>
+      callEndpoint('addToShortlist', { params: { unknownId }, body: { candidateId: candidate.id } }),
     onSuccess: async (item, candidate) => {
-      queryClient.setQueryData(shortlistQuery(unknownId).queryKey, (list) => (list === undefined ? list : { items: [...list.items.filter((other) => other.id !== item.id), item] }));
+      queryClient.setQueryData(shortlistQuery(unknownId).queryKey, (list) =>
+        list === undefined ? list : { items: [...list.items.filter((other) => other.id !== item.id), item] },
+      );
       showToast('done', `Rank ${candidate.rank} is on the shortlist.`);
-      await Promise.all([queryClient.invalidateQueries({ queryKey: shortlistKeys.ofUnknown(unknownId) }), queryClient.invalidateQueries({ queryKey: unknownReadKeys.all })]);
+      await Promise.all([
+        queryClient.invalidateQueries({ queryKey: shortlistKeys.ofUnknown(unknownId) }),
+        queryClient.invalidateQueries({ queryKey: unknownReadKeys.all }),
+      ]);
     },
   });
 }

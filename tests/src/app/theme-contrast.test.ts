@@ -2,7 +2,12 @@ import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 
 const css = readFileSync(new URL('../../../src/app/styles.css', import.meta.url), 'utf8');
-const tokens = new Map([...css.matchAll(/--color-([\w-]+): light-dark\((#[0-9a-f]{6}), (#[0-9a-f]{6})\)/g)].map(([, name, light, dark]) => [name, { light, dark }]));
+const tokens = new Map(
+  [...css.matchAll(/--color-([\w-]+): light-dark\((#[0-9a-f]{6}), (#[0-9a-f]{6})\)/g)].map(([, name, light, dark]) => [
+    name,
+    { light, dark },
+  ]),
+);
 
 /** Relative luminance and contrast ratio of WCAG 2.2 (https://www.w3.org/TR/WCAG22/#dfn-contrast-ratio). */
 function luminance(hex: string): number {

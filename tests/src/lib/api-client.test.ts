@@ -62,7 +62,19 @@ describe('a call', () => {
   });
 
   it('carries code, issues and figures of a refusal', async () => {
-    answers = [() => ({ status: 422, body: { error: { code: 'badInput', message: 'Check the fields.', issues: [{ path: 'title', message: 'expected a title' }], figures: { limit: 3 } } } })];
+    answers = [
+      () => ({
+        status: 422,
+        body: {
+          error: {
+            code: 'badInput',
+            message: 'Check the fields.',
+            issues: [{ path: 'title', message: 'expected a title' }],
+            figures: { limit: 3 },
+          },
+        },
+      }),
+    ];
     const error = await failureOf(callEndpoint('createUnknown', { params: { teamId: ids.team }, body: { title: '' } }));
     expect(error).toMatchObject({ status: 422, code: 'badInput', figures: { limit: 3 } });
     expect(issueFor(error, 'title')).toBe('expected a title');
@@ -71,12 +83,17 @@ describe('a call', () => {
 
   it('survives an answer that is no JSON', async () => {
     answers = [() => ({ status: 502, body: undefined })];
-    expect(await failureOf(callEndpoint('listComments', { params: { unknownId: ids.unknown } }))).toMatchObject({ status: 502, code: 'unexpectedResponse' });
+    expect(await failureOf(callEndpoint('listComments', { params: { unknownId: ids.unknown } }))).toMatchObject({
+      status: 502,
+      code: 'unexpectedResponse',
+    });
   });
 
   it('refuses an answer that does not have the shape of the API table', async () => {
     answers = [() => ({ status: 200, body: { comments: [{ id: 'not an id' }] } })];
-    expect(await failureOf(callEndpoint('listComments', { params: { unknownId: ids.unknown } }))).toMatchObject({ code: 'unexpectedResponse' });
+    expect(await failureOf(callEndpoint('listComments', { params: { unknownId: ids.unknown } }))).toMatchObject({
+      code: 'unexpectedResponse',
+    });
   });
 });
 
@@ -84,7 +101,11 @@ describe('an old session', () => {
   it('is renewed once and the call repeated', async () => {
     answers = [unauthorized, me, comments];
     await expect(callEndpoint('listComments', { params: { unknownId: ids.unknown } })).resolves.toEqual({ comments: [] });
-    expect(sent.map(({ url }) => url)).toEqual([`/api/v1/unknowns/${ids.unknown}/comments`, '/api/v1/session/refresh', `/api/v1/unknowns/${ids.unknown}/comments`]);
+    expect(sent.map(({ url }) => url)).toEqual([
+      `/api/v1/unknowns/${ids.unknown}/comments`,
+      '/api/v1/session/refresh',
+      `/api/v1/unknowns/${ids.unknown}/comments`,
+    ]);
   });
 
   it('is renewed once for calls that fail together', async () => {
@@ -107,7 +128,10 @@ describe('an old session', () => {
     const expired = vi.fn();
     const stop = onSessionExpired(expired);
     answers = [unauthorized, () => ({ status: 503, body: { error: { code: 'busy', message: 'Try again in a moment.' } } })];
-    expect(await failureOf(callEndpoint('listComments', { params: { unknownId: ids.unknown } }))).toMatchObject({ status: 503, code: 'busy' });
+    expect(await failureOf(callEndpoint('listComments', { params: { unknownId: ids.unknown } }))).toMatchObject({
+      status: 503,
+      code: 'busy',
+    });
     expect(expired).not.toHaveBeenCalled();
     stop();
   });
@@ -116,7 +140,9 @@ describe('an old session', () => {
     const expired = vi.fn();
     const stop = onSessionExpired(expired);
     answers = [() => ({ status: 401, body: { error: { code: 'wrongPassword', message: 'E-mail or password is wrong.' } } })];
-    expect(await failureOf(callEndpoint('signIn', { body: { email: 'a@b.example', password: 'x' } }))).toMatchObject({ code: 'wrongPassword' });
+    expect(await failureOf(callEndpoint('signIn', { body: { email: 'a@b.example', password: 'x' } }))).toMatchObject({
+      code: 'wrongPassword',
+    });
     expect(expired).not.toHaveBeenCalled();
     expect(sent).toHaveLength(1);
     stop();

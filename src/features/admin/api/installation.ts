@@ -15,13 +15,18 @@ const adminKeys = {
 export const peopleQuery = queryOptions({ queryKey: adminKeys.people(), queryFn: ({ signal }) => callEndpoint('listUsers', { signal }) });
 export const teamsQuery = queryOptions({ queryKey: adminKeys.teams(), queryFn: ({ signal }) => callEndpoint('listTeams', { signal }) });
 export const auditQuery = (page: number) =>
-  queryOptions({ queryKey: adminKeys.audit(page), queryFn: ({ signal }) => callEndpoint('listAudit', { query: { page, pageSize: 50 }, signal }), placeholderData: keepPreviousData });
+  queryOptions({
+    queryKey: adminKeys.audit(page),
+    queryFn: ({ signal }) => callEndpoint('listAudit', { query: { page, pageSize: 50 }, signal }),
+    placeholderData: keepPreviousData,
+  });
 
 export function useUpdatePerson() {
   const queryClient = useQueryClient();
   return useMutation({
     meta: { showsOwnErrors: true },
-    mutationFn: ({ userId, ...body }: { userId: string; isAdmin?: boolean; isDisabled?: boolean }) => callEndpoint('updateUser', { params: { userId }, body }),
+    mutationFn: ({ userId, ...body }: { userId: string; isAdmin?: boolean; isDisabled?: boolean }) =>
+      callEndpoint('updateUser', { params: { userId }, body }),
     onSuccess: () => queryClient.invalidateQueries({ queryKey: adminKeys.people() }),
   });
 }
@@ -31,6 +36,10 @@ export function useCreateTeam() {
   return useMutation({
     meta: { showsOwnErrors: true },
     mutationFn: (name: string) => callEndpoint('createTeam', { body: { name } }),
-    onSuccess: () => Promise.all([queryClient.invalidateQueries({ queryKey: adminKeys.all }), queryClient.invalidateQueries({ queryKey: meQuery.queryKey })]),
+    onSuccess: () =>
+      Promise.all([
+        queryClient.invalidateQueries({ queryKey: adminKeys.all }),
+        queryClient.invalidateQueries({ queryKey: meQuery.queryKey }),
+      ]),
   });
 }

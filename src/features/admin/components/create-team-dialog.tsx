@@ -36,7 +36,14 @@ export function CreateTeamDialog({ onClose }: { onClose: () => void }) {
       }
     >
       <form id={formId} noValidate onSubmit={submit}>
-        <TextInput label="Name" autoFocus maxLength={120} value={name} error={issue ?? issueFor(create.error, 'name') ?? (create.isError ? errorMessage(create.error) : undefined)} onChange={(event) => setName(event.target.value)} />
+        <TextInput
+          label="Name"
+          autoFocus
+          maxLength={120}
+          value={name}
+          error={issue ?? issueFor(create.error, 'name') ?? (create.isError ? errorMessage(create.error) : undefined)}
+          onChange={(event) => setName(event.target.value)}
+        />
       </form>
     </Dialog>
   );

@@ -11,11 +11,38 @@ import { useUpdatePerson, type Person } from '../api/installation';
 
 type Change = 'disable' | 'enable' | 'makeAdmin' | 'takeAdmin';
 
-const QUESTIONS: Record<Change, { title: (name: string) => string; text: string; verb: string; isDestructive: boolean; body: { isAdmin?: boolean; isDisabled?: boolean } }> = {
-  disable: { title: (name) => `Disable ${name}?`, text: 'Open sessions end and signing in is refused. What the person entered stays.', verb: 'Disable', isDestructive: true, body: { isDisabled: true } },
-  enable: { title: (name) => `Enable ${name}?`, text: 'The person can sign in again, with the roles kept from before.', verb: 'Enable', isDestructive: false, body: { isDisabled: false } },
-  makeAdmin: { title: (name) => `Make ${name} an admin?`, text: 'Admins manage people, teams, quotas and audit of the whole installation.', verb: 'Make admin', isDestructive: false, body: { isAdmin: true } },
-  takeAdmin: { title: (name) => `Take admin from ${name}?`, text: 'The person keeps the roles in teams.', verb: 'Take admin', isDestructive: true, body: { isAdmin: false } },
+const QUESTIONS: Record<
+  Change,
+  { title: (name: string) => string; text: string; verb: string; isDestructive: boolean; body: { isAdmin?: boolean; isDisabled?: boolean } }
+> = {
+  disable: {
+    title: (name) => `Disable ${name}?`,
+    text: 'Open sessions end and signing in is refused. What the person entered stays.',
+    verb: 'Disable',
+    isDestructive: true,
+    body: { isDisabled: true },
+  },
+  enable: {
+    title: (name) => `Enable ${name}?`,
+    text: 'The person can sign in again, with the roles kept from before.',
+    verb: 'Enable',
+    isDestructive: false,
+    body: { isDisabled: false },
+  },
+  makeAdmin: {
+    title: (name) => `Make ${name} an admin?`,
+    text: 'Admins manage people, teams, quotas and audit of the whole installation.',
+    verb: 'Make admin',
+    isDestructive: false,
+    body: { isAdmin: true },
+  },
+  takeAdmin: {
+    title: (name) => `Take admin from ${name}?`,
+    text: 'The person keeps the roles in teams.',
+    verb: 'Take admin',
+    isDestructive: true,
+    body: { isAdmin: false },
+  },
 };
 
 export function PeopleTable({ people }: { people: readonly Person[] }) {
@@ -73,10 +100,20 @@ export function PeopleTable({ people }: { people: readonly Person[] }) {
             <Cell align="right">
               {person.abilities.update ? (
                 <span className="inline-flex flex-wrap justify-end gap-1">
-                  <Button size="small" variant="quiet" aria-label={person.isAdmin ? `Take admin from ${person.name}` : `Make ${person.name} an admin`} onClick={() => ask(person, person.isAdmin ? 'takeAdmin' : 'makeAdmin')}>
+                  <Button
+                    size="small"
+                    variant="quiet"
+                    aria-label={person.isAdmin ? `Take admin from ${person.name}` : `Make ${person.name} an admin`}
+                    onClick={() => ask(person, person.isAdmin ? 'takeAdmin' : 'makeAdmin')}
+                  >
                     {person.isAdmin ? 'Take admin' : 'Make admin'}
                   </Button>
-                  <Button size="small" variant="quiet" aria-label={`${person.isDisabled ? 'Enable' : 'Disable'} ${person.name}`} onClick={() => ask(person, person.isDisabled ? 'enable' : 'disable')}>
+                  <Button
+                    size="small"
+                    variant="quiet"
+                    aria-label={`${person.isDisabled ? 'Enable' : 'Disable'} ${person.name}`}
+                    onClick={() => ask(person, person.isDisabled ? 'enable' : 'disable')}
+                  >
                     {person.isDisabled ? 'Enable' : 'Disable'}
                   </Button>
                 </span>

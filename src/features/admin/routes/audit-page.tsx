@@ -38,7 +38,12 @@ function Page() {
           <div className={classNames('transition-opacity', audit.isPlaceholderData && 'opacity-60')}>
             <AuditTable rows={audit.data.rows} />
             <div className="border-t border-seam px-3 py-1.5">
-              <Pagination page={audit.data.page} pageSize={audit.data.pageSize} total={audit.data.total} onPage={(next) => setSearch(next === 1 ? {} : { page: String(next) })} />
+              <Pagination
+                page={audit.data.page}
+                pageSize={audit.data.pageSize}
+                total={audit.data.total}
+                onPage={(next) => setSearch(next === 1 ? {} : { page: String(next) })}
+              />
             </div>
           </div>
         )}

@@ -71,7 +71,10 @@ function Teams() {
         <ul className="divide-y divide-seam">
           {teams.data.teams.map((team) => (
             <li key={team.id}>
-              <Link to={paths.team(team.id)} className="flex items-center justify-between gap-2 px-4 py-2 text-ink no-underline hover:bg-fold hover:text-indigo focus-visible:-outline-offset-2">
+              <Link
+                to={paths.team(team.id)}
+                className="flex items-center justify-between gap-2 px-4 py-2 text-ink no-underline hover:bg-fold hover:text-indigo focus-visible:-outline-offset-2"
+              >
                 <span className="min-w-0 truncate">{team.name}</span>
                 {team.isDemo ? <Badge tone="weld">Invented data</Badge> : null}
               </Link>

@@ -22,7 +22,11 @@ export function DemoAccounts({ onPick }: { onPick: (account: { email: string; pa
       <ul className="mt-2 divide-y divide-seam rounded-panel border border-seam bg-cloth">
         {accounts.map((account) => (
           <li key={account.email}>
-            <button type="button" className="flex w-full flex-wrap items-baseline gap-x-2 px-3 py-2 text-left hover:bg-fold focus-visible:-outline-offset-2" onClick={() => onPick(account)}>
+            <button
+              type="button"
+              className="flex w-full flex-wrap items-baseline gap-x-2 px-3 py-2 text-left hover:bg-fold focus-visible:-outline-offset-2"
+              onClick={() => onPick(account)}
+            >
               <span className="font-semibold">{account.name}</span>
               <span className="text-table text-faded">
                 {account.role}: {ROLE_LINES[account.role]}

@@ -1,6 +1,14 @@
 import { TextInput } from '../../../components/field';
 
-export function NewPasswordField({ value, onValueChange, error }: { value: string; onValueChange: (value: string) => void; error: string | undefined }) {
+export function NewPasswordField({
+  value,
+  onValueChange,
+  error,
+}: {
+  value: string;
+  onValueChange: (value: string) => void;
+  error: string | undefined;
+}) {
   return (
     <TextInput
       label="New password"

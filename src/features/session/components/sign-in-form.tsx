@@ -44,7 +44,15 @@ export function SignInForm({ fixedEmail, onSignedIn, aside, initial }: SignInFor
         error={issues['email'] ?? issueFor(signIn.error, 'email')}
         onChange={(event) => setEmail(event.target.value)}
       />
-      <TextInput label="Password" type="password" autoComplete="current-password" autoFocus={fixedEmail !== undefined} value={password} error={issues['password'] ?? issueFor(signIn.error, 'password')} onChange={(event) => setPassword(event.target.value)} />
+      <TextInput
+        label="Password"
+        type="password"
+        autoComplete="current-password"
+        autoFocus={fixedEmail !== undefined}
+        value={password}
+        error={issues['password'] ?? issueFor(signIn.error, 'password')}
+        onChange={(event) => setPassword(event.target.value)}
+      />
       {signIn.isError ? (
         <div role="alert">
           <Notice tone="madder">{errorMessage(signIn.error)}</Notice>

@@ -66,8 +66,19 @@ function AcceptForm({ token, invitation }: { token: string; invitation: Endpoint
           <TextInput label="E-mail" type="email" autoComplete="username" value={invitation.email} readOnly />
           {invitation.needsAccount ? (
             <>
-              <TextInput label="Your name" autoComplete="name" autoFocus value={name} error={issues['name'] ?? issueFor(accept.error, 'name')} onChange={(event) => setName(event.target.value)} />
-              <NewPasswordField value={password} onValueChange={setPassword} error={issues['password'] ?? issueFor(accept.error, 'password')} />
+              <TextInput
+                label="Your name"
+                autoComplete="name"
+                autoFocus
+                value={name}
+                error={issues['name'] ?? issueFor(accept.error, 'name')}
+                onChange={(event) => setName(event.target.value)}
+              />
+              <NewPasswordField
+                value={password}
+                onValueChange={setPassword}
+                error={issues['password'] ?? issueFor(accept.error, 'password')}
+              />
             </>
           ) : (
             <TextInput

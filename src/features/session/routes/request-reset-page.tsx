@@ -33,7 +33,15 @@ export function Component() {
           </div>
         ) : (
           <form noValidate onSubmit={onSubmit} className="space-y-4">
-            <TextInput label="E-mail" type="email" autoComplete="username" autoFocus value={email} error={issue ?? issueFor(request.error, 'email')} onChange={(event) => setEmail(event.target.value)} />
+            <TextInput
+              label="E-mail"
+              type="email"
+              autoComplete="username"
+              autoFocus
+              value={email}
+              error={issue ?? issueFor(request.error, 'email')}
+              onChange={(event) => setEmail(event.target.value)}
+            />
             {request.isError ? <Notice tone="madder">{errorMessage(request.error)}</Notice> : null}
             <Button type="submit" variant="primary" isBusy={request.isPending}>
               Send link

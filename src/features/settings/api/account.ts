@@ -6,8 +6,15 @@ const accountKeys = {
   quota: (teamId: string) => ['account', 'quota', teamId] as const,
 };
 
-export const sessionsQuery = queryOptions({ queryKey: accountKeys.sessions(), queryFn: ({ signal }) => callEndpoint('listSessions', { signal }) });
-export const ownQuotaQuery = (teamId: string) => queryOptions({ queryKey: accountKeys.quota(teamId), queryFn: ({ signal }) => callEndpoint('readOwnQuota', { params: { teamId }, signal }) });
+export const sessionsQuery = queryOptions({
+  queryKey: accountKeys.sessions(),
+  queryFn: ({ signal }) => callEndpoint('listSessions', { signal }),
+});
+export const ownQuotaQuery = (teamId: string) =>
+  queryOptions({
+    queryKey: accountKeys.quota(teamId),
+    queryFn: ({ signal }) => callEndpoint('readOwnQuota', { params: { teamId }, signal }),
+  });
 
 export function useEndSession() {
   const queryClient = useQueryClient();

@@ -9,7 +9,8 @@ import { ownQuotaQuery } from '../api/account';
 export function OwnQuota({ teamId }: { teamId: string }) {
   const standing = useQuery(ownQuotaQuery(teamId));
   if (standing.isPending) return <LoadingState label="Loading the quota" lines={2} className="p-0" />;
-  if (standing.isError) return <ErrorState title="The quota could not be loaded" error={standing.error} onRetry={() => void standing.refetch()} />;
+  if (standing.isError)
+    return <ErrorState title="The quota could not be loaded" error={standing.error} onRetry={() => void standing.refetch()} />;
   const { quota, usedCpuSeconds, reservedCpuSeconds, runningCount } = standing.data;
   return (
     <div className="space-y-3">
@@ -21,7 +22,8 @@ export function OwnQuota({ teamId }: { teamId: string }) {
         text={`${formatSeconds(usedCpuSeconds)} of ${formatSeconds(quota.cpuSecondsPerMonth)} CPU time this month${reservedCpuSeconds > 0 ? `, ${formatSeconds(reservedCpuSeconds)} reserved` : ''}`}
       />
       <p className="text-table text-faded">
-        {formatCount(runningCount)} of {formatCount(quota.runsAtOnce)} runs at once · up to {formatCount(quota.candidatesPerRun)} candidates a run
+        {formatCount(runningCount)} of {formatCount(quota.runsAtOnce)} runs at once · up to {formatCount(quota.candidatesPerRun)} candidates
+        a run
       </p>
     </div>
   );

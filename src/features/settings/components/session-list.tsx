@@ -11,7 +11,8 @@ export function SessionList() {
   const sessions = useQuery(sessionsQuery);
   const end = useEndSession();
   if (sessions.isPending) return <LoadingState label="Loading sessions" lines={3} />;
-  if (sessions.isError) return <ErrorState title="The sessions could not be loaded" error={sessions.error} onRetry={() => void sessions.refetch()} />;
+  if (sessions.isError)
+    return <ErrorState title="The sessions could not be loaded" error={sessions.error} onRetry={() => void sessions.refetch()} />;
   return (
     <ul className="divide-y divide-seam">
       {sessions.data.sessions.map((session) => (

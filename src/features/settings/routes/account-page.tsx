@@ -32,13 +32,22 @@ export function Component() {
                 ? 'none'
                 : me.memberships.map((membership) => (
                     <p key={membership.teamId}>
-                      {membership.teamName} <span className="text-faded">{membership.role}</span> {membership.isDemo ? <Badge tone="weld">Invented data</Badge> : null}
+                      {membership.teamName} <span className="text-faded">{membership.role}</span>{' '}
+                      {membership.isDemo ? <Badge tone="weld">Invented data</Badge> : null}
                     </p>
                   ))}
             </dd>
             <dt className="text-faded">Password</dt>
             <dd>
-              <Button size="small" isBusy={mailLink.isPending} onClick={() => mailLink.mutate(me.user.email, { onSuccess: () => showToast('done', `A link to set a new password is on its way to ${me.user.email}.`) })}>
+              <Button
+                size="small"
+                isBusy={mailLink.isPending}
+                onClick={() =>
+                  mailLink.mutate(me.user.email, {
+                    onSuccess: () => showToast('done', `A link to set a new password is on its way to ${me.user.email}.`),
+                  })
+                }
+              >
                 Mail me a link to change it
               </Button>
             </dd>

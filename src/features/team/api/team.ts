@@ -18,9 +18,15 @@ const teamKeys = {
   usage: (teamId: string) => [...teamKeys.all, 'usage', teamId] as const,
 };
 
-export const teamQuery = (teamId: string) => queryOptions({ queryKey: teamKeys.detail(teamId), queryFn: ({ signal }) => callEndpoint('readTeam', { params: { teamId }, signal }) });
-export const membersQuery = (teamId: string) => queryOptions({ queryKey: teamKeys.members(teamId), queryFn: ({ signal }) => callEndpoint('listMembers', { params: { teamId }, signal }) });
-export const usageQuery = (teamId: string) => queryOptions({ queryKey: teamKeys.usage(teamId), queryFn: ({ signal }) => callEndpoint('readUsage', { params: { teamId }, signal }) });
+export const teamQuery = (teamId: string) =>
+  queryOptions({ queryKey: teamKeys.detail(teamId), queryFn: ({ signal }) => callEndpoint('readTeam', { params: { teamId }, signal }) });
+export const membersQuery = (teamId: string) =>
+  queryOptions({
+    queryKey: teamKeys.members(teamId),
+    queryFn: ({ signal }) => callEndpoint('listMembers', { params: { teamId }, signal }),
+  });
+export const usageQuery = (teamId: string) =>
+  queryOptions({ queryKey: teamKeys.usage(teamId), queryFn: ({ signal }) => callEndpoint('readUsage', { params: { teamId }, signal }) });
 
 export function useRenameTeam(teamId: string) {
   const queryClient = useQueryClient();
@@ -54,9 +60,14 @@ export function useRevokeInvitation(teamId: string) {
 export function useChangeRole(teamId: string) {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: ({ userId, role }: { userId: string; role: TeamRole }) => callEndpoint('changeRole', { params: { teamId, userId }, body: { role } }),
+    mutationFn: ({ userId, role }: { userId: string; role: TeamRole }) =>
+      callEndpoint('changeRole', { params: { teamId, userId }, body: { role } }),
     // Abilities of other rows hang on it too: a team keeps its last lead.
-    onSettled: () => Promise.all([queryClient.invalidateQueries({ queryKey: teamKeys.all }), queryClient.invalidateQueries({ queryKey: meQuery.queryKey })]),
+    onSettled: () =>
+      Promise.all([
+        queryClient.invalidateQueries({ queryKey: teamKeys.all }),
+        queryClient.invalidateQueries({ queryKey: meQuery.queryKey }),
+      ]),
   });
 }
 
@@ -65,7 +76,11 @@ export function useRemoveMember(teamId: string) {
   return useMutation({
     meta: { showsOwnErrors: true },
     mutationFn: (userId: string) => callEndpoint('removeMember', { params: { teamId, userId } }),
-    onSuccess: () => Promise.all([queryClient.invalidateQueries({ queryKey: teamKeys.all }), queryClient.invalidateQueries({ queryKey: meQuery.queryKey })]),
+    onSuccess: () =>
+      Promise.all([
+        queryClient.invalidateQueries({ queryKey: teamKeys.all }),
+        queryClient.invalidateQueries({ queryKey: meQuery.queryKey }),
+      ]),
   });
 }
 
@@ -73,7 +88,8 @@ export function useSetQuota(teamId: string) {
   const queryClient = useQueryClient();
   return useMutation({
     meta: { showsOwnErrors: true },
-    mutationFn: ({ userId, quota }: { userId: string; quota: Partial<QuotaFigures> }) => callEndpoint('setQuota', { params: { teamId, userId }, body: quota }),
+    mutationFn: ({ userId, quota }: { userId: string; quota: Partial<QuotaFigures> }) =>
+      callEndpoint('setQuota', { params: { teamId, userId }, body: quota }),
     onSuccess: () => queryClient.invalidateQueries({ queryKey: teamKeys.usage(teamId) }),
   });
 }

@@ -33,7 +33,13 @@ export function InvitationTable({ teamId, invitations }: { teamId: string; invit
           </Cell>
           <Cell align="right">
             {invitation.abilities.revoke ? (
-              <IconButton label={`Withdraw the invitation of ${invitation.email}`} tone="danger" icon={<X className="size-4" />} disabled={revoke.isPending} onClick={() => revoke.mutate(invitation.id)} />
+              <IconButton
+                label={`Withdraw the invitation of ${invitation.email}`}
+                tone="danger"
+                icon={<X className="size-4" />}
+                disabled={revoke.isPending}
+                onClick={() => revoke.mutate(invitation.id)}
+              />
             ) : null}
           </Cell>
         </Row>

@@ -37,7 +37,8 @@ export function InviteDialog({ teamId, onClose }: { teamId: string; onClose: () 
         }
       >
         <p>
-          A mail to {invitation.email} is on its way. You can also hand over this link; it works once, until <Time iso={invitation.expiresAt} />.
+          A mail to {invitation.email} is on its way. You can also hand over this link; it works once, until{' '}
+          <Time iso={invitation.expiresAt} />.
         </p>
         <div className="mt-3 flex items-start gap-2">
           <code className="min-w-0 flex-1 rounded-panel border border-seam bg-linen px-3 py-2 font-mono text-small break-all">{link}</code>
@@ -61,9 +62,19 @@ export function InviteDialog({ teamId, onClose }: { teamId: string; onClose: () 
       }
     >
       <form id={formId} noValidate onSubmit={submit} className="space-y-4">
-        <TextInput label="E-mail" type="email" autoComplete="off" autoFocus value={email} error={issue ?? issueFor(invite.error, 'email')} onChange={(event) => setEmail(event.target.value)} />
+        <TextInput
+          label="E-mail"
+          type="email"
+          autoComplete="off"
+          autoFocus
+          value={email}
+          error={issue ?? issueFor(invite.error, 'email')}
+          onChange={(event) => setEmail(event.target.value)}
+        />
         <Select label="Role" options={ROLE_OPTIONS} value={role} hint={ROLE_LINES[role]} onValueChange={setRole} />
-        {invite.error instanceof ApiError && invite.error.issues.length > 0 ? null : invite.isError ? <Notice tone="madder">{errorMessage(invite.error)}</Notice> : null}
+        {invite.error instanceof ApiError && invite.error.issues.length > 0 ? null : invite.isError ? (
+          <Notice tone="madder">{errorMessage(invite.error)}</Notice>
+        ) : null}
       </form>
     </Dialog>
   );

@@ -24,7 +24,14 @@ export function QuotaDialog({ teamId, person, onClose }: { teamId: string; perso
     // An empty field leaves that figure to the role.
     const given = Object.fromEntries(Object.entries(figures).filter(([, value]) => value !== null));
     const parsed = quotaOverrideRequest.safeParse(given);
-    setIssues(Object.fromEntries((parsed.error?.issues ?? []).map((issue) => [String(issue.path[0]), FIELDS.find((field) => field.key === issue.path[0])?.expected ?? issue.message])));
+    setIssues(
+      Object.fromEntries(
+        (parsed.error?.issues ?? []).map((issue) => [
+          String(issue.path[0]),
+          FIELDS.find((field) => field.key === issue.path[0])?.expected ?? issue.message,
+        ]),
+      ),
+    );
     if (!parsed.success) return;
     const quota: Partial<QuotaFigures> = {};
     for (const { key } of FIELDS) {
@@ -49,17 +56,31 @@ export function QuotaDialog({ teamId, person, onClose }: { teamId: string; perso
     >
       <form id={formId} noValidate onSubmit={submit} className="space-y-4">
         {FIELDS.map(({ key, label, unit }) => (
-          <NumberInput key={key} label={label} {...(unit === undefined ? {} : { unit })} value={figures[key]} error={issues[key] ?? issueFor(setQuota.error, key)} onValueChange={(value) => setFigures({ ...figures, [key]: value })} />
+          <NumberInput
+            key={key}
+            label={label}
+            {...(unit === undefined ? {} : { unit })}
+            value={figures[key]}
+            error={issues[key] ?? issueFor(setQuota.error, key)}
+            onValueChange={(value) => setFigures({ ...figures, [key]: value })}
+          />
         ))}
         <p className="flex flex-wrap items-center justify-between gap-2 text-small text-faded">
           An empty field follows the role.
           {person.isOverridden ? (
-            <Button size="small" variant="quiet" disabled={setQuota.isPending} onClick={() => setQuota.mutate({ userId: person.userId, quota: {} }, { onSuccess: onClose })}>
+            <Button
+              size="small"
+              variant="quiet"
+              disabled={setQuota.isPending}
+              onClick={() => setQuota.mutate({ userId: person.userId, quota: {} }, { onSuccess: onClose })}
+            >
               Back to the role
             </Button>
           ) : null}
         </p>
-        {setQuota.isError && !(setQuota.error instanceof ApiError && setQuota.error.issues.length > 0) ? <Notice tone="madder">{errorMessage(setQuota.error)}</Notice> : null}
+        {setQuota.isError && !(setQuota.error instanceof ApiError && setQuota.error.issues.length > 0) ? (
+          <Notice tone="madder">{errorMessage(setQuota.error)}</Notice>
+        ) : null}
       </form>
     </Dialog>
   );

@@ -32,7 +32,14 @@ export function RenameTeamDialog({ teamId, name, onClose }: { teamId: string; na
       }
     >
       <form id={formId} noValidate onSubmit={submit}>
-        <TextInput label="Name" autoFocus maxLength={120} value={text} error={issue ?? issueFor(rename.error, 'name') ?? (rename.isError ? errorMessage(rename.error) : undefined)} onChange={(event) => setText(event.target.value)} />
+        <TextInput
+          label="Name"
+          autoFocus
+          maxLength={120}
+          value={text}
+          error={issue ?? issueFor(rename.error, 'name') ?? (rename.isError ? errorMessage(rename.error) : undefined)}
+          onChange={(event) => setText(event.target.value)}
+        />
       </form>
     </Dialog>
   );

@@ -68,7 +68,15 @@ export function UsageTable({ teamId, people, canSetQuotas }: { teamId: string; p
             <Cell align="right" className="hidden tablet:table-cell">
               {formatCount(person.quota.runsAtOnce)}
             </Cell>
-            <Cell align="right">{canSetQuotas ? <IconButton label={`Set the quota of ${person.name}`} icon={<SlidersHorizontal className="size-4" />} onClick={() => setEdited(person)} /> : null}</Cell>
+            <Cell align="right">
+              {canSetQuotas ? (
+                <IconButton
+                  label={`Set the quota of ${person.name}`}
+                  icon={<SlidersHorizontal className="size-4" />}
+                  onClick={() => setEdited(person)}
+                />
+              ) : null}
+            </Cell>
           </Row>
         ))}
       </Table>

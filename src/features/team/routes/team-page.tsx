@@ -24,8 +24,13 @@ export function Component() {
   const teamId = search.get('team') ?? current?.teamId;
   if (teamId === undefined) {
     return (
-      <EmptyState title="You are in no team yet" action={me.abilities.createTeam ? <ButtonLink to={paths.adminPeople()}>Create a team</ButtonLink> : undefined}>
-        {me.abilities.createTeam ? 'Create a team and invite its members.' : 'Ask a lead for an invitation; unknowns, runs and fragments belong to a team.'}
+      <EmptyState
+        title="You are in no team yet"
+        action={me.abilities.createTeam ? <ButtonLink to={paths.adminPeople()}>Create a team</ButtonLink> : undefined}
+      >
+        {me.abilities.createTeam
+          ? 'Create a team and invite its members.'
+          : 'Ask a lead for an invitation; unknowns, runs and fragments belong to a team.'}
       </EmptyState>
     );
   }
@@ -95,7 +100,10 @@ function People({ teamId }: { teamId: string }) {
   );
 }
 
-const monthName = (month: string) => new Intl.DateTimeFormat('en-GB', { month: 'long', year: 'numeric', timeZone: 'UTC' }).format(new Date(`${month.slice(0, 7)}-01T00:00:00Z`));
+const monthName = (month: string) =>
+  new Intl.DateTimeFormat('en-GB', { month: 'long', year: 'numeric', timeZone: 'UTC' }).format(
+    new Date(`${month.slice(0, 7)}-01T00:00:00Z`),
+  );
 
 function UsagePanel({ teamId, canSetQuotas }: { teamId: string; canSetQuotas: boolean }) {
   const usage = useQuery(usageQuery(teamId));

@@ -16,7 +16,9 @@ export function useCreateComment(unknownId: string) {
     meta: { showsOwnErrors: true },
     mutationFn: (text: string) => callEndpoint('createComment', { params: { unknownId }, body: { text } }),
     onSuccess: (created) => {
-      queryClient.setQueryData<CommentList>(unknownKeys.comments(unknownId), (list) => (list === undefined ? list : { comments: [...list.comments, created] }));
+      queryClient.setQueryData<CommentList>(unknownKeys.comments(unknownId), (list) =>
+        list === undefined ? list : { comments: [...list.comments, created] },
+      );
     },
   });
 }
@@ -26,7 +28,9 @@ export function useRemoveComment(unknownId: string) {
   return useMutation({
     mutationFn: (commentId: string) => callEndpoint('removeComment', { params: { commentId } }),
     onSuccess: (_, commentId) => {
-      queryClient.setQueryData<CommentList>(unknownKeys.comments(unknownId), (list) => (list === undefined ? list : { comments: list.comments.filter((comment) => comment.id !== commentId) }));
+      queryClient.setQueryData<CommentList>(unknownKeys.comments(unknownId), (list) =>
+        list === undefined ? list : { comments: list.comments.filter((comment) => comment.id !== commentId) },
+      );
     },
   });
 }

@@ -35,7 +35,8 @@ export function useUpdateUnknown(unknownId: string, options: { showsOwnErrors?: 
   const queryClient = useQueryClient();
   return useMutation({
     meta: options,
-    mutationFn: (body: Partial<UnknownFields> & { status?: UnknownDetail['status'] }) => callEndpoint('updateUnknown', { params: { unknownId }, body }),
+    mutationFn: (body: Partial<UnknownFields> & { status?: UnknownDetail['status'] }) =>
+      callEndpoint('updateUnknown', { params: { unknownId }, body }),
     onSuccess: async (updated) => {
       queryClient.setQueryData(unknownQuery(updated.id).queryKey, updated);
       await queryClient.invalidateQueries({ queryKey: unknownKeys.lists() });

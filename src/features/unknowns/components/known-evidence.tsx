@@ -9,7 +9,13 @@ import { ErrorState, LoadingState } from '../../../components/states';
 import { revisionQuery, type UnknownDetail } from '../../../lib/unknown-queries';
 import { SignalStrip } from './signal-strip';
 
-function FragmentRow({ title, fragments }: { title: string; fragments: ReadonlyArray<{ smiles: string; count?: number; label?: string | undefined }> }) {
+function FragmentRow({
+  title,
+  fragments,
+}: {
+  title: string;
+  fragments: ReadonlyArray<{ smiles: string; count?: number; label?: string | undefined }>;
+}) {
   if (fragments.length === 0) return null;
   return (
     <div>
@@ -17,7 +23,12 @@ function FragmentRow({ title, fragments }: { title: string; fragments: ReadonlyA
       <ul className="mt-1 flex flex-wrap gap-1.5">
         {fragments.map((fragment, index) => (
           <li key={index} className="flex items-center rounded-small border border-seam pr-1">
-            <StructureDrawing smiles={fragment.smiles} width={76} height={52} alt={`${fragment.label ?? fragment.smiles}${(fragment.count ?? 1) > 1 ? `, ${fragment.count} times` : ''}`} />
+            <StructureDrawing
+              smiles={fragment.smiles}
+              width={76}
+              height={52}
+              alt={`${fragment.label ?? fragment.smiles}${(fragment.count ?? 1) > 1 ? `, ${fragment.count} times` : ''}`}
+            />
             {(fragment.count ?? 1) > 1 ? <span className="text-small tabular">× {fragment.count}</span> : null}
           </li>
         ))}
@@ -36,8 +47,14 @@ function furtherLines(evidence: EvidenceDocument): ReactNode[] {
   if (evidence.infraredBands.length > 0) lines.push(plural(evidence.infraredBands.length, 'IR band', 'IR bands'));
   if (evidence.massPeaks.length > 0) lines.push(plural(evidence.massPeaks.length, 'mass peak', 'mass peaks'));
   if (correlationCount > 0) lines.push(plural(correlationCount, '2D correlation', '2D correlations'));
-  if (evidence.carbonSignals.length + evidence.protonSignals.length > 0 && options.solvent !== '') lines.push(<>in <Formula formula={options.solvent} /></>);
-  if (options.ringSizes.min > 3 || options.ringSizes.max !== null) lines.push(`rings ${options.ringSizes.min}–${options.ringSizes.max ?? 'any'}`);
+  if (evidence.carbonSignals.length + evidence.protonSignals.length > 0 && options.solvent !== '')
+    lines.push(
+      <>
+        in <Formula formula={options.solvent} />
+      </>,
+    );
+  if (options.ringSizes.min > 3 || options.ringSizes.max !== null)
+    lines.push(`rings ${options.ringSizes.min}–${options.ringSizes.max ?? 'any'}`);
   if (!options.plausibility) lines.push('plausibility rules off');
   return lines;
 }
@@ -62,20 +79,27 @@ export function KnownEvidence({ unknown }: { unknown: UnknownDetail }) {
 function CurrentRevision({ revisionId }: { revisionId: string }) {
   const revision = useQuery(revisionQuery(revisionId));
   if (revision.isPending) return <LoadingState label="Loading the evidence" lines={4} className="p-0" />;
-  if (revision.isError) return <ErrorState title="The evidence could not be loaded" error={revision.error} onRetry={() => void revision.refetch()} />;
+  if (revision.isError)
+    return <ErrorState title="The evidence could not be loaded" error={revision.error} onRetry={() => void revision.refetch()} />;
   const { evidence, number } = revision.data;
   const lines = furtherLines(evidence);
   return (
     <div className="space-y-3">
-      {evidence.carbonSignals.length > 0 ? <SignalStrip nucleus="13C" shifts={evidence.carbonSignals.map((signal) => signal.shift)} /> : null}
-      {evidence.protonSignals.length > 0 ? <SignalStrip nucleus="1H" shifts={evidence.protonSignals.map((signal) => signal.shift)} /> : null}
+      {evidence.carbonSignals.length > 0 ? (
+        <SignalStrip nucleus="13C" shifts={evidence.carbonSignals.map((signal) => signal.shift)} />
+      ) : null}
+      {evidence.protonSignals.length > 0 ? (
+        <SignalStrip nucleus="1H" shifts={evidence.protonSignals.map((signal) => signal.shift)} />
+      ) : null}
       <FragmentRow title="Required fragments" fragments={evidence.fragments.required} />
       <FragmentRow title="Excluded fragments" fragments={evidence.fragments.excluded} />
-      {lines.length === 0 ? null : <ul className="flex flex-wrap gap-x-3 text-table text-faded">
+      {lines.length === 0 ? null : (
+        <ul className="flex flex-wrap gap-x-3 text-table text-faded">
           {lines.map((line, index) => (
             <li key={index}>{line}</li>
           ))}
-        </ul>}
+        </ul>
+      )}
       <p className="text-small text-faded">Revision {number}</p>
     </div>
   );

@@ -54,7 +54,15 @@ export function RecordActions({ unknown }: { unknown: UnknownDetail }) {
             size="small"
             icon={<ArchiveRestore aria-hidden="true" className="size-3.5" />}
             isBusy={update.isPending}
-            onClick={() => update.mutate({ status: unknown.lastRun === null ? 'new' : 'inProgress' }, { onSuccess: () => showToast('done', `${unknown.code} is taken up again.`), onError: (error) => showToast('problem', errorMessage(error)) })}
+            onClick={() =>
+              update.mutate(
+                { status: unknown.lastRun === null ? 'new' : 'inProgress' },
+                {
+                  onSuccess: () => showToast('done', `${unknown.code} is taken up again.`),
+                  onError: (error) => showToast('problem', errorMessage(error)),
+                },
+              )
+            }
           >
             Take up again
           </Button>
@@ -76,7 +84,14 @@ export function RecordActions({ unknown }: { unknown: UnknownDetail }) {
         />
       ) : null}
       {open === 'shelve' ? (
-        <ConfirmDialog title={`Shelve ${unknown.code}?`} confirmLabel="Shelve" isBusy={update.isPending} error={update.error === null ? undefined : errorMessage(update.error)} onCancel={close} onConfirm={() => update.mutate({ status: 'shelved' }, { onSuccess: close })}>
+        <ConfirmDialog
+          title={`Shelve ${unknown.code}?`}
+          confirmLabel="Shelve"
+          isBusy={update.isPending}
+          error={update.error === null ? undefined : errorMessage(update.error)}
+          onCancel={close}
+          onConfirm={() => update.mutate({ status: 'shelved' }, { onSuccess: close })}
+        >
           Evidence, runs and shortlist stay as they are. The unknown can be taken up again at any time.
         </ConfirmDialog>
       ) : null}

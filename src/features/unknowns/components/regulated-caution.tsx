@@ -4,7 +4,8 @@ import { Notice } from '../../../components/status-word';
 export function RegulatedCaution() {
   return (
     <Notice tone="weld" title="Regulated purpose">
-      A ranking is not an identification. Regulated identification belongs to an accredited laboratory and the guidance in force there (for drug impurities ICH Q3A, Q3B and M7; for residues EU 2021/808). Confirm against an authentic standard.
+      A ranking is not an identification. Regulated identification belongs to an accredited laboratory and the guidance in force there (for
+      drug impurities ICH Q3A, Q3B and M7; for residues EU 2021/808). Confirm against an authentic standard.
     </Notice>
   );
 }

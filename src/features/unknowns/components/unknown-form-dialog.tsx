@@ -49,16 +49,29 @@ export function UnknownFormDialog({ title, submitLabel, initial, isBusy, error, 
       }
     >
       <form id={formId} noValidate onSubmit={submit} className="space-y-4">
-        <TextInput label="Title" autoFocus maxLength={160} hint="What people call it: batch, impurity, isolate." value={fields.title} error={messageFor('title')} onChange={(event) => setFields({ ...fields, title: event.target.value })} />
-        <TextArea label="Description" rows={4} maxLength={4000} hint="Origin, work-up, what was tried so far." value={fields.description} error={messageFor('description')} onChange={(event) => setFields({ ...fields, description: event.target.value })} />
-        <Select
-          label="Purpose"
-          options={PURPOSES}
-          value={fields.purpose}
-          onValueChange={(purpose) => setFields({ ...fields, purpose })}
+        <TextInput
+          label="Title"
+          autoFocus
+          maxLength={160}
+          hint="What people call it: batch, impurity, isolate."
+          value={fields.title}
+          error={messageFor('title')}
+          onChange={(event) => setFields({ ...fields, title: event.target.value })}
         />
+        <TextArea
+          label="Description"
+          rows={4}
+          maxLength={4000}
+          hint="Origin, work-up, what was tried so far."
+          value={fields.description}
+          error={messageFor('description')}
+          onChange={(event) => setFields({ ...fields, description: event.target.value })}
+        />
+        <Select label="Purpose" options={PURPOSES} value={fields.purpose} onValueChange={(purpose) => setFields({ ...fields, purpose })} />
         {fields.purpose === 'regulated' ? <RegulatedCaution /> : null}
-        {error !== null && (!(error instanceof ApiError) || error.issues.length === 0) ? <Notice tone="madder">{errorMessage(error)}</Notice> : null}
+        {error !== null && (!(error instanceof ApiError) || error.issues.length === 0) ? (
+          <Notice tone="madder">{errorMessage(error)}</Notice>
+        ) : null}
       </form>
     </Dialog>
   );

@@ -20,12 +20,22 @@ export function UnknownRecord({ unknown }: { unknown: UnknownDetail }) {
       </p>
       <h1 className="mt-0.5 text-title break-words">{unknown.title}</h1>
       <div className="mt-1 flex flex-wrap items-center justify-between gap-x-4 gap-y-2">
-        {unknown.formula === null ? <span className="text-faded">No formula yet</span> : <Formula formula={unknown.formula} className="text-lead" />}
+        {unknown.formula === null ? (
+          <span className="text-faded">No formula yet</span>
+        ) : (
+          <Formula formula={unknown.formula} className="text-lead" />
+        )}
         <div className="min-w-0">
           <RecordStatus unknown={unknown} />
         </div>
       </div>
-      <button type="button" aria-expanded={isOpen} aria-controls="record-body" className="mt-3 flex w-full items-center justify-between border-y border-seam py-2 text-table font-semibold desk:hidden" onClick={() => setIsOpen(!isOpen)}>
+      <button
+        type="button"
+        aria-expanded={isOpen}
+        aria-controls="record-body"
+        className="mt-3 flex w-full items-center justify-between border-y border-seam py-2 text-table font-semibold desk:hidden"
+        onClick={() => setIsOpen(!isOpen)}
+      >
         What we know
         <ChevronDown aria-hidden="true" className={classNames('size-4 transition-transform', isOpen && 'rotate-180')} />
       </button>

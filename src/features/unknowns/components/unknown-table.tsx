@@ -21,7 +21,11 @@ function LastRun({ run }: { run: UnknownRow['lastRun'] }) {
   return (
     <span className="flex items-center gap-3">
       <FunnelMini funnel={run.funnel} isIncomplete={run.status !== 'finished'} />
-      {run.status === 'finished' && run.survivorCount !== null ? <span>{formatCount(run.survivorCount)} ranked</span> : <RunStatusWord status={run.status} />}
+      {run.status === 'finished' && run.survivorCount !== null ? (
+        <span>{formatCount(run.survivorCount)} ranked</span>
+      ) : (
+        <RunStatusWord status={run.status} />
+      )}
     </span>
   );
 }
@@ -58,7 +62,10 @@ export function UnknownTable({ rows, filter, onSort }: UnknownTableProps) {
           <Cell className="py-2 align-top font-mono text-small whitespace-nowrap text-faded tablet:align-middle">{row.code}</Cell>
           <Cell className="w-full py-2 tablet:w-auto">
             {/* The link covers its row: one target, one stop for the keyboard. */}
-            <Link to={paths.unknown(row.id)} className="block max-w-[46ch] font-semibold text-ink no-underline after:absolute after:inset-0 hover:text-indigo focus-visible:outline-none focus-visible:after:outline-2 focus-visible:after:-outline-offset-2 focus-visible:after:outline-indigo">
+            <Link
+              to={paths.unknown(row.id)}
+              className="block max-w-[46ch] font-semibold text-ink no-underline after:absolute after:inset-0 hover:text-indigo focus-visible:outline-none focus-visible:after:outline-2 focus-visible:after:-outline-offset-2 focus-visible:after:outline-indigo"
+            >
               {row.title}
             </Link>
             <span className="mt-1 flex flex-wrap items-center gap-x-3 gap-y-1 text-faded tablet:hidden">
@@ -69,7 +76,9 @@ export function UnknownTable({ rows, filter, onSort }: UnknownTableProps) {
               <LastRun run={row.lastRun} />
             </span>
           </Cell>
-          <Cell className="hidden tablet:table-cell">{row.formula === null ? <span className="text-faded">–</span> : <Formula formula={row.formula} />}</Cell>
+          <Cell className="hidden tablet:table-cell">
+            {row.formula === null ? <span className="text-faded">–</span> : <Formula formula={row.formula} />}
+          </Cell>
           <Cell className="hidden tablet:table-cell">
             <UnknownStatusWord status={row.status} />
           </Cell>

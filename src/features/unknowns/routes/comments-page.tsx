@@ -32,7 +32,9 @@ export function Component() {
       ) : comments.isError ? (
         <ErrorState title="The comments could not be loaded" error={comments.error} onRetry={() => void comments.refetch()} />
       ) : comments.data.comments.length === 0 ? (
-        <EmptyState title="No comments yet">Questions, doubts and agreements about this unknown, for everyone in the team to read.</EmptyState>
+        <EmptyState title="No comments yet">
+          Questions, doubts and agreements about this unknown, for everyone in the team to read.
+        </EmptyState>
       ) : (
         <CommentList unknownId={unknownId} comments={comments.data.comments} />
       )}
@@ -62,14 +64,29 @@ function CommentList({ unknownId, comments }: { unknownId: string; comments: rea
               <span className="text-table text-faded">
                 <Time iso={comment.createdAt} />
               </span>
-              {comment.abilities.remove ? <IconButton label="Remove this comment" tone="danger" className="ml-auto" icon={<Trash2 className="size-4" />} onClick={() => setLeaving(comment)} /> : null}
+              {comment.abilities.remove ? (
+                <IconButton
+                  label="Remove this comment"
+                  tone="danger"
+                  className="ml-auto"
+                  icon={<Trash2 className="size-4" />}
+                  onClick={() => setLeaving(comment)}
+                />
+              ) : null}
             </div>
             <p className="break-words whitespace-pre-line">{comment.text}</p>
           </li>
         ))}
       </ol>
       {leaving === null ? null : (
-        <ConfirmDialog title="Remove this comment?" confirmLabel="Remove" isDestructive isBusy={remove.isPending} onCancel={() => setLeaving(null)} onConfirm={() => remove.mutate(leaving.id, { onSettled: () => setLeaving(null) })}>
+        <ConfirmDialog
+          title="Remove this comment?"
+          confirmLabel="Remove"
+          isDestructive
+          isBusy={remove.isPending}
+          onCancel={() => setLeaving(null)}
+          onConfirm={() => remove.mutate(leaving.id, { onSettled: () => setLeaving(null) })}
+        >
           It disappears for everyone in the team.
         </ConfirmDialog>
       )}
@@ -96,8 +113,22 @@ function CommentForm({ unknownId }: { unknownId: string }) {
   };
   return (
     <form noValidate onSubmit={submit} className="mt-4 space-y-3 border-t border-seam pt-4">
-      {draft.offered === null ? null : <DraftOffer what="comment" savedAt={draft.offered.savedAt} onTake={() => setText(draft.takeOffered() ?? '')} onDecline={draft.declineOffered} />}
-      <TextArea label="Comment" rows={3} maxLength={4000} value={text} error={issue ?? issueFor(create.error, 'text') ?? (create.isError ? errorMessage(create.error) : undefined)} onChange={(event) => setText(event.target.value)} />
+      {draft.offered === null ? null : (
+        <DraftOffer
+          what="comment"
+          savedAt={draft.offered.savedAt}
+          onTake={() => setText(draft.takeOffered() ?? '')}
+          onDecline={draft.declineOffered}
+        />
+      )}
+      <TextArea
+        label="Comment"
+        rows={3}
+        maxLength={4000}
+        value={text}
+        error={issue ?? issueFor(create.error, 'text') ?? (create.isError ? errorMessage(create.error) : undefined)}
+        onChange={(event) => setText(event.target.value)}
+      />
       <Button type="submit" variant="primary" isBusy={create.isPending}>
         Add comment
       </Button>

@@ -24,7 +24,10 @@ export function loader({ params, request }: LoaderFunctionArgs) {
   return null;
 }
 
-const STATUS_OPTIONS: ReadonlyArray<SelectOption<UnknownStatus | 'all'>> = [{ value: 'all', label: 'Every status' }, ...UNKNOWN_STATUSES.map((status) => ({ value: status, label: UNKNOWN_STATUS_LOOKS[status].word }))];
+const STATUS_OPTIONS: ReadonlyArray<SelectOption<UnknownStatus | 'all'>> = [
+  { value: 'all', label: 'Every status' },
+  ...UNKNOWN_STATUSES.map((status) => ({ value: status, label: UNKNOWN_STATUS_LOOKS[status].word })),
+];
 
 export function Component() {
   const { teamId = '' } = useParams();
@@ -39,10 +42,25 @@ export function Component() {
   const isFiltered = filter.search !== '' || filter.status !== 'all';
   return (
     <>
-      <PageHeader title="Unknowns" lead={<span className="hidden tablet:inline">{membership?.teamName}</span>} actions={canCreate ? <NewUnknownButton teamId={teamId} /> : undefined} />
+      <PageHeader
+        title="Unknowns"
+        lead={<span className="hidden tablet:inline">{membership?.teamName}</span>}
+        actions={canCreate ? <NewUnknownButton teamId={teamId} /> : undefined}
+      />
       <div className="mb-3 flex flex-wrap gap-3">
-        <SearchField label="Search code, title, formula" value={filter.search} onApply={(search) => setFilter({ search }, { replace: true })} />
-        <Select label="Status" isLabelHidden className="w-full tablet:w-44" options={STATUS_OPTIONS} value={filter.status} onValueChange={(status) => setFilter({ status })} />
+        <SearchField
+          label="Search code, title, formula"
+          value={filter.search}
+          onApply={(search) => setFilter({ search }, { replace: true })}
+        />
+        <Select
+          label="Status"
+          isLabelHidden
+          className="w-full tablet:w-44"
+          options={STATUS_OPTIONS}
+          value={filter.status}
+          onValueChange={(status) => setFilter({ status })}
+        />
       </div>
       <Panel isFlush>
         {list.isPending ? (
@@ -50,10 +68,16 @@ export function Component() {
         ) : list.isError ? (
           <ErrorState title="The unknowns could not be loaded" error={list.error} onRetry={() => void list.refetch()} />
         ) : list.data.rows.length === 0 && list.data.total > 0 ? (
-          <EmptyState title="This page is past the end" action={<Button onClick={() => setFilter({ page: 1 })}>Go to the first page</Button>} />
+          <EmptyState
+            title="This page is past the end"
+            action={<Button onClick={() => setFilter({ page: 1 })}>Go to the first page</Button>}
+          />
         ) : list.data.total === 0 ? (
           isFiltered ? (
-            <EmptyState title="Nothing fits" action={<Button onClick={() => setFilter({ search: '', status: 'all' })}>Show all unknowns</Button>}>
+            <EmptyState
+              title="Nothing fits"
+              action={<Button onClick={() => setFilter({ search: '', status: 'all' })}>Show all unknowns</Button>}
+            >
               No unknown of this team matches the search and the status.
             </EmptyState>
           ) : (
@@ -65,7 +89,12 @@ export function Component() {
           <div className={classNames('transition-opacity', list.isPlaceholderData && 'opacity-60')}>
             <UnknownTable rows={list.data.rows} filter={filter} onSort={(sort, direction) => setFilter({ sort, direction })} />
             <div className="border-t border-seam px-3 py-1.5">
-              <Pagination page={list.data.page} pageSize={list.data.pageSize} total={list.data.total} onPage={(page) => setFilter({ page })} />
+              <Pagination
+                page={list.data.page}
+                pageSize={list.data.pageSize}
+                total={list.data.total}
+                onPage={(page) => setFilter({ page })}
+              />
             </div>
           </div>
         )}

@@ -49,7 +49,8 @@ describe('a depiction', () => {
     const { atoms, bonds } = depictStructure('C1=CCCCC1');
     const centre = { x: atoms.reduce((sum, atom) => sum + atom.x, 0) / 6, y: atoms.reduce((sum, atom) => sum + atom.y, 0) / 6 };
     const double = bonds.find((bond) => bond.lines.length === 2);
-    const distance = ([a, b]: readonly [{ x: number; y: number }, { x: number; y: number }]) => Math.hypot((a.x + b.x) / 2 - centre.x, (a.y + b.y) / 2 - centre.y);
+    const distance = ([a, b]: readonly [{ x: number; y: number }, { x: number; y: number }]) =>
+      Math.hypot((a.x + b.x) / 2 - centre.x, (a.y + b.y) / 2 - centre.y);
     expect(distance(double!.lines[1])).toBeLessThan(distance(double!.lines[0]));
   });
 
@@ -71,9 +72,12 @@ describe('a depiction', () => {
 });
 
 describe('drawing and writing', () => {
-  it.each(['*c1ccc(*)cc1', '*C(=O)O*', 'C=*', '*C#*', '*C(C)C', 'CC(=O)OCCC(C)C', 'C[N+](=O)[O-]', 'c1cc[nH]c1'])('gives %s back as the same structure', async (smiles) => {
-    expect(await canonicalSmiles(writeStructure(parseStructure(smiles)))).toBe(await canonicalSmiles(smiles));
-  });
+  it.each(['*c1ccc(*)cc1', '*C(=O)O*', 'C=*', '*C#*', '*C(C)C', 'CC(=O)OCCC(C)C', 'C[N+](=O)[O-]', 'c1cc[nH]c1'])(
+    'gives %s back as the same structure',
+    async (smiles) => {
+      expect(await canonicalSmiles(writeStructure(parseStructure(smiles)))).toBe(await canonicalSmiles(smiles));
+    },
+  );
 });
 
 describe('attachment points', () => {
