@@ -10,7 +10,10 @@ const DEFAULT_EMAIL = 'admin@isoloom.local';
  * Gives a new installation its first admin, with a password that is shown once and stored nowhere.
  * @returns how to sign in; null when there is an admin already
  */
-export async function ensureFirstAdmin({ config, sequelize }: Pick<AppContext, 'config' | 'sequelize'>): Promise<{ email: string; password: string } | null> {
+export async function ensureFirstAdmin({
+  config,
+  sequelize,
+}: Pick<AppContext, 'config' | 'sequelize'>): Promise<{ email: string; password: string } | null> {
   if ((await User.count({ where: { isAdmin: true } })) > 0) return null;
   const email = config.adminEmail ?? DEFAULT_EMAIL;
   const password = randomBytes(18).toString('base64url');

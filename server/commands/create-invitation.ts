@@ -35,7 +35,10 @@ export async function createInvitation(
     if (user !== null && (await Membership.count({ where: { teamId: team.id, userId: user.id }, transaction })) > 0) {
       throw new ConflictError('alreadyMember', `${input.email} is a member of this team already.`);
     }
-    await Invitation.update({ revokedAt: now }, { where: { teamId: team.id, email: input.email, acceptedAt: null, revokedAt: null }, transaction });
+    await Invitation.update(
+      { revokedAt: now },
+      { where: { teamId: team.id, email: input.email, acceptedAt: null, revokedAt: null }, transaction },
+    );
     const created = await Invitation.create(
       { teamId: team.id, email: input.email, role: input.role, tokenHash: hashOf(secret), invitedById: actor.userId, expiresAt },
       { transaction },

@@ -13,7 +13,10 @@ const KEPT_DAYS = 30;
 export async function purgeExpired({ sequelize }: Pick<AppContext, 'sequelize'>, now: Date): Promise<void> {
   const longAgo = new Date(now.getTime() - KEPT_DAYS * DAY_MS);
   await sequelize.transaction(async (transaction) => {
-    await OutboxMail.update({ status: 'expired', body: '' }, { where: { status: ['waiting', 'failed'], expiresAt: { [Op.lte]: now } }, transaction });
+    await OutboxMail.update(
+      { status: 'expired', body: '' },
+      { where: { status: ['waiting', 'failed'], expiresAt: { [Op.lte]: now } }, transaction },
+    );
     await OutboxMail.destroy({ where: { status: ['sent', 'expired'], createdAt: { [Op.lt]: longAgo } }, transaction });
     await Session.destroy({ where: { [Op.or]: [{ expiresAt: { [Op.lt]: longAgo } }, { endedAt: { [Op.lt]: longAgo } }] }, transaction });
     await PasswordReset.destroy({ where: { expiresAt: { [Op.lt]: longAgo } }, transaction });

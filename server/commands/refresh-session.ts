@@ -24,7 +24,11 @@ export async function refreshSession(context: AppContext, refreshToken: string |
     if (user === null || user.isDisabled) return null;
     if (session.refreshTokenHash !== hashOf(refreshToken)) {
       await session.update({ endedAt: now, endReason: 'replayed' }, { transaction });
-      await recordAudit(transaction, { userId: user.id, name: user.name }, 'session.replayed', { kind: 'user', id: user.id, label: user.email });
+      await recordAudit(transaction, { userId: user.id, name: user.name }, 'session.replayed', {
+        kind: 'user',
+        id: user.id,
+        label: user.email,
+      });
       return null;
     }
     const tokens = createTokenPair(config.secrets.tokenKey, session.id);

@@ -8,7 +8,13 @@ export async function renameTeam({ sequelize }: AppContext, actor: Actor, team: 
     await team.reload({ transaction, lock: transaction.LOCK.UPDATE });
     const before = team.name;
     await team.update({ name }, { transaction });
-    await recordAudit(transaction, actor, 'team.update', { kind: 'team', id: team.id, label: name, teamId: team.id }, { before, after: name });
+    await recordAudit(
+      transaction,
+      actor,
+      'team.update',
+      { kind: 'team', id: team.id, label: name, teamId: team.id },
+      { before, after: name },
+    );
     return team;
   });
 }

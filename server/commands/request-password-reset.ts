@@ -27,7 +27,15 @@ export async function requestPasswordReset({ config, sequelize }: AppContext, em
     });
     if (recentCount >= RESETS_PER_HOUR) return;
     await PasswordReset.create({ userId: user.id, tokenHash: hashOf(secret), createdAt: now, expiresAt }, { transaction });
-    await queueMail(transaction, passwordResetMessage({ email: user.email, link: passwordResetLink(config, secret), expiresAt }), expiresAt);
-    await recordAudit(transaction, { userId: user.id, name: user.name }, 'password.requestReset', { kind: 'user', id: user.id, label: user.email });
+    await queueMail(
+      transaction,
+      passwordResetMessage({ email: user.email, link: passwordResetLink(config, secret), expiresAt }),
+      expiresAt,
+    );
+    await recordAudit(transaction, { userId: user.id, name: user.name }, 'password.requestReset', {
+      kind: 'user',
+      id: user.id,
+      label: user.email,
+    });
   });
 }

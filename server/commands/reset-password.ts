@@ -28,6 +28,10 @@ export async function resetPassword({ config, sequelize }: AppContext, secret: s
     await PasswordReset.update({ usedAt: now }, { where: { userId: user.id, usedAt: null }, transaction });
     await endSessionsOf(transaction, user.id, 'passwordReset');
     await forgetSignInAttempts(user.email, transaction);
-    await recordAudit(transaction, { userId: user.id, name: user.name }, 'password.reset', { kind: 'user', id: user.id, label: user.email });
+    await recordAudit(transaction, { userId: user.id, name: user.name }, 'password.reset', {
+      kind: 'user',
+      id: user.id,
+      label: user.email,
+    });
   });
 }

@@ -38,7 +38,13 @@ export async function setQuota(
       );
     }
     const { figures: after } = await readQuota(transaction, team.id, userId);
-    await recordAudit(transaction, actor, 'member.setQuota', { kind: 'member', id: userId, label: user.email, teamId: team.id }, { before, after });
+    await recordAudit(
+      transaction,
+      actor,
+      'member.setQuota',
+      { kind: 'member', id: userId, label: user.email, teamId: team.id },
+      { before, after },
+    );
     return after;
   });
 }

@@ -11,12 +11,16 @@ import { startSession, type StartedSession } from '../sessions/start-session.js'
  * @throws UnauthenticatedError signInFailed
  * @throws TooManyRequestsError after too many wrong passwords
  */
-export async function signIn(context: AppContext, input: { readonly email: string; readonly password: string; readonly userAgent: string }): Promise<StartedSession> {
+export async function signIn(
+  context: AppContext,
+  input: { readonly email: string; readonly password: string; readonly userAgent: string },
+): Promise<StartedSession> {
   const { config, sequelize } = context;
   await countSignInAttempt(sequelize, input.email);
   const user = await User.findOne({ where: { email: input.email } });
   const isRight = await verifyPassword(config, input.password, user?.passwordHash ?? null);
-  if (user === null || !isRight || user.isDisabled) throw new UnauthenticatedError('signInFailed', 'E-mail address or password is not right.');
+  if (user === null || !isRight || user.isDisabled)
+    throw new UnauthenticatedError('signInFailed', 'E-mail address or password is not right.');
   return await sequelize.transaction(async (transaction) => {
     await forgetSignInAttempts(user.email, transaction);
     const session = await startSession(transaction, config.secrets.tokenKey, user.id, input.userAgent);

@@ -7,7 +7,9 @@ import { verifyAccessToken, verifyRefreshToken } from '../sessions/tokens.js';
 /** Ends the session that either token names; without a good one there is nothing to end. */
 export async function signOut({ config, sequelize }: AppContext, accessToken: string | null, refreshToken: string | null): Promise<void> {
   const key = config.secrets.tokenKey;
-  const sessionId = (accessToken === null ? null : verifyAccessToken(key, accessToken)) ?? (refreshToken === null ? null : verifyRefreshToken(key, refreshToken));
+  const sessionId =
+    (accessToken === null ? null : verifyAccessToken(key, accessToken)) ??
+    (refreshToken === null ? null : verifyRefreshToken(key, refreshToken));
   if (sessionId === null) return;
   await sequelize.transaction(async (transaction) => {
     const session = await Session.findByPk(sessionId, { transaction, lock: transaction.LOCK.UPDATE });

@@ -12,7 +12,12 @@ import { endSessionsOf } from '../sessions/end-sessions.js';
  * at once.
  * @throws ConflictError lastAdmin
  */
-export async function updateUser({ sequelize }: AppContext, actor: Actor, user: User, change: z.output<typeof userUpdateRequest>): Promise<User> {
+export async function updateUser(
+  { sequelize }: AppContext,
+  actor: Actor,
+  user: User,
+  change: z.output<typeof userUpdateRequest>,
+): Promise<User> {
   return await sequelize.transaction(async (transaction) => {
     // The admins' rows are locked together, so that two of them cannot take the role from one another at once.
     const admins = await User.findAll({ where: { isAdmin: true, isDisabled: false }, transaction, lock: transaction.LOCK.UPDATE });

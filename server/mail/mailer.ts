@@ -11,10 +11,7 @@ const noMailer: Mailer = {
 /** Sends plain text mails over SMTP. The address may carry nodemailer's options, such as `?ignoreTLS=true`. */
 export function createMailer(config: Pick<Config, 'smtpUrl' | 'mailFrom'>): Mailer {
   if (config.smtpUrl === null) return noMailer;
-  const transport = createTransport(
-    config.smtpUrl,
-    { from: config.mailFrom },
-  );
+  const transport = createTransport(config.smtpUrl, { from: config.mailFrom });
   return {
     send: async ({ to, subject, text }) => {
       await transport.sendMail({ to, subject, text });

@@ -38,7 +38,9 @@ function describe(error: unknown): { status: number; error: ProblemResponse['err
       },
     };
   }
-  return describeBodyError(error) ?? { status: 500, error: { code: 'internal', message: 'Something went wrong on our side. Please try again.' } };
+  return (
+    describeBodyError(error) ?? { status: 500, error: { code: 'internal', message: 'Something went wrong on our side. Please try again.' } }
+  );
 }
 
 /** Failures of the body parser, which tells them by `type`. */

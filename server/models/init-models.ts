@@ -23,9 +23,26 @@ import { initUser, User } from './user.js';
 /** Binds every model to a connection. Called once a process, before the first query. */
 export function initModels(sequelize: Sequelize): void {
   for (const init of [
-    initUser, initTeam, initMembership, initSession, initSignInAttempt, initInvitation, initPasswordReset, initOutboxMail, initAuditEvent, initQuota,
-    initUnknown, initEvidenceRevision, initTeamFragment, initRun, initRunShard, initCandidate, initShortlist, initShortlistItem,
-    initComment, initUsageEntry,
+    initUser,
+    initTeam,
+    initMembership,
+    initSession,
+    initSignInAttempt,
+    initInvitation,
+    initPasswordReset,
+    initOutboxMail,
+    initAuditEvent,
+    initQuota,
+    initUnknown,
+    initEvidenceRevision,
+    initTeamFragment,
+    initRun,
+    initRunShard,
+    initCandidate,
+    initShortlist,
+    initShortlistItem,
+    initComment,
+    initUsageEntry,
   ]) {
     init(sequelize);
   }

@@ -2,15 +2,35 @@ import type { TeamRole } from '../../shared/types/roles.js';
 import type { Actor } from './actor.js';
 
 /** What the rules look at; models satisfy these shapes. */
-export interface TeamRow { readonly id: string }
-export interface MemberRow { readonly teamId: string; readonly userId: string; readonly isLastLead: boolean }
-export interface InvitationRow { readonly teamId: string }
-export interface SessionRow { readonly userId: string }
-export interface UserRow { readonly id: string }
-export interface TeamOwnedRow { readonly teamId: string }
-export interface CommentRow extends TeamOwnedRow { readonly authorId: string }
-export interface FragmentRow extends TeamOwnedRow { readonly createdById: string }
-export interface RunRow extends TeamOwnedRow { readonly startedById: string }
+export interface TeamRow {
+  readonly id: string;
+}
+export interface MemberRow {
+  readonly teamId: string;
+  readonly userId: string;
+  readonly isLastLead: boolean;
+}
+export interface InvitationRow {
+  readonly teamId: string;
+}
+export interface SessionRow {
+  readonly userId: string;
+}
+export interface UserRow {
+  readonly id: string;
+}
+export interface TeamOwnedRow {
+  readonly teamId: string;
+}
+export interface CommentRow extends TeamOwnedRow {
+  readonly authorId: string;
+}
+export interface FragmentRow extends TeamOwnedRow {
+  readonly createdById: string;
+}
+export interface RunRow extends TeamOwnedRow {
+  readonly startedById: string;
+}
 /** The installation as a whole, for actions that concern no row. */
 export const INSTALLATION = { kind: 'installation' } as const;
 export type InstallationRow = typeof INSTALLATION;
@@ -82,7 +102,8 @@ export const policies = {
   'comment.remove': (actor: Actor, row: CommentRow) => isMember(actor, row) && row.authorId === actor.userId,
 
   'fragment.read': isMember,
-  'fragment.remove': (actor: Actor, row: FragmentRow) => isLead(actor, row.teamId) || (mayWork(actor, row) && row.createdById === actor.userId),
+  'fragment.remove': (actor: Actor, row: FragmentRow) =>
+    isLead(actor, row.teamId) || (mayWork(actor, row) && row.createdById === actor.userId),
 
   'run.read': isMember,
   'run.cancel': (actor: Actor, row: RunRow) => isLead(actor, row.teamId) || (mayWork(actor, row) && row.startedById === actor.userId),

@@ -18,7 +18,12 @@ export function presentMe(actor: Actor, memberships: readonly Membership[]): z.i
               teamName: team.name,
               role,
               isDemo: team.isDemo,
-              abilities: abilitiesOn(actor, 'team', ['readUnknowns', 'createUnknown', 'createFragment', 'manageMembers', 'readUsage', 'setQuotas'], team),
+              abilities: abilitiesOn(
+                actor,
+                'team',
+                ['readUnknowns', 'createUnknown', 'createFragment', 'manageMembers', 'readUsage', 'setQuotas'],
+                team,
+              ),
             },
           ],
     ),

@@ -11,6 +11,10 @@ export function presentMember(actor: Actor, { membership, user, isLastLead }: Me
     email: user.email,
     role: membership.role,
     joinedAt: membership.createdAt.toISOString(),
-    abilities: abilitiesOn(actor, 'member', ['changeRole', 'remove', 'setQuota'], { teamId: membership.teamId, userId: user.id, isLastLead }),
+    abilities: abilitiesOn(actor, 'member', ['changeRole', 'remove', 'setQuota'], {
+      teamId: membership.teamId,
+      userId: user.id,
+      isLastLead,
+    }),
   };
 }

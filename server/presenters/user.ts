@@ -13,7 +13,9 @@ export function presentUser(actor: Actor, user: User): z.input<typeof userRow> {
     isAdmin: user.isAdmin,
     isDisabled: user.isDisabled,
     createdAt: user.createdAt.toISOString(),
-    teams: (user.memberships ?? []).flatMap(({ teamId, role, team }) => (team === undefined ? [] : [{ teamId, teamName: team.name, role }])),
+    teams: (user.memberships ?? []).flatMap(({ teamId, role, team }) =>
+      team === undefined ? [] : [{ teamId, teamName: team.name, role }],
+    ),
     abilities: abilitiesOn(actor, 'user', ['update'], user),
   };
 }

@@ -16,14 +16,26 @@ export async function findTeamUsage(sequelize: Sequelize, teamId: string, now: D
     const overrides = new Map((await Quota.findAll({ where: { teamId }, transaction })).map((quota) => [quota.userId, quota]));
     const people = members.map(({ membership, user }) => {
       const { figures, isOverridden } = effectiveQuota(user.isAdmin ? 'admin' : membership.role, overrides.get(user.id) ?? null);
-      return { userId: user.id, name: user.name, role: membership.role, ...(usageByUser.get(user.id) ?? NO_USAGE), quota: figures, isOverridden };
+      return {
+        userId: user.id,
+        name: user.name,
+        role: membership.role,
+        ...(usageByUser.get(user.id) ?? NO_USAGE),
+        quota: figures,
+        isOverridden,
+      };
     });
     return { month, people };
   });
 }
 
 /** What a member may use, has used this month, and has under way. */
-export async function findOwnQuota(sequelize: Sequelize, teamId: string, userId: string, now: Date): Promise<z.input<typeof ownQuotaResponse>> {
+export async function findOwnQuota(
+  sequelize: Sequelize,
+  teamId: string,
+  userId: string,
+  now: Date,
+): Promise<z.input<typeof ownQuotaResponse>> {
   return await sequelize.transaction(async (transaction) => {
     const { figures } = await readQuota(transaction, teamId, userId);
     const { usedCpuSeconds, reservedCpuSeconds } = await readUsage(transaction, teamId, userId, usageMonth(now));

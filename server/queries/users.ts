@@ -8,7 +8,13 @@ const withTeams: Includeable = { model: Membership, as: 'memberships', include: 
 
 /** Everybody with an account, by name, with their teams. */
 export async function findUsers(): Promise<User[]> {
-  return await User.findAll({ include: [withTeams], order: [['name', 'ASC'], ['email', 'ASC']] });
+  return await User.findAll({
+    include: [withTeams],
+    order: [
+      ['name', 'ASC'],
+      ['email', 'ASC'],
+    ],
+  });
 }
 
 /** @throws NotFoundError */

@@ -3,7 +3,13 @@ import { formatIssuePath, type InputIssue } from '../../shared/schemas/problem.j
 import { InvalidInputError } from '../errors.js';
 
 const TYPE_NAMES: Readonly<Record<string, string>> = {
-  string: 'a text', number: 'a number', int: 'a whole number', boolean: 'true or false', array: 'a list', object: 'an object', record: 'an object',
+  string: 'a text',
+  number: 'a number',
+  int: 'a whole number',
+  boolean: 'true or false',
+  array: 'a list',
+  object: 'an object',
+  record: 'an object',
 };
 
 const countedUnit = (origin: string): string => (origin === 'string' ? ' characters' : origin === 'array' ? ' entries' : '');
@@ -28,7 +34,9 @@ function plainMessage(issue: z.core.$ZodRawIssue): string | undefined {
 
 /** A failed union only says so; what its branches would have taken is more help. */
 function unionMessage(issue: z.core.$ZodIssueInvalidUnion): string {
-  const values = issue.errors.flatMap((branch) => branch.flatMap((inner) => (inner.code === 'invalid_value' ? inner.values.map(String) : [])));
+  const values = issue.errors.flatMap((branch) =>
+    branch.flatMap((inner) => (inner.code === 'invalid_value' ? inner.values.map(String) : [])),
+  );
   return values.length > 0 ? `expected one of: ${values.join(', ')}` : (issue.errors[0]?.[0]?.message ?? issue.message);
 }
 

@@ -7,7 +7,11 @@ import type { RateLimitName } from '../middleware/rate-limits.js';
 import type { Actor } from '../policies/actor.js';
 import { parseRequest } from './parse-input.js';
 
-type Part<N extends EndpointName, P extends 'params' | 'query' | 'body'> = (typeof endpoints)[N] extends { readonly [K in P]: infer S extends z.ZodType } ? z.output<S> : undefined;
+type Part<N extends EndpointName, P extends 'params' | 'query' | 'body'> = (typeof endpoints)[N] extends {
+  readonly [K in P]: infer S extends z.ZodType;
+}
+  ? z.output<S>
+  : undefined;
 /** What a handler returns: the response before its schema has looked at it; nothing where there is no schema. */
 type Answer<N extends EndpointName> = (typeof endpoints)[N] extends { readonly response: infer S extends z.ZodType } ? z.input<S> : void;
 
@@ -38,7 +42,11 @@ interface RouteOptions {
 }
 
 /** A route for signed-in people. Parses by the endpoint's schemas before the handler, serialises by them after it. */
-export function route<N extends EndpointName>(name: N, handler: (input: SignedInInput<N>) => Promise<Answer<N>>, options: RouteOptions = {}): Route {
+export function route<N extends EndpointName>(
+  name: N,
+  handler: (input: SignedInInput<N>) => Promise<Answer<N>>,
+  options: RouteOptions = {},
+): Route {
   return {
     ...limitOf(options),
     name,
@@ -51,7 +59,11 @@ export function route<N extends EndpointName>(name: N, handler: (input: SignedIn
 }
 
 /** A route that anybody may call. */
-export function publicRoute<N extends EndpointName>(name: N, handler: (input: PublicInput<N>) => Promise<Answer<N>>, options: RouteOptions = {}): Route {
+export function publicRoute<N extends EndpointName>(
+  name: N,
+  handler: (input: PublicInput<N>) => Promise<Answer<N>>,
+  options: RouteOptions = {},
+): Route {
   return {
     ...limitOf(options),
     name,
@@ -96,7 +108,12 @@ async function send(name: EndpointName, response: Response, answer: unknown, opt
 const ROUTER_METHODS = { GET: 'get', POST: 'post', PATCH: 'patch', DELETE: 'delete' } as const;
 
 /** Mounts routes by method and path of the endpoint table. */
-export function mountRoutes(router: Router, context: AppContext, routes: readonly Route[], limits: Readonly<Record<RateLimitName, RequestHandler>>): void {
+export function mountRoutes(
+  router: Router,
+  context: AppContext,
+  routes: readonly Route[],
+  limits: Readonly<Record<RateLimitName, RequestHandler>>,
+): void {
   for (const { name, handle, limit } of routes) {
     const endpoint: Endpoint = endpoints[name];
     router[ROUTER_METHODS[endpoint.method]](endpoint.path, ...(limit === undefined ? [] : [limits[limit]]), handle(context));

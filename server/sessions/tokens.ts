@@ -20,7 +20,12 @@ type Audience = 'access' | 'refresh';
 
 function sign(key: string, audience: Audience, sessionId: string, seconds: number): string {
   // The random id makes two tokens of one second differ.
-  return jwt.sign({ sid: sessionId }, key, { algorithm: 'HS256', audience, expiresIn: seconds, jwtid: randomBytes(16).toString('base64url') });
+  return jwt.sign({ sid: sessionId }, key, {
+    algorithm: 'HS256',
+    audience,
+    expiresIn: seconds,
+    jwtid: randomBytes(16).toString('base64url'),
+  });
 }
 
 function verify(key: string, audience: Audience, token: string): string | null {

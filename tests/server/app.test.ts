@@ -24,7 +24,8 @@ afterAll(async () => {
   await server.close();
 });
 
-const appWith = (overrides: Partial<TestApp['context']['config']>) => createApp({ ...server.context, config: { ...server.context.config, ...overrides } });
+const appWith = (overrides: Partial<TestApp['context']['config']>) =>
+  createApp({ ...server.context, config: { ...server.context.config, ...overrides } });
 
 describe('headers', () => {
   it('let the page load nothing from elsewhere and nobody frame it', async () => {
@@ -62,7 +63,10 @@ describe('headers', () => {
   });
 
   it('name the request by an id of ours', async () => {
-    const [first, second] = [await request(server.app).get('/api/v1/me').set('X-Request-Id', 'mine'), await request(server.app).get('/api/v1/me')];
+    const [first, second] = [
+      await request(server.app).get('/api/v1/me').set('X-Request-Id', 'mine'),
+      await request(server.app).get('/api/v1/me'),
+    ];
     expect(first.headers['x-request-id']).toMatch(/^[0-9a-f-]{36}$/);
     expect(first.headers['x-request-id']).not.toBe(second.headers['x-request-id']);
   });
@@ -101,7 +105,11 @@ describe('failures', () => {
     const client = await server.as(admin);
     const response = await new TestClient(createApp({ ...server.context, logger }), client.cookies).get('/teams');
     expect(response.status).toBe(500);
-    expect(response.body.error).toEqual({ code: 'internal', message: 'Something went wrong on our side. Please try again.', requestId: response.headers['x-request-id'] });
+    expect(response.body.error).toEqual({
+      code: 'internal',
+      message: 'Something went wrong on our side. Please try again.',
+      requestId: response.headers['x-request-id'],
+    });
     const logged = lines.find((line) => line.includes('SELECT secrets FROM inside'));
     expect(logged).toContain(response.headers['x-request-id']);
   });
@@ -120,7 +128,13 @@ describe('the log', () => {
     const text = lines.join('');
     expect(text).toContain('/invitations/[secret]');
     expect(text).toContain('/password-resets/[secret]');
-    for (const forbidden of [secret, 'a password to be kept secret', 'confidential', ...client.cookies.map((cookie) => cookie.split('=')[1])]) expect(text).not.toContain(forbidden);
+    for (const forbidden of [
+      secret,
+      'a password to be kept secret',
+      'confidential',
+      ...client.cookies.map((cookie) => cookie.split('=')[1]),
+    ])
+      expect(text).not.toContain(forbidden);
   });
 });
 
@@ -141,7 +155,8 @@ describe('limits by address', () => {
   it('believe X-Forwarded-For only from proxies that are trusted', async () => {
     const exhaust = async (trustedProxies: number) => {
       const app = appWith({ trustedProxies });
-      const send = (address: string) => request(app).post('/api/v1/session').set({ 'X-Isoloom-Request': '1', 'X-Forwarded-For': address }).send({});
+      const send = (address: string) =>
+        request(app).post('/api/v1/session').set({ 'X-Isoloom-Request': '1', 'X-Forwarded-For': address }).send({});
       for (let i = 0; i < 51; i++) await send('192.0.2.1');
       return (await send('192.0.2.2')).status;
     };

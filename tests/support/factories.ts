@@ -23,7 +23,9 @@ let count = 0;
 const next = (): number => (count += 1);
 const hash = (text: string): string => createHash('sha256').update(text).digest('hex');
 
-export async function createUser(overrides: { name?: string; email?: string; isAdmin?: boolean; isDisabled?: boolean } = {}): Promise<User> {
+export async function createUser(
+  overrides: { name?: string; email?: string; isAdmin?: boolean; isDisabled?: boolean } = {},
+): Promise<User> {
   const number = next();
   return await User.create({ name: `Person ${number}`, email: `person-${number}@laboratory.test`, passwordHash, ...overrides });
 }
@@ -54,7 +56,11 @@ export async function createUnknown(team: Team, createdBy: User, overrides: { ti
 }
 
 /** Saves evidence as the newest revision of the unknown. */
-export async function createRevision(unknown: Unknown, author: User, evidence: Readonly<Record<string, unknown>> = { formula: 'C4H8O2' }): Promise<EvidenceRevision> {
+export async function createRevision(
+  unknown: Unknown,
+  author: User,
+  evidence: Readonly<Record<string, unknown>> = { formula: 'C4H8O2' },
+): Promise<EvidenceRevision> {
   const parsed = evidenceDocument.parse(evidence);
   const revision = await EvidenceRevision.create({
     teamId: unknown.teamId,
@@ -70,7 +76,11 @@ export async function createRevision(unknown: Unknown, author: User, evidence: R
   return revision;
 }
 
-export async function createRun(revision: EvidenceRevision, startedBy: User, overrides: Partial<Pick<Run, 'status' | 'complete' | 'keptCount' | 'startedAt' | 'finishedAt'>> = {}): Promise<Run> {
+export async function createRun(
+  revision: EvidenceRevision,
+  startedBy: User,
+  overrides: Partial<Pick<Run, 'status' | 'complete' | 'keptCount' | 'startedAt' | 'finishedAt'>> = {},
+): Promise<Run> {
   return await Run.create({
     teamId: revision.teamId,
     unknownId: revision.unknownId,
@@ -107,7 +117,10 @@ export async function createCandidate(run: Run, overrides: { rank?: number; smil
 }
 
 export async function createShortlistItem(candidate: Candidate, run: Run, addedBy: User): Promise<ShortlistItem> {
-  const [shortlist] = await Shortlist.findOrCreate({ where: { unknownId: run.unknownId }, defaults: { unknownId: run.unknownId, teamId: run.teamId } });
+  const [shortlist] = await Shortlist.findOrCreate({
+    where: { unknownId: run.unknownId },
+    defaults: { unknownId: run.unknownId, teamId: run.teamId },
+  });
   return await ShortlistItem.create({
     teamId: run.teamId,
     shortlistId: shortlist.id,
@@ -118,13 +131,24 @@ export async function createShortlistItem(candidate: Candidate, run: Run, addedB
     idcode: candidate.idcode,
     idcodeHash: candidate.idcodeHash,
     note: '',
-    snapshot: { runNumber: run.number, rank: candidate.rank, probability: candidate.probability, carbonDeviation: null, protonDeviation: null },
+    snapshot: {
+      runNumber: run.number,
+      rank: candidate.rank,
+      probability: candidate.probability,
+      carbonDeviation: null,
+      protonDeviation: null,
+    },
     addedById: addedBy.id,
   });
 }
 
 export async function createComment(unknown: Unknown, author: User): Promise<Comment> {
-  return await Comment.create({ teamId: unknown.teamId, unknownId: unknown.id, authorId: author.id, text: 'Compare with the second batch.' });
+  return await Comment.create({
+    teamId: unknown.teamId,
+    unknownId: unknown.id,
+    authorId: author.id,
+    text: 'Compare with the second batch.',
+  });
 }
 
 export async function createTeamFragment(team: Team, createdBy: User): Promise<TeamFragment> {

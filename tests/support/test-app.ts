@@ -39,7 +39,9 @@ export async function createTestApp(overrides: Partial<AppContext> = {}): Promis
     mails,
     as: async (user) => {
       if (user === undefined) return new TestClient(app, []);
-      const { tokens } = await context.sequelize.transaction((transaction) => startSession(transaction, context.config.secrets.tokenKey, user.id, 'test'));
+      const { tokens } = await context.sequelize.transaction((transaction) =>
+        startSession(transaction, context.config.secrets.tokenKey, user.id, 'test'),
+      );
       return new TestClient(app, [`${ACCESS_COOKIE}=${tokens.access}`, `${REFRESH_COOKIE}=${tokens.refresh}`]);
     },
     close: database.drop,

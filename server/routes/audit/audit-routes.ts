@@ -10,7 +10,10 @@ export function auditRoutes(): Route[] {
       authorize(actor, 'installation.readAudit', INSTALLATION);
       const { page, pageSize } = query;
       const { rows, count } = await AuditEvent.findAndCountAll({
-        order: [['at', 'DESC'], ['id', 'ASC']],
+        order: [
+          ['at', 'DESC'],
+          ['id', 'ASC'],
+        ],
         limit: pageSize,
         offset: (page - 1) * pageSize,
       });

@@ -10,7 +10,11 @@ import { loadActor } from '../../sessions/load-actor.js';
 import type { StartedSession } from '../../sessions/start-session.js';
 
 /** Hands a session over to the browser and tells whose it is. */
-export async function answerWithSession(context: AppContext, response: Response, session: StartedSession): Promise<z.input<typeof meResponse>> {
+export async function answerWithSession(
+  context: AppContext,
+  response: Response,
+  session: StartedSession,
+): Promise<z.input<typeof meResponse>> {
   const actor = await loadActor(context.sequelize, session.sessionId);
   if (actor === null) throw new UnauthenticatedError();
   const memberships = await findMembershipsOf(actor.userId);

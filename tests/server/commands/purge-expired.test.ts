@@ -24,7 +24,11 @@ describe('tidying up', () => {
       Session.create({ userId: user.id, refreshTokenHash: hashOf('-'), userAgent: '', lastUsedAt: now, ...overrides });
     await session({ expiresAt: daysAgo(31) });
     await session({ expiresAt: daysAgo(-1), endedAt: daysAgo(31) });
-    const kept = [await session({ expiresAt: daysAgo(29) }), await session({ expiresAt: daysAgo(-1) }), await session({ expiresAt: daysAgo(-1), endedAt: daysAgo(1) })];
+    const kept = [
+      await session({ expiresAt: daysAgo(29) }),
+      await session({ expiresAt: daysAgo(-1) }),
+      await session({ expiresAt: daysAgo(-1), endedAt: daysAgo(1) }),
+    ];
     await PasswordReset.create({ userId: user.id, tokenHash: hashOf('old'), expiresAt: daysAgo(31) });
     await PasswordReset.create({ userId: user.id, tokenHash: hashOf('new'), expiresAt: daysAgo(1) });
     await SignInAttempt.create({ emailHash: hashOf('old'), failures: 3, lockedUntil: null, updatedAt: daysAgo(2) });

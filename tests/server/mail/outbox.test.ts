@@ -28,7 +28,9 @@ afterAll(async () => {
 });
 
 const queue = async (subject = 'Subject', lifeMs = 60 * MINUTE) =>
-  await server.context.sequelize.transaction((transaction) => queueMail(transaction, { to: 'a@laboratory.test', subject, text: 'Body with a link' }, new Date(Date.now() + lifeMs)));
+  await server.context.sequelize.transaction((transaction) =>
+    queueMail(transaction, { to: 'a@laboratory.test', subject, text: 'Body with a link' }, new Date(Date.now() + lifeMs)),
+  );
 const only = async () => await OutboxMail.findOne({ rejectOnEmpty: true });
 const failing = { send: () => Promise.reject(new Error('mailbox is full')), close: () => undefined };
 
@@ -90,7 +92,9 @@ describe('the outbox', () => {
     await queue();
     await startOutboxSender(server.context).stop();
     expect((await only()).status).toBe('waiting');
-    await expect(createMailer({ smtpUrl: null, mailFrom: 'x@laboratory.test' }).send({ to: 'a@laboratory.test', subject: '', text: '' })).rejects.toThrow('SMTP_URL');
+    await expect(
+      createMailer({ smtpUrl: null, mailFrom: 'x@laboratory.test' }).send({ to: 'a@laboratory.test', subject: '', text: '' }),
+    ).rejects.toThrow('SMTP_URL');
   });
 });
 
@@ -108,7 +112,11 @@ describe('the mailer', () => {
     });
     const listener = smtp.listen(0, '127.0.0.1');
     await once(listener, 'listening');
-    const config = { ...server.context.config, smtpUrl: `smtp://127.0.0.1:${(listener.address() as AddressInfo).port}?ignoreTLS=true`, mailFrom: 'Isoloom <loom@laboratory.test>' };
+    const config = {
+      ...server.context.config,
+      smtpUrl: `smtp://127.0.0.1:${(listener.address() as AddressInfo).port}?ignoreTLS=true`,
+      mailFrom: 'Isoloom <loom@laboratory.test>',
+    };
     const mailer = createMailer(config);
     await queue('Invitation');
     const sender = startOutboxSender({ ...server.context, config, mailer });
@@ -129,16 +137,31 @@ describe('messages', () => {
   const expiresAt = new Date('2031-03-04T05:06:07Z');
 
   it('name team, role, inviter, link and how long it works', () => {
-    const { to, subject, text } = invitationMessage({ email: 'a@laboratory.test', teamName: 'Dyes', role: 'lead', invitedBy: 'Lena', link: 'http://host/invitation/x', expiresAt });
+    const { to, subject, text } = invitationMessage({
+      email: 'a@laboratory.test',
+      teamName: 'Dyes',
+      role: 'lead',
+      invitedBy: 'Lena',
+      link: 'http://host/invitation/x',
+      expiresAt,
+    });
     expect(to).toBe('a@laboratory.test');
     expect(subject).toBe('Invitation to Dyes in Isoloom');
-    for (const part of ['Lena invites you', 'team Dyes', 'as a lead', 'http://host/invitation/x', '2031-03-04 05:06 UTC']) expect(text).toContain(part);
+    for (const part of ['Lena invites you', 'team Dyes', 'as a lead', 'http://host/invitation/x', '2031-03-04 05:06 UTC'])
+      expect(text).toContain(part);
     const reset = passwordResetMessage({ email: 'a@laboratory.test', link: 'http://host/reset/x', expiresAt });
     for (const part of ['http://host/reset/x', '2031-03-04 05:06 UTC', 'ignore this mail']) expect(reset.text).toContain(part);
   });
 
   it('do not let a name write headers or paragraphs', () => {
-    const message = invitationMessage({ email: 'a@laboratory.test', teamName: 'Dyes\r\nBcc: all@laboratory.test', role: 'reader', invitedBy: 'Lena\n\nPay here', link: 'l', expiresAt });
+    const message = invitationMessage({
+      email: 'a@laboratory.test',
+      teamName: 'Dyes\r\nBcc: all@laboratory.test',
+      role: 'reader',
+      invitedBy: 'Lena\n\nPay here',
+      link: 'l',
+      expiresAt,
+    });
     expect(message.subject).not.toMatch(/[\r\n]/);
     expect(message.text).toContain('Lena Pay here invites you');
   });

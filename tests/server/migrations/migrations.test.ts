@@ -31,9 +31,12 @@ afterAll(async () => {
 
 const tables = async (): Promise<string[]> =>
   (
-    await sequelize.query<{ name: string }>('SELECT table_name AS name FROM information_schema.tables WHERE table_schema = DATABASE() ORDER BY table_name', {
-      type: QueryTypes.SELECT,
-    })
+    await sequelize.query<{ name: string }>(
+      'SELECT table_name AS name FROM information_schema.tables WHERE table_schema = DATABASE() ORDER BY table_name',
+      {
+        type: QueryTypes.SELECT,
+      },
+    )
   )
     .map(({ name }) => name)
     .filter((name) => name !== MIGRATION_TABLE)
@@ -53,7 +56,15 @@ const models = (): Array<ModelStatic<Model>> => Object.values(sequelize.models).
 /** What the migrations must have made of an attribute type, as information_schema names it. */
 function expectedType(type: string): string {
   // JSON is kept as LONGTEXT with a check, BOOLEAN as TINYINT(1).
-  const names: Readonly<Record<string, string>> = { JSON: 'longtext', 'TINYINT(1)': 'tinyint(1)', INTEGER: 'int', BIGINT: 'bigint', 'DOUBLE PRECISION': 'double', TEXT: 'text', 'DATETIME(3)': 'datetime(3)' };
+  const names: Readonly<Record<string, string>> = {
+    JSON: 'longtext',
+    'TINYINT(1)': 'tinyint(1)',
+    INTEGER: 'int',
+    BIGINT: 'bigint',
+    'DOUBLE PRECISION': 'double',
+    TEXT: 'text',
+    'DATETIME(3)': 'datetime(3)',
+  };
   return names[type] ?? type.replace('CHAR(36) BINARY', 'CHAR(36)').toLowerCase();
 }
 
@@ -80,7 +91,11 @@ describe('migrations', () => {
   });
 
   it('make exactly the tables that the models name', async () => {
-    expect(await tables()).toEqual(models().map((model) => String(model.getTableName())).sort());
+    expect(await tables()).toEqual(
+      models()
+        .map((model) => String(model.getTableName()))
+        .sort(),
+    );
   });
 
   it('make exactly the columns that the models declare, with their types and nullability', async () => {
@@ -92,7 +107,11 @@ describe('migrations', () => {
         .map(({ columnName, columnType, isNullable }) => ({
           column: columnName,
           // A fixed-length text holds the same values as a variable one of that length.
-          type: columnType.replace(/\(\d+\) unsigned/, '').replace(/^int\(\d+\)$/, 'int').replace(/^bigint\(\d+\)$/, 'bigint').replace(/^char\((64|7)\)$/, 'varchar($1)'),
+          type: columnType
+            .replace(/\(\d+\) unsigned/, '')
+            .replace(/^int\(\d+\)$/, 'int')
+            .replace(/^bigint\(\d+\)$/, 'bigint')
+            .replace(/^char\((64|7)\)$/, 'varchar($1)'),
           isNullable: isNullable === 'YES',
         }));
       const declared = Object.values(model.getAttributes()).map((attribute) => ({
@@ -100,7 +119,8 @@ describe('migrations', () => {
         type: expectedType((attribute.type as { toSql(): string }).toSql()),
         isNullable: attribute.primaryKey !== true && attribute.allowNull !== false,
       }));
-      const byColumn = (a: { column: string | undefined }, b: { column: string | undefined }) => String(a.column).localeCompare(String(b.column));
+      const byColumn = (a: { column: string | undefined }, b: { column: string | undefined }) =>
+        String(a.column).localeCompare(String(b.column));
       expect(actual.sort(byColumn), table).toEqual(declared.sort(byColumn));
     }
   });
@@ -112,7 +132,13 @@ describe('migrations', () => {
   });
 
   it('compare ids, hashes, SMILES and id codes byte by byte', async () => {
-    const exact = (await columns()).filter(({ columnName }) => columnName === 'id' || columnName.endsWith('_id') || columnName.endsWith('_hash') || ['smiles', 'idcode', 'formula', 'email'].includes(columnName));
+    const exact = (await columns()).filter(
+      ({ columnName }) =>
+        columnName === 'id' ||
+        columnName.endsWith('_id') ||
+        columnName.endsWith('_hash') ||
+        ['smiles', 'idcode', 'formula', 'email'].includes(columnName),
+    );
     expect(exact.length).toBeGreaterThan(50);
     expect(exact.filter(({ collation }) => collation === null || !collation.endsWith('_bin'))).toEqual([]);
   });
@@ -128,7 +154,9 @@ describe('migrations', () => {
   });
 
   it('bind every reference by a foreign key and give each an index and a name of ours', async () => {
-    const references = (await columns()).filter(({ columnName, tableName }) => columnName.endsWith('_id') && !(tableName === 'audit_events' && columnName === 'subject_id'));
+    const references = (await columns()).filter(
+      ({ columnName, tableName }) => columnName.endsWith('_id') && !(tableName === 'audit_events' && columnName === 'subject_id'),
+    );
     const keys = await sequelize.query<{ tableName: string; columnName: string; keyName: string }>(
       `SELECT table_name AS tableName, column_name AS columnName, constraint_name AS keyName FROM information_schema.key_column_usage
         WHERE table_schema = DATABASE() AND referenced_table_name IS NOT NULL`,
@@ -141,7 +169,9 @@ describe('migrations', () => {
     );
     for (const { tableName, columnName } of references) {
       const where = `${tableName}.${columnName}`;
-      expect(keys.find((key) => key.tableName === tableName && key.columnName === columnName)?.keyName, where).toMatch(new RegExp(`^${tableName}_.*_fk$`));
+      expect(keys.find((key) => key.tableName === tableName && key.columnName === columnName)?.keyName, where).toMatch(
+        new RegExp(`^${tableName}_.*_fk$`),
+      );
       // An index that MariaDB added by itself would carry the name of the foreign key.
       const index = indexes.find((candidate) => candidate.tableName === tableName && candidate.columnName === columnName)?.indexName;
       expect(index, where).toMatch(/_(idx|key)$/);

@@ -17,7 +17,15 @@ const actor = (roles: Readonly<Record<string, TeamRole>>, overrides: Partial<Act
 });
 const unknown = { teamId: TEAM };
 /** A row that answers every question of every rule with "another person's, of team A". */
-const foreignRow = { id: TEAM, teamId: TEAM, userId: 'other', authorId: 'other', createdById: 'other', startedById: 'other', isLastLead: false };
+const foreignRow = {
+  id: TEAM,
+  teamId: TEAM,
+  userId: 'other',
+  authorId: 'other',
+  createdById: 'other',
+  startedById: 'other',
+  isLastLead: false,
+};
 /** The rules look only at the fields of `foreignRow`. */
 const canOn = (who: Actor, action: Action): boolean => can(who, action, foreignRow as never);
 const actions = Object.keys(policies) as Action[];
@@ -28,7 +36,14 @@ describe('the rules', () => {
   });
 
   it('never allow what the row may not be read for', () => {
-    const callers = [actor({}), actor({ [TEAM]: 'reader' }), actor({ [TEAM]: 'chemist' }), actor({ [TEAM]: 'lead' }), actor({}, { isAdmin: true }), actor({ 'team-b': 'lead' })];
+    const callers = [
+      actor({}),
+      actor({ [TEAM]: 'reader' }),
+      actor({ [TEAM]: 'chemist' }),
+      actor({ [TEAM]: 'lead' }),
+      actor({}, { isAdmin: true }),
+      actor({ 'team-b': 'lead' }),
+    ];
     for (const caller of callers) {
       for (const action of actions) {
         const read = `${action.split('.')[0]}.read` as Action;
@@ -61,7 +76,9 @@ describe('the rules', () => {
   it('show an admin people and quotas of a team, but none of its science', () => {
     const admin = actor({}, { isAdmin: true });
     for (const action of actions) {
-      const isScience = /^(unknown|revision|comment|fragment|run|candidate|shortlistItem)\./.test(action) || /^team\.(readUnknowns|createUnknown|readFragments|createFragment|readRuns|readOwnQuota)$/.test(action);
+      const isScience =
+        /^(unknown|revision|comment|fragment|run|candidate|shortlistItem)\./.test(action) ||
+        /^team\.(readUnknowns|createUnknown|readFragments|createFragment|readRuns|readOwnQuota)$/.test(action);
       if (isScience) expect(canOn(admin, action), action).toBe(false);
     }
     expect(can(admin, 'member.remove', { teamId: TEAM, userId: 'other', isLastLead: true })).toBe(true);

@@ -40,10 +40,17 @@ const invite = async (email: string, role = 'chemist'): Promise<string> => {
 
 describe('inviting', () => {
   it('answers with the invitation and its link, and puts the link into a mail', async () => {
-    const response = await (await server.as(lead)).post(`/teams/${team.id}/invitations`, { email: 'New.Chemist@Laboratory.test', role: 'chemist' });
+    const response = await (
+      await server.as(lead)
+    ).post(`/teams/${team.id}/invitations`, { email: 'New.Chemist@Laboratory.test', role: 'chemist' });
     expect(response.status).toBe(201);
     const { invitation, link } = response.body as { invitation: { id: string; expiresAt: string }; link: string };
-    expect(invitation).toMatchObject({ email: 'new.chemist@laboratory.test', role: 'chemist', invitedBy: lead.name, abilities: { revoke: true } });
+    expect(invitation).toMatchObject({
+      email: 'new.chemist@laboratory.test',
+      role: 'chemist',
+      invitedBy: lead.name,
+      abilities: { revoke: true },
+    });
     expect(new Date(invitation.expiresAt).getTime() - Date.now()).toBeGreaterThan(7 * DAY - 60_000);
     expect(link).toMatch(new RegExp(`^${server.context.config.publicUrl}/invitation/[\\w-]{43}$`));
     const mail = await OutboxMail.findOne({ where: { recipient: 'new.chemist@laboratory.test' }, rejectOnEmpty: true });
@@ -99,7 +106,13 @@ describe('an invitation link', () => {
     const secret = await invite('tell@laboratory.test', 'reader');
     const response = await anonymous.get(`/invitations/${secret}`);
     expect(response.status).toBe(200);
-    expect(response.body).toMatchObject({ email: 'tell@laboratory.test', teamName: team.name, role: 'reader', invitedBy: lead.name, needsAccount: true });
+    expect(response.body).toMatchObject({
+      email: 'tell@laboratory.test',
+      teamName: team.name,
+      role: 'reader',
+      invitedBy: lead.name,
+      needsAccount: true,
+    });
   });
 
   it('makes an account with name and password, joins the team and signs in', async () => {
@@ -116,7 +129,9 @@ describe('an invitation link', () => {
 
   it('works once', async () => {
     const secret = await invite('once@laboratory.test');
-    const answers = await Promise.all([1, 2].map((n) => anonymous.post(`/invitations/${secret}`, { name: `Once ${n}`, password: NEW_PASSWORD })));
+    const answers = await Promise.all(
+      [1, 2].map((n) => anonymous.post(`/invitations/${secret}`, { name: `Once ${n}`, password: NEW_PASSWORD })),
+    );
     expect(answers.filter(({ status }) => status === 200)).toHaveLength(1);
     expect(answers.filter(({ status }) => status === 404 || status === 409)).toHaveLength(1);
     const again = await anonymous.post(`/invitations/${secret}`, { name: 'Again', password: NEW_PASSWORD });
@@ -205,7 +220,9 @@ describe('withdrawing an invitation', () => {
     const otherLead = await createMember(otherTeam, 'lead');
     expect((await (await server.as(otherLead)).delete(`/teams/${otherTeam.id}/invitations/${invitation.id}`)).status).toBe(404);
     expect((await (await server.as(otherLead)).delete(`/teams/${team.id}/invitations/${invitation.id}`)).status).toBe(404);
-    expect((await (await server.as(await createMember(team, 'chemist'))).delete(`/teams/${team.id}/invitations/${invitation.id}`)).status).toBe(403);
+    expect(
+      (await (await server.as(await createMember(team, 'chemist'))).delete(`/teams/${team.id}/invitations/${invitation.id}`)).status,
+    ).toBe(403);
     await invitation.reload();
     expect(invitation.revokedAt).toBeNull();
   });

@@ -17,8 +17,17 @@ import type { User } from '../../../server/models/user.js';
 import { apiRoutes } from '../../../server/routes/api.js';
 import { createSecret, hashOf } from '../../../server/sessions/tokens.js';
 import {
-  createCandidate, createComment, createMember, createRevision, createRun, createShortlistItem, createTeam, createTeamFragment, createUnknown,
-  createUser, PASSWORD,
+  createCandidate,
+  createComment,
+  createMember,
+  createRevision,
+  createRun,
+  createShortlistItem,
+  createTeam,
+  createTeamFragment,
+  createUnknown,
+  createUser,
+  PASSWORD,
 } from '../../support/factories.js';
 import { createFakeCompute } from '../../support/fake-compute.js';
 import { createTestApp, type TestApp } from '../../support/test-app.js';
@@ -51,7 +60,14 @@ interface Row {
 }
 
 const row = (
-  [anonymous, reader, chemist, lead, admin, foreignLead]: readonly [Expectation, Expectation, Expectation, Expectation, Expectation, Expectation],
+  [anonymous, reader, chemist, lead, admin, foreignLead]: readonly [
+    Expectation,
+    Expectation,
+    Expectation,
+    Expectation,
+    Expectation,
+    Expectation,
+  ],
   call: Row['call'] = () => ({}),
 ): Row => ({ expected: { anonymous, reader, chemist, lead, admin, foreignLead }, call });
 
@@ -70,15 +86,30 @@ const TEAM_RUN = [401, 403, 403, 'ok', 'ok', 404] as const;
 const ofTeam = ({ team }: World): Call => ({ params: { teamId: team.id } });
 const ofUnknown = ({ unknown }: World): Call => ({ params: { unknownId: unknown.id } });
 const ofRun = ({ run }: World): Call => ({ params: { runId: run.id } });
-const withMore = (call: (world: World) => Call, more: Call) => (world: World): Call => ({ ...call(world), ...more });
+const withMore =
+  (call: (world: World) => Call, more: Call) =>
+  (world: World): Call => ({ ...call(world), ...more });
 const NEW_PASSWORD = 'a thread of many plies';
 
-async function openInvitation({ team, people }: World, email = `invited-${createSecret().slice(0, 8).toLowerCase()}@laboratory.test`): Promise<{ id: string; secret: string }> {
+async function openInvitation(
+  { team, people }: World,
+  email = `invited-${createSecret().slice(0, 8).toLowerCase()}@laboratory.test`,
+): Promise<{ id: string; secret: string }> {
   const secret = createSecret();
-  const { id } = await Invitation.create({ teamId: team.id, email, role: 'reader', tokenHash: hashOf(secret), invitedById: people.lead.id, expiresAt: new Date(Date.now() + 60_000) });
+  const { id } = await Invitation.create({
+    teamId: team.id,
+    email,
+    role: 'reader',
+    tokenHash: hashOf(secret),
+    invitedById: people.lead.id,
+    expiresAt: new Date(Date.now() + 60_000),
+  });
   return { id, secret };
 }
-const member = async ({ team }: World): Promise<Record<string, string>> => ({ teamId: team.id, userId: (await createMember(team, 'chemist')).id });
+const member = async ({ team }: World): Promise<Record<string, string>> => ({
+  teamId: team.id,
+  userId: (await createMember(team, 'chemist')).id,
+});
 
 const TABLE: Readonly<Record<EndpointName, Row>> = {
   readInstallation: row(PUBLIC),
@@ -89,7 +120,13 @@ const TABLE: Readonly<Record<EndpointName, Row>> = {
   listSessions: row(SIGNED_IN),
   endSession: row(SIGNED_IN, async ({ caller }) => {
     const now = new Date();
-    const { id } = await Session.create({ userId: caller.id, refreshTokenHash: hashOf('-'), userAgent: '', lastUsedAt: now, expiresAt: new Date(now.getTime() + 60_000) });
+    const { id } = await Session.create({
+      userId: caller.id,
+      refreshTokenHash: hashOf('-'),
+      userAgent: '',
+      lastUsedAt: now,
+      expiresAt: new Date(now.getTime() + 60_000),
+    });
     return { params: { sessionId: id } };
   }),
   requestPasswordReset: row(PUBLIC, ({ caller }) => ({ body: { email: caller.email } })),
@@ -99,7 +136,10 @@ const TABLE: Readonly<Record<EndpointName, Row>> = {
     return { params: { token }, body: { password: NEW_PASSWORD } };
   }),
   readInvitation: row(PUBLIC, async (world) => ({ params: { token: (await openInvitation(world)).secret } })),
-  acceptInvitation: row(PUBLIC, async (world) => ({ params: { token: (await openInvitation(world)).secret }, body: { name: 'Newcomer', password: NEW_PASSWORD } })),
+  acceptInvitation: row(PUBLIC, async (world) => ({
+    params: { token: (await openInvitation(world)).secret },
+    body: { name: 'Newcomer', password: NEW_PASSWORD },
+  })),
 
   listTeams: row(SIGNED_IN),
   createTeam: row(ADMIN_ONLY, () => ({ body: { name: 'Second shift' } })),
@@ -135,7 +175,9 @@ const TABLE: Readonly<Record<EndpointName, Row>> = {
   removeComment: row(SCIENCE_READ, async ({ unknown, caller }) => ({ params: { commentId: (await createComment(unknown, caller)).id } })),
   listTeamFragments: row(TEAM_SCIENCE_READ, ofTeam),
   createTeamFragment: row(TEAM_SCIENCE_WORK, withMore(ofTeam, { body: { name: 'Isopropyl', smiles: '*C(C)C' } })),
-  removeTeamFragment: row(SCIENCE_WORK, async ({ team, caller }) => ({ params: { fragmentId: (await createTeamFragment(team, caller)).id } })),
+  removeTeamFragment: row(SCIENCE_WORK, async ({ team, caller }) => ({
+    params: { fragmentId: (await createTeamFragment(team, caller)).id },
+  })),
 
   startRun: row(SCIENCE_WORK, withMore(ofUnknown, { body: { keep: 10 } })),
   listRuns: row(SCIENCE_READ, ofUnknown),
@@ -154,12 +196,17 @@ const TABLE: Readonly<Record<EndpointName, Row>> = {
   predict: row(SIGNED_IN, () => ({ body: { smiles: 'CCOC(C)=O' } })),
 
   readShortlist: row(SCIENCE_READ, ofUnknown),
-  addToShortlist: row(SCIENCE_WORK, ({ unknown, candidate }) => ({ params: { unknownId: unknown.id }, body: { candidateId: candidate.id } })),
+  addToShortlist: row(SCIENCE_WORK, ({ unknown, candidate }) => ({
+    params: { unknownId: unknown.id },
+    body: { candidateId: candidate.id },
+  })),
   updateShortlistItem: row(SCIENCE_WORK, async ({ candidate, run, people }) => ({
     params: { itemId: (await createShortlistItem(candidate, run, people.lead)).id },
     body: { verdict: 'supported' },
   })),
-  removeShortlistItem: row(SCIENCE_WORK, async ({ candidate, run, people }) => ({ params: { itemId: (await createShortlistItem(candidate, run, people.lead)).id } })),
+  removeShortlistItem: row(SCIENCE_WORK, async ({ candidate, run, people }) => ({
+    params: { itemId: (await createShortlistItem(candidate, run, people.lead)).id },
+  })),
 };
 
 const idleQueue: RunQueue = {
@@ -186,17 +233,28 @@ afterAll(async () => {
 
 async function createWorld(as: Caller): Promise<World> {
   const team = await createTeam();
-  const [reader, chemist, lead] = [await createMember(team, 'reader'), await createMember(team, 'chemist'), await createMember(team, 'lead')];
+  const [reader, chemist, lead] = [
+    await createMember(team, 'reader'),
+    await createMember(team, 'chemist'),
+    await createMember(team, 'lead'),
+  ];
   const foreignLead = await createMember(await createTeam(), 'lead');
   const people = { reader, chemist, lead, foreignLead, admin: await createUser({ isAdmin: true }) };
   const unknown = await createUnknown(team, chemist);
   const revision = await createRevision(unknown, chemist);
-  const run = await createRun(revision, chemist, { status: 'finished', complete: true, keptCount: 1, startedAt: new Date(), finishedAt: new Date() });
+  const run = await createRun(revision, chemist, {
+    status: 'finished',
+    complete: true,
+    keptCount: 1,
+    startedAt: new Date(),
+    finishedAt: new Date(),
+  });
   const candidate = await createCandidate(run);
   return { team, people, caller: as === 'anonymous' ? lead : people[as], unknown, revisionId: revision.id, run, candidate };
 }
 
-const fillPath = (path: string, params: Readonly<Record<string, string>> = {}): string => path.replace(/:(\w+)/g, (_, name: string) => params[name]);
+const fillPath = (path: string, params: Readonly<Record<string, string>> = {}): string =>
+  path.replace(/:(\w+)/g, (_, name: string) => params[name]);
 
 async function statusOf(name: EndpointName, as: Caller): Promise<number> {
   const world = await createWorld(as);
@@ -204,13 +262,22 @@ async function statusOf(name: EndpointName, as: Caller): Promise<number> {
   const client = await server.as(as === 'anonymous' ? undefined : world.people[as]);
   const endpoint: Endpoint = endpoints[name];
   const path = fillPath(endpoint.path, params) + (query === undefined ? '' : `?${query}`);
-  const send = { GET: () => client.get(path), POST: () => client.post(path, body), PATCH: () => client.patch(path, body), DELETE: () => client.delete(path) };
+  const send = {
+    GET: () => client.get(path),
+    POST: () => client.post(path, body),
+    PATCH: () => client.patch(path, body),
+    DELETE: () => client.delete(path),
+  };
   return (await send[endpoint.method]()).status;
 }
 
 describe('the table of endpoints', () => {
   it('has a route for each', () => {
-    expect(apiRoutes(server.context).map(({ name }) => name).sort()).toEqual(Object.keys(endpoints).sort());
+    expect(
+      apiRoutes(server.context)
+        .map(({ name }) => name)
+        .sort(),
+    ).toEqual(Object.keys(endpoints).sort());
   });
 
   it('has a row here for each', () => {
@@ -219,7 +286,9 @@ describe('the table of endpoints', () => {
 
   it('calls public exactly the routes that answer people without a session', () => {
     const publicHere = (Object.keys(TABLE) as EndpointName[]).filter((name) => TABLE[name].expected.anonymous === 'ok');
-    const publicRoutes = apiRoutes(server.context).filter(({ isPublic }) => isPublic).map(({ name }) => name);
+    const publicRoutes = apiRoutes(server.context)
+      .filter(({ isPublic }) => isPublic)
+      .map(({ name }) => name);
     // Refreshing needs the cookie of a session, but no session that is fresh.
     expect([...publicHere, 'refreshSession'].sort()).toEqual(publicRoutes.sort());
   });
@@ -238,8 +307,18 @@ describe('rows of others in the own team', () => {
     ['removeComment', 'lead', 403, async ({ unknown, people }) => ({ commentId: (await createComment(unknown, people.chemist)).id })],
     ['removeTeamFragment', 'chemist', 403, async ({ team, people }) => ({ fragmentId: (await createTeamFragment(team, people.lead)).id })],
     ['removeTeamFragment', 'lead', 204, async ({ team, people }) => ({ fragmentId: (await createTeamFragment(team, people.chemist)).id })],
-    ['cancelRun', 'chemist', 403, async ({ unknown, people }) => ({ runId: (await createRun(await createRevision(unknown, people.lead), people.lead)).id })],
-    ['cancelRun', 'lead', 200, async ({ unknown, people }) => ({ runId: (await createRun(await createRevision(unknown, people.lead), people.chemist)).id })],
+    [
+      'cancelRun',
+      'chemist',
+      403,
+      async ({ unknown, people }) => ({ runId: (await createRun(await createRevision(unknown, people.lead), people.lead)).id }),
+    ],
+    [
+      'cancelRun',
+      'lead',
+      200,
+      async ({ unknown, people }) => ({ runId: (await createRun(await createRevision(unknown, people.lead), people.chemist)).id }),
+    ],
   ])('%s as %s answers %i', async (name, as, expected, paramsOf) => {
     const world = await createWorld(as);
     const client = await server.as(world.caller);
@@ -253,7 +332,9 @@ describe('rows of others in the own team', () => {
 describe('rows of another team below an own row', () => {
   it('cannot be put on a shortlist', async () => {
     const [own, foreign] = [await createWorld('chemist'), await createWorld('chemist')];
-    const response = await (await server.as(own.caller)).post(`/unknowns/${own.unknown.id}/shortlist`, { candidateId: foreign.candidate.id });
+    const response = await (
+      await server.as(own.caller)
+    ).post(`/unknowns/${own.unknown.id}/shortlist`, { candidateId: foreign.candidate.id });
     expect([404, 422]).toContain(response.status);
     expect(await ShortlistItem.count({ where: { unknownId: own.unknown.id } })).toBe(0);
   });

@@ -41,7 +41,14 @@ describe('signing in', () => {
           teamName: team.name,
           role: 'chemist',
           isDemo: false,
-          abilities: { readUnknowns: true, createUnknown: true, createFragment: true, manageMembers: false, readUsage: false, setQuotas: false },
+          abilities: {
+            readUnknowns: true,
+            createUnknown: true,
+            createFragment: true,
+            manageMembers: false,
+            readUsage: false,
+            setQuotas: false,
+          },
         },
       ],
       abilities: { createTeam: false, manageUsers: false, readAudit: false },
@@ -240,7 +247,15 @@ describe('the list of sessions', () => {
   it('shows the own open ones with the present one marked, and ends the others', async () => {
     const user = await createUser();
     await server.as(await createUser());
-    const phone = new TestClient(server.app, cookiesOf(await request(server.app).post('/api/v1/session').set({ 'X-Isoloom-Request': '1', 'User-Agent': 'Phone' }).send({ email: user.email, password: PASSWORD })));
+    const phone = new TestClient(
+      server.app,
+      cookiesOf(
+        await request(server.app)
+          .post('/api/v1/session')
+          .set({ 'X-Isoloom-Request': '1', 'User-Agent': 'Phone' })
+          .send({ email: user.email, password: PASSWORD }),
+      ),
+    );
     const desk = await signedIn(user.email);
     const { sessions } = (await desk.get('/sessions')).body as { sessions: Array<{ id: string; userAgent: string; isCurrent: boolean }> };
     expect(sessions.filter(({ isCurrent }) => isCurrent)).toHaveLength(1);

@@ -37,7 +37,11 @@ describe('teams', () => {
   it('are created by admins only, without members', async () => {
     const response = await (await as(admin)).post('/teams', { name: '  Dye works  ' });
     expect(response.status).toBe(201);
-    expect(response.body).toMatchObject({ name: 'Dye works', isDemo: false, abilities: { update: true, manageMembers: true, readUsage: true, setQuotas: true } });
+    expect(response.body).toMatchObject({
+      name: 'Dye works',
+      isDemo: false,
+      abilities: { update: true, manageMembers: true, readUsage: true, setQuotas: true },
+    });
     expect(await Membership.count({ where: { teamId: response.body.id } })).toBe(0);
     expect(await AuditEvent.count({ where: { teamId: response.body.id, action: 'team.create', actorId: admin.id } })).toBe(1);
     const before = await Team.count();
@@ -102,7 +106,11 @@ describe('members', () => {
     const response = await (await as(lead)).patch(`/teams/${team.id}/members/${chemist.id}`, { role: 'lead' });
     expect(response.status).toBe(200);
     expect(response.body).toMatchObject({ userId: chemist.id, role: 'lead' });
-    expect(await auditOf('member.changeRole')).toMatchObject({ actorId: lead.id, subjectId: chemist.id, detail: { before: 'chemist', after: 'lead' } });
+    expect(await auditOf('member.changeRole')).toMatchObject({
+      actorId: lead.id,
+      subjectId: chemist.id,
+      detail: { before: 'chemist', after: 'lead' },
+    });
     expect((await (await as(reader)).patch(`/teams/${team.id}/members/${reader.id}`, { role: 'lead' })).status).toBe(403);
     const bad = await (await as(lead)).patch(`/teams/${team.id}/members/${reader.id}`, { role: 'admin' });
     expect(bad.body.error.issues).toEqual([{ path: 'role', message: 'expected one of: chemist, lead, reader' }]);
@@ -166,7 +174,10 @@ describe('quotas', () => {
     const client = await as(lead);
     expect((await client.patch(path, { runsAtOnce: 5 })).body).toEqual({ ...CHEMIST, runsAtOnce: 5 });
     expect(await ownOf(chemist)).toEqual({ ...CHEMIST, runsAtOnce: 5 });
-    expect(await auditOf('member.setQuota')).toMatchObject({ subjectId: chemist.id, detail: { before: CHEMIST, after: { ...CHEMIST, runsAtOnce: 5 } } });
+    expect(await auditOf('member.setQuota')).toMatchObject({
+      subjectId: chemist.id,
+      detail: { before: CHEMIST, after: { ...CHEMIST, runsAtOnce: 5 } },
+    });
     expect((await client.patch(path, { cpuSecondsPerMonth: 0 })).body).toEqual({ ...CHEMIST, cpuSecondsPerMonth: 0 });
     expect((await client.patch(path, {})).body).toEqual(CHEMIST);
     expect(await Quota.count({ where: { teamId: team.id } })).toBe(0);
@@ -216,7 +227,14 @@ describe('usage', () => {
     expect(response.status).toBe(200);
     expect(response.body.month).toBe(new Date().toISOString().slice(0, 7));
     expect(response.body.people).toMatchObject([
-      { userId: chemist.id, usedCpuSeconds: 19.75, reservedCpuSeconds: 60, runCount: 3, isOverridden: false, quota: { cpuSecondsPerMonth: 7_200 } },
+      {
+        userId: chemist.id,
+        usedCpuSeconds: 19.75,
+        reservedCpuSeconds: 60,
+        runCount: 3,
+        isOverridden: false,
+        quota: { cpuSecondsPerMonth: 7_200 },
+      },
       { userId: lead.id, usedCpuSeconds: 3, reservedCpuSeconds: 0, runCount: 1 },
       { userId: reader.id, usedCpuSeconds: 0, reservedCpuSeconds: 0, runCount: 0 },
     ]);
