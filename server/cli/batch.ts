@@ -55,6 +55,7 @@ export async function runBatch(
     if (underWay.length >= width) await printNext();
   }
   while (underWay.length > 0) await printNext();
-  if (lineCount === 0 && !context.interrupt.isRequested) throw new BadInputError([{ path: 'input', message: 'no lines to read; expected one document a line' }]);
+  if (lineCount === 0 && !context.interrupt.isRequested)
+    throw new BadInputError([{ path: 'input', message: 'no lines to read; expected one document a line' }]);
   return exitCode;
 }

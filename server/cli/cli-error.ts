@@ -31,7 +31,8 @@ export function describeError(error: unknown): { document: ErrorDocument; exitCo
     const all = error.issues.length > 1 ? { issues: error.issues } : {};
     return { document: { error: { code: 'badInput', message: first.message, path: first.path, ...all } }, exitCode: EXIT.badInput };
   }
-  if (error instanceof InterruptedError) return { document: { error: { code: 'cancelled', message: error.message, path: '' } }, exitCode: EXIT.stopped };
+  if (error instanceof InterruptedError)
+    return { document: { error: { code: 'cancelled', message: error.message, path: '' } }, exitCode: EXIT.stopped };
   const message = error instanceof Error ? error.message : String(error);
   return { document: { error: { code: 'internal', message, path: '' } }, exitCode: EXIT.fault };
 }

@@ -49,7 +49,9 @@ export async function runLocally(
   const started = performance.now();
   const seconds = (): number => (performance.now() - started) / 1000;
   const deadlineEpochMs = settings.maxSeconds === null ? null : Date.now() + settings.maxSeconds * 1000;
-  const { shards } = await abortable(interrupt, (signal) => compute.runJob('plan', { evidence, settings, targetShards: TARGET_SHARDS }, { signal }));
+  const { shards } = await abortable(interrupt, (signal) =>
+    compute.runJob('plan', { evidence, settings, targetShards: TARGET_SHARDS }, { signal }),
+  );
 
   const counters = createCounters();
   const merger = new ShardMerger(settings.keep);
@@ -83,7 +85,10 @@ export async function runLocally(
   }
 
   const merged = merger.merged();
-  const finished = settings.mode === 'count' ? null : await compute.runJob('finish', { evidence, settings, kept: merged.kept, logSumExp: merged.logSumExp, funnel: merged.funnel });
+  const finished =
+    settings.mode === 'count'
+      ? null
+      : await compute.runJob('finish', { evidence, settings, kept: merged.kept, logSumExp: merged.logSumExp, funnel: merged.funnel });
   return {
     survivorCount: merged.survivorCount,
     multigraphCount: merged.multigraphCount,

@@ -17,9 +17,15 @@ function buildProgram(context: CliContext, finish: (code: ExitCode) => void): Co
     .description('Every constitution that a molecular formula and fragments allow, with predicted and ranked NMR.')
     .exitOverride()
     .configureOutput({ writeOut: (text) => void context.write(text), writeErr: () => undefined });
-  const add = (name: string, description: string): Command => program.command(name).description(description).option(...JSON_FLAG).exitOverride();
-  const withArgument = (command: (argument: string, raw: RawOptions, context: CliContext) => Promise<ExitCode>) => async (argument: string, raw: RawOptions) =>
-    finish(await command(argument, raw, context));
+  const add = (name: string, description: string): Command =>
+    program
+      .command(name)
+      .description(description)
+      .option(...JSON_FLAG)
+      .exitOverride();
+  const withArgument =
+    (command: (argument: string, raw: RawOptions, context: CliContext) => Promise<ExitCode>) => async (argument: string, raw: RawOptions) =>
+      finish(await command(argument, raw, context));
 
   add('formula', 'molecular formulas for an accurate mass, best first')
     .option('--mz <number>', 'observed m/z')
@@ -30,11 +36,17 @@ function buildProgram(context: CliContext, finish: (code: ExitCode) => void): Co
     .option('--limit <number>', 'formulas to print (default 50)')
     .action(async (raw: RawOptions) => finish(await formulaCommand(raw, context)));
   add('enumerate', 'count or list all constitutions')
-    .argument('<input>', 'formula, evidence document (.json), batch of one document a line (.jsonl), or - for such a batch on standard input')
+    .argument(
+      '<input>',
+      'formula, evidence document (.json), batch of one document a line (.jsonl), or - for such a batch on standard input',
+    )
     .option('--count', 'print the count only')
     .option('--smiles', 'list the constitutions as SMILES')
     .option('--keep <number>', 'list at most so many (default 100000)')
-    .option('--merge-resonance <true|false>', 'whether resonance forms of aromatic rings count once; default: as the document says, else true')
+    .option(
+      '--merge-resonance <true|false>',
+      'whether resonance forms of aromatic rings count once; default: as the document says, else true',
+    )
     .option(...THREADS_FLAG)
     .option(...SECONDS_FLAG)
     .action(withArgument(enumerateCommand));

@@ -42,14 +42,22 @@ function parseJson(text: string, path: string): unknown {
   try {
     return JSON.parse(text) as unknown;
   } catch (error) {
-    throw new BadInputError([{ path, message: `not valid JSON (${error instanceof Error ? error.message : 'unreadable'}); expected an evidence document such as {"formula": "C9H10O2"}` }]);
+    throw new BadInputError([
+      {
+        path,
+        message: `not valid JSON (${error instanceof Error ? error.message : 'unreadable'}); expected an evidence document such as {"formula": "C9H10O2"}`,
+      },
+    ]);
   }
 }
 
 function unreadable(path: string, error: unknown): BadInputError {
   const code = (error as NodeJS.ErrnoException).code;
-  const reason = code === 'ENOENT' ? 'no such file' : code === 'EISDIR' ? 'is a folder' : code === 'EACCES' ? 'not readable' : String(error);
-  return new BadInputError([{ path: 'input', message: `${path}: ${reason}; expected the path of an evidence document, or a formula such as C9H10O2` }]);
+  const reason =
+    code === 'ENOENT' ? 'no such file' : code === 'EISDIR' ? 'is a folder' : code === 'EACCES' ? 'not readable' : String(error);
+  return new BadInputError([
+    { path: 'input', message: `${path}: ${reason}; expected the path of an evidence document, or a formula such as C9H10O2` },
+  ]);
 }
 
 /** Reads the evidence document of a file. */
@@ -57,7 +65,10 @@ export async function readEvidenceFile(path: string): Promise<ReadEvidence> {
   let text: string;
   try {
     const { size } = await stat(path);
-    if (size > MAX_DOCUMENT_BYTES) throw new BadInputError([{ path: 'input', message: `${path} is larger than ${MAX_DOCUMENT_BYTES / 1e6} MB; expected one evidence document` }]);
+    if (size > MAX_DOCUMENT_BYTES)
+      throw new BadInputError([
+        { path: 'input', message: `${path} is larger than ${MAX_DOCUMENT_BYTES / 1e6} MB; expected one evidence document` },
+      ]);
     text = await readFile(path, 'utf8');
   } catch (error) {
     throw error instanceof BadInputError ? error : unreadable(path, error);
@@ -88,7 +99,10 @@ export async function* readLines(argument: string, context: CliContext): AsyncGe
       rest += typeof piece === 'string' ? piece : decoder.decode(piece, { stream: true });
       const lines = rest.split(/\r\n|\n/);
       rest = lines.pop() ?? '';
-      if (rest.length > MAX_LINE_LENGTH) throw new BadInputError([{ path: 'input', message: `a line is longer than ${MAX_LINE_LENGTH} characters; expected one document a line` }]);
+      if (rest.length > MAX_LINE_LENGTH)
+        throw new BadInputError([
+          { path: 'input', message: `a line is longer than ${MAX_LINE_LENGTH} characters; expected one document a line` },
+        ]);
       for (const line of lines) if (line.trim() !== '') yield line;
     }
   } catch (error) {

@@ -3,7 +3,11 @@ import { BadInputError, InterruptedError } from './cli-error.js';
 import type { CliContext } from './cli-context.js';
 
 /** Opens the compute threads for a piece of work and closes them behind it, whatever happens. */
-export async function withCompute<T>(context: CliContext, threads: number | undefined, work: (compute: ComputeService) => Promise<T>): Promise<T> {
+export async function withCompute<T>(
+  context: CliContext,
+  threads: number | undefined,
+  work: (compute: ComputeService) => Promise<T>,
+): Promise<T> {
   const compute = await context.openCompute(threads);
   try {
     return await work(compute);

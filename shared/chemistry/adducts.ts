@@ -15,7 +15,20 @@ export type AdductResult = { readonly ok: true; readonly adduct: Adduct } | { re
 
 /** Ions to offer in a list; anything of the same form can be typed. */
 export const COMMON_ADDUCTS: readonly string[] = [
-  '[M+H]+', '[M+NH4]+', '[M+Na]+', '[M+K]+', '[M]+.', '[M-H]-', '[M+Cl]-', '[M+HCOO]-', '[M+CH3COO]-', '[M+H-H2O]+', '[M+2H]2+', '[2M+H]+', '[2M+Na]+', '[2M-H]-',
+  '[M+H]+',
+  '[M+NH4]+',
+  '[M+Na]+',
+  '[M+K]+',
+  '[M]+.',
+  '[M-H]-',
+  '[M+Cl]-',
+  '[M+HCOO]-',
+  '[M+CH3COO]-',
+  '[M+H-H2O]+',
+  '[M+2H]2+',
+  '[2M+H]+',
+  '[2M+Na]+',
+  '[2M-H]-',
 ];
 
 const MASSES = new Map([...ELEMENTS, ...ADDUCT_ELEMENTS].map(({ symbol, monoisotopicMass }) => [symbol, monoisotopicMass]));
@@ -38,7 +51,15 @@ function readTerm(text: string): Map<string, number> | null {
 
 /** Reads an ion in the usual bracket notation. */
 export function parseAdduct(text: string): AdductResult {
-  const plain = text.trim().replace(/[−–]/g, '-').replace(/⁺/g, '+').replace(/⁻/g, '-').replace(/[•·]/g, '.').replace(/\s/g, '').replace(/\.([+-])$/, '$1.').replace(/^M([+-]\.?)$/, '[M]$1');
+  const plain = text
+    .trim()
+    .replace(/[−–]/g, '-')
+    .replace(/⁺/g, '+')
+    .replace(/⁻/g, '-')
+    .replace(/[•·]/g, '.')
+    .replace(/\s/g, '')
+    .replace(/\.([+-])$/, '$1.')
+    .replace(/^M([+-]\.?)$/, '[M]$1');
   if (plain === 'M' || plain === '[M]') return { ok: true, adduct: { name: 'M', moleculeCount: 1, atoms: new Map(), charge: 0 } };
   const parts = /^\[(\d*)M((?:[+-]\d*[A-Za-z0-9]+)*)\](\d*)([+-])(\.?)$/.exec(plain);
   if (parts === null) return { ok: false, message: EXPECTED };

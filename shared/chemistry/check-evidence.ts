@@ -49,12 +49,20 @@ function checkRingSizes(copies: readonly RequiredCopies[], { min, max }: Evidenc
     const rings = ringSizesOf(fragment);
     const small = rings.find(({ size }) => size < min);
     if (small !== undefined) {
-      issues.push({ path: 'options.ringSizes.min', message: `required fragment ${index + 1} has a ring of ${small.size}; expected at most ${small.size}, or another fragment` });
+      issues.push({
+        path: 'options.ringSizes.min',
+        message: `required fragment ${index + 1} has a ring of ${small.size}; expected at most ${small.size}, or another fragment`,
+      });
     }
     // A ring with two or more attachments may still be bridged into smaller rings.
-    const large = rings.find(({ size, atoms }) => max !== null && size > max && fragment.attachments.filter(({ atom }) => atoms.includes(atom)).length < 2);
+    const large = rings.find(
+      ({ size, atoms }) => max !== null && size > max && fragment.attachments.filter(({ atom }) => atoms.includes(atom)).length < 2,
+    );
     if (large !== undefined) {
-      issues.push({ path: 'options.ringSizes.max', message: `required fragment ${index + 1} has a ring of ${large.size}; expected at least ${large.size}, or another fragment` });
+      issues.push({
+        path: 'options.ringSizes.max',
+        message: `required fragment ${index + 1} has a ring of ${large.size}; expected at least ${large.size}, or another fragment`,
+      });
     }
   }
   return issues;
@@ -72,13 +80,22 @@ function checkSignals(document: EvidenceDocument, formula: FormulaCounts): Input
   const signalHydrogens = total(document.protonSignals, ({ count }) => count ?? 1);
   const exchangeable = total(document.protonSignals, (signal) => (signal.exchangeable === true ? (signal.count ?? 1) : 0));
   if (signalCarbons > carbons) {
-    issues.push({ path: 'carbonSignals', message: `signals for ${signalCarbons} carbons, the formula has ${carbons}; remove solvent and impurity signals, lower the counts or correct the formula` });
+    issues.push({
+      path: 'carbonSignals',
+      message: `signals for ${signalCarbons} carbons, the formula has ${carbons}; remove solvent and impurity signals, lower the counts or correct the formula`,
+    });
   }
   if (carbonBound > hydrogens) {
-    issues.push({ path: 'carbonSignals', message: `attached hydrogens add up to ${carbonBound}, the formula has ${hydrogens}; lower the hydrogens or counts of the signals or correct the formula` });
+    issues.push({
+      path: 'carbonSignals',
+      message: `attached hydrogens add up to ${carbonBound}, the formula has ${hydrogens}; lower the hydrogens or counts of the signals or correct the formula`,
+    });
   }
   if (signalHydrogens > hydrogens) {
-    issues.push({ path: 'protonSignals', message: `signals for ${signalHydrogens} hydrogens, the formula has ${hydrogens}; remove solvent and impurity signals, lower the counts or correct the formula` });
+    issues.push({
+      path: 'protonSignals',
+      message: `signals for ${signalHydrogens} hydrogens, the formula has ${hydrogens}; remove solvent and impurity signals, lower the counts or correct the formula`,
+    });
   } else if (carbonBound <= hydrogens && carbonBound + exchangeable > hydrogens) {
     issues.push({
       path: 'protonSignals',

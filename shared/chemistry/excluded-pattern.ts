@@ -32,8 +32,19 @@ export type ExcludedPatternResult =
   | { readonly kind: 'smarts' }
   | { readonly kind: 'fault'; readonly message: string; readonly position: number };
 
-/** Signs of SMARTS that a plain SMILES never has: logic, numbers and ring or degree tests in brackets, any-(aliphatic). */
-const SMARTS_SIGNS = /[,;&!$]|\[[^\]]*(#\d|[XDRrvxhaA^]\d?[\];,&])|(^|[^A-Za-z])[aA]($|[^a-z])|-!@|@[-=#~]|[-=#~]@/;
+/**
+ * Signs of SMARTS that a plain SMILES never has: logic, atomic numbers, counts of rings, degree or valence in brackets,
+ * any-(aliphatic) atoms, ring bonds.
+ */
+const SMARTS_SIGNS = [
+  /[,;&!$]/,
+  /\[[^\]]*#\d/,
+  /\[[^\]]*[XDRvxrh]\d/,
+  /\[(?:[^\]]*[^A-Za-z\]])?[XRrvxhaA]\]/,
+  /(?:^|[^A-Za-z])[aA](?:$|[^a-z])/,
+  /@[-=#~]|[-=#~]@/,
+];
+const looksLikeSmarts = (text: string): boolean => SMARTS_SIGNS.some((sign) => sign.test(text));
 
 function areBracketsBalanced(text: string): boolean {
   const open: string[] = [];
@@ -70,7 +81,9 @@ function unifyChargeDrawings(atoms: readonly MutableAtom[], bonds: readonly Muta
     const partner = (bond: MutableBond): number => (bond.from === i ? bond.to : bond.from);
     const used = own.reduce((sum, { kind }) => sum + leastOrder(kind), 0);
     if (atom.atomicNumber === 7 && atom.charge === null && used >= 4) {
-      const oxide = own.find((bond) => bond.kind === 'double' && atoms[partner(bond)]!.atomicNumber === 8 && bondsOf(partner(bond)).length === 1);
+      const oxide = own.find(
+        (bond) => bond.kind === 'double' && atoms[partner(bond)]!.atomicNumber === 8 && bondsOf(partner(bond)).length === 1,
+      );
       if (oxide !== undefined) {
         oxide.kind = 'single';
         atom.charge = 1;
@@ -131,13 +144,24 @@ function buildQuery(written: WrittenSmiles): QueryGraph {
     const to = place[bond.to]!;
     if (from < 0 || to < 0) {
       const heavy = Math.max(from, to);
-      if (heavy < 0 || (bond.order !== null && bond.order !== 1)) throw new SmilesError('hydrogen needs exactly one single bond, to a heavy atom', bond.position);
+      if (heavy < 0 || (bond.order !== null && bond.order !== 1))
+        throw new SmilesError('hydrogen needs exactly one single bond, to a heavy atom', bond.position);
       atoms[heavy]!.minHydrogens++;
       continue;
     }
     const areAromatic = atoms[from]!.isAromatic === true && atoms[to]!.isAromatic === true;
     const kind: QueryBondKind =
-      bond.order === null ? (areAromatic ? 'singleOrAromatic' : 'single') : bond.order === 1 ? 'single' : bond.order === 2 ? 'double' : bond.order === 3 ? 'triple' : bond.order;
+      bond.order === null
+        ? areAromatic
+          ? 'singleOrAromatic'
+          : 'single'
+        : bond.order === 1
+          ? 'single'
+          : bond.order === 2
+            ? 'double'
+            : bond.order === 3
+              ? 'triple'
+              : bond.order;
     bonds.push({ from, to, kind });
   }
   unifyChargeDrawings(atoms, bonds);
@@ -146,11 +170,24 @@ function buildQuery(written: WrittenSmiles): QueryGraph {
     if (atom.atomicNumber === 0) return;
     const { name, valences } = elementOf(atom.atomicNumber);
     const most = valences[valences.length - 1]! + Math.max(atom.charge ?? 0, 0);
-    const used = bonds.reduce((sum, bond) => sum + (bond.from === i || bond.to === i ? leastOrder(bond.kind) : 0), Math.max(atom.writtenHydrogens, atom.minHydrogens));
-    if (used > most) throw new SmilesError(`${name} has ${used} bonds, at most ${most} are possible, so the pattern never matches; remove bonds`, atom.position);
+    const used = bonds.reduce(
+      (sum, bond) => sum + (bond.from === i || bond.to === i ? leastOrder(bond.kind) : 0),
+      Math.max(atom.writtenHydrogens, atom.minHydrogens),
+    );
+    if (used > most)
+      throw new SmilesError(
+        `${name} has ${used} bonds, at most ${most} are possible, so the pattern never matches; remove bonds`,
+        atom.position,
+      );
   });
   return {
-    atoms: atoms.map(({ atomicNumber, isAromatic, hydrogens, minHydrogens, charge }) => ({ atomicNumber, isAromatic, hydrogens, minHydrogens, charge })),
+    atoms: atoms.map(({ atomicNumber, isAromatic, hydrogens, minHydrogens, charge }) => ({
+      atomicNumber,
+      isAromatic,
+      hydrogens,
+      minHydrogens,
+      charge,
+    })),
     bonds: bonds.map(({ from, to, kind }) => ({ from, to, kind })),
   };
 }
@@ -171,7 +208,7 @@ export function parseExcludedPattern(text: string): ExcludedPatternResult {
     return { kind: 'query', query: buildQuery(written), notes: written.hadStereo ? ['stereo dropped'] : [] };
   } catch (fault) {
     if (!(fault instanceof SmilesError)) throw fault;
-    if (SMARTS_SIGNS.test(pattern) && areBracketsBalanced(pattern)) return { kind: 'smarts' };
+    if (looksLikeSmarts(pattern) && areBracketsBalanced(pattern)) return { kind: 'smarts' };
     return { kind: 'fault', message: fault.message, position: fault.position };
   }
 }

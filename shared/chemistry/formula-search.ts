@@ -30,8 +30,7 @@ export interface FormulaQuery {
   readonly limit?: number;
 }
 export type FormulaSearchResult =
-  | { readonly ok: true; readonly candidates: readonly FormulaCandidate[] }
-  | { readonly ok: false; readonly issues: readonly InputIssue[] };
+  { readonly ok: true; readonly candidates: readonly FormulaCandidate[] } | { readonly ok: false; readonly issues: readonly InputIssue[] };
 
 export const FORMULA_SEARCH_LIMITS = { mz: 2000, ppm: 100, isotopes: 8, candidates: 1000 } as const;
 const DEFAULT_LIMIT = 100;
@@ -55,7 +54,9 @@ const NITROGEN_COST = 0.15;
 const OXYGEN_COST = 0.05;
 
 /** Ratios to carbon: common range (99.7 % of known formulas) and extended range (99.99 %). */
-const RATIO_LIMITS: ReadonlyArray<readonly [symbol: string, commonLow: number, commonHigh: number, extendedLow: number, extendedHigh: number]> = [
+const RATIO_LIMITS: ReadonlyArray<
+  readonly [symbol: string, commonLow: number, commonHigh: number, extendedLow: number, extendedHigh: number]
+> = [
   // H/C: Kind & Fiehn, BMC Bioinformatics 2007, 8:105; the others the same article from memory.
   ['H', 0.2, 3.1, 0.1, 6],
   ['N', 0, 1.3, 0, 4],
@@ -94,7 +95,9 @@ function heuristicPenalty(counts: FormulaCounts): { cost: number; remarks: strin
       if (ratio >= low && ratio <= high) continue;
       const isRare = ratio < extendedLow || ratio > extendedHigh;
       cost += isRare ? OUTSIDE_EXTENDED : OUTSIDE_COMMON;
-      remarks.push(`${symbol}/C ${ratio.toFixed(2)} outside the ${isRare ? 'extended' : 'common'} range ${isRare ? `${extendedLow}–${extendedHigh}` : `${low}–${high}`}`);
+      remarks.push(
+        `${symbol}/C ${ratio.toFixed(2)} outside the ${isRare ? 'extended' : 'common'} range ${isRare ? `${extendedLow}–${extendedHigh}` : `${low}–${high}`}`,
+      );
     }
   }
   for (const [above, limits] of JOINT_LIMITS) {
@@ -129,14 +132,25 @@ function isotopeTerm(counts: FormulaCounts, adduct: Adduct, isotopes: readonly n
 function checkQuery(query: FormulaQuery): InputIssue[] {
   const issues: InputIssue[] = [];
   const { mz, ppm, isotopes, elements } = query;
-  if (!(mz > 1 && mz <= FORMULA_SEARCH_LIMITS.mz)) issues.push({ path: 'mz', message: `expected a number between 1 and ${FORMULA_SEARCH_LIMITS.mz} Th` });
-  if (!(ppm >= 0.01 && ppm <= FORMULA_SEARCH_LIMITS.ppm)) issues.push({ path: 'ppm', message: `expected a number between 0.01 and ${FORMULA_SEARCH_LIMITS.ppm} ppm` });
+  if (!(mz > 1 && mz <= FORMULA_SEARCH_LIMITS.mz))
+    issues.push({ path: 'mz', message: `expected a number between 1 and ${FORMULA_SEARCH_LIMITS.mz} Th` });
+  if (!(ppm >= 0.01 && ppm <= FORMULA_SEARCH_LIMITS.ppm))
+    issues.push({ path: 'ppm', message: `expected a number between 0.01 and ${FORMULA_SEARCH_LIMITS.ppm} ppm` });
   if (isotopes !== undefined) {
-    const areHeights = isotopes.length >= 1 && isotopes.length <= FORMULA_SEARCH_LIMITS.isotopes && isotopes.every((height) => height >= 0 && Number.isFinite(height)) && isotopes[0]! > 0;
-    if (!areHeights) issues.push({ path: 'isotopes', message: `expected heights of M, M+1, M+2 … such as 100,9.9,0.8; at most ${FORMULA_SEARCH_LIMITS.isotopes}, the first above 0` });
+    const areHeights =
+      isotopes.length >= 1 &&
+      isotopes.length <= FORMULA_SEARCH_LIMITS.isotopes &&
+      isotopes.every((height) => height >= 0 && Number.isFinite(height)) &&
+      isotopes[0]! > 0;
+    if (!areHeights)
+      issues.push({
+        path: 'isotopes',
+        message: `expected heights of M, M+1, M+2 … such as 100,9.9,0.8; at most ${FORMULA_SEARCH_LIMITS.isotopes}, the first above 0`,
+      });
   }
   for (const symbol of elements ?? []) {
-    if (findElement(symbol) === null) issues.push({ path: 'elements', message: `element "${symbol}" is not supported; use ${SUPPORTED_SYMBOLS.join(' ')}` });
+    if (findElement(symbol) === null)
+      issues.push({ path: 'elements', message: `element "${symbol}" is not supported; use ${SUPPORTED_SYMBOLS.join(' ')}` });
   }
   return issues;
 }
@@ -157,7 +171,11 @@ export function findFormulas(query: FormulaQuery): FormulaSearchResult {
   if (!read.ok || issues.length > 0) return { ok: false, issues };
   const { adduct } = read;
   const target = neutralMassOf(query.mz, adduct);
-  if (target < 1) return { ok: false, issues: [{ path: 'mz', message: `too small for ${adduct.name}; expected an m/z above ${mzOf(1, adduct).toFixed(1)}` }] };
+  if (target < 1)
+    return {
+      ok: false,
+      issues: [{ path: 'mz', message: `too small for ${adduct.name}; expected an m/z above ${mzOf(1, adduct).toFixed(1)}` }],
+    };
   const tolerance = (query.ppm * 1e-6 * query.mz * Math.max(Math.abs(adduct.charge), 1)) / adduct.moleculeCount;
   const limit = Math.min(query.limit ?? DEFAULT_LIMIT, FORMULA_SEARCH_LIMITS.candidates);
   const allowed = new Set(query.elements ?? SUPPORTED_SYMBOLS);
@@ -184,7 +202,11 @@ export function findFormulas(query: FormulaQuery): FormulaSearchResult {
     }
     const [symbol, first, further, most] = rarer[place]!;
     const atomMass = findElement(symbol)!.monoisotopicMass;
-    for (let count = 0, cost = 0; count <= most && cost <= budget && mass - count * atomMass > -tolerance; count++, cost = first + (count - 1) * further) {
+    for (
+      let count = 0, cost = 0;
+      count <= most && cost <= budget && mass - count * atomMass > -tolerance;
+      count++, cost = first + (count - 1) * further
+    ) {
       chosen.set(symbol, count);
       chooseRarer(place + 1, budget - cost, mass - count * atomMass, level);
     }
@@ -229,7 +251,10 @@ function fillCommonElements(
     for (let o = 0; o <= mostOxygens && afterNitrogen - o * oxygen.monoisotopicMass > -tolerance; o++) {
       const rest = afterNitrogen - o * oxygen.monoisotopicMass;
       const valence = spare + n;
-      const fewest = Math.max(Math.ceil((rest - tolerance - valence * hydrogen.monoisotopicMass) / (12 + 2 * hydrogen.monoisotopicMass)), 0);
+      const fewest = Math.max(
+        Math.ceil((rest - tolerance - valence * hydrogen.monoisotopicMass) / (12 + 2 * hydrogen.monoisotopicMass)),
+        0,
+      );
       const most = allowed.has('C') ? Math.floor((rest + tolerance) / 12) : 0;
       for (let c = fewest; c <= most; c++) {
         const h = Math.round((rest - 12 * c) / hydrogen.monoisotopicMass);

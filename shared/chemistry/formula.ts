@@ -69,7 +69,8 @@ export function parseFormula(text: string): FormulaResult {
       groups.push({ counts: new Map(), position: at, bracket: character === '(' ? ')' : ']' });
       at++;
     } else if (character === ')' || character === ']') {
-      if (groups.length === 1 || group.bracket !== character) return fault(`"${character}" at position ${at + 1} closes nothing; remove it or add the opening bracket`, at);
+      if (groups.length === 1 || group.bracket !== character)
+        return fault(`"${character}" at position ${at + 1} closes nothing; remove it or add the opening bracket`, at);
       if (group.counts.size === 0) return fault(`the brackets at position ${group.position + 1} are empty; remove them`, group.position);
       groups.pop();
       at++;
@@ -88,7 +89,10 @@ export function parseFormula(text: string): FormulaResult {
     } else if (/[+\-−–⁺⁻]/.test(character)) {
       return fault('charges are not supported; expected the formula of the neutral molecule', at);
     } else if (/[a-z]/.test(character)) {
-      return fault(`element symbols begin with a capital letter; "${character}" at position ${at + 1} does not, expected a formula such as ${EXAMPLE}`, at);
+      return fault(
+        `element symbols begin with a capital letter; "${character}" at position ${at + 1} does not, expected a formula such as ${EXAMPLE}`,
+        at,
+      );
     } else if (/[.·•*]/.test(character)) {
       return fault('several components are not supported; expected the formula of one molecule, without solvent or salt', at);
     } else return fault(`"${character}" at position ${at + 1} is not part of a formula; expected a formula such as ${EXAMPLE}`, at);
@@ -104,7 +108,9 @@ export function parseFormula(text: string): FormulaResult {
 
 /** Formula in Hill order, plain text: C9H10O2. */
 export function formatHill(counts: FormulaCounts): string {
-  return formulaParts(counts).map(({ symbol, count }) => (count === 1 ? symbol : `${symbol}${count}`)).join('');
+  return formulaParts(counts)
+    .map(({ symbol, count }) => (count === 1 ? symbol : `${symbol}${count}`))
+    .join('');
 }
 
 /** Parts in Hill order, so that counts can be set as real subscripts. */
@@ -221,11 +227,15 @@ export function checkFormulaCounts(counts: FormulaCounts, extraUnsaturation = 0)
   const most = maxHydrogens(counts) + 2 * extraUnsaturation;
   if (unsaturation < 0) {
     const cure = most >= 0 ? `expected at most H${most} with these atoms; lower the hydrogens` : 'lower the halogens, or add carbon';
-    report(`too many ${hydrogens > 0 ? 'hydrogens' : 'halogens'}: degree of unsaturation ${String(unsaturation).replace('-', '−')} is negative; ${cure}`);
+    report(
+      `too many ${hydrogens > 0 ? 'hydrogens' : 'halogens'}: degree of unsaturation ${String(unsaturation).replace('-', '−')} is negative; ${cure}`,
+    );
   } else if (!Number.isInteger(unsaturation)) {
     const lower = hydrogens > 0 ? [`H${hydrogens - 1}`] : [];
     const upper = hydrogens + 1 <= most ? [`H${hydrogens + 1}`] : [];
-    report(`degree of unsaturation ${unsaturation} is not a whole number, so this would be a radical or an ion; expected ${[...lower, ...upper].join(' or ')} with these atoms`);
+    report(
+      `degree of unsaturation ${unsaturation} is not a whole number, so this would be a radical or an ion; expected ${[...lower, ...upper].join(' or ')} with these atoms`,
+    );
   }
   return issues;
 }

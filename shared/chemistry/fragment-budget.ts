@@ -55,10 +55,13 @@ const plural = (count: number, one: string, many = `${one}s`): string => `${coun
 
 /** Elements of which fragments need more than there is, as "C12 (the formula has 9)". */
 function shortages(needed: FormulaCounts, formula: FormulaCounts): string[] {
-  return [...needed].flatMap(([symbol, count]) => (count > countOf(formula, symbol) ? [`${symbol}${count} (the formula has ${countOf(formula, symbol)})`] : []));
+  return [...needed].flatMap(([symbol, count]) =>
+    count > countOf(formula, symbol) ? [`${symbol}${count} (the formula has ${countOf(formula, symbol)})`] : [],
+  );
 }
 
-const scaled = (counts: ReadonlyMap<string, number>, factor: number): FormulaCounts => formulaCounts([...counts].map(([symbol, count]) => [symbol, count * factor]));
+const scaled = (counts: ReadonlyMap<string, number>, factor: number): FormulaCounts =>
+  formulaCounts([...counts].map(([symbol, count]) => [symbol, count * factor]));
 
 /** Issues of fragments that need more atoms than the formula has; one issue at the list when only all together do. */
 function checkAtoms(formula: FormulaCounts, copies: readonly RequiredCopies[], path: string): InputIssue[] {
@@ -68,22 +71,34 @@ function checkAtoms(formula: FormulaCounts, copies: readonly RequiredCopies[], p
     const once = shortages(scaled(fragment.composition, 1), formula);
     const all = shortages(scaled(fragment.composition, count), formula);
     if (once.length > 0) {
-      issues.push({ path: `${path}[${index}].smiles`, message: `the fragment needs ${once.join(', ')}; choose a smaller fragment or correct the formula` });
+      issues.push({
+        path: `${path}[${index}].smiles`,
+        message: `the fragment needs ${once.join(', ')}; choose a smaller fragment or correct the formula`,
+      });
     } else if (all.length > 0) {
-      issues.push({ path: `${path}[${index}].count`, message: `${plural(count, 'copy', 'copies')} need ${all.join(', ')}; lower the count or correct the formula` });
+      issues.push({
+        path: `${path}[${index}].count`,
+        message: `${plural(count, 'copy', 'copies')} need ${all.join(', ')}; lower the count or correct the formula`,
+      });
     }
     for (const [symbol, atoms] of fragment.composition) total.set(symbol, (total.get(symbol) ?? 0) + atoms * count);
   }
   const together = shortages(formulaCounts(total), formula);
   if (issues.length === 0 && together.length > 0) {
-    issues.push({ path, message: `the fragments together need ${together.join(', ')}; remove a fragment, lower a count or correct the formula` });
+    issues.push({
+      path,
+      message: `the fragments together need ${together.join(', ')}; remove a fragment, lower a count or correct the formula`,
+    });
   }
   return issues;
 }
 
 /** Least sum of (order − 1) over the bonds that close all attachments of one order; two of different copies may pair. */
 function extraOrders(copies: readonly RequiredCopies[], order: 2 | 3): number {
-  const open = copies.map(({ fragment, count }) => ({ own: fragment.attachments.filter((attachment) => attachment.order === order).length, count }));
+  const open = copies.map(({ fragment, count }) => ({
+    own: fragment.attachments.filter((attachment) => attachment.order === order).length,
+    count,
+  }));
   const all = open.reduce((sum, { own, count }) => sum + own * count, 0);
   return (order - 1) * Math.max(Math.ceil(all / 2), ...open.map(({ own }) => own));
 }
@@ -94,7 +109,9 @@ function extraOrders(copies: readonly RequiredCopies[], order: 2 | 3): number {
  */
 function checkBonds(remaining: FormulaCounts, copies: readonly RequiredCopies[], path: string): InputIssue[] {
   const hydrogens = countOf(remaining, 'H');
-  const atoms = [...remaining].flatMap(([symbol, count]) => (symbol === 'H' ? [] : Array<number>(count).fill(findElement(symbol)!.defaultValence)));
+  const atoms = [...remaining].flatMap(([symbol, count]) =>
+    symbol === 'H' ? [] : Array<number>(count).fill(findElement(symbol)!.defaultValence),
+  );
   const atomValence = atoms.reduce((sum, valence) => sum + valence, 0);
   const unitCount = atoms.length + copies.reduce((sum, { count }) => sum + count, 0);
   const left = formatHill(remaining);
@@ -102,7 +119,12 @@ function checkBonds(remaining: FormulaCounts, copies: readonly RequiredCopies[],
   const closed = copies.find(({ fragment }) => fragment.attachments.length === 0);
   if (closed !== undefined) {
     if (unitCount === 1 && hydrogens === 0) return [];
-    return [{ path: `${path}[${closed.index}].smiles`, message: `no attachment point, yet ${left === '' ? 'other fragments' : left} must be bonded to it; add * to each atom where the rest is bonded` }];
+    return [
+      {
+        path: `${path}[${closed.index}].smiles`,
+        message: `no attachment point, yet ${left === '' ? 'other fragments' : left} must be bonded to it; add * to each atom where the rest is bonded`,
+      },
+    ];
   }
   const openSum = copies.reduce((sum, { fragment, count }) => sum + count * attachmentSum(fragment), 0);
   if (hydrogens > atomValence) {
@@ -121,19 +143,32 @@ function checkBonds(remaining: FormulaCounts, copies: readonly RequiredCopies[],
     return [{ path, message }];
   }
   if (unitCount === 1 && openSum > 0) {
-    return [{ path: `${path}[${copies[0]!.index}].smiles`, message: `${plural(openSum, 'attachment')} but nothing left to bond to; remove the *, or correct the formula` }];
+    return [
+      {
+        path: `${path}[${copies[0]!.index}].smiles`,
+        message: `${plural(openSum, 'attachment')} but nothing left to bond to; remove the *, or correct the formula`,
+      },
+    ];
   }
   // A multiple bond joins two pieces like a single one, but takes two or three of the open bonds on each side.
   const most = bondSum / 2 - extraOrders(copies, 2) - extraOrders(copies, 3);
   if (most < unitCount - 1) {
     const counts = `${plural(Math.max(most, 0), 'link')} can be made, joining ${unitCount} pieces takes ${unitCount - 1}`;
-    return [{ path, message: `fragments and atoms left do not hang together (${counts}); add attachment points, choose fragments with fewer rings and double bonds, or correct the formula` }];
+    return [
+      {
+        path,
+        message: `fragments and atoms left do not hang together (${counts}); add attachment points, choose fragments with fewer rings and double bonds, or correct the formula`,
+      },
+    ];
   }
   const issues: InputIssue[] = [];
   for (const { fragment, index } of copies) {
     const own = attachmentSum(fragment);
     if (own > bondSum - own) {
-      issues.push({ path: `${path}[${index}].smiles`, message: `${plural(own, 'open bond')} of this fragment but only ${plural(bondSum - own, 'open bond')} elsewhere; remove attachment points or correct the formula` });
+      issues.push({
+        path: `${path}[${index}].smiles`,
+        message: `${plural(own, 'open bond')} of this fragment but only ${plural(bondSum - own, 'open bond')} elsewhere; remove attachment points or correct the formula`,
+      });
     }
     for (const order of [2, 3] as const) {
       const open = fragment.attachments.filter((attachment) => attachment.order === order).length;
@@ -141,9 +176,18 @@ function checkBonds(remaining: FormulaCounts, copies: readonly RequiredCopies[],
       const symbol = order === 2 ? '=*' : '#*';
       // A multiple bond goes to an atom left with valence enough, or to a like attachment of another copy.
       const capacity = atoms.reduce((sum, valence) => sum + Math.floor(valence / order), 0);
-      const others = copies.reduce((sum, copy) => sum + (copy.count - (copy.index === index ? 1 : 0)) * copy.fragment.attachments.filter((attachment) => attachment.order === order).length, 0);
+      const others = copies.reduce(
+        (sum, copy) =>
+          sum +
+          (copy.count - (copy.index === index ? 1 : 0)) *
+            copy.fragment.attachments.filter((attachment) => attachment.order === order).length,
+        0,
+      );
       if (open > capacity + others) {
-        issues.push({ path: `${path}[${index}].smiles`, message: `${symbol} needs an atom that can take a ${order === 2 ? 'double' : 'triple'} bond, and too few are left (${left === '' ? 'none' : left}); use a single bond * or correct the formula` });
+        issues.push({
+          path: `${path}[${index}].smiles`,
+          message: `${symbol} needs an atom that can take a ${order === 2 ? 'double' : 'triple'} bond, and too few are left (${left === '' ? 'none' : left}); use a single bond * or correct the formula`,
+        });
       }
     }
   }
@@ -171,7 +215,10 @@ export function budgetOf(formula: FormulaCounts, copies: readonly RequiredCopies
 }
 
 /** `budgetOf` for fragments as typed; a SMILES that cannot be read is an issue and takes no atoms. */
-export function fragmentBudget(formula: FormulaCounts, required: ReadonlyArray<{ readonly smiles: string; readonly count: number }>): FragmentBudget {
+export function fragmentBudget(
+  formula: FormulaCounts,
+  required: ReadonlyArray<{ readonly smiles: string; readonly count: number }>,
+): FragmentBudget {
   const unreadable: InputIssue[] = [];
   const copies = required.flatMap(({ smiles, count }, index) => {
     const parsed = parseFragment(smiles);

@@ -1,4 +1,11 @@
-import { carbonSignal, EVIDENCE_LIMITS, protonSignal, type CarbonSignal, type ProtonSignal } from '../schemas/evidence.js';
+import {
+  carbonSignal,
+  EVIDENCE_LIMITS,
+  MULTIPLICITY_PATTERN,
+  protonSignal,
+  type CarbonSignal,
+  type ProtonSignal,
+} from '../schemas/evidence.js';
 
 /** Text of one table row by column, as a form shows it: decimal points, no units. Empty text = no entry. */
 export type CarbonCells = Record<'shift' | 'hydrogens' | 'count', string>;
@@ -45,15 +52,25 @@ function splitLines(text: string): TextLine[] {
   return clean.split(/\r\n|\r|\n/).flatMap((row, index) => {
     if (row.trim() === '') return [];
     const source = separator.source === '\\s+' ? row.trim() : row;
-    const cells = source.split(separator).map((cell) => cell.trim().replace(/^"(.*)"$/, '$1').trim());
+    const cells = source.split(separator).map((cell) =>
+      cell
+        .trim()
+        .replace(/^"(.*)"$/, '$1')
+        .trim(),
+    );
     return [{ line: index + 1, cells: hasDecimalPoints ? cells : cells.map((cell) => cell.replace(/(\d),(?=\d)/g, '$1.')) }];
   });
 }
 
-const withoutUnit = (cell: string): string => cell.replace(/^(δ|delta)\s*=?\s*/i, '').replace(/\s*(ppm|hz)\.?$/i, '').trim();
+const withoutUnit = (cell: string): string =>
+  cell
+    .replace(/^(δ|delta)\s*=?\s*/i, '')
+    .replace(/\s*(ppm|hz)\.?$/i, '')
+    .trim();
 
 /** A line before the first data line whose cells hold no number is a heading. */
-const isHeading = (cells: readonly string[]): boolean => cells.every((cell) => !NUMBER.test(withoutUnit(cell)) && !RANGE.test(withoutUnit(cell)));
+const isHeading = (cells: readonly string[]): boolean =>
+  cells.every((cell) => !NUMBER.test(withoutUnit(cell)) && !RANGE.test(withoutUnit(cell)));
 
 /** Shift as typed; a range becomes its middle. */
 function readShift(cell: string, line: number, notes: string[]): string {
@@ -110,7 +127,11 @@ function collect<Signal, Column extends string>(
   const issues: PasteIssue<Column>[] = [];
   if (rows.length === 0) issues.push({ line: 1, column: null, message: 'no numbers found; expected one signal a line, the shift first' });
   if (rows.length > EVIDENCE_LIMITS.signals) {
-    issues.push({ line: rows[EVIDENCE_LIMITS.signals]!.line, column: null, message: `expected at most ${EVIDENCE_LIMITS.signals} signals` });
+    issues.push({
+      line: rows[EVIDENCE_LIMITS.signals]!.line,
+      column: null,
+      message: `expected at most ${EVIDENCE_LIMITS.signals} signals`,
+    });
   }
   const parsed = rows.slice(0, EVIDENCE_LIMITS.signals).map(({ line, cells }): PastedRow<Signal, Column> => {
     const result = parse(cells);
@@ -122,7 +143,10 @@ function collect<Signal, Column extends string>(
 }
 
 /** First issue of each column. */
-function issuesByColumn<Column extends string>(issues: ReadonlyArray<{ path: PropertyKey[]; message: string }>, columns: readonly Column[]) {
+function issuesByColumn<Column extends string>(
+  issues: ReadonlyArray<{ path: PropertyKey[]; message: string }>,
+  columns: readonly Column[],
+) {
   return columns.flatMap((column) => {
     const issue = issues.find(({ path }) => path[0] === column);
     return issue === undefined ? [] : [{ column, message: issue.message }];
@@ -130,10 +154,24 @@ function issuesByColumn<Column extends string>(issues: ReadonlyArray<{ path: Pro
 }
 
 /** Carbon types by their usual names. `q` is missing: it stands for quaternary and for CH3 (quartet). */
-const CARBON_TYPES: Readonly<Record<string, string>> = { c: '0', cq: '0', cquat: '0', quat: '0', s: '0', ch: '1', d: '1', ch2: '2', t: '2', ch3: '3' };
+const CARBON_TYPES: Readonly<Record<string, string>> = {
+  c: '0',
+  cq: '0',
+  cquat: '0',
+  quat: '0',
+  s: '0',
+  ch: '1',
+  d: '1',
+  ch2: '2',
+  t: '2',
+  ch3: '3',
+};
 
 function readHydrogens(cell: string): string {
-  const plain = cell.toLowerCase().replace(/[₀-₉]/g, (digit) => String(digit.charCodeAt(0) - 0x2080)).replace(/[\s=]/g, '');
+  const plain = cell
+    .toLowerCase()
+    .replace(/[₀-₉]/g, (digit) => String(digit.charCodeAt(0) - 0x2080))
+    .replace(/[\s=]/g, '');
   return CARBON_TYPES[plain] ?? cell;
 }
 const ATOM_COUNT = /^\(?(\d+)\s*[×x]?\s*[CH]\)?$/;
@@ -164,7 +202,11 @@ export function parseCarbonTable(text: string): PastedTable<CarbonSignal, keyof 
   ];
   const rows = assignColumns(splitLines(text), headings, byContent, notes).map(({ line, cells }) => ({
     line,
-    cells: { shift: readShift(cells.shift ?? '', line, notes), hydrogens: readHydrogens(cells.hydrogens ?? ''), count: readCount(cells.count ?? '') },
+    cells: {
+      shift: readShift(cells.shift ?? '', line, notes),
+      hydrogens: readHydrogens(cells.hydrogens ?? ''),
+      count: readCount(cells.count ?? ''),
+    },
   }));
   return collect(
     rows,
@@ -177,7 +219,9 @@ export function parseCarbonTable(text: string): PastedTable<CarbonSignal, keyof 
         ...(cells.hydrogens === '' ? {} : { hydrogens: numberOrText(cells.hydrogens) }),
         ...(cells.count === '' ? {} : { count: numberOrText(cells.count) }),
       });
-      return parsed.success ? { signal: parsed.data } : { issues: issuesByColumn(parsed.error.issues, ['shift', 'hydrogens', 'count'] as const) };
+      return parsed.success
+        ? { signal: parsed.data }
+        : { issues: issuesByColumn(parsed.error.issues, ['shift', 'hydrogens', 'count'] as const) };
     },
     notes,
   );
@@ -185,20 +229,52 @@ export function parseCarbonTable(text: string): PastedTable<CarbonSignal, keyof 
 
 /** Names of multiplicities that are written in more than one way. */
 const MULTIPLICITY_NAMES: Readonly<Record<string, string>> = {
-  singlet: 's', doublet: 'd', triplet: 't', quartet: 'q', quintet: 'quint', quin: 'quint', qn: 'quint', pent: 'quint', p: 'quint', sextet: 'sext', sxt: 'sext', hex: 'sext',
-  septet: 'sept', spt: 'sept', hept: 'sept', octet: 'oct', nonet: 'non', multiplet: 'm', broad: 'br', bs: 'br s', brs: 'br s',
+  singlet: 's',
+  doublet: 'd',
+  triplet: 't',
+  quartet: 'q',
+  quintet: 'quint',
+  quin: 'quint',
+  qn: 'quint',
+  pent: 'quint',
+  p: 'quint',
+  sextet: 'sext',
+  sxt: 'sext',
+  hex: 'sext',
+  septet: 'sept',
+  spt: 'sept',
+  hept: 'sept',
+  octet: 'oct',
+  nonet: 'non',
+  multiplet: 'm',
+  broad: 'br',
+  bs: 'br s',
+  brs: 'br s',
 };
 const MULTIPLICITY_LIKE = /^((br|app)\.?\s*)?[a-z]{1,9}$/i;
 
 function readMultiplicity(cell: string): string {
-  const plain = cell.toLowerCase().replace(/\bapp\.?\s*|~/g, '').replace(/\bbr\.\s*/g, 'br ').replace(/\s+/g, ' ').trim();
+  const plain = cell
+    .toLowerCase()
+    .replace(/\bapp\.?\s*|~/g, '')
+    .replace(/\bbr\.\s*/g, 'br ')
+    .replace(/\s+/g, ' ')
+    .trim();
   return MULTIPLICITY_NAMES[plain] ?? plain;
 }
 
+const isMultiplicity = (cell: string): boolean => MULTIPLICITY_PATTERN.test(readMultiplicity(cell));
+
 /** Couplings of a cell as "8.1, 2.0". */
 function readCouplings(cell: string): string {
-  const bare = cell.replace(/^[0-9]*J[^=]*=\s*|^J\s*/i, '').replace(/\s*Hz\.?$/i, '').trim();
-  return bare.split(/\s*(?:[,;/]|\band\b|\s)\s*/).filter((part) => part !== '').join(', ');
+  const bare = cell
+    .replace(/^[0-9]*J[^=]*=\s*|^J\s*/i, '')
+    .replace(/\s*Hz\.?$/i, '')
+    .trim();
+  return bare
+    .split(/\s*(?:[,;/]|\band\b|\s)\s*/)
+    .filter((part) => part !== '')
+    .join(', ');
 }
 
 /**
@@ -207,21 +283,21 @@ function readCouplings(cell: string): string {
  */
 export function parseProtonTable(text: string): PastedTable<ProtonSignal, keyof ProtonCells> {
   const notes: string[] = [];
-  const byContent = (cells: readonly string[]): Partial<ProtonCells> => {
-    const row: Partial<ProtonCells> = {};
+  const byContent = ([shift = '', ...others]: readonly string[]): Partial<ProtonCells> => {
+    const row: Partial<ProtonCells> = { shift };
+    // "br s" arrives in two cells when blanks separate the columns.
+    const cells = others.flatMap((cell, i) => {
+      if (/^br\.?$/i.test(others[i - 1] ?? '') && isMultiplicity(`br ${cell}`)) return [];
+      const next = others[i + 1];
+      return /^br\.?$/i.test(cell) && next !== undefined && isMultiplicity(`br ${next}`) ? [`br ${next}`] : [cell];
+    });
+    const proper = cells.findIndex(isMultiplicity);
+    const place = proper >= 0 ? proper : cells.findIndex((cell) => MULTIPLICITY_LIKE.test(cell) && !/^J/.test(cell));
     const couplings: string[] = [];
-    const [shift, ...others] = cells;
-    if (shift !== undefined) row.shift = shift;
-    let hasSeenMultiplicity = false;
-    others.forEach((cell, i) => {
+    cells.forEach((cell, i) => {
       if (cell === '') return;
-      // "br s" arrives in two cells when blanks separate the columns.
-      if (hasSeenMultiplicity && /^br\.?$/i.test(row.multiplicity ?? '') && /^[a-z]+$/i.test(cell)) row.multiplicity = `br ${cell}`;
-      else if (ATOM_COUNT.test(cell)) row.count = cell;
-      else if (!hasSeenMultiplicity && MULTIPLICITY_LIKE.test(cell) && !/^J/.test(cell)) {
-        row.multiplicity = cell;
-        hasSeenMultiplicity = true;
-      } else if (!hasSeenMultiplicity && row.count === undefined && i === 0) row.count = cell;
+      if (i === place) row.multiplicity = cell;
+      else if (ATOM_COUNT.test(cell) || (row.count === undefined && i === 0)) row.count = cell;
       else couplings.push(cell);
     });
     row.couplings = couplings.join(' ');
@@ -251,7 +327,9 @@ export function parseProtonTable(text: string): PastedTable<ProtonSignal, keyof 
         ...(cells.multiplicity === '' ? {} : { multiplicity: cells.multiplicity }),
         ...(cells.couplings === '' ? {} : { couplings: cells.couplings.split(', ').map(numberOrText) }),
       });
-      return parsed.success ? { signal: parsed.data } : { issues: issuesByColumn(parsed.error.issues, ['shift', 'count', 'multiplicity', 'couplings'] as const) };
+      return parsed.success
+        ? { signal: parsed.data }
+        : { issues: issuesByColumn(parsed.error.issues, ['shift', 'count', 'multiplicity', 'couplings'] as const) };
     },
     notes,
   );

@@ -29,7 +29,12 @@ function targetOf(fragment: Fragment): Target {
   const areAromatic = new Uint8Array(size * size);
   const atoms: TargetAtom[] = [];
   for (let a = 0; a < n; a++) {
-    atoms.push({ atomicNumber: graph.atomicNumbers[a]!, hydrogens: graph.hydrogens[a]!, charge: graph.charges[a]!, isAromatic: aromaticAtoms[a] === 1 });
+    atoms.push({
+      atomicNumber: graph.atomicNumbers[a]!,
+      hydrogens: graph.hydrogens[a]!,
+      charge: graph.charges[a]!,
+      isAromatic: aromaticAtoms[a] === 1,
+    });
     for (let b = 0; b < n; b++) {
       orders[a * size + b] = graph.bondOrders[a * n + b]!;
       areAromatic[a * size + b] = aromaticBonds[a * n + b]!;
@@ -102,7 +107,9 @@ export function doesPatternOccurIn(query: QueryGraph, fragment: Fragment): boole
       const bondsFit = query.bonds.every(({ from, to, kind }) => {
         if (from !== atom && to !== atom) return true;
         const other = image[from === atom ? to : from]!;
-        return other === -1 || doesBondFit(kind, target.orders[candidate * size + other]!, target.areAromatic[candidate * size + other] === 1);
+        return (
+          other === -1 || doesBondFit(kind, target.orders[candidate * size + other]!, target.areAromatic[candidate * size + other] === 1)
+        );
       });
       if (!bondsFit) continue;
       image[atom] = candidate;
@@ -118,7 +125,10 @@ export function doesPatternOccurIn(query: QueryGraph, fragment: Fragment): boole
 
 /** Query atoms so that each but the first is bonded to an earlier one (patterns are connected). */
 function connectedOrder(query: QueryGraph): number[] {
-  const start = Math.max(query.atoms.findIndex(({ atomicNumber }) => atomicNumber !== 0), 0);
+  const start = Math.max(
+    query.atoms.findIndex(({ atomicNumber }) => atomicNumber !== 0),
+    0,
+  );
   const order = [start];
   for (let head = 0; head < order.length; head++) {
     for (const { from, to } of query.bonds) {

@@ -60,7 +60,7 @@ export function listSmallAromaticRings(atoms: readonly SmallRingAtom[]): number[
     return electrons === 6;
   };
   let open = listSmallRings(atoms);
-  for (let foundBefore = -1; foundBefore < found.length; ) {
+  for (let foundBefore = -1; foundBefore < found.length;) {
     foundBefore = found.length;
     open = open.filter((ring) => {
       if (!isAromaticRing(ring)) return true;

@@ -42,8 +42,6 @@ export class SmilesError extends Error {
 const ELEMENT_LIST = SUPPORTED_SYMBOLS.join(' ');
 const STEREO_MARK = /@(?:@|(?:TH|AL|SP|TB|OH)\d{1,2})?/y;
 const PLAIN_ATOM = /Cl|Br|[CNOPSFI]|[cnops]/y;
-const MAX_BRACKET_HYDROGENS = 4;
-
 export const PLAIN_BONDS = '-=#:/\\';
 export const QUERY_BONDS = `${PLAIN_BONDS}~`;
 
@@ -83,7 +81,6 @@ function readBracketAtom(text: string, start: number): { atom: WrittenAtom; end:
   const hydrogenPosition = at;
   const hydrogenText = take(/H\d?/y);
   const bracketHydrogens = hydrogenText === null ? 0 : hydrogenText === 'H' ? 1 : Number(hydrogenText.slice(1));
-  if (bracketHydrogens > MAX_BRACKET_HYDROGENS) throw new SmilesError(`at most ${MAX_BRACKET_HYDROGENS} hydrogens fit on one atom`, hydrogenPosition);
   const chargePosition = at;
   const chargeText = take(/\+\d|-\d|\++|-+/y);
   let charge = 0;
@@ -94,9 +91,16 @@ function readBracketAtom(text: string, start: number): { atom: WrittenAtom; end:
   const mapPosition = at;
   const hasMap = take(/:\d{1,4}/y) !== null;
   if (hasMap && symbol !== '*') throw new SmilesError('atom numbers belong only on attachment points; remove the :n', mapPosition);
-  if (at !== close) throw new SmilesError(`"${text.slice(at, close)}" is not understood inside brackets; expected element, H count and charge, as in [nH] or [N+]`, at);
+  if (at !== close)
+    throw new SmilesError(
+      `"${text.slice(at, close)}" is not understood inside brackets; expected element, H count and charge, as in [nH] or [N+]`,
+      at,
+    );
   if (symbol === '*' && (bracketHydrogens > 0 || charge !== 0)) {
-    throw new SmilesError('an attachment point takes no hydrogens and no charge; write * or [*:1]', hydrogenText !== null ? hydrogenPosition : chargePosition);
+    throw new SmilesError(
+      'an attachment point takes no hydrogens and no charge; write * or [*:1]',
+      hydrogenText !== null ? hydrogenPosition : chargePosition,
+    );
   }
   return { atom: { symbol, isAromatic, isBracketed: true, bracketHydrogens, charge, position: start }, end: close + 1, hadStereo };
 }
@@ -145,7 +149,11 @@ export function readSmiles(text: string, bondSymbols = PLAIN_BONDS): WrittenSmil
     atoms.push(atom);
     const index = atoms.length - 1;
     if (previous >= 0) connect(previous, index, order, orderPosition >= 0 ? orderPosition : atom.position);
-    else if (orderPosition >= 0) throw new SmilesError('a bond needs an atom before it; an attachment point is written *= before or =* behind its atom', orderPosition);
+    else if (orderPosition >= 0)
+      throw new SmilesError(
+        'a bond needs an atom before it; an attachment point is written *= before or =* behind its atom',
+        orderPosition,
+      );
     previous = index;
     order = null;
     orderPosition = -1;
@@ -173,7 +181,14 @@ export function readSmiles(text: string, bondSymbols = PLAIN_BONDS): WrittenSmil
     if (plain !== null) {
       const symbol = plain[0];
       const isAromatic = /^[a-z]/.test(symbol);
-      addAtom({ symbol: isAromatic ? symbol.toUpperCase() : symbol, isAromatic, isBracketed: false, bracketHydrogens: 0, charge: 0, position: at });
+      addAtom({
+        symbol: isAromatic ? symbol.toUpperCase() : symbol,
+        isAromatic,
+        isBracketed: false,
+        bracketHydrogens: 0,
+        charge: 0,
+        position: at,
+      });
       at += symbol.length;
     } else if (character === '*') {
       addAtom({ symbol: '*', isAromatic: false, isBracketed: false, bracketHydrogens: 0, charge: 0, position: at });
@@ -217,6 +232,7 @@ export function readSmiles(text: string, bondSymbols = PLAIN_BONDS): WrittenSmil
   const branch = branches.pop();
   if (branch !== undefined) throw new SmilesError('branch is not closed; add )', branch.position);
   if (orderPosition >= 0) throw new SmilesError('a bond leads nowhere; add the atom behind it, * for an attachment point', orderPosition);
-  for (const [ring, open] of openRings) throw new SmilesError(`ring ${ring} is not closed; repeat its digit at the atom that closes it`, open.position);
+  for (const [ring, open] of openRings)
+    throw new SmilesError(`ring ${ring} is not closed; repeat its digit at the atom that closes it`, open.position);
   return { atoms, bonds, hadStereo };
 }

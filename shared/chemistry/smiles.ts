@@ -31,9 +31,8 @@ export type SmilesResult = ParsedSmiles | SmilesFault;
 
 export const STEREO_NOTE = 'stereo dropped';
 
-
 /** Valences of an atom with a charge; elements and charges not listed are refused. */
-const CHARGED_VALENCES: Readonly<Record<string, number>> = { 'C-1': 3, 'N1': 4, 'N-1': 2, 'O1': 3, 'O-1': 1, 'S-1': 1 };
+const CHARGED_VALENCES: Readonly<Record<string, number>> = { 'C-1': 3, N1: 4, 'N-1': 2, O1: 3, 'O-1': 1, 'S-1': 1 };
 
 /** Working copy of a structure while it is checked; orders are per bond, aromatic bonds still open. */
 interface Draft {
@@ -48,6 +47,8 @@ interface Draft {
   readonly bondsOf: number[][];
 }
 
+const otherEnd = (bond: { a: number; b: number }, atom: number): number => (bond.a === atom ? bond.b : bond.a);
+
 /** Folds `[H]` and `*` away and numbers the heavy atoms. */
 function draftFrom(written: WrittenSmiles): Draft {
   const { atoms, bonds } = written;
@@ -57,15 +58,30 @@ function draftFrom(written: WrittenSmiles): Draft {
     degree[bond.from]!++;
     degree[bond.to]!++;
   }
-  const draft: Draft = { symbols: [], positions: [], isAromatic: [], isBracketed: [], hydrogens: [], charges: [], attachments: [], bonds: [], bondsOf: [] };
+  const draft: Draft = {
+    symbols: [],
+    positions: [],
+    isAromatic: [],
+    isBracketed: [],
+    hydrogens: [],
+    charges: [],
+    attachments: [],
+    bonds: [],
+    bondsOf: [],
+  };
   atoms.forEach((atom, i) => {
     if (atom.symbol === '*') {
-      if (degree[i] !== 1) throw new SmilesError('an attachment point needs exactly one bond, to an atom of the fragment; use several * for several attachments', atom.position);
+      if (degree[i] !== 1)
+        throw new SmilesError(
+          'an attachment point needs exactly one bond, to an atom of the fragment; use several * for several attachments',
+          atom.position,
+        );
       return;
     }
     if (atom.symbol === 'H') {
       if (atom.charge !== 0) throw new SmilesError('charged hydrogen is not supported; write [H] or leave it out', atom.position);
-      if (degree[i] !== 1 || atom.bracketHydrogens > 0) throw new SmilesError('hydrogen needs exactly one bond, to a heavy atom', atom.position);
+      if (degree[i] !== 1 || atom.bracketHydrogens > 0)
+        throw new SmilesError('hydrogen needs exactly one bond, to a heavy atom', atom.position);
       return;
     }
     index[i] = draft.symbols.length;
@@ -87,14 +103,23 @@ function draftFrom(written: WrittenSmiles): Draft {
       draft.bondsOf[a]!.push(draft.bonds.length);
       draft.bondsOf[b]!.push(draft.bonds.length);
       const areAromatic = draft.isAromatic[a]! && draft.isAromatic[b]!;
-      if (bond.order === 'aromatic' && !areAromatic) throw new SmilesError('an aromatic bond joins two lower-case atoms; write - or =', bond.position);
-      draft.bonds.push({ a, b, order: bond.order ?? (areAromatic ? 'aromatic' : 1), position: bond.order === 'aromatic' ? bond.position : -1 });
+      if (bond.order === 'aromatic' && !areAromatic)
+        throw new SmilesError('an aromatic bond joins two lower-case atoms; write - or =', bond.position);
+      draft.bonds.push({
+        a,
+        b,
+        order: bond.order ?? (areAromatic ? 'aromatic' : 1),
+        position: bond.order === 'aromatic' ? bond.position : -1,
+      });
       continue;
     }
     const heavy = Math.max(a, b);
     const other = atoms[a >= 0 ? bond.to : bond.from]!;
     if (heavy < 0) {
-      const message = other.symbol === '*' || atoms[bond.from]!.symbol === '*' ? 'an attachment point needs a bond to a heavy atom' : 'expected at least one heavy atom (anything but H)';
+      const message =
+        other.symbol === '*' || atoms[bond.from]!.symbol === '*'
+          ? 'an attachment point needs a bond to a heavy atom'
+          : 'expected at least one heavy atom (anything but H)';
       throw new SmilesError(message, other.position);
     }
     if (bond.order === 'aromatic') throw new SmilesError('this bond cannot be aromatic; leave the : out', bond.position);
@@ -107,39 +132,55 @@ function draftFrom(written: WrittenSmiles): Draft {
 }
 
 /**
- * Aromatic bonds lie in a ring of lower-case atoms: an unmarked bond between two such rings (biphenyl) is single.
- * A bond lies in no ring exactly when it is a bridge of the lower-case part (Tarjan, SIAM J. Comput. 1972, 1, 146).
+ * Finds bonds in no ring of the part that `includes` admits: bridges, by depth-first search.
+ *
+ * @see Tarjan, Inf. Process. Lett. 1974, 2, 160.
  */
-function settleAromaticBonds(draft: Draft): void {
+function findBridges(draft: Draft, includes: (bondIndex: number) => boolean): Set<number> {
   const n = draft.symbols.length;
   const entry = new Int32Array(n).fill(-1);
   const low = new Int32Array(n);
-  const bridges: number[] = [];
+  const bridges = new Set<number>();
   let clock = 0;
   const visit = (atom: number, through: number): void => {
     entry[atom] = low[atom] = clock++;
     for (const bondIndex of draft.bondsOf[atom]!) {
-      const bond = draft.bonds[bondIndex]!;
-      if (bondIndex === through || bond.order !== 'aromatic') continue;
-      const to = bond.a === atom ? bond.b : bond.a;
+      if (bondIndex === through || !includes(bondIndex)) continue;
+      const to = otherEnd(draft.bonds[bondIndex]!, atom);
       if (entry[to] === -1) {
         visit(to, bondIndex);
         low[atom] = Math.min(low[atom]!, low[to]!);
-        if (low[to]! > entry[atom]!) bridges.push(bondIndex);
+        if (low[to]! > entry[atom]!) bridges.add(bondIndex);
       } else low[atom] = Math.min(low[atom]!, entry[to]!);
     }
   };
-  for (let atom = 0; atom < n; atom++) if (draft.isAromatic[atom] && entry[atom] === -1) visit(atom, -1);
-  for (const bondIndex of bridges) {
-    const bond = draft.bonds[bondIndex]!;
-    if (bond.position >= 0) throw new SmilesError('an aromatic bond lies in a ring; write - between two rings', bond.position);
-    bond.order = 1;
-  }
-  for (let atom = 0; atom < n; atom++) {
-    if (draft.isAromatic[atom] && !draft.bondsOf[atom]!.some((bond) => draft.bonds[bond]!.order === 'aromatic')) {
-      throw new SmilesError('lower case means an aromatic ring, and this atom is in none; write it in capitals with its double bonds', draft.positions[atom]!);
+  for (let atom = 0; atom < n; atom++) if (entry[atom] === -1) visit(atom, -1);
+  return bridges;
+}
+
+/**
+ * Tells which bonds belong to rings of lower-case atoms. An unmarked bond between two such rings (biphenyl) is none of
+ * them; whether it is single or double, the alternation decides, as it can be double only between two odd halves.
+ */
+function findAromaticRingBonds(draft: Draft): Set<number> {
+  const chainBonds = findBridges(draft, () => true);
+  draft.isAromatic.forEach((isAromatic, atom) => {
+    if (isAromatic && draft.bondsOf[atom]!.every((bond) => chainBonds.has(bond))) {
+      throw new SmilesError(
+        'lower case means an aromatic ring, and this atom is in none; write it in capitals with its double bonds',
+        draft.positions[atom]!,
+      );
     }
-  }
+  });
+  const links = findBridges(draft, (bond) => draft.bonds[bond]!.order === 'aromatic');
+  return new Set(
+    draft.bonds.flatMap(({ order, position }, bond) => {
+      if (order !== 'aromatic') return [];
+      if (!links.has(bond)) return [bond];
+      if (position >= 0) throw new SmilesError('an aromatic bond lies in a ring; write - between two rings', position);
+      return [];
+    }),
+  );
 }
 
 const orderValue = (order: 1 | 2 | 3 | 'aromatic'): number => (order === 'aromatic' ? 1 : order);
@@ -152,11 +193,11 @@ function usedValence(draft: Draft, atom: number): number {
   return used;
 }
 
-const otherEnd = (bond: { a: number; b: number }, atom: number): number => (bond.a === atom ? bond.b : bond.a);
-
 /** Whether an atom has no other neighbour, hydrogen or attachment than the one through which it was reached. */
 function isTerminal(draft: Draft, atom: number): boolean {
-  return draft.bondsOf[atom]!.length === 1 && draft.hydrogens[atom] === 0 && !draft.attachments.some((attachment) => attachment.atom === atom);
+  return (
+    draft.bondsOf[atom]!.length === 1 && draft.hydrogens[atom] === 0 && !draft.attachments.some((attachment) => attachment.atom === atom)
+  );
 }
 
 /**
@@ -169,8 +210,12 @@ function unifyChargeDrawings(draft: Draft, notes: Set<string>): void {
   for (let atom = 0; atom < n; atom++) {
     const partners = draft.bondsOf[atom]!.map((index) => ({ bond: draft.bonds[index]!, to: otherEnd(draft.bonds[index]!, atom) }));
     if (draft.symbols[atom] === 'N' && draft.charges[atom] === 0 && usedValence(draft, atom) + (draft.isAromatic[atom] ? 1 : 0) === 5) {
-      const oxide = partners.find(({ bond, to }) => bond.order === 2 && draft.symbols[to] === 'O' && draft.charges[to] === 0 && isTerminal(draft, to));
-      const nitride = partners.find(({ bond, to }) => bond.order === 3 && draft.symbols[to] === 'N' && draft.charges[to] === 0 && isTerminal(draft, to));
+      const oxide = partners.find(
+        ({ bond, to }) => bond.order === 2 && draft.symbols[to] === 'O' && draft.charges[to] === 0 && isTerminal(draft, to),
+      );
+      const nitride = partners.find(
+        ({ bond, to }) => bond.order === 3 && draft.symbols[to] === 'N' && draft.charges[to] === 0 && isTerminal(draft, to),
+      );
       const chosen = oxide ?? nitride;
       if (chosen !== undefined) {
         chosen.bond.order = oxide !== undefined ? 1 : 2;
@@ -190,8 +235,12 @@ function unifyChargeDrawings(draft: Draft, notes: Set<string>): void {
       }
     }
     if (draft.symbols[atom] === 'N' && draft.charges[atom] === 1 && partners.length === 2) {
-      const end = partners.find(({ bond, to }) => bond.order === 3 && draft.symbols[to] === 'N' && draft.charges[to] === 0 && isTerminal(draft, to));
-      const donor = partners.find(({ bond, to }) => bond.order === 1 && draft.charges[to] === -1 && (draft.symbols[to] === 'C' || draft.symbols[to] === 'N'));
+      const end = partners.find(
+        ({ bond, to }) => bond.order === 3 && draft.symbols[to] === 'N' && draft.charges[to] === 0 && isTerminal(draft, to),
+      );
+      const donor = partners.find(
+        ({ bond, to }) => bond.order === 1 && draft.charges[to] === -1 && (draft.symbols[to] === 'C' || draft.symbols[to] === 'N'),
+      );
       if (end !== undefined && donor !== undefined) {
         donor.bond.order = 2;
         end.bond.order = 2;
@@ -211,11 +260,17 @@ function checkCharges(draft: Draft): void {
     if (charge === 0) return;
     const position = draft.positions[atom]!;
     if (CHARGED_VALENCES[`${draft.symbols[atom]}${charge}`] === undefined) {
-      throw new SmilesError(`this charge on ${draft.symbols[atom]} is not supported; draw the neutral form (charges are possible in nitro, N-oxide, azide, isocyanide and diazo groups)`, position);
+      throw new SmilesError(
+        `this charge on ${draft.symbols[atom]} is not supported; draw the neutral form (charges are possible in nitro, N-oxide, azide, isocyanide and diazo groups)`,
+        position,
+      );
     }
     const isPaired = draft.bondsOf[atom]!.some((bond) => draft.charges[otherEnd(draft.bonds[bond]!, atom)]! * charge < 0);
     if (!isPaired) {
-      throw new SmilesError('a charge needs the opposite charge on a neighbouring atom (nitro, N-oxide, azide, isocyanide, diazo); draw the neutral form of salts and ions', position);
+      throw new SmilesError(
+        'a charge needs the opposite charge on a neighbouring atom (nitro, N-oxide, azide, isocyanide, diazo); draw the neutral form of salts and ions',
+        position,
+      );
     }
   });
   if (total !== 0) {
@@ -249,22 +304,35 @@ function settleHydrogens(draft: Draft): boolean[] {
       for (const valence of valences) {
         if (valence === used + 1) return true;
         if (valence !== used) continue;
-        const hasOuterDoubleBond = draft.bondsOf[atom]!.some((bond) => draft.bonds[bond]!.order === 2) || draft.attachments.some((attachment) => attachment.atom === atom && attachment.order === 2);
-        if (symbol === 'C' && draft.charges[atom] === 0 && !hasOuterDoubleBond) throw new SmilesError('a saturated carbon is not aromatic; write this ring in capitals', position);
+        const hasOuterDoubleBond =
+          draft.bondsOf[atom]!.some((bond) => draft.bonds[bond]!.order === 2) ||
+          draft.attachments.some((attachment) => attachment.atom === atom && attachment.order === 2);
+        if (symbol === 'C' && draft.charges[atom] === 0 && !hasOuterDoubleBond)
+          throw new SmilesError('a saturated carbon is not aromatic; write this ring in capitals', position);
         return false;
       }
-      if (draft.isBracketed[atom] && used < valences[0]!) throw new SmilesError('radicals are not supported; give this atom its hydrogens', position);
-      throw new SmilesError(`aromatic ${name} cannot have ${used} bonds and a place in the ring; expected ${listValences(valences)} in all`, position);
+      if (draft.isBracketed[atom] && used < valences[0]!)
+        throw new SmilesError('radicals are not supported; give this atom its hydrogens', position);
+      throw new SmilesError(
+        `aromatic ${name} cannot have ${used} bonds and a place in the ring; expected ${listValences(valences)} in all`,
+        position,
+      );
     }
     const fitting = valences.find((valence) => valence >= used);
     if (fitting === undefined) {
       const hint = symbol === 'N' && draft.charges[atom] === 0 ? '; write nitro as [N+](=O)[O-] and N-oxides as [N+][O-]' : '';
-      throw new SmilesError(`${name} has ${used} bonds (hydrogens included), at most ${listValences(valences)} allowed; remove bonds or hydrogens${hint}`, position);
+      throw new SmilesError(
+        `${name} has ${used} bonds (hydrogens included), at most ${listValences(valences)} allowed; remove bonds or hydrogens${hint}`,
+        position,
+      );
     }
     if (draft.isBracketed[atom]) {
       if (fitting !== used) {
         const cured = draft.hydrogens[atom]! + fitting - used;
-        throw new SmilesError(`radicals are not supported: ${name} in brackets has ${used} of ${fitting} bonds; write all its hydrogens, as in [${symbol}H${cured > 1 ? cured : ''}]`, position);
+        throw new SmilesError(
+          `radicals are not supported: ${name} in brackets has ${used} of ${fitting} bonds; write all its hydrogens, as in [${symbol}H${cured > 1 ? cured : ''}]`,
+          position,
+        );
       }
     } else draft.hydrogens[atom]! += fitting - used;
     return false;
@@ -288,7 +356,8 @@ function kekulise(draft: Draft, needsDoubleBond: readonly boolean[]): void {
   if (partner === null) {
     const ring = draft.isAromatic.indexOf(true);
     const nitrogen = members.find((atom) => draft.symbols[atom] === 'N');
-    const cure = nitrogen === undefined ? 'write the ring in capitals with its double bonds' : 'if a ring nitrogen carries hydrogen, write it as [nH]';
+    const cure =
+      nitrogen === undefined ? 'write the ring in capitals with its double bonds' : 'if a ring nitrogen carries hydrogen, write it as [nH]';
     throw new SmilesError(`this aromatic ring cannot be drawn with alternating double bonds; ${cure}`, draft.positions[nitrogen ?? ring]!);
   }
   for (const bond of draft.bonds) {
@@ -303,14 +372,17 @@ function buildParsed(text: string): ParsedSmiles {
   const notes = new Set<string>();
   if (written.hadStereo) notes.add(STEREO_NOTE);
   const draft = draftFrom(written);
-  settleAromaticBonds(draft);
+  const ringBonds = findAromaticRingBonds(draft);
   unifyChargeDrawings(draft, notes);
   checkCharges(draft);
   const needsDoubleBond = settleHydrogens(draft);
 
   const n = draft.symbols.length;
   const aromaticBonds = new Uint8Array(n * n);
-  for (const { a, b, order } of draft.bonds) if (order === 'aromatic') aromaticBonds[a * n + b] = aromaticBonds[b * n + a] = 1;
+  for (const bond of ringBonds) {
+    const { a, b } = draft.bonds[bond]!;
+    aromaticBonds[a * n + b] = aromaticBonds[b * n + a] = 1;
+  }
   kekulise(draft, needsDoubleBond);
 
   const bondOrders = new Uint8Array(n * n);

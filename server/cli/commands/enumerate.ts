@@ -27,7 +27,11 @@ export async function enumerateCommand(argument: string, raw: RawOptions, contex
 
   const run = (compute: ComputeService, given: EvidenceDocument, onProgress?: (progress: LocalProgress) => void): Promise<LocalRun> => {
     const evidence = mergeResonanceForms === undefined ? given : { ...given, options: { ...given.options, mergeResonanceForms } };
-    const settings: RunSettings = { keep: wantsSmiles ? listed : 1, maxSeconds: maxSeconds ?? given.options.maxSeconds, mode: wantsSmiles ? 'list' : 'count' };
+    const settings: RunSettings = {
+      keep: wantsSmiles ? listed : 1,
+      maxSeconds: maxSeconds ?? given.options.maxSeconds,
+      mode: wantsSmiles ? 'list' : 'count',
+    };
     return runLocally(compute, evidence, settings, context.interrupt, onProgress);
   };
   if (kindOfInput(argument) === 'batch') {

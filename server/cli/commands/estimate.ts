@@ -26,7 +26,9 @@ export async function estimateCommand(argument: string, raw: RawOptions, context
   else {
     for (const note of notes) context.tell(`note: ${note}\n`);
     const round = (value: number): string => groupDigits(Math.round(value));
-    await context.write(`about ${round(result.estimate)} constitutions (${round(result.low)} to ${round(result.high)}), ${formatSeconds(result.cpuSeconds)} on one core\n`);
+    await context.write(
+      `about ${round(result.estimate)} constitutions (${round(result.low)} to ${round(result.high)}), ${formatSeconds(result.cpuSeconds)} on one core\n`,
+    );
   }
   return EXIT.done;
 }

@@ -17,7 +17,10 @@ export async function formulaCommand(raw: RawOptions, context: CliContext): Prom
   options.check();
 
   // Text that is no number becomes NaN, which the search refuses with the right field.
-  const isotopes = options.text('isotopes')?.split(/[,;]/).map((height) => (height.trim() === '' ? NaN : Number(height)));
+  const isotopes = options
+    .text('isotopes')
+    ?.split(/[,;]/)
+    .map((height) => (height.trim() === '' ? NaN : Number(height)));
   const elements = options.text('elements')?.match(/[A-Z][a-z]?|[^\s,A-Z]+/g);
   const result = findFormulas({
     mz: mz!,

@@ -48,7 +48,13 @@ function splitLine(line: string): { smiles: string; name: { name?: string } } {
 }
 
 function describeSpectra({ carbons, protons }: PredictedSpectra): string {
-  const carbonRows = carbons.map(({ atoms, shift, sd, hydrogens, basis }) => [shift.toFixed(1), `± ${sd.toFixed(1)}`, `CH${hydrogens}`.replace('CH0', 'C').replace('CH1', 'CH'), atoms.join(','), basis]);
+  const carbonRows = carbons.map(({ atoms, shift, sd, hydrogens, basis }) => [
+    shift.toFixed(1),
+    `± ${sd.toFixed(1)}`,
+    `CH${hydrogens}`.replace('CH0', 'C').replace('CH1', 'CH'),
+    atoms.join(','),
+    basis,
+  ]);
   const protonRows = protons.map(({ atoms, shift, sd, count, multiplicity, couplings, basis }) => [
     shift.toFixed(2),
     `± ${sd.toFixed(2)}`,

@@ -57,7 +57,10 @@ export async function rankCommand(argument: string, raw: RawOptions, context: Cl
 
 const exitCodeOf = ({ isComplete }: LocalRun): ExitCode => (isComplete ? EXIT.done : EXIT.stopped);
 
-function rankingDocument({ survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun, top: number): object {
+function rankingDocument(
+  { survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun,
+  top: number,
+): object {
   return {
     count: survivorCount,
     complete: isComplete,
@@ -72,18 +75,27 @@ function candidateDocument({ rank, smiles, idcode, probability, score, terms }: 
   return { rank, smiles, idcode, probability, score, terms };
 }
 
-function describeRanking({ survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun, { formula }: EvidenceDocument, top: number): string {
+function describeRanking(
+  { survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun,
+  { formula }: EvidenceDocument,
+  top: number,
+): string {
   const percent = (probability: number): string => `${(100 * probability).toFixed(1)} %`;
-  const rows = candidates.slice(0, top).map(({ rank, probability, score, carbonDeviation, protonDeviation, smiles }) => [
-    String(rank),
-    percent(probability),
-    score.toFixed(2),
-    carbonDeviation === null ? '' : carbonDeviation.toFixed(2),
-    protonDeviation === null ? '' : protonDeviation.toFixed(2),
-    smiles,
-  ]);
+  const rows = candidates
+    .slice(0, top)
+    .map(({ rank, probability, score, carbonDeviation, protonDeviation, smiles }) => [
+      String(rank),
+      percent(probability),
+      score.toFixed(2),
+      carbonDeviation === null ? '' : carbonDeviation.toFixed(2),
+      protonDeviation === null ? '' : protonDeviation.toFixed(2),
+      smiles,
+    ]);
   const stopped = isComplete ? '' : ', stopped before the end: the list is incomplete';
   const none = noneOfTheseProbability === null ? '' : `none of these: ${percent(noneOfTheseProbability)}\n`;
-  const table = rows.length === 0 ? '' : `${alignColumns([['rank', 'probability', 'score', '13C / ppm', '1H / ppm', 'structure'], ...rows], [0, 1, 2, 3, 4])}${none}\n`;
+  const table =
+    rows.length === 0
+      ? ''
+      : `${alignColumns([['rank', 'probability', 'score', '13C / ppm', '1H / ppm', 'structure'], ...rows], [0, 1, 2, 3, 4])}${none}\n`;
   return `${formula}: ${groupDigits(survivorCount)} candidates, ${formatSeconds(seconds)}${stopped}\n\n${table}${describeFunnel(funnel)}`;
 }
