@@ -7,6 +7,7 @@ import { createTemporaryFolder } from '../support/config.js';
 
 let folder: string;
 let server: BuiltServer;
+let isStarted = false;
 const start = (environment: Record<string, string> = {}) =>
   startBuiltServer({ dataDirectory: join(folder, 'data'), environment: { DEMO: 'false', ...environment } });
 const databaseProcess = () => Number(readFileSync(join(folder, 'data', 'mariadb', 'm.pid'), 'utf8'));
@@ -14,9 +15,10 @@ const databaseProcess = () => Number(readFileSync(join(folder, 'data', 'mariadb'
 beforeAll(async () => {
   folder = createTemporaryFolder();
   server = await start({ ADMIN_EMAIL: 'first@example.org' });
+  isStarted = true;
 });
 afterAll(async () => {
-  await server.stop();
+  if (isStarted) await server.stop();
   rmSync(folder, { recursive: true, force: true });
 });
 

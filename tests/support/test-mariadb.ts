@@ -47,6 +47,7 @@ export async function copyPreparedData(directory: string): Promise<void> {
 async function prepareTemplate(): Promise<string> {
   const template = join(root, 'template');
   if (existsSync(template)) return template;
+  await mkdir(root, { recursive: true });
   const unfinished = await mkdtemp(join(root, `run-${process.pid}-template-`));
   await installMariadb(unfinished);
   // A run beside this one may have been faster; its template is as good.
