@@ -15,7 +15,10 @@ export function FragmentLibrary({ onPick, actionVerb }: { onPick?: (fragment: Li
     fragments: FRAGMENT_LIBRARY.filter(
       (fragment) =>
         fragment.group === group &&
-        (wanted === '' || fragment.name.toLowerCase().includes(wanted) || group.toLowerCase().includes(wanted) || fragment.smiles.toLowerCase() === wanted),
+        (wanted === '' ||
+          fragment.name.toLowerCase().includes(wanted) ||
+          group.toLowerCase().includes(wanted) ||
+          fragment.smiles.toLowerCase() === wanted),
     ),
   })).filter(({ fragments }) => fragments.length > 0);
   return (
@@ -23,7 +26,14 @@ export function FragmentLibrary({ onPick, actionVerb }: { onPick?: (fragment: Li
       <label className="relative block max-w-md">
         <span className="sr-only">Search the built-in fragments</span>
         <Search aria-hidden="true" className="pointer-events-none absolute top-1/2 left-3 size-4 -translate-y-1/2 text-faded" />
-        <input type="search" className="control" style={{ paddingLeft: 34 }} placeholder="Search by name, kind or SMILES" value={search} onChange={(event) => setSearch(event.target.value)} />
+        <input
+          type="search"
+          className="control"
+          style={{ paddingLeft: 34 }}
+          placeholder="Search by name, kind or SMILES"
+          value={search}
+          onChange={(event) => setSearch(event.target.value)}
+        />
       </label>
       {groups.length === 0 ? (
         <EmptyState title="No fragment of that name">Draw it instead, or search for a shorter word.</EmptyState>
@@ -37,7 +47,9 @@ export function FragmentLibrary({ onPick, actionVerb }: { onPick?: (fragment: Li
                   key={fragment.id}
                   name={fragment.name}
                   smiles={fragment.smiles}
-                  {...(onPick === undefined ? {} : { onPick: () => onPick(fragment), actionLabel: `${actionVerb ?? 'Choose'} ${fragment.name}` })}
+                  {...(onPick === undefined
+                    ? {}
+                    : { onPick: () => onPick(fragment), actionLabel: `${actionVerb ?? 'Choose'} ${fragment.name}` })}
                 />
               ))}
             </div>

@@ -2,7 +2,19 @@ import type { ReactNode } from 'react';
 import { StructureDrawing } from '../structure/structure-drawing';
 
 /** A fragment as a picture with its name; a button when something can be done with it. */
-export function FragmentTile({ name, smiles, onPick, actionLabel, actions }: { name: string; smiles: string; onPick?: () => void; actionLabel?: string; actions?: ReactNode }) {
+export function FragmentTile({
+  name,
+  smiles,
+  onPick,
+  actionLabel,
+  actions,
+}: {
+  name: string;
+  smiles: string;
+  onPick?: () => void;
+  actionLabel?: string;
+  actions?: ReactNode;
+}) {
   const picture = (
     <>
       <StructureDrawing smiles={smiles} width={132} height={84} alt={smiles} />
@@ -15,7 +27,12 @@ export function FragmentTile({ name, smiles, onPick, actionLabel, actions }: { n
       {onPick === undefined ? (
         <div className={look}>{picture}</div>
       ) : (
-        <button type="button" aria-label={actionLabel ?? name} className={`${look} transition-colors hover:border-indigo hover:bg-indigo-wash`} onClick={onPick}>
+        <button
+          type="button"
+          aria-label={actionLabel ?? name}
+          className={`${look} transition-colors hover:border-indigo hover:bg-indigo-wash`}
+          onClick={onPick}
+        >
           {picture}
         </button>
       )}

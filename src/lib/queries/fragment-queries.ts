@@ -21,7 +21,9 @@ export function useCreateTeamFragment(teamId: string) {
     meta: { showsOwnErrors: true },
     mutationFn: (body: { name: string; group: string; smiles: string }) => callEndpoint('createTeamFragment', { params: { teamId }, body }),
     onSuccess: (created) => {
-      queryClient.setQueryData(teamFragmentsQuery(teamId).queryKey, (list) => (list === undefined ? list : { fragments: [...list.fragments, created] }));
+      queryClient.setQueryData(teamFragmentsQuery(teamId).queryKey, (list) =>
+        list === undefined ? list : { fragments: [...list.fragments, created] },
+      );
     },
   });
 }
@@ -31,7 +33,9 @@ export function useRemoveTeamFragment(teamId: string) {
   return useMutation({
     mutationFn: (fragmentId: string) => callEndpoint('removeTeamFragment', { params: { fragmentId } }),
     onSuccess: (_, fragmentId) => {
-      queryClient.setQueryData(teamFragmentsQuery(teamId).queryKey, (list) => (list === undefined ? list : { fragments: list.fragments.filter(({ id }) => id !== fragmentId) }));
+      queryClient.setQueryData(teamFragmentsQuery(teamId).queryKey, (list) =>
+        list === undefined ? list : { fragments: list.fragments.filter(({ id }) => id !== fragmentId) },
+      );
     },
   });
 }
