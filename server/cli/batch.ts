@@ -18,7 +18,7 @@ const worseOf = (a: ExitCode, b: ExitCode): ExitCode => (SEVERITY.indexOf(a) < S
  * wrong with a line is said in its place, and the batch goes on.
  *
  * @param answer - answers a line; whatever it throws becomes the line's error document
- * @param passThrough - keys to repeat in the error document of a line
+ * @param passThrough - keys to repeat in the error document of a line; must not throw
  * @param width - lines under way at once
  * @returns the worst exit code of all lines; an interrupted batch counts as stopped
  */

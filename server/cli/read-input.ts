@@ -81,12 +81,28 @@ export async function readEvidenceArgument(argument: string): Promise<ReadEviden
   return kindOfInput(argument) === 'formula' ? { evidence: evidenceOfFormula(argument), notes: [] } : readEvidenceFile(argument);
 }
 
-/** One line of a batch: its evidence and the keys that are passed through. */
-export function readBatchLine(line: string): { json: unknown; passedThrough: Record<string, unknown> } {
+/** One line of a batch: the document itself, or an object with an `evidence` key. */
+export function evidenceOfLine(line: string): ReadEvidence {
   const json = parseJson(line, '');
-  if (typeof json !== 'object' || json === null || Array.isArray(json) || !('evidence' in json)) return { json, passedThrough: {} };
-  const { evidence, ...passedThrough } = json as Record<string, unknown>;
-  return { json: evidence, passedThrough };
+  return evidenceOfJson(isWrapper(json) ? json.evidence : json);
+}
+
+/** Keys beside `evidence`, which are passed through; none where a line is no such object. */
+export function passedThrough(line: string): Record<string, unknown> {
+  let json: unknown;
+  try {
+    json = JSON.parse(line);
+  } catch {
+    // `evidenceOfLine` reports it.
+    return {};
+  }
+  if (!isWrapper(json)) return {};
+  const { evidence: _evidence, ...others } = json;
+  return others;
+}
+
+function isWrapper(json: unknown): json is Record<string, unknown> {
+  return typeof json === 'object' && json !== null && !Array.isArray(json) && 'evidence' in json;
 }
 
 /** Lines of a file, or of standard input for `-`, without blank ones; nothing is read ahead of what is asked for. */

@@ -16,6 +16,9 @@ export function groupDigits(value: number): string {
   return String(value).replace(/\B(?=(\d{3})+$)/g, ' ');
 }
 
+/** A number with its noun: 1 candidate, 24 938 candidates. */
+export const countOf = (value: number, noun: string): string => `${groupDigits(value)} ${noun}${value === 1 ? '' : 's'}`;
+
 /** Columns padded to equal width; numbers (by column) to the right. Trailing blanks are cut. */
 export function alignColumns(rows: ReadonlyArray<readonly string[]>, rightAligned: readonly number[] = []): string {
   const widths: number[] = [];

@@ -7,9 +7,9 @@ import { EXIT, type ExitCode } from '../cli-error.js';
 import { runLocally, type LocalProgress, type LocalRun } from '../local-run.js';
 import { MAX_SECONDS, MAX_THREADS, OptionReader, type RawOptions } from '../options.js';
 import { createProgressLine } from '../progress-line.js';
-import { evidenceOfJson, kindOfInput, readBatchLine, readEvidenceArgument } from '../read-input.js';
-import { describeFunnel, formatSeconds, groupDigits } from '../text-output.js';
-import { withCompute } from '../with-compute.js';
+import { evidenceOfLine, kindOfInput, passedThrough, readEvidenceArgument } from '../read-input.js';
+import { countOf, describeFunnel, formatSeconds, groupDigits } from '../text-output.js';
+import { withWarmCompute } from '../with-compute.js';
 
 /** SMILES listed at most; every one is held in memory until the end. */
 const DEFAULT_LISTED = 100_000;
@@ -35,23 +35,22 @@ export async function enumerateCommand(argument: string, raw: RawOptions, contex
     return runLocally(compute, evidence, settings, context.interrupt, onProgress);
   };
   if (kindOfInput(argument) === 'batch') {
-    return withCompute(context, threads, (compute) =>
+    return withWarmCompute(context, threads, (compute) =>
       runBatch(
         argument,
         context,
         async (line) => {
-          const { json, passedThrough } = readBatchLine(line);
-          const result = await run(compute, evidenceOfJson(json).evidence);
-          return { document: { ...passedThrough, ...enumerationDocument(result) }, exitCode: exitCodeOf(result) };
+          const result = await run(compute, evidenceOfLine(line).evidence);
+          return { document: { ...passedThrough(line), ...enumerationDocument(result) }, exitCode: exitCodeOf(result) };
         },
-        (line) => readBatchLine(line).passedThrough,
+        passedThrough,
         1,
       ),
     );
   }
   const { evidence, notes } = await readEvidenceArgument(argument);
   const line = createProgressLine(context);
-  const result = await withCompute(context, threads, (compute) => run(compute, evidence, line.show));
+  const result = await withWarmCompute(context, threads, (compute) => run(compute, evidence, line.show));
   line.clear();
   if (options.has('json')) await context.write(`${JSON.stringify(enumerationDocument(result))}\n`);
   else {
@@ -75,7 +74,7 @@ async function printEnumeration(
   context: CliContext,
 ): Promise<void> {
   const stopped = isComplete ? '' : ', stopped before the end';
-  const summary = `${formula}: ${groupDigits(survivorCount)} constitutions (${groupDigits(multigraphCount)} valence multigraphs before filters), ${formatSeconds(seconds)}${stopped}\n`;
+  const summary = `${formula}: ${countOf(survivorCount, 'constitution')} (${countOf(multigraphCount, 'valence multigraph')} before filters), ${formatSeconds(seconds)}${stopped}\n`;
   if (wantsSmiles) {
     await context.write(candidates.map(({ smiles }) => `${smiles}\n`).join(''));
     context.tell(summary);

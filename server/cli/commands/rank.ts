@@ -7,9 +7,9 @@ import { EXIT, type ExitCode } from '../cli-error.js';
 import { runLocally, type LocalProgress, type LocalRun } from '../local-run.js';
 import { MAX_SECONDS, MAX_THREADS, OptionReader, type RawOptions } from '../options.js';
 import { createProgressLine } from '../progress-line.js';
-import { evidenceOfJson, kindOfInput, readBatchLine, readEvidenceArgument } from '../read-input.js';
-import { alignColumns, describeFunnel, formatSeconds, groupDigits } from '../text-output.js';
-import { withCompute } from '../with-compute.js';
+import { evidenceOfLine, kindOfInput, passedThrough, readEvidenceArgument } from '../read-input.js';
+import { alignColumns, countOf, describeFunnel, formatSeconds } from '../text-output.js';
+import { withWarmCompute } from '../with-compute.js';
 
 const DEFAULT_TOP = 20;
 const MAX_TOP = 10_000;
@@ -28,23 +28,22 @@ export async function rankCommand(argument: string, raw: RawOptions, context: Cl
     return runLocally(compute, evidence, settings, context.interrupt, onProgress);
   };
   if (kindOfInput(argument) === 'batch') {
-    return withCompute(context, threads, (compute) =>
+    return withWarmCompute(context, threads, (compute) =>
       runBatch(
         argument,
         context,
         async (line) => {
-          const { json, passedThrough } = readBatchLine(line);
-          const result = await run(compute, evidenceOfJson(json).evidence);
-          return { document: { ...passedThrough, ...rankingDocument(result, top) }, exitCode: exitCodeOf(result) };
+          const result = await run(compute, evidenceOfLine(line).evidence);
+          return { document: { ...passedThrough(line), ...rankingDocument(result, top) }, exitCode: exitCodeOf(result) };
         },
-        (line) => readBatchLine(line).passedThrough,
+        passedThrough,
         1,
       ),
     );
   }
   const { evidence, notes } = await readEvidenceArgument(argument);
   const line = createProgressLine(context);
-  const result = await withCompute(context, threads, (compute) => run(compute, evidence, line.show));
+  const result = await withWarmCompute(context, threads, (compute) => run(compute, evidence, line.show));
   line.clear();
   if (options.has('json')) await context.write(`${JSON.stringify(rankingDocument(result, top))}\n`);
   else {
@@ -97,5 +96,5 @@ function describeRanking(
     rows.length === 0
       ? ''
       : `${alignColumns([['rank', 'probability', 'score', '13C / ppm', '1H / ppm', 'structure'], ...rows], [0, 1, 2, 3, 4])}${none}\n`;
-  return `${formula}: ${groupDigits(survivorCount)} candidates, ${formatSeconds(seconds)}${stopped}\n\n${table}${describeFunnel(funnel)}`;
+  return `${formula}: ${countOf(survivorCount, 'candidate')}, ${formatSeconds(seconds)}${stopped}\n\n${table}${describeFunnel(funnel)}`;
 }
