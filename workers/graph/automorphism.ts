@@ -9,6 +9,8 @@ export interface NormalisedGraph {
   readonly bondTypes: Uint8Array;
   /** Equal colours are necessary for equivalence, not sufficient. Independent of atom numbering. */
   readonly colours: Int32Array;
+  /** Heavy-atom neighbours of each atom. */
+  readonly neighbourLists: readonly (readonly number[])[];
 }
 
 const AROMATIC = 4;
@@ -25,10 +27,11 @@ export function normaliseGraph(analysis: StructureAnalysis): NormalisedGraph {
   const { atomCount: n, atomicNumbers, hydrogens, charges, bondOrders } = graph;
   const bondTypes = new Uint8Array(n * n);
   for (let i = 0; i < n * n; i++) bondTypes[i] = aromaticBonds[i] === 1 ? AROMATIC : bondOrders[i];
+  const neighbourLists = Array.from({ length: n }, (_, a) => neighboursOf(analysis, a));
   const chargeOf = Int8Array.from(charges.subarray(0, n));
   for (let a = 0; a < n; a++) {
     if (atomicNumbers[a] !== 7 || charges[a] !== 1) continue;
-    const oxygens = neighboursOf(analysis, a).filter((b) => atomicNumbers[b] === 8 && analysis.degrees[b] === 1 && hydrogens[b] === 0);
+    const oxygens = neighbourLists[a].filter((b) => atomicNumbers[b] === 8 && analysis.degrees[b] === 1 && hydrogens[b] === 0);
     if (oxygens.length !== 2 || analysis.degrees[a] !== 3) continue;
     for (const oxygen of oxygens) {
       bondTypes[a * n + oxygen] = bondTypes[oxygen * n + a] = NITRO;
@@ -39,11 +42,11 @@ export function normaliseGraph(analysis: StructureAnalysis): NormalisedGraph {
   let colours = rank(keys);
   for (;;) {
     keys = Array.from({ length: n }, (_, a) => {
-      const around = neighboursOf(analysis, a).map((b) => bondTypes[a * n + b] * n + colours[b]);
+      const around = neighbourLists[a].map((b) => bondTypes[a * n + b] * n + colours[b]);
       return `${String(colours[a]).padStart(3, '0')}|${around.sort((x, y) => x - y).join(',')}`;
     });
     const next = rank(keys);
-    if (countDistinct(next) === countDistinct(colours)) return { analysis, atomCount: n, bondTypes, colours };
+    if (countDistinct(next) === countDistinct(colours)) return { analysis, atomCount: n, bondTypes, colours, neighbourLists };
     colours = next;
   }
 }
@@ -82,7 +85,7 @@ const STEP_LIMIT = 200_000;
 export function findAutomorphism(
   normalised: NormalisedGraph, forced: ReadonlyArray<readonly [number, number]>, checks: readonly AutomorphismCheck[] = [],
 ): Int16Array | null {
-  const { atomCount: n, colours, bondTypes, analysis } = normalised;
+  const { atomCount: n, colours, bondTypes, neighbourLists } = normalised;
   const wanted = new Int16Array(n).fill(-1);
   for (const [atom, target] of forced) {
     if (colours[atom] !== colours[target]) return null;
@@ -100,7 +103,7 @@ export function findAutomorphism(
 
   const fits = (atom: number, target: number): boolean => {
     if (used[target] === 1 || colours[target] !== colours[atom]) return false;
-    for (const b of neighboursOf(analysis, atom)) {
+    for (const b of neighbourLists[atom]) {
       if (image[b] !== -1 && bondTypes[target * n + image[b]] !== bondTypes[atom * n + b]) return false;
     }
     return true;
@@ -109,7 +112,7 @@ export function findAutomorphism(
     if (index === n) return true;
     if (++steps > STEP_LIMIT) return false;
     const atom = order[index];
-    const targets = wanted[atom] !== -1 ? [wanted[atom]] : neighboursOf(analysis, image[parent[atom]]);
+    const targets = wanted[atom] !== -1 ? [wanted[atom]] : neighbourLists[image[parent[atom]]];
     for (const target of targets) {
       if (!fits(atom, target)) continue;
       image[atom] = target;
@@ -127,7 +130,7 @@ function searchOrder(normalised: NormalisedGraph, start: number): { order: numbe
   const parent = new Int16Array(normalised.atomCount).fill(-1);
   const order = [start];
   for (let head = 0; head < order.length; head++) {
-    for (const next of neighboursOf(normalised.analysis, order[head])) {
+    for (const next of normalised.neighbourLists[order[head]]) {
       if (next === start || parent[next] !== -1) continue;
       parent[next] = order[head];
       order.push(next);

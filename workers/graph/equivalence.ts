@@ -1,6 +1,6 @@
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { analyseStructure, type StructureAnalysis } from './analysis.js';
-import { findAutomorphism, neighboursOf, normaliseGraph, type AutomorphismCheck, type NormalisedGraph } from './automorphism.js';
+import { findAutomorphism, normaliseGraph, type AutomorphismCheck, type NormalisedGraph } from './automorphism.js';
 import { findStereogenicUnits, listStereoUnits, unitAtoms, unitParity, type StereoUnit } from './stereo-units.js';
 
 /** How the two hydrogens of a CH2 (or =CH2) are related; `none` for every other atom. */
@@ -105,7 +105,7 @@ function topicityOf(normalised: NormalisedGraph, units: readonly StereoUnit[], i
   const { analysis, atomCount: n, bondTypes } = normalised;
   const { atomicNumbers, hydrogens } = analysis.graph;
   if (hydrogens[atom] !== 2 || (atomicNumbers[atom] !== 6 && atomicNumbers[atom] !== 14)) return 'none';
-  const around = neighboursOf(analysis, atom);
+  const around = normalised.neighbourLists[atom];
   if (around.length === 0) return 'homotopic';
 
   /** Faces: both hydrogens lie in one plane with or across from the pair of places [left, right] of `axis`. */
@@ -129,10 +129,10 @@ function topicityOf(normalised: NormalisedGraph, units: readonly StereoUnit[], i
   while (next !== -1) {
     walked.push(next);
     end = next;
-    next = neighboursOf(analysis, end).find((b) => bondTypes[end * n + b] === 2 && !walked.includes(b)) ?? -1;
+    next = normalised.neighbourLists[end].find((b) => bondTypes[end * n + b] === 2 && !walked.includes(b)) ?? -1;
     if (analysis.hybridisation[end] !== 1) next = -1;
   }
-  const places = neighboursOf(analysis, end).filter((b) => !walked.includes(b));
+  const places = normalised.neighbourLists[end].filter((b) => !walked.includes(b));
   // An even number of cumulated bonds (allene, ketene) turns the far plane by 90°: as in a CH2 between two places.
   const isCrossed = walked.length % 2 === 1;
   if (isCrossed) return exchangedAcross(walked.slice(1), places);

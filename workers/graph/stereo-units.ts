@@ -1,5 +1,5 @@
 import type { AutomorphismCheck, NormalisedGraph } from './automorphism.js';
-import { findAutomorphism, neighboursOf } from './automorphism.js';
+import { findAutomorphism } from './automorphism.js';
 
 /** An end of a double bond: its atom and its two places; −1 stands for a hydrogen or a lone pair. */
 interface BondEnd {
@@ -36,7 +36,7 @@ export function listStereoUnits(normalised: NormalisedGraph): StereoUnit[] {
     }
   }
   for (let a = 0; a < n; a++) {
-    for (const b of neighboursOf(analysis, a)) {
+    for (const b of normalised.neighbourLists[a]) {
       if (isStereoDoubleBond(normalised, a, b) && a < b) {
         const [left, right] = [bondEnd(normalised, a, b), bondEnd(normalised, b, a)];
         if (left !== null && right !== null) units.push({ kind: 'bond', ends: [left, right], isDoubleBond: true });
@@ -65,7 +65,7 @@ function isTertiaryAmide(normalised: NormalisedGraph, a: number, b: number): boo
   if (bondTypes[a * n + b] !== 1 || analysis.smallestRingOfBond[a * n + b] !== 0) return false;
   if (analysis.degrees[b] !== 3 || analysis.hybridisation[b] !== 3) return false;
   let hasDoubleHetero = false;
-  for (const c of neighboursOf(analysis, a)) {
+  for (const c of normalised.neighbourLists[a]) {
     if (c === b) continue;
     if (bondTypes[a * n + c] === 2 && (atomicNumbers[c] === 8 || atomicNumbers[c] === 16)) hasDoubleHetero = true;
     else if (atomicNumbers[c] !== 6) return false;
@@ -75,8 +75,7 @@ function isTertiaryAmide(normalised: NormalisedGraph, a: number, b: number): boo
 
 /** The places of an end, or null when both are alike by hydrogen (=CH2) or the end has no direction (=NH). */
 function bondEnd(normalised: NormalisedGraph, atom: number, other: number): BondEnd | null {
-  const { analysis } = normalised;
-  const places = neighboursOf(analysis, atom).filter((b) => b !== other);
+  const places = normalised.neighbourLists[atom].filter((b) => b !== other);
   if (places.length === 0 || places.length > 2) return null;
   return { atom, places: places.length === 2 ? [places[0], places[1]] : [places[0], -1] };
 }
@@ -100,7 +99,7 @@ function findCageAtoms(normalised: NormalisedGraph): Uint8Array {
 export function unitParity(normalised: NormalisedGraph, unit: StereoUnit, image: Int16Array): -1 | 0 | 1 {
   if (unit.kind === 'centre') {
     if (image[unit.atom] !== unit.atom) return 0;
-    const places = neighboursOf(normalised.analysis, unit.atom);
+    const places = normalised.neighbourLists[unit.atom];
     let isOdd = false;
     for (let i = 0; i < places.length; i++) {
       for (let j = i + 1; j < places.length; j++) if (image[places[i]] > image[places[j]]) isOdd = !isOdd;
@@ -117,7 +116,7 @@ export function unitParity(normalised: NormalisedGraph, unit: StereoUnit, image:
 
 /** Atoms whose images decide {@link unitParity}. */
 export function unitAtoms(normalised: NormalisedGraph, unit: StereoUnit): number[] {
-  if (unit.kind === 'centre') return [unit.atom, ...neighboursOf(normalised.analysis, unit.atom)];
+  if (unit.kind === 'centre') return [unit.atom, ...normalised.neighbourLists[unit.atom]];
   return unit.ends.flatMap((end) => [end.atom, ...end.places.filter((place) => place !== -1)]);
 }
 
