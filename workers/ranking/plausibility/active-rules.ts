@@ -28,7 +28,7 @@ type Needs = Readonly<Partial<Record<'C' | 'N' | 'O' | 'S' | 'X', number>>>;
 const TESTS: Readonly<Record<PlausibilityRuleId, { readonly test: RuleTest; readonly needs: Needs }>> = {
   alkyneInSmallRing: { test: findAlkynesInSmallRings, needs: { C: 2 } },
   alleneInSmallRing: { test: findAllenesInSmallRings, needs: { C: 3 } },
-  twistedRingAlkene: { test: findTwistedRingAlkenes, needs: { C: 4 } },
+  twistedRingAlkene: { test: findTwistedRingAlkenes, needs: { C: 2 } },
   heterocumuleneInSmallRing: { test: findHeterocumulenesInSmallRings, needs: {} },
   cumulatedDoubleBonds: { test: findCumulatedDoubleBonds, needs: {} },
   peroxide: { test: findPeroxides, needs: { O: 2 } },
