@@ -12,13 +12,22 @@ export const unknownListQuery = pageQuery.extend({
   sort: z.enum(['code', 'title', 'status', 'formula', 'updatedAt']).default('updatedAt'),
   direction: z.enum(['ascending', 'descending']).default('descending'),
 });
+const unknownTitle = z.string().trim().min(1, { error: 'expected a title' }).max(160);
+const unknownDescription = z.string().trim().max(4000);
+/** Regulated purposes show a caution (SCIENCE.md 10). */
+const unknownPurpose = z.enum(['research', 'regulated']);
 export const unknownCreateRequest = z.object({
-  title: z.string().trim().min(1, { error: 'expected a title' }).max(160),
-  description: z.string().trim().max(4000).default(''),
-  /** Regulated purposes show a caution (SCIENCE.md 10). */
-  purpose: z.enum(['research', 'regulated']).default('research'),
+  title: unknownTitle,
+  description: unknownDescription.default(''),
+  purpose: unknownPurpose.default('research'),
 });
-export const unknownUpdateRequest = unknownCreateRequest.partial().extend({ status: unknownStatus.optional() });
+/** Without defaults: what a change leaves out stays as it is. */
+export const unknownUpdateRequest = z.object({
+  title: unknownTitle.optional(),
+  description: unknownDescription.optional(),
+  purpose: unknownPurpose.optional(),
+  status: unknownStatus.optional(),
+});
 
 export const runBrief = z.object({
   id,
