@@ -4,7 +4,7 @@ import { Mark } from '../components/mark';
 import { LoadingState } from '../components/states';
 import { Badge } from '../components/status-word';
 import { classNames } from '../lib/class-names';
-import { useCurrentTeam } from '../lib/session';
+import { useCurrentTeam, useMe } from '../lib/session';
 import { AccountMenu } from './account-menu';
 import { isAtPlace, navPlaces, type NavPlace } from './nav-places';
 import { paths } from './paths';
@@ -32,7 +32,7 @@ function RailLink({ place }: { place: NavPlace }) {
 export function Component() {
   const team = useCurrentTeam();
   const isMoving = useNavigation().state !== 'idle';
-  const places = team === null ? [] : navPlaces(team.teamId);
+  const places = navPlaces(team, useMe().abilities);
   return (
     <div className="min-h-dvh tablet:pl-[88px]">
       <a

@@ -8,17 +8,18 @@ import { paths } from './paths';
 export function RouteError() {
   const error = useRouteError();
   const revalidator = useRevalidator();
-  const isMissing = (isRouteErrorResponse(error) || error instanceof ApiError) && error.status === 404;
+  // 422: the id in the address is no id at all.
+  const isMissing = (isRouteErrorResponse(error) || error instanceof ApiError) && (error.status === 404 || error.status === 422);
   if (isMissing) {
     return (
-      <EmptyState title="Nothing is kept at this address" action={<ButtonLink to={paths.home()}>Go to the unknowns</ButtonLink>}>
+      <EmptyState isPage title="Nothing is kept at this address" action={<ButtonLink to={paths.home()}>Go to the unknowns</ButtonLink>}>
         It may have been removed, or it belongs to a team you are not a member of.
       </EmptyState>
     );
   }
   if (error instanceof ApiError && error.status === 403) {
     return (
-      <EmptyState title="This is not open to your role" action={<ButtonLink to={paths.home()}>Go to the unknowns</ButtonLink>}>
+      <EmptyState isPage title="This is not open to your role" action={<ButtonLink to={paths.home()}>Go to the unknowns</ButtonLink>}>
         {error.message}
       </EmptyState>
     );

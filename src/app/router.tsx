@@ -57,15 +57,15 @@ export const router = createBrowserRouter([
               { path: patterns.adminPeople, lazy: () => import('../features/admin/routes/people-page') },
               { path: patterns.adminAudit, lazy: () => import('../features/admin/routes/audit-page') },
               { path: patterns.account, lazy: () => import('../features/settings/routes/account-page') },
+              {
+                path: '*',
+                loader: () => {
+                  throw new Response(null, { status: 404 });
+                },
+              },
             ],
           },
         ],
-      },
-      {
-        path: '*',
-        loader: () => {
-          throw new Response(null, { status: 404 });
-        },
       },
     ],
   },

@@ -25,7 +25,14 @@ export function Dialog({ title, children, footer, onClose, width = 'regular' }: 
   useEffect(() => {
     const dialog = ref.current;
     const before = document.activeElement;
-    if (dialog !== null && !dialog.open) dialog.showModal();
+    if (dialog !== null && !dialog.open) {
+      dialog.showModal();
+      // Where people go on: the first field to fill in, else the first answer at the foot instead of the cross.
+      const start =
+        dialog.querySelector<HTMLElement>('form :is(input, select, textarea):not([readonly], [disabled])') ??
+        dialog.querySelector<HTMLElement>('footer button');
+      start?.focus();
+    }
     return () => {
       dialog?.close();
       if (before instanceof HTMLElement && before.isConnected) before.focus();

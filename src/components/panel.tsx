@@ -42,7 +42,7 @@ export function PageHeader({ title, lead, actions }: { title: ReactNode; lead?: 
     <header className="mb-5 flex flex-wrap items-end justify-between gap-x-6 gap-y-3">
       <div className="min-w-0">
         <h1 className="text-title">{title}</h1>
-        {lead === undefined ? null : <p className="mt-1 max-w-[68ch] text-faded">{lead}</p>}
+        {lead === undefined ? null : <p className="mt-1 max-w-[80ch] text-pretty text-faded">{lead}</p>}
       </div>
       {actions === undefined ? null : <div className="flex flex-wrap items-center gap-2">{actions}</div>}
     </header>

@@ -6,7 +6,18 @@ import { Button } from './button';
 import { Notice } from './status-word';
 
 /** Says what will be here and offers the first step. */
-export function EmptyState({ title, children, action }: { title: ReactNode; children?: ReactNode; action?: ReactNode }) {
+export function EmptyState({
+  title,
+  children,
+  action,
+  isPage = false,
+}: {
+  title: ReactNode;
+  children?: ReactNode;
+  action?: ReactNode;
+  /** It is all there is on the page, so its title is the page's. */ isPage?: boolean;
+}) {
+  const Title = isPage ? 'h1' : 'h2';
   return (
     <div className="flex flex-col items-center px-6 py-12 text-center">
       <svg
@@ -20,7 +31,7 @@ export function EmptyState({ title, children, action }: { title: ReactNode; chil
       >
         <path d="M2 6h92M2 16h92M2 26h92" strokeDasharray="6 8" />
       </svg>
-      <h2 className="text-lead">{title}</h2>
+      <Title className="text-lead">{title}</Title>
       {children === undefined ? null : <div className="mt-1 max-w-[52ch] text-faded">{children}</div>}
       {action === undefined ? null : <div className="mt-5 flex flex-wrap justify-center gap-2">{action}</div>}
     </div>

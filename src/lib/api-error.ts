@@ -29,6 +29,9 @@ export class ApiError extends Error {
   }
 }
 
+/** The session has ended; the shell asks to sign in again, so nobody else has to say so. */
+export const isSessionEnd = (error: unknown): boolean => error instanceof ApiError && error.status === 401;
+
 /** The sentence to show for anything that was thrown. */
 export function errorMessage(error: unknown): string {
   if (error instanceof ApiError) return error.message;

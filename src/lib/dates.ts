@@ -12,6 +12,7 @@ export const formatDateTime = (iso: string): string => `${formatDay(iso)}, ${min
 
 /** A span of seconds in the units people use: `0.8 s`, `42 s`, `3 min 20 s`, `2 h 5 min`. */
 export function formatSeconds(seconds: number): string {
+  if (seconds === 0) return '0\u2009s';
   if (seconds < 9.95) return `${seconds.toFixed(1)}\u2009s`;
   const whole = Math.round(seconds);
   if (whole < 60) return `${whole}\u2009s`;

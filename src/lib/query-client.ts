@@ -1,5 +1,5 @@
 import { MutationCache, QueryCache, QueryClient } from '@tanstack/react-query';
-import { ApiError, errorMessage } from './api-error';
+import { ApiError, errorMessage, isSessionEnd } from './api-error';
 import { showToast } from './toasts';
 
 declare module '@tanstack/react-query' {
@@ -10,8 +10,6 @@ declare module '@tanstack/react-query' {
     };
   }
 }
-
-const isSessionEnd = (error: unknown) => error instanceof ApiError && error.status === 401;
 
 /** Trying again helps only when the answer did not come or the server stumbled. */
 function mayRetry(failureCount: number, error: Error): boolean {

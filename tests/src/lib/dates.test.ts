@@ -17,6 +17,7 @@ describe('moments', () => {
 
 describe('spans', () => {
   it.each([
+    [0, '0\u2009s'],
     [0.84, '0.8\u2009s'],
     [42, '42\u2009s'],
     [59.7, '1\u2009min'],

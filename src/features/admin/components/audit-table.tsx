@@ -9,7 +9,18 @@ const asWords = (code: string) =>
     .replace(/[._-]+/g, ' ')
     .toLowerCase();
 
-const valueText = (value: unknown): string => (typeof value === 'string' ? value : JSON.stringify(value));
+/** A detail as people read it: lists with commas, groups as name and value. */
+function valueText(value: unknown): string {
+  if (value === null || value === undefined) return 'none';
+  if (typeof value === 'boolean') return value ? 'yes' : 'no';
+  if (Array.isArray(value)) return value.map(valueText).join(', ');
+  if (typeof value === 'object') {
+    return Object.entries(value)
+      .map(([key, part]) => `${asWords(key)} ${valueText(part)}`)
+      .join(', ');
+  }
+  return String(value);
+}
 
 function Detail({ detail }: { detail: AuditRow['detail'] }) {
   const entries = Object.entries(detail);
@@ -17,7 +28,7 @@ function Detail({ detail }: { detail: AuditRow['detail'] }) {
   return (
     <dl className="flex flex-wrap gap-x-4">
       {entries.map(([key, value]) => (
-        <div key={key} className="flex min-w-0 gap-1">
+        <div key={key} className="flex min-w-0 flex-wrap gap-x-1">
           <dt className="text-faded">{asWords(key)}</dt>
           <dd className="wrap-anywhere">{valueText(value)}</dd>
         </div>
@@ -47,16 +58,16 @@ export function AuditTable({ rows }: { rows: readonly AuditRow[] }) {
             <Time iso={row.at} />
             <span className="block text-ink tablet:hidden">{row.actor}</span>
           </Cell>
-          <Cell className="hidden align-top whitespace-nowrap tablet:table-cell">{row.actor}</Cell>
+          <Cell className="hidden py-1.5 align-top whitespace-nowrap tablet:table-cell">{row.actor}</Cell>
           <Cell className="py-1.5 align-top">
             {asWords(row.action)}
             <span className="block tablet:hidden">
-              <span className="font-mono text-small wrap-anywhere">{row.subject}</span>
+              <span className="wrap-anywhere">{row.subject}</span>
               <Detail detail={row.detail} />
             </span>
           </Cell>
-          <Cell className="hidden align-top font-mono text-small wrap-anywhere tablet:table-cell">{row.subject}</Cell>
-          <Cell className="hidden align-top tablet:table-cell">
+          <Cell className="hidden py-1.5 align-top wrap-anywhere tablet:table-cell">{row.subject}</Cell>
+          <Cell className="hidden py-1.5 align-top tablet:table-cell">
             <Detail detail={row.detail} />
           </Cell>
         </Row>

@@ -56,7 +56,11 @@ export function UsageTable({ teamId, people, canSetQuotas }: { teamId: string; p
                 used={person.usedCpuSeconds}
                 reserved={person.reservedCpuSeconds}
                 limit={person.quota.cpuSecondsPerMonth}
-                text={`${formatSeconds(person.usedCpuSeconds)} of ${formatSeconds(person.quota.cpuSecondsPerMonth)}${person.reservedCpuSeconds > 0 ? `, ${formatSeconds(person.reservedCpuSeconds)} reserved` : ''}`}
+                text={
+                  person.quota.cpuSecondsPerMonth === 0 && person.usedCpuSeconds === 0
+                    ? 'no CPU time in this role'
+                    : `${formatSeconds(person.usedCpuSeconds)} of ${formatSeconds(person.quota.cpuSecondsPerMonth)}${person.reservedCpuSeconds > 0 ? `, ${formatSeconds(person.reservedCpuSeconds)} reserved` : ''}`
+                }
               />
             </Cell>
             <Cell align="right" className="hidden tablet:table-cell">

@@ -25,6 +25,7 @@ export function Component() {
   if (teamId === undefined) {
     return (
       <EmptyState
+        isPage
         title="You are in no team yet"
         action={me.abilities.createTeam ? <ButtonLink to={paths.adminPeople()}>Create a team</ButtonLink> : undefined}
       >

@@ -10,7 +10,7 @@ import { TextArea } from '../../../components/field';
 import { IconButton } from '../../../components/icon-button';
 import { EmptyState, ErrorState, LoadingState } from '../../../components/states';
 import { Time } from '../../../components/time';
-import { errorMessage, issueFor } from '../../../lib/api-error';
+import { errorMessage, isSessionEnd, issueFor } from '../../../lib/api-error';
 import { queryClient } from '../../../lib/query-client';
 import { unknownQuery } from '../../../lib/unknown-queries';
 import { useDraft } from '../../../lib/use-draft';
@@ -126,7 +126,11 @@ function CommentForm({ unknownId }: { unknownId: string }) {
         rows={3}
         maxLength={4000}
         value={text}
-        error={issue ?? issueFor(create.error, 'text') ?? (create.isError ? errorMessage(create.error) : undefined)}
+        error={
+          issue ??
+          issueFor(create.error, 'text') ??
+          (create.isError && !isSessionEnd(create.error) ? errorMessage(create.error) : undefined)
+        }
         onChange={(event) => setText(event.target.value)}
       />
       <Button type="submit" variant="primary" isBusy={create.isPending}>
