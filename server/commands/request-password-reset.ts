@@ -1,12 +1,11 @@
 import { Op } from 'sequelize';
 import type { AppContext } from '../app-context.js';
 import { recordAudit } from '../audit/record-audit.js';
-import { passwordResetLink } from '../mail/links.js';
 import { passwordResetMessage } from '../mail/messages.js';
 import { queueMail } from '../mail/queue-mail.js';
 import { PasswordReset } from '../models/password-reset.js';
 import { User } from '../models/user.js';
-import { createSecret, hashOf } from '../sessions/tokens.js';
+import { createResetLink } from '../sessions/create-reset-link.js';
 
 const HOUR_MS = 3_600_000;
 /** More mails in an hour would only annoy the owner of the address. */
@@ -16,22 +15,15 @@ const RESETS_PER_HOUR = 3;
 export async function requestPasswordReset({ config, sequelize }: AppContext, email: string): Promise<void> {
   const user = await User.findOne({ where: { email } });
   if (user === null || user.isDisabled) return;
-  const secret = createSecret();
-  const now = new Date();
-  const expiresAt = new Date(now.getTime() + HOUR_MS);
   await sequelize.transaction(async (transaction) => {
     await user.reload({ transaction, lock: transaction.LOCK.UPDATE });
     const recentCount = await PasswordReset.count({
-      where: { userId: user.id, createdAt: { [Op.gt]: new Date(now.getTime() - HOUR_MS) } },
+      where: { userId: user.id, createdAt: { [Op.gt]: new Date(Date.now() - HOUR_MS) } },
       transaction,
     });
     if (recentCount >= RESETS_PER_HOUR) return;
-    await PasswordReset.create({ userId: user.id, tokenHash: hashOf(secret), createdAt: now, expiresAt }, { transaction });
-    await queueMail(
-      transaction,
-      passwordResetMessage({ email: user.email, link: passwordResetLink(config, secret), expiresAt }),
-      expiresAt,
-    );
+    const { link, expiresAt } = await createResetLink(transaction, config, user.id);
+    await queueMail(transaction, passwordResetMessage({ email: user.email, link, expiresAt }), expiresAt);
     await recordAudit(transaction, { userId: user.id, name: user.name }, 'password.requestReset', {
       kind: 'user',
       id: user.id,

@@ -26,6 +26,7 @@ export function securityHeaders(options: { readonly isHttps: boolean }): Request
         ...(options.isHttps ? { upgradeInsecureRequests: [] } : {}),
       },
     },
+    xFrameOptions: { action: 'deny' },
     referrerPolicy: { policy: 'no-referrer' },
     strictTransportSecurity: options.isHttps,
   });

@@ -65,6 +65,7 @@ export const policies = {
   'user.read': (actor: Actor, _row: UserRow) => actor.isAdmin,
   /** Not oneself: an installation must not lose its last admin by a slip. */
   'user.update': (actor: Actor, row: UserRow) => actor.isAdmin && row.id !== actor.userId,
+  'user.issueResetLink': (actor: Actor, _row: UserRow) => actor.isAdmin,
 
   'team.read': (actor: Actor, row: TeamRow) => actor.isAdmin || actor.roleByTeam.has(row.id),
   'team.update': (actor: Actor, row: TeamRow) => runsTeam(actor, row.id),

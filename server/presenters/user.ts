@@ -16,6 +16,6 @@ export function presentUser(actor: Actor, user: User): z.input<typeof userRow> {
     teams: (user.memberships ?? []).flatMap(({ teamId, role, team }) =>
       team === undefined ? [] : [{ teamId, teamName: team.name, role }],
     ),
-    abilities: abilitiesOn(actor, 'user', ['update'], user),
+    abilities: abilitiesOn(actor, 'user', ['update', 'issueResetLink'], user),
   };
 }

@@ -151,6 +151,13 @@ export const endpoints = {
     body: people.userUpdateRequest,
     response: people.userRow,
   },
+  createResetLink: {
+    method: 'POST',
+    path: '/users/:userId/password-reset',
+    summary: 'Link with which a person sets a new password, to be handed over where no mail is sent (admin).',
+    params: people.userParams,
+    response: people.resetLinkResponse,
+  },
   listAudit: {
     method: 'GET',
     path: '/audit',

@@ -116,9 +116,10 @@ export const userRow = z.object({
   isDisabled: z.boolean(),
   createdAt: timestamp,
   teams: z.array(z.object({ teamId: id, teamName: z.string(), role: teamRole })),
-  abilities: abilities(['update']),
+  abilities: abilities(['update', 'issueResetLink']),
 });
 export const userList = z.object({ users: z.array(userRow) });
+export const resetLinkResponse = z.object({ link: z.string(), expiresAt: timestamp });
 export const userUpdateRequest = z.object({ isAdmin: z.boolean().optional(), isDisabled: z.boolean().optional() });
 export const auditRow = z.object({
   id,

@@ -156,6 +156,7 @@ const TABLE: Readonly<Record<EndpointName, Row>> = {
 
   listUsers: row(ADMIN_ONLY),
   updateUser: row(ADMIN_ONLY, ({ people }) => ({ params: { userId: people.chemist.id }, body: { isDisabled: true } })),
+  createResetLink: row(ADMIN_ONLY, ({ people }) => ({ params: { userId: people.chemist.id } })),
   listAudit: row(ADMIN_ONLY),
 
   listUnknowns: row(TEAM_SCIENCE_READ, ofTeam),

@@ -26,9 +26,12 @@ describe('the list of people', () => {
       isAdmin: false,
       isDisabled: false,
       teams: [{ teamId: team.id, teamName: 'Weld', role: 'lead' }],
-      abilities: { update: true },
+      abilities: { update: true, issueResetLink: true },
     });
-    expect(response.body.users.find(({ id }: { id: string }) => id === admin.id).abilities).toEqual({ update: false });
+    expect(response.body.users.find(({ id }: { id: string }) => id === admin.id).abilities).toEqual({
+      update: false,
+      issueResetLink: true,
+    });
     expect(response.text).not.toContain('$2');
     expect((await (await server.as(lead)).get('/users')).status).toBe(403);
     expect((await (await server.as()).get('/users')).status).toBe(401);
@@ -92,6 +95,36 @@ describe('changing a person', () => {
     expect((await client.patch('/users/00000000-0000-4000-8000-000000000000', { isAdmin: true })).status).toBe(404);
     await user.reload();
     expect(user.isDisabled).toBe(false);
+  });
+});
+
+describe('a reset link from an admin', () => {
+  it('sets a new password where no mail is sent, and leaves a trace', async () => {
+    const user = await createUser();
+    const client = await server.as(user);
+    const response = await (await server.as(admin)).post(`/users/${user.id}/password-reset`);
+    expect(response.status).toBe(201);
+    const { link, expiresAt } = response.body as { link: string; expiresAt: string };
+    expect(link).toMatch(new RegExp(`^${server.context.config.publicUrl}/reset/[\\w-]{43}$`));
+    expect(new Date(expiresAt).getTime() - Date.now()).toBeLessThanOrEqual(3_600_000);
+    expect(await AuditEvent.count({ where: { action: 'user.issueResetLink', actorId: admin.id, subjectId: user.id } })).toBe(1);
+    expect(JSON.stringify(await AuditEvent.findAll())).not.toContain(link.split('/').pop());
+
+    const anonymous = await server.as();
+    expect((await anonymous.post(`/password-resets/${link.split('/').pop()}`, { password: 'spun from a new fleece' })).status).toBe(204);
+    expect((await client.get('/me')).status).toBe(401);
+    expect((await anonymous.post('/session', { email: user.email, password: 'spun from a new fleece' })).status).toBe(200);
+  });
+
+  it('is not made for a disabled account, nor by others than admins', async () => {
+    const user = await createUser({ isDisabled: true });
+    const response = await (await server.as(admin)).post(`/users/${user.id}/password-reset`);
+    expect(response.status).toBe(409);
+    expect(response.body.error.code).toBe('accountDisabled');
+    expect((await (await server.as(await createMember(await createTeam(), 'lead'))).post(`/users/${user.id}/password-reset`)).status).toBe(
+      403,
+    );
+    expect((await (await server.as(admin)).post('/users/00000000-0000-4000-8000-000000000000/password-reset')).status).toBe(404);
   });
 });
 
