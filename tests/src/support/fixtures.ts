@@ -287,7 +287,7 @@ export function laboratory(role: 'chemist' | 'lead' | 'reader', overrides: FakeH
           isDisabled: false,
           createdAt: time,
           teams: [{ teamId: ids.team, teamName: 'Lindenhof laboratory', role: 'lead' }],
-          abilities: { update: false },
+          abilities: { update: false, issueResetLink: true },
         },
         {
           id: ids.colleague,
@@ -297,7 +297,7 @@ export function laboratory(role: 'chemist' | 'lead' | 'reader', overrides: FakeH
           isDisabled: true,
           createdAt: time,
           teams: [{ teamId: ids.team, teamName: 'Lindenhof laboratory', role: 'chemist' }],
-          abilities: { update: true },
+          abilities: { update: true, issueResetLink: false },
         },
       ],
     }),
