@@ -1,5 +1,7 @@
+import type { RunSettings } from '../../shared/jobs/contract.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import { createSearch, type Search } from '../enumeration/search.js';
+import { createEvaluator, type Evaluator } from '../ranking/evaluator.js';
 
 let last: { readonly text: string; readonly search: Search } | null = null;
 
@@ -11,4 +13,16 @@ export function searchFor(evidence: EvidenceDocument): Search {
   const text = JSON.stringify(evidence);
   if (last === null || last.text !== text) last = { text, search: createSearch(evidence) };
   return last.search;
+}
+
+let lastEvaluator: { readonly text: string; readonly evaluator: Evaluator } | null = null;
+
+/**
+ * The filter and score of a run, kept like its search: making one takes longer than many a shard. It carries nothing
+ * from one constitution to the next.
+ */
+export function evaluatorFor(evidence: EvidenceDocument, settings: RunSettings): Evaluator {
+  const text = JSON.stringify([evidence, settings]);
+  if (lastEvaluator === null || lastEvaluator.text !== text) lastEvaluator = { text, evaluator: createEvaluator(evidence, settings) };
+  return lastEvaluator.evaluator;
 }

@@ -1,10 +1,9 @@
 import { addToCounter, isCancelled } from '../../shared/jobs/counters.js';
 import type { JobContract, ShardResult } from '../../shared/jobs/contract.js';
 import { enumerateShard } from '../enumeration/search.js';
-import { createEvaluator } from '../ranking/evaluator.js';
 import { BestCandidates } from './best-candidates.js';
 import { FunnelCounter } from './funnel-counter.js';
-import { searchFor } from './search-cache.js';
+import { evaluatorFor, searchFor } from './search-cache.js';
 
 /** Constitutions between two looks at the clock; each can cost up to a millisecond with many fragments. */
 const CONSTITUTIONS_BETWEEN_CHECKS = 64;
@@ -14,7 +13,7 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
   const { evidence, settings, shard, counters, deadlineEpochMs } = input;
   const startedMs = performance.now();
   const search = searchFor(evidence);
-  const evaluator = createEvaluator(evidence, settings);
+  const evaluator = evaluatorFor(evidence, settings);
   const funnel = new FunnelCounter();
   const best = settings.mode === 'count' ? null : new BestCandidates(settings.keep, evidence.options.mergeResonanceForms);
   let constitutionCount = 0;
