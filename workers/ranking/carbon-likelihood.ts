@@ -137,7 +137,7 @@ export class CarbonLikelihood {
     const columns = signals.length;
     for (let c = 0; c < columns; c++) {
       solver.demand[c] = 1;
-      solver.columnRest[c] = model.outlier;
+      solver.columnRest[c] = observed.maybeSolvent[signals[c]] === 1 ? model.solventOutlier : model.outlier;
     }
     for (let r = 0; r < rows; r++) {
       const row = start + r;
@@ -161,7 +161,7 @@ export class CarbonLikelihood {
       solver.supply[r] = 1;
     }
     const total = solver.solve(rows, columns);
-    for (let c = 0; c < columns; c++) if (solver.columnLeft[c] > 0) this.signalCost[signals[c]] = model.outlier;
+    for (let c = 0; c < columns; c++) if (solver.columnLeft[c] > 0) this.signalCost[signals[c]] = solver.columnRest[c];
     for (let r = 0; r < rows; r++) {
       const row = start + r;
       rowFate[row] = NOT_SEEN;

@@ -1,4 +1,5 @@
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
+import { solventOfCarbonSignal, solventOfProtonSignal } from './solvent-peaks.js';
 
 /** Attached hydrogens of a 13C signal that were not determined. */
 export const UNKNOWN_HYDROGENS = -1;
@@ -13,6 +14,8 @@ export interface CarbonObservations {
   readonly hydrogens: Int8Array;
   /** Carbons under the signal, or {@link UNKNOWN_COUNT}. */
   readonly count: Int32Array;
+  /** 1 where the signal may be the solvent's: it proves no carbon. */
+  readonly maybeSolvent: Uint8Array;
   /** Every signal has its attached hydrogens. */
   readonly isTyped: boolean;
   /** Every protonated carbon shows: a CHn type without a signal is absent from the molecule. */
@@ -25,6 +28,8 @@ export interface ProtonObservations {
   readonly shift: Float64Array;
   /** Hydrogens under the signal, or {@link UNKNOWN_COUNT}. */
   readonly count: Int32Array;
+  /** 1 where the signal may be the solvent's or water: it proves no hydrogen. */
+  readonly maybeSolvent: Uint8Array;
   /** 1 = marked as exchangeable, 0 = marked as not, −1 = not said. */
   readonly exchangeable: Int8Array;
   readonly isCounted: boolean;
@@ -32,14 +37,17 @@ export interface ProtonObservations {
 
 export function readCarbonObservations(evidence: EvidenceDocument): CarbonObservations {
   const signals = evidence.carbonSignals;
-  const isTyped = signals.every(({ hydrogens }) => hydrogens !== undefined);
+  const { solvent, carbonList } = evidence.options;
+  const maybeSolvent = Uint8Array.from(signals, (signal) => (solventOfCarbonSignal(signal, solvent) === null ? 0 : 1));
+  const own = signals.filter((_, index) => maybeSolvent[index] === 0);
   return {
     size: signals.length,
     shift: Float64Array.from(signals, ({ shift }) => shift),
     hydrogens: Int8Array.from(signals, ({ hydrogens }) => hydrogens ?? UNKNOWN_HYDROGENS),
     count: Int32Array.from(signals, ({ count }) => count ?? UNKNOWN_COUNT),
-    isTyped,
-    isComplete: isTyped && signals.length > 0 && evidence.options.carbonList === 'complete',
+    maybeSolvent,
+    isTyped: signals.every(({ hydrogens }) => hydrogens !== undefined),
+    isComplete: own.length > 0 && own.every(({ hydrogens }) => hydrogens !== undefined) && carbonList === 'complete',
   };
 }
 
@@ -49,6 +57,7 @@ export function readProtonObservations(evidence: EvidenceDocument): ProtonObserv
     size: signals.length,
     shift: Float64Array.from(signals, ({ shift }) => shift),
     count: Int32Array.from(signals, ({ count }) => count ?? UNKNOWN_COUNT),
+    maybeSolvent: Uint8Array.from(signals, (signal) => (solventOfProtonSignal(signal, evidence.options.solvent) === null ? 0 : 1)),
     exchangeable: Int8Array.from(signals, ({ exchangeable }) => (exchangeable === undefined ? -1 : exchangeable ? 1 : 0)),
     isCounted: signals.every(({ count }) => count !== undefined),
   };

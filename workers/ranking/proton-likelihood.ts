@@ -216,7 +216,7 @@ export class ProtonLikelihood {
     const columns = observed.size;
     for (let c = 0; c < columns; c++) {
       solver.demand[c] = 1;
-      solver.columnRest[c] = model.outlier;
+      solver.columnRest[c] = observed.maybeSolvent[order[c]] === 1 ? model.solventOutlier : model.outlier;
     }
     for (let r = 0; r < this.rowCount; r++) {
       let least = Infinity;

@@ -6,12 +6,15 @@ import { nameCarbon, nameProton } from './group-names.js';
 import { anyCarbonCost } from './none-of-these.js';
 import { UNKNOWN_HYDROGENS } from './observations.js';
 import type { ActiveRule } from './plausibility/active-rules.js';
+import { solventOfCarbonSignal, solventOfProtonSignal } from './solvent-peaks.js';
 
 /** Fits named beside a candidate: the most telling ones for and against it. */
 const MOST_FITS = 3;
 /** Deviation in standard deviations from which a signal counts as a misfit, and below which as a good fit. */
 const MISFIT = 2.5;
 const GOOD_FIT = 1;
+/** Weight of a signal that nothing gives: named before all misfits. */
+const UNEXPLAINED = 100;
 /** Gain over "a carbon of any compound" (ln) from which a fit says something. */
 const TELLING_GAIN = 1.5;
 
@@ -54,7 +57,11 @@ export function fitRemarks(s: StructureAnalysis, evidence: EvidenceDocument, spe
     const predicted = isCarbon ? spectra.carbons : spectra.protons;
     const atoms = [...new Set(predictedIndexes.flatMap((index) => predicted[index].atoms))];
     if (predictedIndexes.length === 0 || deviation === null) {
-      doubts.push({ weight: -match.term, remark: { kind: 'signal', tone: 'doubts', text: `${label} (${isCarbon ? '¹³C' : '¹H'}) is given by nothing in this structure.`, atoms } });
+      const solvent = isCarbon
+        ? solventOfCarbonSignal(evidence.carbonSignals[observedIndex], evidence.options.solvent)
+        : solventOfProtonSignal(evidence.protonSignals[observedIndex], evidence.options.solvent);
+      const text = `${label} (${isCarbon ? '¹³C' : '¹H'}) is given by nothing in this structure${solvent === null ? '' : `; ${solvent} has a line there`}.`;
+      doubts.push({ weight: UNEXPLAINED, remark: { kind: 'signal', tone: solvent === null ? 'doubts' : 'notes', text, atoms } });
       continue;
     }
     const { sd } = predicted[predictedIndexes[0]];
@@ -64,7 +71,7 @@ export function fitRemarks(s: StructureAnalysis, evidence: EvidenceDocument, spe
       doubts.push({ weight: Math.abs(deviation) / sd, remark: { kind: 'fit', tone: 'doubts', text, atoms } });
     } else if (!isCarbon && match.remark !== null) {
       const shape = evidence.protonSignals[observedIndex].multiplicity ?? '';
-      doubts.push({ weight: MISFIT, remark: { kind: 'fit', tone: 'doubts', text: `${label} (${shape}): the splitting does not fit ${name}.`, atoms } });
+      doubts.push({ weight: MISFIT, remark: { kind: 'fit', tone: 'doubts', text: `${label} (${shape}): the splitting does not fit the neighbours of this ${name}.`, atoms } });
     } else if (isCarbon && Math.abs(deviation) <= GOOD_FIT * sd) {
       const gain = anyCarbonCost(observed.shift, evidence.carbonSignals[observedIndex].hydrogens ?? UNKNOWN_HYDROGENS) - Math.log(sd * 2.5);
       if (gain > TELLING_GAIN) supports.push({ weight: gain, remark: { kind: 'fit', tone: 'supports', text: `${label} fits ${name}.`, atoms } });

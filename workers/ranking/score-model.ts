@@ -20,6 +20,8 @@ export interface ScoreModel {
     readonly twinsTogether: number;
     /** A signal belongs to nothing in the structure: ln ε − ln range of SCIENCE.md 8.4. */
     readonly outlier: number;
+    /** The same at the place of a solvent line. */
+    readonly solventOutlier: number;
     /** A signal is laid on a carbon with another number of hydrogens. */
     readonly wrongType: number;
     /** For each carbon by which a stated count is missed. */
@@ -32,6 +34,7 @@ export interface ScoreModel {
     /** Hydrogens on carbon do not show. */
     readonly missing: number;
     readonly outlier: number;
+    readonly solventOutlier: number;
     /** An exchangeable hydrogen does not show; SCIENCE.md 3.1: its count only, and only as "at most". */
     readonly exchangeableMissing: number;
     /** Least spread of exchangeable hydrogens, ppm. */
@@ -58,6 +61,7 @@ export const SCORE_MODEL: ScoreModel = {
     missingProtonated: 1.6,
     twinsTogether: 0.7,
     outlier: -Math.log(0.02) + Math.log(220),
+    solventOutlier: 1,
     wrongType: 6,
     countMismatch: 2,
   },
@@ -67,6 +71,7 @@ export const SCORE_MODEL: ScoreModel = {
     resolution: 0.1,
     missing: 4,
     outlier: -Math.log(0.02) + Math.log(12),
+    solventOutlier: 1,
     exchangeableMissing: 0.7,
     exchangeableSpread: 1.5,
     wrongExchange: 6,

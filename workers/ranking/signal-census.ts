@@ -17,7 +17,8 @@ export interface SignalContradiction {
 /**
  * Hard tests of the number of signals against a structure: what the observation really excludes, whatever the shifts
  * are (SCIENCE.md 2.5). Signals may coincide, so there are upper bounds only; the one lower bound, "no signal of a type,
- * no carbon of that type", holds when the list says it is complete, and never for quaternary carbons.
+ * no carbon of that type", holds when the list says it is complete, and never for quaternary carbons. Signals that may
+ * be the solvent's do not count.
  *
  * Scratch is reused from structure to structure: not re-entrant.
  */
@@ -30,6 +31,8 @@ export class SignalCensus {
   private readonly isCounted = new Uint8Array(TYPE_COUNT).fill(1);
   private readonly largestCount = new Int32Array(TYPE_COUNT);
   private readonly totalCarbonsUnder: number;
+  private readonly carbonSignalCount: number;
+  private readonly protonSignalCount: number;
   private readonly exchangeableUnder: number;
   private readonly boundUnder: number;
 
@@ -42,7 +45,10 @@ export class SignalCensus {
     this.carbons = readCarbonObservations(evidence);
     this.protons = readProtonObservations(evidence);
     let total = 0;
+    let carbonSignals = 0;
     for (let i = 0; i < this.carbons.size; i++) {
+      if (this.carbons.maybeSolvent[i] === 1) continue;
+      carbonSignals++;
       const type = this.carbons.hydrogens[i];
       const count = this.carbons.count[i];
       total += Math.max(count, 1);
@@ -53,15 +59,20 @@ export class SignalCensus {
       this.largestCount[type] = Math.max(this.largestCount[type], count);
     }
     this.totalCarbonsUnder = total;
+    this.carbonSignalCount = carbonSignals;
     let exchangeable = 0;
     let bound = 0;
+    let protonSignals = 0;
     for (let i = 0; i < this.protons.size; i++) {
+      if (this.protons.maybeSolvent[i] === 1) continue;
+      protonSignals++;
       const count = Math.max(this.protons.count[i], 1);
       if (this.protons.exchangeable[i] === 1) exchangeable += count;
       if (this.protons.exchangeable[i] === 0) bound += count;
     }
     this.exchangeableUnder = exchangeable;
     this.boundUnder = bound;
+    this.protonSignalCount = protonSignals;
   }
 
   /**
@@ -101,7 +112,7 @@ export class SignalCensus {
       if (largest[type] > largestCount[type] && this.meet('equivalentCarbons', type, s, all)) return SIGNAL_REASONS.equivalentCarbons[type];
     }
     if (this.totalCarbonsUnder > totalAtoms && this.meet('tooFewCarbons', ALL_TYPES, s, all)) return SIGNAL_REASONS.tooFewCarbons[ALL_TYPES];
-    if (!carbons.isTyped && carbons.size > totalMost && carbons.size <= totalAtoms && this.meet('carbonEnvironments', ALL_TYPES, s, all)) {
+    if (!carbons.isTyped && this.carbonSignalCount > totalMost && this.carbonSignalCount <= totalAtoms && this.meet('carbonEnvironments', ALL_TYPES, s, all)) {
       return SIGNAL_REASONS.carbonEnvironments[ALL_TYPES];
     }
     if (this.exchangeableUnder > 0 || this.boundUnder > 0) {
@@ -110,10 +121,10 @@ export class SignalCensus {
       if (this.exchangeableUnder > exchangeable && this.meet('exchangeableProtons', ALL_TYPES, s, all)) return SIGNAL_REASONS.exchangeableProtons[ALL_TYPES];
       if (this.boundUnder > bound && this.meet('boundProtons', ALL_TYPES, s, all)) return SIGNAL_REASONS.boundProtons[ALL_TYPES];
     }
-    if (this.protons.size > 0) {
+    if (this.protonSignalCount > 0) {
       let protonSignals = 0;
       for (let c = 0; c < environments.classCount; c++) protonSignals += bounds.protonSignals[c];
-      if (this.protons.size > protonSignals && this.meet('protonEnvironments', ALL_TYPES, s, all)) return SIGNAL_REASONS.protonEnvironments[ALL_TYPES];
+      if (this.protonSignalCount > protonSignals && this.meet('protonEnvironments', ALL_TYPES, s, all)) return SIGNAL_REASONS.protonEnvironments[ALL_TYPES];
     }
     return null;
   }

@@ -2,6 +2,11 @@ import type { PredictedSpectra, SignalMatch } from '../../shared/jobs/contract.j
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import { NOT_SEEN, OWN_SIGNAL, type CarbonLikelihood } from './carbon-likelihood.js';
 import type { ProtonLikelihood } from './proton-likelihood.js';
+import { solventOfCarbonSignal, solventOfProtonSignal } from './solvent-peaks.js';
+
+/** What is said of a signal that nothing in the structure gives. */
+const unexplained = (solvent: string | null): string =>
+  solvent === null ? 'Nothing in this structure gives this signal.' : `Nothing in this structure gives this signal; ${solvent} has a line here.`;
 
 /** Indexes of the predicted signals that hold an atom. */
 function indexesOf(predicted: readonly { readonly atoms: readonly number[] }[], atom: number): number[] {
@@ -20,7 +25,7 @@ function deviationOf(observed: number, predicted: readonly { readonly shift: num
  * @param temperature - of the score, so that the terms add up to it.
  */
 export function listCarbonMatches(carbon: CarbonLikelihood, evidence: EvidenceDocument, spectra: PredictedSpectra, temperature: number): SignalMatch[] {
-  const matches: SignalMatch[] = evidence.carbonSignals.map(({ shift }, signal) => {
+  const matches: SignalMatch[] = evidence.carbonSignals.map((observed, signal) => {
     const own: number[] = [];
     const under: number[] = [];
     let cost = carbon.signalCost[signal];
@@ -31,12 +36,12 @@ export function listCarbonMatches(carbon: CarbonLikelihood, evidence: EvidenceDo
       cost += carbon.rowCost[row];
     }
     const remark =
-      own.length === 0 ? 'Nothing in this structure gives this signal.'
+      own.length === 0 ? unexplained(solventOfCarbonSignal(observed, evidence.options.solvent))
       : under.some((index) => !own.includes(index)) ? 'Several environments lie under this signal.'
       : null;
     return {
       nucleus: '13C', observedIndex: signal, predictedIndexes: [...new Set([...own, ...under])],
-      deviation: deviationOf(shift, spectra.carbons, own), term: -cost / temperature, remark,
+      deviation: deviationOf(observed.shift, spectra.carbons, own), term: -cost / temperature, remark,
     };
   });
   for (let row = 0; row < carbon.rowCount; row++) {
@@ -67,15 +72,15 @@ export function listProtonMatches(proton: ProtonLikelihood, evidence: EvidenceDo
     });
     if (signals.length === 0) unseen.push(row);
   }
-  const matches: SignalMatch[] = evidence.protonSignals.map(({ shift }, signal) => {
+  const matches: SignalMatch[] = evidence.protonSignals.map((observed, signal) => {
     const indexes = [...bySignal[signal]].sort((a, b) => a - b);
     const cost = proton.signalCost(signal);
     const remark =
-      indexes.length === 0 ? 'Nothing in this structure gives this signal.'
+      indexes.length === 0 ? unexplained(solventOfProtonSignal(observed, evidence.options.solvent))
       : cost.pattern >= 2 ? 'The splitting does not fit the neighbours.'
       : null;
     return {
-      nucleus: '1H', observedIndex: signal, predictedIndexes: indexes, deviation: deviationOf(shift, spectra.protons, indexes),
+      nucleus: '1H', observedIndex: signal, predictedIndexes: indexes, deviation: deviationOf(observed.shift, spectra.protons, indexes),
       term: -(cost.shift + cost.pattern) / temperature, remark,
     };
   });
