@@ -12,7 +12,6 @@ import { EmptyState, ErrorState, LoadingState } from '../../../components/states
 import { StructureEditor } from '../../../components/structure/structure-editor';
 import { Tabs } from '../../../components/tabs';
 import { teamFragmentsQuery } from '../../../lib/queries/fragment-queries';
-import { showToast } from '../../../lib/toasts';
 
 export interface PickedFragment {
   name: string;
@@ -54,9 +53,10 @@ export function FragmentPicker({
   onClose: () => void;
 }) {
   const [source, setSource] = useState<Source>('library');
+  const [added, setAdded] = useState<readonly string[]>([]);
   const take = ({ name, smiles }: PickedFragment) => {
     onPick({ name, smiles: purpose === 'excluded' && source !== 'draw' ? asQuery(smiles) : smiles });
-    showToast('done', `${name === '' ? 'The drawn fragment' : name} added as ${purpose}.`);
+    setAdded((names) => [...names, name === '' ? 'drawn fragment' : name]);
   };
   return (
     <Dialog
@@ -65,7 +65,17 @@ export function FragmentPicker({
       onClose={onClose}
       footer={
         <>
-          <span className="mr-auto self-center">{purpose === 'required' ? budget : null}</span>
+          <div className="mr-auto min-w-0 flex-1 basis-60 self-center text-table">
+            <p role="status" className="truncate">
+              {added.length === 0 ? null : (
+                <>
+                  <span className="text-faded">added </span>
+                  {added.join(', ')}
+                </>
+              )}
+            </p>
+            {purpose === 'required' ? budget : null}
+          </div>
           <Button variant="primary" onClick={onClose}>
             Done
           </Button>
