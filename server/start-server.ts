@@ -3,15 +3,16 @@ import { createServer } from 'node:http';
 import { pino } from 'pino';
 import type { AppContext } from './app-context.js';
 import { createApp } from './app.js';
-import { createEmbeddedQueue } from './compute/embedded-queue.js';
-import { createComputePool } from './compute/pool.js';
 import { ensureFirstAdmin } from './commands/create-first-admin.js';
 import { purgeExpired } from './commands/purge-expired.js';
+import { createEmbeddedQueue } from './compute/embedded-queue.js';
+import { createComputePool } from './compute/pool.js';
 import type { Config } from './config/config.js';
 import { connectDatabase } from './database/connect.js';
 import { lockDataFolder } from './database/data-folder-lock.js';
 import { migrate } from './database/migrate.js';
 import { startPrivateMariadb } from './database/private-mariadb.js';
+import { loadDemo } from './demo/load-demo.js';
 import { createMailer } from './mail/mailer.js';
 import { startOutboxSender } from './mail/outbox-sender.js';
 import { initModels } from './models/init-models.js';
@@ -36,6 +37,7 @@ export interface StartedServer {
 
 /** Opens one thing after another, the port last: who gets an answer gets a complete server. */
 export async function startServer({ config, shutdown, announce }: StartOptions): Promise<StartedServer> {
+  await requireFreePort(config);
   const logger = pino({ level: config.logLevel });
   const sequelize = connectDatabase(config.databaseUrl ?? (await openPrivateDatabase(config, shutdown, announce)));
   shutdown.add('database connections', () => sequelize.close());
@@ -54,7 +56,8 @@ export async function startServer({ config, shutdown, announce }: StartOptions):
 
   const mailer = createMailer(config);
   shutdown.add('mail connection', () => mailer.close());
-  const context: AppContext = { config, sequelize, logger, mailer, compute, queue };
+  const services = { config, sequelize, logger, mailer, compute, queue };
+  const context: AppContext = { ...services, demoAccounts: await loadDemo(services, announce) };
   const outbox = startOutboxSender(context);
   shutdown.add('mail outbox', () => outbox.stop());
   shutdown.add('upkeep', startUpkeep(context));
@@ -83,6 +86,14 @@ async function openPrivateDatabase(config: Config, shutdown: Shutdown, announce:
   const database = await startPrivateMariadb(config.dataDirectory);
   shutdown.add('database', database.stop);
   return database.url;
+}
+
+/** Said at once, and not after the demo has been computed. */
+async function requireFreePort({ port, host }: Config): Promise<void> {
+  const probe = createServer().listen(port, host);
+  await once(probe, 'listening');
+  probe.close();
+  await once(probe, 'close');
 }
 
 async function listen(context: AppContext, shutdown: Shutdown): Promise<void> {
