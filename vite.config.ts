@@ -6,8 +6,14 @@ const apiPort = process.env.PORT ?? '3210';
 
 export default defineConfig({
   plugins: [react(), tailwindcss()],
-  // The structure library is one chunk of about a megabyte, loaded only where structures are.
-  build: { outDir: 'dist/client', emptyOutDir: true, chunkSizeWarningLimit: 1500 },
+  build: {
+    outDir: 'dist/client',
+    emptyOutDir: true,
+    // The structure library is one chunk of about a megabyte, loaded only where structures are.
+    chunkSizeWarningLimit: 1500,
+    // The content security policy lets fonts come from files of this server only.
+    assetsInlineLimit: (file) => (/\.woff2?$/.test(file) ? false : undefined),
+  },
   server: {
     host: '127.0.0.1',
     proxy: { '/api': { target: `http://127.0.0.1:${apiPort}` } },
