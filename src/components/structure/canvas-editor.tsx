@@ -1,6 +1,19 @@
 import { CanvasEditor, Molecule } from 'openchemlib';
 import { useEffect, useRef } from 'react';
-import { parseStructure, writeStructure } from './parse-structure';
+import { ATTACHMENT, parseStructure, writeStructure } from './parse-structure';
+
+/** The library's tool bar in CSS pixels; a lower surface would cut its last tools off. */
+const TOOLBAR_HEIGHT = 364;
+
+/** A SMILES for the surface, attachment points lettered as in the text. */
+function moleculeFor(smiles: string): Molecule {
+  if (smiles.trim() === '') return new Molecule(32, 32);
+  const molecule = parseStructure(smiles);
+  for (let atom = 0; atom < molecule.getAllAtoms(); atom++) {
+    if (molecule.getAtomicNo(atom) === ATTACHMENT) molecule.setAtomCustomLabel(atom, '*');
+  }
+  return molecule;
+}
 
 /** The drawing surface; in its own chunk. `smiles` goes in when it differs from what was drawn last. */
 export function CanvasSurface({ smiles, height, onDrawn }: { smiles: string; height: number; onDrawn: (smiles: string) => void }) {
@@ -33,7 +46,7 @@ export function CanvasSurface({ smiles, height, onDrawn }: { smiles: string; hei
   useEffect(() => {
     if (editor.current === null || smiles === lastDrawn.current) return;
     try {
-      editor.current.setMolecule(smiles.trim() === '' ? new Molecule(32, 32) : parseStructure(smiles));
+      editor.current.setMolecule(moleculeFor(smiles));
       lastDrawn.current = smiles;
     } catch {
       // Half-typed text: the last drawing stays, and the text field says what is wrong.
@@ -42,5 +55,11 @@ export function CanvasSurface({ smiles, height, onDrawn }: { smiles: string; hei
   }, [smiles]);
 
   // The library draws on white only; in the dark its picture is turned around, hues kept.
-  return <div ref={host} className="w-full overflow-hidden rounded-small dark:hue-rotate-180 dark:invert-[0.88]" style={{ height }} />;
+  return (
+    <div
+      ref={host}
+      className="w-full overflow-hidden rounded-small dark:hue-rotate-180 dark:invert-[0.88]"
+      style={{ height: Math.max(height, TOOLBAR_HEIGHT) }}
+    />
+  );
 }

@@ -23,7 +23,9 @@ export interface DrawnAtom extends Point {
   /** Where its hydrogens are written. */
   readonly hydrogenSide: Side;
   readonly charge: number;
-  /** Unit vector into the widest gap between its bonds: room for a number. */
+  /** Unit vector from the letter to its charge. */
+  readonly chargeDirection: Point;
+  /** Unit vector into the widest gap between its bonds and letters: room for a number. */
   readonly gap: Point;
 }
 export interface DrawnBond {
@@ -50,17 +52,14 @@ const NAMES: Readonly<Record<string, string>> = {
   I: 'iodine',
   Si: 'silicon',
 };
-const SIDES: ReadonlyArray<readonly [Side, number]> = [
-  ['right', 0],
-  ['left', Math.PI],
-  ['up', -Math.PI / 2],
-  ['down', Math.PI / 2],
-];
+const SIDE_ANGLES: Readonly<Record<Side, number>> = { right: 0, left: Math.PI, up: -Math.PI / 2, down: Math.PI / 2 };
 
 const angleBetween = (a: number, b: number) => {
   const difference = Math.abs(a - b) % (2 * Math.PI);
   return Math.min(difference, 2 * Math.PI - difference);
 };
+
+const HYDROGEN_FIRST: ReadonlySet<string> = new Set(['O', 'S', 'F', 'Cl', 'Br', 'I']);
 
 /** Angle in the middle of the widest gap between directions. */
 function widestGap(angles: readonly number[]): number {
@@ -78,19 +77,26 @@ function widestGap(angles: readonly number[]): number {
   return best;
 }
 
-/** The side farthest from every bond; right and left win ties, as in hand drawing. */
+/** Smallest angle between a direction and the taken ones. */
+const clearance = (angle: number, taken: readonly number[]): number =>
+  taken.reduce((least, other) => Math.min(least, angleBetween(angle, other)), Math.PI);
+
+/** Beside the letter wherever a bond leaves room there, as in hand drawing; else above or below. */
 function hydrogenSide(angles: readonly number[]): Side {
-  let best: Side = 'right';
-  let room = -1;
-  for (const [side, angle] of SIDES) {
-    const nearest = angles.length === 0 ? Math.PI : Math.min(...angles.map((other) => angleBetween(angle, other)));
-    const allowance = side === 'left' || side === 'right' ? 0.35 : 0;
-    if (nearest + allowance > room + 1e-6) {
-      best = side;
-      room = nearest + allowance;
-    }
-  }
-  return best;
+  const room = (side: Side) => clearance(SIDE_ANGLES[side], angles);
+  const beside: Side = room('right') >= room('left') - 1e-6 ? 'right' : 'left';
+  if (room(beside) > 0.85) return beside;
+  const stacked: Side = room('up') >= room('down') ? 'up' : 'down';
+  return room(stacked) > room(beside) ? stacked : beside;
+}
+
+/** Where charges go, best place first: upper right as in print, then whatever bonds and hydrogens leave free. */
+const CHARGE_ANGLES = [-45, -90, -135, 45, 90, 135].map((degrees) => (degrees * Math.PI) / 180);
+
+function chargeAngle(taken: readonly number[]): number {
+  const free = CHARGE_ANGLES.find((angle) => clearance(angle, taken) > 0.75);
+  if (free !== undefined) return free;
+  return CHARGE_ANGLES.reduce((best, angle) => (clearance(angle, taken) > clearance(best, taken) + 1e-6 ? angle : best));
 }
 
 /** Centre of the smallest ring around a bond, aromatic rings first; null outside rings. */
@@ -137,18 +143,26 @@ export function depictStructure(smiles: string): Depiction {
       const other = at(molecule.getConnAtom(atom, i));
       angles.push(Math.atan2(other.y - point.y, other.x - point.x));
     }
-    const gap = widestGap(angles);
     const charge = molecule.getAtomCharge(atom);
+    const hydrogens = molecule.getImplicitHydrogens(atom);
     const isLabelled = !isAttachment && (symbol !== 'C' || charge !== 0 || angles.length === 0);
+    // Alone, these follow their hydrogens, as in H₂O and HCl.
+    const side = angles.length === 0 && HYDROGEN_FIRST.has(symbol) ? 'left' : hydrogenSide(angles);
+    // Letters take room like bonds do: first the hydrogens, then the charge, then the number.
+    if (isLabelled && hydrogens > 0) angles.push(SIDE_ANGLES[side]);
+    const chargeDirection = chargeAngle(angles);
+    if (charge !== 0) angles.push(chargeDirection);
+    const gap = widestGap(angles);
     return {
       ...point,
       symbol,
       name: isAttachment ? 'attachment point' : (NAMES[symbol] ?? symbol),
       isAttachment,
       isLabelled,
-      hydrogens: molecule.getImplicitHydrogens(atom),
-      hydrogenSide: hydrogenSide(angles),
+      hydrogens,
+      hydrogenSide: side,
       charge,
+      chargeDirection: { x: Math.cos(chargeDirection), y: Math.sin(chargeDirection) },
       gap: { x: Math.cos(gap), y: Math.sin(gap) },
     };
   });

@@ -26,5 +26,6 @@ export const ATTACHMENT = 0;
 export function writeStructure(molecule: Molecule): string {
   const flat = molecule.getCompactCopy();
   flat.stripStereoInformation();
+  for (let atom = 0; atom < flat.getAllAtoms(); atom++) flat.setAtomCustomLabel(atom, null);
   return flat.toIsomericSmiles().replaceAll('[?]', '*');
 }

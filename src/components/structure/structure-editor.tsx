@@ -1,5 +1,6 @@
 import { lazy, Suspense } from 'react';
 import { parseSmiles } from '../../../shared/chemistry/smiles';
+import { showToast } from '../../lib/toasts';
 import { TextInput } from '../field';
 import { LoadingState } from '../states';
 import { StructureDrawing } from './structure-drawing';
@@ -24,7 +25,9 @@ export function StructureEditor({ label, value, onValueChange, kind = 'structure
   const isReadable = parsed?.ok === true;
   const onAtomClick = async (atom: number) => {
     const { toggleAttachment } = await import('./attachment-points');
-    onValueChange(toggleAttachment(value, atom));
+    const changed = toggleAttachment(value, atom);
+    if (changed === value) showToast('note', 'This atom has no hydrogen that could make room for an open bond.');
+    else onValueChange(changed);
   };
   return (
     <div className="space-y-3">
@@ -55,7 +58,7 @@ export function StructureEditor({ label, value, onValueChange, kind = 'structure
               name === 'attachment point' ? 'Close this attachment point' : `Open a bond at ${name} ${atom + 1}`
             }
           />
-          <p className="max-w-[36ch] min-w-0 flex-1 text-table text-faded">
+          <p className="max-w-[36ch] min-w-0 grow basis-48 text-table text-faded">
             Choose an atom to open a bond there; choose a wave to close it again. Everything else stays as drawn, hydrogens included.
           </p>
         </div>

@@ -46,6 +46,25 @@ function depict(smiles: string): Depiction | null {
   return depiction;
 }
 
+/** The charge beside, above or below its letter, wherever there is room. */
+function ChargeSign({ atom, baseline, reach }: { atom: DrawnAtom; baseline: number; reach: number }) {
+  const { x, y } = atom.chargeDirection;
+  const isBeside = Math.abs(x) > 0.5;
+  // Beside, hydrogens on the same side are passed; above and below, the sign is centred.
+  const isPastHydrogens = atom.hydrogens > 0 && ((x > 0 && atom.hydrogenSide === 'right') || (x < 0 && atom.hydrogenSide === 'left'));
+  const distance = isPastHydrogens ? reach : halfWidth(atom.symbol) + 0.5;
+  return (
+    <text
+      x={isBeside ? atom.x + Math.sign(x) * distance : atom.x}
+      y={baseline + (isBeside ? (y < 0 ? -0.42 : 0.4) : Math.sign(y) * 0.8) * FONT_SIZE}
+      fontSize={FONT_SIZE * 0.74}
+      textAnchor={isBeside ? (x > 0 ? 'start' : 'end') : 'middle'}
+    >
+      {chargeText(atom.charge)}
+    </text>
+  );
+}
+
 function AtomLetters({ atom }: { atom: DrawnAtom }) {
   if (!atom.isLabelled) return null;
   const baseline = atom.y + FONT_SIZE * 0.34;
@@ -64,7 +83,7 @@ function AtomLetters({ atom }: { atom: DrawnAtom }) {
   const side = atom.hydrogenSide;
   const x = side === 'right' ? atom.x + offset : side === 'left' ? atom.x - offset : atom.x - halfWidth('H');
   const y = side === 'up' ? baseline - FONT_SIZE * 0.92 : side === 'down' ? baseline + FONT_SIZE * 0.92 : baseline;
-  const hydrogenWidth = atom.hydrogens === 0 || side !== 'right' ? 0 : halfWidth('H') * 2 + (atom.hydrogens > 1 ? FONT_SIZE * 0.36 : 0);
+  const hydrogenWidth = atom.hydrogens === 0 ? 0 : halfWidth('H') * 2 + (atom.hydrogens > 1 ? FONT_SIZE * 0.36 : 0);
   return (
     <>
       <text x={atom.x} y={baseline} textAnchor="middle">
@@ -76,9 +95,7 @@ function AtomLetters({ atom }: { atom: DrawnAtom }) {
         </text>
       )}
       {atom.charge === 0 ? null : (
-        <text x={atom.x + offset + hydrogenWidth} y={baseline - FONT_SIZE * 0.42} fontSize={FONT_SIZE * 0.74} textAnchor="start">
-          {chargeText(atom.charge)}
-        </text>
+        <ChargeSign atom={atom} baseline={baseline} reach={offset + (side === 'left' || side === 'right' ? hydrogenWidth : 0)} />
       )}
     </>
   );

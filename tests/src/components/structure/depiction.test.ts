@@ -66,6 +66,22 @@ describe('a depiction', () => {
     expect(side).toBe(atoms[0].x > atoms[1].x ? 'left' : 'right');
   });
 
+  it('stacks hydrogens only where no side is free', () => {
+    // Ring NH of a zigzag amine has bonds on both sides; the acid OH has not.
+    expect(depictStructure('CNC').atoms[1].hydrogenSide).toMatch(/up|down/);
+    expect(depictStructure('CC(=O)O').atoms[3].hydrogenSide).toMatch(/left|right/);
+  });
+
+  it('keeps charge, hydrogens, number and bonds of an atom apart', () => {
+    for (const smiles of ['C[N+](=O)[O-]', '[N-]=[N+]=NCC', '[O-][n+]1ccccc1', 'NCC(=O)O']) {
+      for (const atom of depictStructure(smiles).atoms) {
+        if (atom.charge === 0) continue;
+        const cosine = atom.chargeDirection.x * atom.gap.x + atom.chargeDirection.y * atom.gap.y;
+        expect(cosine).toBeLessThan(0.9);
+      }
+    }
+  });
+
   it.each(['C1CC', 'Q', '(('])('refuses %s', (smiles) => {
     expect(() => depictStructure(smiles)).toThrow();
   });
