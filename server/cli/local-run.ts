@@ -2,7 +2,7 @@ import type { Funnel, RankedCandidate, RunSettings, ShardSpec } from '../../shar
 import { cancelRun, createCounters, readCounter } from '../../shared/jobs/counters.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { ComputeService } from '../compute/compute-service.js';
-import { ShardMerger } from '../compute/merge-shards.js';
+import { type MergedShards, ShardMerger } from '../compute/merge-shards.js';
 import { InterruptedError } from './cli-error.js';
 import type { Interrupt } from './interrupt.js';
 
@@ -32,10 +32,13 @@ export interface LocalProgress {
 /** The plan is the same for any number of threads, so that counts and rankings are, too. */
 const TARGET_SHARDS = 192;
 const PROGRESS_MS = 500;
+/** Structures of a list that are written out in one job. */
+const LIST_PART = 400;
 
 /**
  * Takes evidence through plan, shards and finish on the compute threads.
  *
+ * @param describedCount - how many of the kept candidates to describe, best first
  * @param onProgress - called about twice a second while shards run
  * @throws ComputeFailure, WorkerCrash as the jobs do; InterruptedError when stopped before the plan was made
  */
@@ -43,6 +46,7 @@ export async function runLocally(
   compute: ComputeService,
   evidence: EvidenceDocument,
   settings: RunSettings,
+  describedCount: number,
   interrupt: Interrupt,
   onProgress?: (progress: LocalProgress) => void,
 ): Promise<LocalRun> {
@@ -85,19 +89,43 @@ export async function runLocally(
   }
 
   const merged = merger.merged();
-  const finished =
-    settings.mode === 'count'
-      ? null
-      : await compute.runJob('finish', { evidence, settings, kept: merged.kept, logSumExp: merged.logSumExp, funnel: merged.funnel });
+  const described = await describeBest(compute, evidence, settings, merged, describedCount);
   return {
     survivorCount: merged.survivorCount,
     multigraphCount: merged.multigraphCount,
     funnel: merged.funnel,
-    candidates: finished?.candidates ?? [],
-    noneOfTheseProbability: finished?.noneOfTheseProbability ?? null,
+    candidates: described.candidates,
+    noneOfTheseProbability: described.noneOfTheseProbability,
     isComplete: merged.complete && merger.shardCount === shards.length,
     seconds: seconds(),
   };
+}
+
+/**
+ * Works out SMILES, spectra and probabilities of the best candidates: those of a ranking in one job, long lists in
+ * pieces on all threads.
+ */
+async function describeBest(
+  compute: ComputeService,
+  evidence: EvidenceDocument,
+  settings: RunSettings,
+  { kept, logSumExp, funnel }: MergedShards,
+  count: number,
+): Promise<Pick<LocalRun, 'candidates' | 'noneOfTheseProbability'>> {
+  if (settings.mode === 'count') return { candidates: [], noneOfTheseProbability: null };
+  const best = kept.slice(0, count);
+  const describe = (part: typeof best) => compute.runJob('finish', { evidence, settings, kept: part, logSumExp, funnel });
+  if (settings.mode === 'rank') return describe(best);
+  const parts: RankedCandidate[][] = [];
+  let next = 0;
+  const work = async (): Promise<void> => {
+    for (let start = next; start < best.length; start = next) {
+      next += LIST_PART;
+      parts[start / LIST_PART] = [...(await describe(best.slice(start, start + LIST_PART))).candidates];
+    }
+  };
+  await Promise.all(Array.from({ length: compute.threadCount }, work));
+  return { candidates: parts.flat(), noneOfTheseProbability: null };
 }
 
 /** Runs a job that knows no flag to stop by: Ctrl-C ends its thread. */

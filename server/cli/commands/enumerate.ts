@@ -32,7 +32,7 @@ export async function enumerateCommand(argument: string, raw: RawOptions, contex
       maxSeconds: maxSeconds ?? given.options.maxSeconds,
       mode: wantsSmiles ? 'list' : 'count',
     };
-    return runLocally(compute, evidence, settings, context.interrupt, onProgress);
+    return runLocally(compute, evidence, settings, listed, context.interrupt, onProgress);
   };
   if (kindOfInput(argument) === 'batch') {
     return withWarmCompute(context, threads, (compute) =>
@@ -44,7 +44,7 @@ export async function enumerateCommand(argument: string, raw: RawOptions, contex
           return { document: { ...passedThrough(line), ...enumerationDocument(result) }, exitCode: exitCodeOf(result) };
         },
         passedThrough,
-        1,
+        maxSeconds === undefined ? compute.threadCount : 1,
       ),
     );
   }

@@ -23,9 +23,9 @@ export async function rankCommand(argument: string, raw: RawOptions, context: Cl
   options.check();
 
   const run = (compute: ComputeService, evidence: EvidenceDocument, onProgress?: (progress: LocalProgress) => void): Promise<LocalRun> => {
-    const { keep } = evidence.options;
-    const settings: RunSettings = { keep: Math.max(keep, top), maxSeconds: maxSeconds ?? evidence.options.maxSeconds, mode: 'rank' };
-    return runLocally(compute, evidence, settings, context.interrupt, onProgress);
+    // Only what is printed has to be kept: the order does not depend on how many are.
+    const settings: RunSettings = { keep: top, maxSeconds: maxSeconds ?? evidence.options.maxSeconds, mode: 'rank' };
+    return runLocally(compute, evidence, settings, top, context.interrupt, onProgress);
   };
   if (kindOfInput(argument) === 'batch') {
     return withWarmCompute(context, threads, (compute) =>
@@ -34,10 +34,12 @@ export async function rankCommand(argument: string, raw: RawOptions, context: Cl
         context,
         async (line) => {
           const result = await run(compute, evidenceOfLine(line).evidence);
-          return { document: { ...passedThrough(line), ...rankingDocument(result, top) }, exitCode: exitCodeOf(result) };
+          return { document: { ...passedThrough(line), ...rankingDocument(result) }, exitCode: exitCodeOf(result) };
         },
         passedThrough,
-        1,
+        // Documents side by side fill the gaps in which one of them has nothing for all threads; a time limit each has to
+        // be the document's own.
+        maxSeconds === undefined ? compute.threadCount : 1,
       ),
     );
   }
@@ -45,10 +47,10 @@ export async function rankCommand(argument: string, raw: RawOptions, context: Cl
   const line = createProgressLine(context);
   const result = await withWarmCompute(context, threads, (compute) => run(compute, evidence, line.show));
   line.clear();
-  if (options.has('json')) await context.write(`${JSON.stringify(rankingDocument(result, top))}\n`);
+  if (options.has('json')) await context.write(`${JSON.stringify(rankingDocument(result))}\n`);
   else {
     for (const note of notes) context.tell(`note: ${note}\n`);
-    await context.write(describeRanking(result, evidence, top));
+    await context.write(describeRanking(result, evidence));
     context.tell('Best of this list under this model, not an identification: confirm against an authentic standard.\n');
   }
   return exitCodeOf(result);
@@ -56,17 +58,14 @@ export async function rankCommand(argument: string, raw: RawOptions, context: Cl
 
 const exitCodeOf = ({ isComplete }: LocalRun): ExitCode => (isComplete ? EXIT.done : EXIT.stopped);
 
-function rankingDocument(
-  { survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun,
-  top: number,
-): object {
+function rankingDocument({ survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun): object {
   return {
     count: survivorCount,
     complete: isComplete,
     funnel,
     seconds,
     noneOfTheseProbability,
-    candidates: candidates.slice(0, top).map(candidateDocument),
+    candidates: candidates.map(candidateDocument),
   };
 }
 
@@ -77,19 +76,16 @@ function candidateDocument({ rank, smiles, idcode, probability, score, terms }: 
 function describeRanking(
   { survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun,
   { formula }: EvidenceDocument,
-  top: number,
 ): string {
   const percent = (probability: number): string => `${(100 * probability).toFixed(1)} %`;
-  const rows = candidates
-    .slice(0, top)
-    .map(({ rank, probability, score, carbonDeviation, protonDeviation, smiles }) => [
-      String(rank),
-      percent(probability),
-      score.toFixed(2),
-      carbonDeviation === null ? '' : carbonDeviation.toFixed(2),
-      protonDeviation === null ? '' : protonDeviation.toFixed(2),
-      smiles,
-    ]);
+  const rows = candidates.map(({ rank, probability, score, carbonDeviation, protonDeviation, smiles }) => [
+    String(rank),
+    percent(probability),
+    score.toFixed(2),
+    carbonDeviation === null ? '' : carbonDeviation.toFixed(2),
+    protonDeviation === null ? '' : protonDeviation.toFixed(2),
+    smiles,
+  ]);
   const stopped = isComplete ? '' : ', stopped before the end: the list is incomplete';
   const none = noneOfTheseProbability === null ? '' : `none of these: ${percent(noneOfTheseProbability)}\n`;
   const table =
