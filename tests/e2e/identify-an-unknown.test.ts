@@ -118,12 +118,12 @@ describe.skipIf(!hasBrowser)('identifying an unknown in the browser', () => {
     const page = await chemist.newPage();
     await page.goto(server.url + new URL(link).pathname);
     await page.getByLabel('Your name').fill('Chemist of tests');
-    await page.getByLabel('Password', { exact: true }).fill(PASSWORD);
-    await page.getByRole('button', { name: /Join/ }).click();
-    await page.getByRole('heading', { name: 'Unknowns' }).waitFor();
+    await page.locator('input[type="password"]').fill(PASSWORD);
+    await page.getByRole('button', { name: 'Join the team' }).click();
+    await page.getByRole('heading', { name: 'Unknowns', exact: true }).waitFor();
     await chemist.clearCookies();
     await signIn(page, 'chemist@example.org', PASSWORD);
-    await page.getByRole('heading', { name: 'Unknowns' }).waitFor();
+    await page.getByRole('heading', { name: 'Unknowns', exact: true }).waitFor();
     await page.close();
   });
 
@@ -172,7 +172,7 @@ describe.skipIf(!hasBrowser)('identifying an unknown in the browser', () => {
     expect(Molecule.fromSmiles(best.smiles).getIDCode()).toBe(Molecule.fromSmiles(truth).getIDCode());
 
     await page.getByRole('button', { name: 'Export' }).click();
-    const [download] = await Promise.all([page.waitForEvent('download'), page.getByRole('menuitem', { name: /SDF/ }).click()]);
+    const [download] = await Promise.all([page.waitForEvent('download'), page.getByRole('button', { name: /^SDF/ }).click()]);
     const sdf = await readFile(await download.path(), 'utf8');
     expect(download.suggestedFilename()).toMatch(/\.sdf$/);
     const records = sdf.split('$$$$').filter((record) => record.trim() !== '');
