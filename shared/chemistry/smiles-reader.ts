@@ -42,6 +42,9 @@ export class SmilesError extends Error {
 const ELEMENT_LIST = SUPPORTED_SYMBOLS.join(' ');
 const STEREO_MARK = /@(?:@|(?:TH|AL|SP|TB|OH)\d{1,2})?/y;
 const PLAIN_ATOM = /Cl|Br|[CNOPSFI]|[cnops]/y;
+/** Longer text is refused: graphs are matrices, and searches over them go as deep as there are atoms. */
+const MAX_LENGTH = 2000;
+
 export const PLAIN_BONDS = '-=#:/\\';
 export const QUERY_BONDS = `${PLAIN_BONDS}~`;
 
@@ -128,6 +131,7 @@ function unexpectedCharacter(text: string, at: number): SmilesError {
  * reactions are left out on purpose.
  */
 export function readSmiles(text: string, bondSymbols = PLAIN_BONDS): WrittenSmiles {
+  if (text.length > MAX_LENGTH) throw new SmilesError(`the SMILES is longer than ${MAX_LENGTH} characters; expected one molecule`, MAX_LENGTH);
   const atoms: WrittenAtom[] = [];
   const bonds: WrittenBond[] = [];
   const branches: { atom: number; position: number }[] = [];

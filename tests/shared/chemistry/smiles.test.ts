@@ -156,6 +156,7 @@ describe('parseSmiles', () => {
 
   it.each([
     ['empty text', '', 0, /expected a SMILES/],
+    ['endless text', 'C'.repeat(2001), 2000, /longer than 2000 characters/],
     ['isotopes', 'C[13CH3]', 2, /isotope labels are not supported; remove the mass number/],
     ['deuterium', 'C[D]', 2, /isotopes are not supported; write H/],
     ['radicals', 'C[CH2]', 1, /radicals are not supported.*\[CH3\]/],
