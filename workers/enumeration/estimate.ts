@@ -13,8 +13,8 @@ export interface SearchEstimate {
   readonly probes: number;
 }
 
-/** z of a two-sided 95 % interval. */
-const Z_95 = 1.96;
+/** Student quantile of a two-sided 95 % interval at five degrees of freedom: a distribution gets only a handful of probes. */
+const T_95 = 2.57;
 
 /**
  * Estimates the number of constitutions by random probing: walk down the tree choosing one child at random, weigh what
@@ -66,7 +66,7 @@ export function estimateSearch(search: Search, maxProbes: number, seed: number, 
   }
   // The spread of a few heavy-tailed walks understates the truth: the upper end is widened on the log scale.
   const relative = estimate > 0 ? deviation / estimate : 0;
-  const factor = Math.exp(Z_95 * Math.sqrt(Math.log(1 + relative * relative)));
+  const factor = Math.exp(T_95 * Math.sqrt(Math.log(1 + relative * relative)));
   const perNode = seconds / Math.max(nodes, 1);
   return { estimate, low: estimate / factor, high: estimate * factor, cpuSeconds: estimate * perNode, probes };
 }

@@ -1,0 +1,152 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { cancelRun, createCounters, readCounter } from '../../../shared/jobs/counters.js';
+import type { JobContract, RunSettings, ShardResult } from '../../../shared/jobs/contract.js';
+import { evidenceDocument, type EvidenceInput } from '../../../shared/schemas/evidence.js';
+import { parseSmiles } from '../../../shared/chemistry/smiles.js';
+import { BestCandidates } from '../../../workers/jobs/best-candidates.js';
+import { unpackGraph } from '../../../workers/graph/pack.js';
+import { constitutionKey } from '../../../workers/graph/constitution-key.js';
+import * as jobs from '../../../workers/main.js';
+
+const settings: RunSettings = { keep: 20, maxSeconds: null, mode: 'rank' };
+
+function outputOf<T>(result: { ok: true; value: T } | { ok: false; failure: { message: string } }): T {
+  if (!result.ok) throw new Error(result.failure.message);
+  return result.value;
+}
+function shardsOf(input: EvidenceInput, targetShards: number, used = settings): ShardResult[] {
+  const evidence = evidenceDocument.parse(input);
+  return outputOf(jobs.plan({ evidence, settings: used, targetShards })).shards.map((shard) =>
+    outputOf(jobs.shard({ evidence, settings: used, shard, counters: createCounters(), deadlineEpochMs: null })),
+  );
+}
+const explain = (input: EvidenceInput, smiles: string) => jobs.explain({ evidence: evidenceDocument.parse(input), settings, smiles });
+
+describe('the shard job', () => {
+  const input: EvidenceInput = {
+    formula: 'C6H10O',
+    carbonSignals: [
+      { shift: 211.0, hydrogens: 0 },
+      { shift: 41.9, hydrogens: 2 },
+      { shift: 27.0, hydrogens: 2 },
+    ],
+  };
+
+  it('counts, rejects and keeps the same whatever the number of shards', () => {
+    const sum = (results: readonly ShardResult[]) => ({
+      constitutions: results.reduce((total, result) => total + result.constitutionCount, 0),
+      ranked: results.reduce((total, result) => total + result.funnel.at(-1)!.passed, 0),
+      best: results
+        .flatMap((result) => result.kept)
+        .sort((a, b) => b.score - a.score || (a.key < b.key ? -1 : 1))
+        .slice(0, settings.keep)
+        .map((candidate) => [candidate.key, candidate.score]),
+    });
+    expect(sum(shardsOf(input, 9))).toEqual(sum(shardsOf(input, 1)));
+  });
+
+  it('lets the stages of the funnel follow from one another', () => {
+    for (const { funnel, constitutionCount } of shardsOf(input, 3)) {
+      expect(funnel[0]!.entered).toBe(constitutionCount);
+      funnel.forEach((step, k) => {
+        expect(step.passed).toBe(step.entered - step.rejections.reduce((total, rejection) => total + rejection.count, 0));
+        if (k > 0) expect(step.entered).toBe(funnel[k - 1]!.passed);
+      });
+    }
+  });
+
+  it('stops soon when the run is cancelled, and says that it is incomplete', () => {
+    const evidence = evidenceDocument.parse({ formula: 'C10H16O2' });
+    const shard = outputOf(jobs.plan({ evidence, settings, targetShards: 1 })).shards[0]!;
+    const counters = createCounters();
+    cancelRun(counters);
+    const result = outputOf(jobs.shard({ evidence, settings, shard, counters, deadlineEpochMs: null }));
+    expect(result.complete).toBe(false);
+    expect(result.constitutionCount).toBeLessThan(5000);
+    expect(readCounter(counters, 'constitutionsSeen')).toBe(result.constitutionCount);
+  });
+
+  it('answers bad input as data with its field', () => {
+    const evidence = {
+      ...evidenceDocument.parse({ formula: 'C6H6' }),
+      fragments: { required: [{ smiles: '*C(=O)O', count: 1 }], excluded: [] },
+    };
+    const result = jobs.plan({ evidence, settings, targetShards: 4 });
+    expect(result).toMatchObject({ ok: false, failure: { code: 'badInput', issues: [{ path: 'fragments.required[0].smiles' }, {}] } });
+  });
+
+  it('only counts in mode count', () => {
+    const results = shardsOf({ formula: 'C5H8' }, 4, { ...settings, mode: 'count' });
+    expect(results.flatMap((result) => result.kept)).toEqual([]);
+    expect(results.reduce((total, result) => total + result.constitutionCount, 0)).toBe(26);
+  });
+});
+
+describe('the best candidates of a shard', () => {
+  it('are the highest scores whatever the order of arrival, equal scores by key', () => {
+    const graphs = ['CCCCO', 'CCOCC', 'CC(C)CO', 'CC(C)(C)O', 'CCC(C)O', 'COCCC', 'COC(C)C'].map((smiles) => {
+      const parsed = parseSmiles(smiles);
+      if (!parsed.ok) throw new Error(parsed.message);
+      return parsed.graph;
+    });
+    fc.assert(
+      fc.property(fc.shuffledSubarray(graphs, { minLength: graphs.length }), fc.integer({ min: 1, max: 7 }), (order, capacity) => {
+        const best = new BestCandidates(capacity, true);
+        for (const graph of order) best.offer(graph, graph.bondOrders.length % 3 === 0 ? 1 : graphs.indexOf(graph) % 2, {});
+        const expected = graphs
+          .map((graph) => ({ key: constitutionKey(graph, true), score: graph.bondOrders.length % 3 === 0 ? 1 : graphs.indexOf(graph) % 2 }))
+          .sort((a, b) => b.score - a.score || (a.key < b.key ? -1 : 1))
+          .slice(0, capacity);
+        const kept = best.list();
+        expect(kept.map(({ key, score }) => ({ key, score }))).toEqual(expected);
+        for (const candidate of kept) expect(constitutionKey(unpackGraph(candidate.packed), true)).toBe(candidate.key);
+      }),
+    );
+  });
+});
+
+describe('the explain job', () => {
+  const input: EvidenceInput = { formula: 'C9H10O2', fragments: { required: [{ smiles: '*c1ccc(*)cc1', count: 1 }] } };
+  type Explanation = JobContract['explain']['output'];
+  const explanationOf = (smiles: string, from = input): Explanation => outputOf(explain(from, smiles));
+
+  it('names a formula that differs', () => {
+    expect(explanationOf('CCO')).toMatchObject({ kind: 'otherFormula', formula: 'C2H6O', expected: 'C9H10O2' });
+  });
+
+  it('names the required fragment that is missing', () => {
+    expect(explanationOf('CCOC(=O)c1ccccc1')).toMatchObject({
+      kind: 'rejected',
+      stage: 'constitutions',
+      reasons: [{ reason: 'requiredFragment' }],
+    });
+  });
+
+  it('finds a fragment in any Kekulé form of the structure', () => {
+    expect(explanationOf('Cc1ccc(cc1)C(=O)OC').kind).toBe('survives');
+  });
+
+  it('says that a nitro group needs a fragment that brings it', () => {
+    const nitro: EvidenceInput = { formula: 'C7H7NO2' };
+    expect(explanationOf('Cc1ccc(cc1)[N+](=O)[O-]', nitro)).toMatchObject({ kind: 'rejected', reasons: [{ reason: 'valenceState' }] });
+    const withGroup: EvidenceInput = { ...nitro, fragments: { required: [{ smiles: '*[N+](=O)[O-]', count: 1 }] } };
+    expect(explanationOf('Cc1ccc(cc1)[N+](=O)[O-]', withGroup).kind).toBe('survives');
+  });
+
+  it('refuses what is no whole structure, naming the field', () => {
+    expect(explain(input, '*CC')).toMatchObject({ ok: false, failure: { code: 'badInput', issues: [{ path: 'smiles' }] } });
+  });
+});
+
+describe('the estimate job', () => {
+  it.each(['C6H10O', 'C8H14', 'C7H8O'])('covers the true count of %s, and equal seeds agree', (formula) => {
+    const evidence = evidenceDocument.parse({ formula });
+    const input = { evidence, probes: 400, seed: 7, maxSeconds: 600 };
+    const estimate = outputOf(jobs.estimate(input));
+    const truth = shardsOf({ formula }, 1, { ...settings, mode: 'count' }).reduce((total, result) => total + result.constitutionCount, 0);
+    expect(estimate.low).toBeLessThanOrEqual(truth);
+    expect(estimate.high).toBeGreaterThanOrEqual(truth);
+    expect(outputOf(jobs.estimate(input)).estimate).toBe(estimate.estimate);
+  });
+});
