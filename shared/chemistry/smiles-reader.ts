@@ -131,7 +131,8 @@ function unexpectedCharacter(text: string, at: number): SmilesError {
  * reactions are left out on purpose.
  */
 export function readSmiles(text: string, bondSymbols = PLAIN_BONDS): WrittenSmiles {
-  if (text.length > MAX_LENGTH) throw new SmilesError(`the SMILES is longer than ${MAX_LENGTH} characters; expected one molecule`, MAX_LENGTH);
+  if (text.length > MAX_LENGTH)
+    throw new SmilesError(`the SMILES is longer than ${MAX_LENGTH} characters; expected one molecule`, MAX_LENGTH);
   const atoms: WrittenAtom[] = [];
   const bonds: WrittenBond[] = [];
   const branches: { atom: number; position: number }[] = [];
