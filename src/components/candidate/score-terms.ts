@@ -14,7 +14,9 @@ export const SCORE_TERM_NAMES: Readonly<Record<ScoreTermName, string>> = {
 const ORDER: readonly ScoreTermName[] = ['carbon13', 'proton1', 'multiplicity', 'integral', 'plausibility'];
 
 /** The terms that the evidence gave, in a fixed order. */
-export function listScoreTerms(terms: ScoreTerms): ReadonlyArray<{ readonly term: ScoreTermName; readonly name: string; readonly value: number }> {
+export function listScoreTerms(
+  terms: ScoreTerms,
+): ReadonlyArray<{ readonly term: ScoreTermName; readonly name: string; readonly value: number }> {
   return ORDER.flatMap((term) => {
     const value = terms[term];
     return value === undefined ? [] : [{ term, name: SCORE_TERM_NAMES[term], value }];

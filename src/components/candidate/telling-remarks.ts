@@ -9,7 +9,10 @@ const KIND_ORDER: Readonly<Record<Remark['kind'], number>> = { signal: 0, fit: 1
  * @param remarks - in the order of the engine, most telling first within a kind. Read only.
  */
 export function tellingRemarks(remarks: readonly Remark[], most: number): Remark[] {
-  const sorted = remarks.map((remark, index) => ({ remark, index })).sort((a, b) => KIND_ORDER[a.remark.kind] - KIND_ORDER[b.remark.kind] || a.index - b.index).map(({ remark }) => remark);
+  const sorted = remarks
+    .map((remark, index) => ({ remark, index }))
+    .sort((a, b) => KIND_ORDER[a.remark.kind] - KIND_ORDER[b.remark.kind] || a.index - b.index)
+    .map(({ remark }) => remark);
   const doubts = sorted.filter((remark) => remark.tone === 'doubts');
   const supports = sorted.filter((remark) => remark.tone === 'supports');
   const notes = sorted.filter((remark) => remark.tone === 'notes');

@@ -115,6 +115,9 @@ export function layOutBand(band: Band, frame: BandFrame): BandGeometry {
   });
 
   const end = reachesEnd ? width : (columns[behind.length]?.x ?? left) + columnWidth * 0.6;
-  const leftOver = Array.from({ length: threads }, (_, thread) => ({ key: `thread-${thread}`, d: `M${round(left)} ${round(yOf(thread))}H${round(end)}` }));
+  const leftOver = Array.from({ length: threads }, (_, thread) => ({
+    key: `thread-${thread}`,
+    d: `M${round(left)} ${round(yOf(thread))}H${round(end)}`,
+  }));
   return { left: leftOver, cut, gates, columns, reachesEnd };
 }

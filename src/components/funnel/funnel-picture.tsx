@@ -55,7 +55,14 @@ export function FunnelPicture({ band, isIncomplete = false, isLive = false }: Fu
   const columnWidth = width / (band.gates.length + 1);
   const pitch = Math.max(1, Math.min(3, (columnWidth * 0.7) / roomThreads));
   const top = hasColumns ? 8 : 24;
-  const frame: BandFrame = { width, left: 1, top, pitch, threadsPerDecade: THREADS_PER_DECADE, height: Math.ceil(top + roomThreads * pitch + 34) };
+  const frame: BandFrame = {
+    width,
+    left: 1,
+    top,
+    pitch,
+    threadsPerDecade: THREADS_PER_DECADE,
+    height: Math.ceil(top + roomThreads * pitch + 34),
+  };
   const columns = { gridTemplateColumns: `repeat(${band.gates.length + 1}, minmax(0, 1fr))` };
   const hasReasons = band.gates.some((gate) => gate.reasons.length > 0);
 
@@ -90,7 +97,8 @@ export function FunnelPicture({ band, isIncomplete = false, isLive = false }: Fu
         <>
           <BandSvg band={band} geometry={layOutBand(band, frame)} frame={frame} isIncomplete={isIncomplete} hasGateNumbers />
           <p className="tabular mt-1 text-small">
-            <span className="font-semibold">{leftText(band.woven)}</span> <span className="text-faded">from formula, fragments and hydrogens</span>
+            <span className="font-semibold">{leftText(band.woven)}</span>{' '}
+            <span className="text-faded">from formula, fragments and hydrogens</span>
           </p>
           <ol className="tabular mt-1 text-small">
             {band.gates.map((gate, index) => (
@@ -110,7 +118,11 @@ export function FunnelPicture({ band, isIncomplete = false, isLive = false }: Fu
           </ol>
         </>
       )}
-      {isLive ? <p className="mt-2 text-small text-faded">Grey threads that leave the band have been cut; at which stage and why is counted when their shard is done.</p> : null}
+      {isLive ? (
+        <p className="mt-2 text-small text-faded">
+          Grey threads that leave the band have been cut; at which stage and why is counted when their shard is done.
+        </p>
+      ) : null}
       {hasReasons ? (
         <details className="mt-3 text-small">
           <summary className="w-fit rounded-small text-indigo">Every count and reason as a table</summary>

@@ -7,7 +7,10 @@ export type FunnelStage = FunnelStep['stage'];
 
 /** Name of each stage, and what its gate asks of a constitution. */
 export const FUNNEL_STAGE_TEXT: Readonly<Record<FunnelStage, { readonly name: string; readonly asks: string }>> = {
-  constitutions: { name: 'Formula, fragments, hydrogens', asks: 'Woven from the formula with the required fragments and attached hydrogens' },
+  constitutions: {
+    name: 'Formula, fragments, hydrogens',
+    asks: 'Woven from the formula with the required fragments and attached hydrogens',
+  },
   excludedFragments: { name: 'Excluded fragments', asks: 'Contains none of the excluded fragments' },
   ringSizes: { name: 'Ring sizes', asks: 'Has only rings of the sizes that are allowed' },
   plausibility: { name: 'Plausibility', asks: 'Breaks no plausibility rule that rejects' },
@@ -70,7 +73,9 @@ export function bandFromProgress(progress: { readonly constitutionsSeen: number;
       const { name, asks } = FUNNEL_STAGE_TEXT[stage];
       const isSignals = stage === 'signals';
       return {
-        stage, name, asks,
+        stage,
+        name,
+        asks,
         left: isSignals && progress !== null ? progress.survivors : null,
         cut: 0,
         reasons: [],
@@ -83,6 +88,10 @@ export function bandFromProgress(progress: { readonly constitutionsSeen: number;
 export function describeBand(band: Band, formatNumber: (value: number) => string): string {
   if (band.woven === null) return 'No constitutions yet.';
   const known = band.gates.filter((gate) => gate.left !== null);
-  const parts = known.map((gate) => (gate.cut > 0 ? `${gate.name}: ${formatNumber(gate.cut)} cut, ${formatNumber(gate.left ?? 0)} left` : `${gate.name}: ${formatNumber(gate.left ?? 0)} left`));
+  const parts = known.map((gate) =>
+    gate.cut > 0
+      ? `${gate.name}: ${formatNumber(gate.cut)} cut, ${formatNumber(gate.left ?? 0)} left`
+      : `${gate.name}: ${formatNumber(gate.left ?? 0)} left`,
+  );
   return `${formatNumber(band.woven)} ${band.woven === 1 ? 'constitution' : 'constitutions'} from formula, fragments and attached hydrogens. ${parts.join('; ')}.`;
 }

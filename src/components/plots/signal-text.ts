@@ -27,7 +27,7 @@ export function protonCountText(count: number | null, multiplicity: string): str
 export function atomNumbersText(atoms: readonly number[]): string {
   const sorted = [...new Set(atoms)].sort((a, b) => a - b).map((atom) => atom + 1);
   const parts: string[] = [];
-  for (let start = 0; start < sorted.length; ) {
+  for (let start = 0; start < sorted.length;) {
     let end = start;
     while (end + 1 < sorted.length && sorted[end + 1] === (sorted[end] ?? 0) + 1) end++;
     parts.push(end - start >= 2 ? `${sorted[start]}–${sorted[end]}` : sorted.slice(start, end + 1).join(', '));

@@ -13,7 +13,15 @@ const NOTHING_ACTIVE: ReadonlySet<string> = new Set();
 const ignore = () => undefined;
 
 /** The plot with its zoom controls. See StickPlot, which loads it. */
-export function StickChart({ nucleus, label, observed, predicted, links = [], activeKeys = NOTHING_ACTIVE, onActive = ignore }: StickPlotProps) {
+export function StickChart({
+  nucleus,
+  label,
+  observed,
+  predicted,
+  links = [],
+  activeKeys = NOTHING_ACTIVE,
+  onActive = ignore,
+}: StickPlotProps) {
   const [frame, width] = useElementWidth<HTMLDivElement>();
   const whole = useMemo(() => wholeRange([...observed, ...predicted], nucleus), [observed, predicted, nucleus]);
   const [zoomed, setZoomed] = useState<ShiftRange | null>(null);
@@ -25,7 +33,13 @@ export function StickChart({ nucleus, label, observed, predicted, links = [], ac
   const pan = (share: number) => setZoomed(panRange(range, share, whole));
   const onKeyDown = (event: KeyboardEvent) => {
     // The axis runs from right to left: the left key goes to higher shifts.
-    const acts: Readonly<Record<string, () => void>> = { ArrowLeft: () => pan(0.25), ArrowRight: () => pan(-0.25), '+': () => zoom(0.5), '-': () => zoom(2), Escape: () => setZoomed(null) };
+    const acts: Readonly<Record<string, () => void>> = {
+      ArrowLeft: () => pan(0.25),
+      ArrowRight: () => pan(-0.25),
+      '+': () => zoom(0.5),
+      '-': () => zoom(2),
+      Escape: () => setZoomed(null),
+    };
     const act = acts[event.key];
     if (act === undefined || (isWhole && event.key !== '+')) return;
     event.preventDefault();
@@ -67,9 +81,23 @@ export function StickChart({ nucleus, label, observed, predicted, links = [], ac
           <IconButton label="Zoom in" icon={<ZoomIn className="size-4" />} onClick={() => zoom(0.5)} />
         </div>
       </div>
-      <div ref={frame} role="group" aria-label={`${label}. Plus and minus zoom, arrow keys move, Escape shows the whole range.`} tabIndex={0} onKeyDown={onKeyDown} className="rounded-small" style={{ height }}>
+      <div
+        ref={frame}
+        role="group"
+        aria-label={`${label}. Plus and minus zoom, arrow keys move, Escape shows the whole range.`}
+        tabIndex={0}
+        onKeyDown={onKeyDown}
+        className="rounded-small"
+        style={{ height }}
+      >
         {width === 0 ? null : (
-          <ComposedChart width={width} height={height} data={[{ shift: range.low }, { shift: range.high }]} margin={MARGIN} accessibilityLayer={false}>
+          <ComposedChart
+            width={width}
+            height={height}
+            data={[{ shift: range.low }, { shift: range.high }]}
+            margin={MARGIN}
+            accessibilityLayer={false}
+          >
             <XAxis
               dataKey="shift"
               type="number"
@@ -86,7 +114,16 @@ export function StickChart({ nucleus, label, observed, predicted, links = [], ac
               label={{ value: 'δ / ppm', position: 'insideBottomRight', offset: 5, fill: 'var(--color-faded)', fontSize: 12 }}
             />
             <YAxis hide domain={[0, 1]} />
-            <Sticks nucleus={nucleus} observed={observed} predicted={predicted} links={links} range={range} activeKeys={activeKeys} onActive={onActive} onZoomTo={(next) => setZoomed(zoomRange(next, 1, (next.low + next.high) / 2, whole))} />
+            <Sticks
+              nucleus={nucleus}
+              observed={observed}
+              predicted={predicted}
+              links={links}
+              range={range}
+              activeKeys={activeKeys}
+              onActive={onActive}
+              onZoomTo={(next) => setZoomed(zoomRange(next, 1, (next.low + next.high) / 2, whole))}
+            />
           </ComposedChart>
         )}
       </div>

@@ -85,7 +85,11 @@ export function stickHeight(nuclei: number, mostNuclei: number): number {
  * @returns places in the order of `positions`; null when they cannot all find room.
  * @see Barlow, Bartholomew, Bremner, Brunk, Statistical Inference under Order Restrictions, 1972 (the pooling).
  */
-export function spreadLabels(positions: readonly number[], distance: number, range: { readonly from: number; readonly to: number }): number[] | null {
+export function spreadLabels(
+  positions: readonly number[],
+  distance: number,
+  range: { readonly from: number; readonly to: number },
+): number[] | null {
   if (positions.length === 0) return [];
   if ((positions.length - 1) * distance > range.to - range.from) return null;
   const order = positions.map((_, index) => index).sort((a, b) => (positions[a] ?? 0) - (positions[b] ?? 0));

@@ -11,7 +11,8 @@ const HIT_PX = 14;
 const DOUBTFUL_MISFIT = 2;
 const CONFLICT_MISFIT = 3;
 
-const linkColour = (misfit: number) => (misfit >= CONFLICT_MISFIT ? 'var(--color-madder)' : misfit >= DOUBTFUL_MISFIT ? 'var(--color-weld)' : 'var(--color-faded)');
+const linkColour = (misfit: number) =>
+  misfit >= CONFLICT_MISFIT ? 'var(--color-madder)' : misfit >= DOUBTFUL_MISFIT ? 'var(--color-weld)' : 'var(--color-faded)';
 
 interface SticksProps {
   nucleus: Nucleus;
@@ -39,7 +40,8 @@ export function Sticks({ nucleus, observed, predicted, links, range, activeKeys,
   if (area === undefined || scale === undefined || !Number.isFinite(Number(scale(range.low)))) return null;
 
   const isVisible = (shift: number) => shift >= range.low && shift <= range.high;
-  const place = (list: readonly Stick[]): PlacedStick[] => list.filter((stick) => isVisible(stick.shift)).map((stick) => ({ stick, x: Number(scale(stick.shift)) }));
+  const place = (list: readonly Stick[]): PlacedStick[] =>
+    list.filter((stick) => isVisible(stick.shift)).map((stick) => ({ stick, x: Number(scale(stick.shift)) }));
   const above = place(observed);
   const below = place(predicted);
   const mostNuclei = Math.max(1, ...observed.map((stick) => stick.nuclei), ...predicted.map((stick) => stick.nuclei));
@@ -53,7 +55,11 @@ export function Sticks({ nucleus, observed, predicted, links, range, activeKeys,
   const lowerHeight = area.y + area.height - lowerBase;
 
   const labelled = hasObserved ? above : below;
-  const labelXs = spreadLabels(labelled.map(({ x }) => x), LABEL_DISTANCE, { from: area.x + 6, to: area.x + area.width - 6 });
+  const labelXs = spreadLabels(
+    labelled.map(({ x }) => x),
+    LABEL_DISTANCE,
+    { from: area.x + 6, to: area.x + area.width - 6 },
+  );
   const digits = nucleus === '13C' ? 1 : 2;
   const shiftText = (shift: number) => (shift < 0 ? `\u2212${Math.abs(shift).toFixed(digits)}` : shift.toFixed(digits));
   const xByKey = new Map([...above, ...below].map(({ stick, x }) => [stick.key, x]));
@@ -67,7 +73,11 @@ export function Sticks({ nucleus, observed, predicted, links, range, activeKeys,
     }
     const y = event.clientY - event.currentTarget.getBoundingClientRect().top + area.y;
     const pool = hasObserved && y < upperBase + WEFT / 2 ? above : below;
-    const nearest = pool.reduce<PlacedStick | null>((best, candidate) => (Math.abs(candidate.x - x) <= Math.min(HIT_PX, best === null ? HIT_PX : Math.abs(best.x - x)) ? candidate : best), null);
+    const nearest = pool.reduce<PlacedStick | null>(
+      (best, candidate) =>
+        Math.abs(candidate.x - x) <= Math.min(HIT_PX, best === null ? HIT_PX : Math.abs(best.x - x)) ? candidate : best,
+      null,
+    );
     onActive(nearest?.stick.key ?? null);
   };
   const endDrag = () => {
@@ -87,7 +97,16 @@ export function Sticks({ nucleus, observed, predicted, links, range, activeKeys,
         const right = Math.min(area.x + area.width, Number(scale(stick.shift - (stick.sd ?? 0))));
         return (
           <g key={stick.key}>
-            {stick.sd === undefined ? null : <rect x={left} y={lowerBase} width={Math.max(0, right - left)} height={height} fill="var(--color-faded)" opacity={isActive ? 0.28 : 0.13} />}
+            {stick.sd === undefined ? null : (
+              <rect
+                x={left}
+                y={lowerBase}
+                width={Math.max(0, right - left)}
+                height={height}
+                fill="var(--color-faded)"
+                opacity={isActive ? 0.28 : 0.13}
+              />
+            )}
             <line x1={x} x2={x} y1={lowerBase} y2={lowerBase + height} stroke="var(--color-faded)" strokeWidth={isActive ? 3 : 1.5} />
           </g>
         );
@@ -97,13 +116,34 @@ export function Sticks({ nucleus, observed, predicted, links, range, activeKeys,
         const to = xByKey.get(link.predictedKey);
         if (from === undefined || to === undefined) return null;
         const isActive = activeKeys.has(link.observedKey) || activeKeys.has(link.predictedKey);
-        return <line key={link.key} x1={from} x2={to} y1={upperBase} y2={lowerBase} stroke={linkColour(link.misfit)} strokeWidth={isActive ? 2.5 : link.misfit >= DOUBTFUL_MISFIT ? 1.75 : 1} strokeOpacity={isActive || link.misfit >= DOUBTFUL_MISFIT ? 1 : 0.7} />;
+        return (
+          <line
+            key={link.key}
+            x1={from}
+            x2={to}
+            y1={upperBase}
+            y2={lowerBase}
+            stroke={linkColour(link.misfit)}
+            strokeWidth={isActive ? 2.5 : link.misfit >= DOUBTFUL_MISFIT ? 1.75 : 1}
+            strokeOpacity={isActive || link.misfit >= DOUBTFUL_MISFIT ? 1 : 0.7}
+          />
+        );
       })}
       {hasObserved ? <line x1={area.x} x2={area.x + area.width} y1={upperBase} y2={upperBase} stroke="var(--color-seam)" /> : null}
       <line x1={area.x} x2={area.x + area.width} y1={lowerBase} y2={lowerBase} stroke="var(--color-seam)" />
       {above.map(({ stick, x }) => {
         const isActive = activeKeys.has(stick.key);
-        return <line key={stick.key} x1={x} x2={x} y1={upperBase} y2={upperBase - half * stickHeight(stick.nuclei, mostNuclei)} stroke="var(--color-indigo)" strokeWidth={isActive ? 4 : 2} />;
+        return (
+          <line
+            key={stick.key}
+            x1={x}
+            x2={x}
+            y1={upperBase}
+            y2={upperBase - half * stickHeight(stick.nuclei, mostNuclei)}
+            stroke="var(--color-indigo)"
+            strokeWidth={isActive ? 4 : 2}
+          />
+        );
       })}
       {labelXs === null
         ? null
@@ -114,14 +154,34 @@ export function Sticks({ nucleus, observed, predicted, links, range, activeKeys,
             const colour = hasObserved ? 'var(--color-indigo)' : 'var(--color-faded)';
             return (
               <g key={stick.key}>
-                <path d={`M${labelX} ${sticksTop - 10}L${x} ${sticksTop - 3}V${Math.max(sticksTop - 3, stickTop - 3)}`} fill="none" stroke={colour} strokeOpacity={0.35} />
-                <text transform={`translate(${labelX + 4} ${sticksTop - 13}) rotate(-90)`} fill={colour} fontSize="12" fontWeight={isActive ? 700 : 400} className="tabular">
+                <path
+                  d={`M${labelX} ${sticksTop - 10}L${x} ${sticksTop - 3}V${Math.max(sticksTop - 3, stickTop - 3)}`}
+                  fill="none"
+                  stroke={colour}
+                  strokeOpacity={0.35}
+                />
+                <text
+                  transform={`translate(${labelX + 4} ${sticksTop - 13}) rotate(-90)`}
+                  fill={colour}
+                  fontSize="12"
+                  fontWeight={isActive ? 700 : 400}
+                  className="tabular"
+                >
                   {shiftText(stick.shift)}
                 </text>
               </g>
             );
           })}
-      {drag === null ? null : <rect x={Math.min(drag.from, drag.to)} y={area.y} width={Math.abs(drag.to - drag.from)} height={area.height} fill="var(--color-indigo)" opacity={0.12} />}
+      {drag === null ? null : (
+        <rect
+          x={Math.min(drag.from, drag.to)}
+          y={area.y}
+          width={Math.abs(drag.to - drag.from)}
+          height={area.height}
+          fill="var(--color-indigo)"
+          opacity={0.12}
+        />
+      )}
       <rect
         x={area.x}
         y={area.y}

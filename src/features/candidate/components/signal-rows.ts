@@ -47,10 +47,26 @@ export interface SignalRow {
 export type RowOrder = 'misfit' | 'shift';
 
 const fromCarbon = (carbon: PredictedCarbon, index: number): PredictedSignal => ({
-  index, shift: carbon.shift, sd: carbon.sd, atoms: carbon.atoms, nuclei: carbon.atoms.length, kind: carbonTypeText(carbon.hydrogens), couplings: [], isExchangeable: false, basis: carbon.basis,
+  index,
+  shift: carbon.shift,
+  sd: carbon.sd,
+  atoms: carbon.atoms,
+  nuclei: carbon.atoms.length,
+  kind: carbonTypeText(carbon.hydrogens),
+  couplings: [],
+  isExchangeable: false,
+  basis: carbon.basis,
 });
 const fromProton = (proton: PredictedProton, index: number): PredictedSignal => ({
-  index, shift: proton.shift, sd: proton.sd, atoms: proton.atoms, nuclei: proton.count, kind: proton.multiplicity, couplings: proton.couplings, isExchangeable: proton.exchangeable, basis: proton.basis,
+  index,
+  shift: proton.shift,
+  sd: proton.sd,
+  atoms: proton.atoms,
+  nuclei: proton.count,
+  kind: proton.multiplicity,
+  couplings: proton.couplings,
+  isExchangeable: proton.exchangeable,
+  basis: proton.basis,
 });
 
 /** Predicted signals of one nucleus in the order of the response, so that indexes of matches fit. */
@@ -60,9 +76,21 @@ export function predictedSignals(spectra: CandidateDetail['spectra'], nucleus: N
 
 export function observedSignals(evidence: Evidence, nucleus: Nucleus): ObservedSignal[] {
   if (nucleus === '13C') {
-    return evidence.carbonSignals.map((signal, index) => ({ index, shift: signal.shift, nuclei: signal.count ?? null, kind: signal.hydrogens === undefined ? '' : carbonTypeText(signal.hydrogens), couplings: [] }));
+    return evidence.carbonSignals.map((signal, index) => ({
+      index,
+      shift: signal.shift,
+      nuclei: signal.count ?? null,
+      kind: signal.hydrogens === undefined ? '' : carbonTypeText(signal.hydrogens),
+      couplings: [],
+    }));
   }
-  return evidence.protonSignals.map((signal, index) => ({ index, shift: signal.shift, nuclei: signal.count ?? null, kind: signal.multiplicity ?? '', couplings: signal.couplings ?? [] }));
+  return evidence.protonSignals.map((signal, index) => ({
+    index,
+    shift: signal.shift,
+    nuclei: signal.count ?? null,
+    kind: signal.multiplicity ?? '',
+    couplings: signal.couplings ?? [],
+  }));
 }
 
 /** The root mean square of standard deviations: that of the one prediction in the usual case. */
@@ -80,7 +108,9 @@ export function signalRows(candidate: Pick<CandidateDetail, 'spectra' | 'matches
       const sd = predicted.length === 0 ? 0 : pooledSd(predicted);
       return {
         key: `${nucleus}-${position}`,
-        nucleus, observed, predicted,
+        nucleus,
+        observed,
+        predicted,
         deviation: match.deviation,
         misfit: match.deviation === null || sd === 0 ? null : Math.abs(match.deviation) / sd,
         term: match.term,
@@ -114,14 +144,39 @@ export function plotSticks(rows: readonly SignalRow[]): { observed: Stick[]; pre
     const { nucleus } = row;
     if (row.observed !== null) {
       const key = observedKey(nucleus, row.observed.index);
-      const nuclei = row.observed.nuclei ?? Math.max(1, row.predicted.reduce((sum, signal) => sum + signal.nuclei, 0));
-      const kind = nucleus === '13C' ? carbonCountText(row.observed.nuclei, row.observed.kind) : protonCountText(row.observed.nuclei, row.observed.kind);
-      observed.set(key, { key, shift: row.observed.shift, nuclei, text: `observed δ ${shiftText(row.observed.shift, nucleus)}${kind === '' ? '' : ` (${kind})`}` });
+      const nuclei =
+        row.observed.nuclei ??
+        Math.max(
+          1,
+          row.predicted.reduce((sum, signal) => sum + signal.nuclei, 0),
+        );
+      const kind =
+        nucleus === '13C'
+          ? carbonCountText(row.observed.nuclei, row.observed.kind)
+          : protonCountText(row.observed.nuclei, row.observed.kind);
+      observed.set(key, {
+        key,
+        shift: row.observed.shift,
+        nuclei,
+        text: `observed δ ${shiftText(row.observed.shift, nucleus)}${kind === '' ? '' : ` (${kind})`}`,
+      });
     }
     for (const signal of row.predicted) {
       const key = predictedKey(nucleus, signal.index);
-      predicted.set(key, { key, shift: signal.shift, sd: signal.sd, nuclei: signal.nuclei, text: `predicted δ ${shiftText(signal.shift, nucleus)} ± ${signal.sd.toFixed(nucleus === '13C' ? 1 : 2)} (${signal.kind}, atom ${atomNumbersText(signal.atoms)})` });
-      if (row.observed !== null) links.push({ key: `${row.key}-${signal.index}`, observedKey: observedKey(nucleus, row.observed.index), predictedKey: key, misfit: row.misfit ?? 0 });
+      predicted.set(key, {
+        key,
+        shift: signal.shift,
+        sd: signal.sd,
+        nuclei: signal.nuclei,
+        text: `predicted δ ${shiftText(signal.shift, nucleus)} ± ${signal.sd.toFixed(nucleus === '13C' ? 1 : 2)} (${signal.kind}, atom ${atomNumbersText(signal.atoms)})`,
+      });
+      if (row.observed !== null)
+        links.push({
+          key: `${row.key}-${signal.index}`,
+          observedKey: observedKey(nucleus, row.observed.index),
+          predictedKey: key,
+          misfit: row.misfit ?? 0,
+        });
     }
   }
   return { observed: [...observed.values()], predicted: [...predicted.values()], links };
@@ -129,5 +184,8 @@ export function plotSticks(rows: readonly SignalRow[]): { observed: Stick[]; pre
 
 /** Keys of the sticks that belong to a row. */
 export function stickKeys(row: SignalRow): string[] {
-  return [...(row.observed === null ? [] : [observedKey(row.nucleus, row.observed.index)]), ...row.predicted.map((signal) => predictedKey(row.nucleus, signal.index))];
+  return [
+    ...(row.observed === null ? [] : [observedKey(row.nucleus, row.observed.index)]),
+    ...row.predicted.map((signal) => predictedKey(row.nucleus, signal.index)),
+  ];
 }

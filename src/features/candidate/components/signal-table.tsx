@@ -19,7 +19,10 @@ function Deviation({ row }: { row: SignalRow }) {
   const isConflict = misfit >= CONFLICT;
   const Icon = isConflict ? CircleAlert : TriangleAlert;
   return (
-    <span className={classNames('inline-flex items-center gap-1 font-semibold', isConflict ? 'text-madder' : 'text-weld')} title={`${misfit.toFixed(1)} standard deviations`}>
+    <span
+      className={classNames('inline-flex items-center gap-1 font-semibold', isConflict ? 'text-madder' : 'text-weld')}
+      title={`${misfit.toFixed(1)} standard deviations`}
+    >
       <Icon aria-hidden="true" className="size-3.5" />
       <span className="sr-only">{isConflict ? 'conflict: ' : 'doubtful: '}</span>
       {text}
@@ -28,7 +31,13 @@ function Deviation({ row }: { row: SignalRow }) {
 }
 
 /** What is under a signal: "2 × CH", "2 H, d, J = 8.1 Hz". */
-function Count({ nucleus, signal }: { nucleus: Nucleus; signal: Pick<PredictedSignal, 'kind' | 'couplings'> & { readonly nuclei: number | null; readonly isExchangeable?: boolean } }) {
+function Count({
+  nucleus,
+  signal,
+}: {
+  nucleus: Nucleus;
+  signal: Pick<PredictedSignal, 'kind' | 'couplings'> & { readonly nuclei: number | null; readonly isExchangeable?: boolean };
+}) {
   const text = nucleus === '13C' ? carbonCountText(signal.nuclei, signal.kind) : protonCountText(signal.nuclei, signal.kind);
   return (
     <span className="block whitespace-nowrap">
@@ -71,7 +80,12 @@ export function SignalTable({ nucleus, rows, litKeys, onPoint }: SignalTableProp
   const isProton = nucleus === '1H';
   const tabStop = Math.min(stop, rows.length - 1);
   const onKeyDown = (event: KeyboardEvent<HTMLTableRowElement>) => {
-    const target = event.key === 'ArrowDown' ? event.currentTarget.nextElementSibling : event.key === 'ArrowUp' ? event.currentTarget.previousElementSibling : null;
+    const target =
+      event.key === 'ArrowDown'
+        ? event.currentTarget.nextElementSibling
+        : event.key === 'ArrowUp'
+          ? event.currentTarget.previousElementSibling
+          : null;
     if (!(target instanceof HTMLElement)) return;
     event.preventDefault();
     target.focus();
@@ -79,7 +93,9 @@ export function SignalTable({ nucleus, rows, litKeys, onPoint }: SignalTableProp
   return (
     <div className="overflow-x-auto">
       <table className="w-full border-collapse text-left text-table" onPointerLeave={() => onPoint(null)}>
-        <caption className="sr-only">{isProton ? '1H' : '13C'} signals, observed and predicted. Arrow keys move between lines and mark their atoms.</caption>
+        <caption className="sr-only">
+          {isProton ? '1H' : '13C'} signals, observed and predicted. Arrow keys move between lines and mark their atoms.
+        </caption>
         <thead className="text-faded">
           <tr className="border-b border-seam">
             <Head className="text-right">
@@ -108,11 +124,17 @@ export function SignalTable({ nucleus, rows, litKeys, onPoint }: SignalTableProp
               onKeyDown={onKeyDown}
               className={classNames('border-b border-seam outline-offset-[-2px] last:border-b-0', litKeys.has(row.key) && 'bg-indigo-wash')}
             >
-              <td className="h-7 px-2 text-right font-semibold text-indigo">{row.observed === null ? <span className="font-normal text-faded">none</span> : shiftText(row.observed.shift, nucleus)}</td>
-              <td className="px-2 whitespace-nowrap">
-                {row.observed === null ? null : <Count nucleus={nucleus} signal={row.observed} />}
+              <td className="h-7 px-2 text-right font-semibold text-indigo">
+                {row.observed === null ? <span className="font-normal text-faded">none</span> : shiftText(row.observed.shift, nucleus)}
               </td>
-              <td className="px-2 text-right">{row.predicted.length === 0 ? <span className="text-faded">none</span> : <PredictedShift signals={row.predicted} nucleus={nucleus} />}</td>
+              <td className="px-2 whitespace-nowrap">{row.observed === null ? null : <Count nucleus={nucleus} signal={row.observed} />}</td>
+              <td className="px-2 text-right">
+                {row.predicted.length === 0 ? (
+                  <span className="text-faded">none</span>
+                ) : (
+                  <PredictedShift signals={row.predicted} nucleus={nucleus} />
+                )}
+              </td>
               <td className="px-2 text-faded">
                 {row.predicted.map((signal) => (
                   <Count key={signal.index} nucleus={nucleus} signal={signal} />
@@ -123,7 +145,9 @@ export function SignalTable({ nucleus, rows, litKeys, onPoint }: SignalTableProp
               </td>
               <td className="px-2 whitespace-nowrap">{atomNumbersText(row.atoms)}</td>
               <td className="hidden px-2 tablet:table-cell">{row.remark}</td>
-              <td className="hidden px-2 text-small text-faded wide:table-cell">{[...new Set(row.predicted.map((signal) => signal.basis))].join('; ')}</td>
+              <td className="hidden px-2 text-small text-faded wide:table-cell">
+                {[...new Set(row.predicted.map((signal) => signal.basis))].join('; ')}
+              </td>
             </tr>
           ))}
         </tbody>

@@ -28,10 +28,19 @@ export function SpectrumPanel({ nucleus, rows, order, meanDeviation, highlight }
       actions={
         meanDeviation === null ? null : (
           <p className="tabular text-table text-faded">
-            mean misfit <span className="text-ink">{meanDeviation.toFixed(digits)}{'\u2009'}ppm</span>
+            mean misfit{' '}
+            <span className="text-ink">
+              {meanDeviation.toFixed(digits)}
+              {'\u2009'}ppm
+            </span>
             {worst === null || worst.deviation === null || worst.observed === null ? null : (
               <>
-                , worst <span className="text-ink">{Math.abs(worst.deviation).toFixed(digits)}{'\u2009'}ppm</span> at δ {shiftText(worst.observed.shift, nucleus)}
+                , worst{' '}
+                <span className="text-ink">
+                  {Math.abs(worst.deviation).toFixed(digits)}
+                  {'\u2009'}ppm
+                </span>{' '}
+                at δ {shiftText(worst.observed.shift, nucleus)}
               </>
             )}
           </p>
@@ -42,7 +51,15 @@ export function SpectrumPanel({ nucleus, rows, order, meanDeviation, highlight }
         <p className="text-faded">This molecule gives no such signals, and none were observed.</p>
       ) : (
         <>
-          <StickPlot nucleus={nucleus} label={`${nucleus} signals, observed above and predicted below the axis`} observed={sticks.observed} predicted={sticks.predicted} links={sticks.links} activeKeys={highlight.stickKeys} onActive={highlight.pointAtStick} />
+          <StickPlot
+            nucleus={nucleus}
+            label={`${nucleus} signals, observed above and predicted below the axis`}
+            observed={sticks.observed}
+            predicted={sticks.predicted}
+            links={sticks.links}
+            activeKeys={highlight.stickKeys}
+            onActive={highlight.pointAtStick}
+          />
           <div className="mt-2">
             <SignalTable nucleus={nucleus} rows={sorted} litKeys={highlight.rowKeys} onPoint={highlight.pointAtRow} />
           </div>

@@ -8,7 +8,15 @@ import { ScoreList } from './score-list';
 import type { Highlight } from './use-highlight';
 
 /** The structure with atom numbers, what is remarked about it, and its score. Stays in view beside the tables. */
-export function StructurePanel({ candidate, highlight, haloTone }: { candidate: CandidateDetail; highlight: Highlight; haloTone: AtomHalo['tone'] }) {
+export function StructurePanel({
+  candidate,
+  highlight,
+  haloTone,
+}: {
+  candidate: CandidateDetail;
+  highlight: Highlight;
+  haloTone: AtomHalo['tone'];
+}) {
   const [frame, width] = useElementWidth<HTMLDivElement>();
   return (
     // On a phone the score comes after the spectra, so the parts become items of the page's grid there.
@@ -38,7 +46,12 @@ export function StructurePanel({ candidate, highlight, haloTone }: { candidate: 
         <Panel title="Remarks" className="order-1">
           <ul className="space-y-1 text-table">
             {candidate.remarks.map((remark) => (
-              <li key={`${remark.kind}${remark.text}`} className="rounded-small px-1 hover:bg-fold" onPointerEnter={() => highlight.pointAtAtoms(remark.atoms)} onPointerLeave={() => highlight.pointAtAtoms(null)}>
+              <li
+                key={`${remark.kind}${remark.text}`}
+                className="rounded-small px-1 hover:bg-fold"
+                onPointerEnter={() => highlight.pointAtAtoms(remark.atoms)}
+                onPointerLeave={() => highlight.pointAtAtoms(null)}
+              >
                 <RemarkLine remark={remark} />
               </li>
             ))}
@@ -47,7 +60,9 @@ export function StructurePanel({ candidate, highlight, haloTone }: { candidate: 
       )}
       <Panel title="Score" className="order-3">
         <ScoreList candidate={candidate} />
-        <p className="mt-2 text-small text-faded">Natural logarithm of the likelihood of the evidence under this structure; higher is better.</p>
+        <p className="mt-2 text-small text-faded">
+          Natural logarithm of the likelihood of the evidence under this structure; higher is better.
+        </p>
       </Panel>
     </div>
   );

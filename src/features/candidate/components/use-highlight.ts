@@ -3,7 +3,10 @@ import type { SignalRow } from './signal-rows';
 import { stickKeys } from './signal-rows';
 
 /** What is pointed at: a line of a table, a stick of a plot or an atom of the drawing. */
-type Pointed = { readonly kind: 'row'; readonly key: string } | { readonly kind: 'stick'; readonly key: string } | { readonly kind: 'atoms'; readonly atoms: readonly number[] };
+type Pointed =
+  | { readonly kind: 'row'; readonly key: string }
+  | { readonly kind: 'stick'; readonly key: string }
+  | { readonly kind: 'atoms'; readonly atoms: readonly number[] };
 
 export interface Highlight {
   readonly rowKeys: ReadonlySet<string>;
@@ -29,6 +32,9 @@ export function useHighlight(rows: readonly SignalRow[]): Highlight {
     atoms: useMemo(() => (pointed?.kind === 'atoms' ? pointed.atoms : [...new Set(lit.flatMap((row) => row.atoms))]), [pointed, lit]),
     pointAtRow: useCallback((key: string | null) => setPointed(key === null ? null : { kind: 'row', key }), []),
     pointAtStick: useCallback((key: string | null) => setPointed(key === null ? null : { kind: 'stick', key }), []),
-    pointAtAtoms: useCallback((atoms: readonly number[] | null) => setPointed(atoms === null || atoms.length === 0 ? null : { kind: 'atoms', atoms }), []),
+    pointAtAtoms: useCallback(
+      (atoms: readonly number[] | null) => setPointed(atoms === null || atoms.length === 0 ? null : { kind: 'atoms', atoms }),
+      [],
+    ),
   };
 }

@@ -104,10 +104,20 @@ function CandidateView({ candidate }: { candidate: CandidateDetail }) {
         lead={`Of ${formatCount(run.survivorCount ?? run.keptCount)} under this model; not an identification.`}
         actions={
           <>
-            <Select label="Order of the signals" isLabelHidden options={ORDER_OPTIONS} value={order} onChange={(event) => setSearch(event.target.value === 'shift' ? { order: 'shift' } : {}, { replace: true, preventScrollReset: true })} />
+            <Select
+              label="Order of the signals"
+              isLabelHidden
+              options={ORDER_OPTIONS}
+              value={order}
+              onChange={(event) =>
+                setSearch(event.target.value === 'shift' ? { order: 'shift' } : {}, { replace: true, preventScrollReset: true })
+              }
+            />
             <NeighbourLink to={candidate.previousId === null ? null : neighbour(candidate.previousId)} label="Previous rank" icon="left" />
             <NeighbourLink to={candidate.nextId === null ? null : neighbour(candidate.nextId)} label="Next rank" icon="right" />
-            {isKept || candidate.abilities.editShortlist ? <KeepButton isKept={isKept} isBusy={keep.isPending} onKeep={() => keep.mutate(candidate)} variant="primary" size="regular" /> : null}
+            {isKept || candidate.abilities.editShortlist ? (
+              <KeepButton isKept={isKept} isBusy={keep.isPending} onKeep={() => keep.mutate(candidate)} variant="primary" size="regular" />
+            ) : null}
           </>
         }
       />

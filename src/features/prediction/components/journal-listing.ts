@@ -13,11 +13,21 @@ const carbonType = (hydrogens: number) => ['C', 'CH', 'CH2', 'CH3'][hydrogens] ?
 export function journalListing(prediction: Pick<Prediction, 'carbons' | 'protons'>, nucleus: Nucleus): string {
   const peaks =
     nucleus === '13C'
-      ? [...prediction.carbons].sort((a, b) => b.shift - a.shift).map(({ shift, atoms, hydrogens }) => `${shiftText(shift, '13C')} (${atoms.length > 1 ? `${atoms.length}C, ` : ''}${carbonType(hydrogens)})`)
+      ? [...prediction.carbons]
+          .sort((a, b) => b.shift - a.shift)
+          .map(
+            ({ shift, atoms, hydrogens }) =>
+              `${shiftText(shift, '13C')} (${atoms.length > 1 ? `${atoms.length}C, ` : ''}${carbonType(hydrogens)})`,
+          )
       : [...prediction.protons]
           .sort((a, b) => b.shift - a.shift)
           .map(({ shift, multiplicity, couplings, count, exchangeable }) => {
-            const parts = [multiplicity, couplings.length === 0 ? '' : `J = ${couplings.map((value) => value.toFixed(1)).join(', ')} Hz`, `${count}H`, exchangeable ? 'exch.' : ''];
+            const parts = [
+              multiplicity,
+              couplings.length === 0 ? '' : `J = ${couplings.map((value) => value.toFixed(1)).join(', ')} Hz`,
+              `${count}H`,
+              exchangeable ? 'exch.' : '',
+            ];
             return `${shiftText(shift, '1H')} (${parts.filter((part) => part !== '').join(', ')})`;
           });
   if (peaks.length === 0) return '';

@@ -27,7 +27,10 @@ export function Component() {
   const trimmed = smiles.trim();
   useEffect(() => {
     if (trimmed === asked) return undefined;
-    const timer = setTimeout(() => setSearch(trimmed === '' ? {} : { smiles: trimmed }, { replace: true, preventScrollReset: true }), ASK_AFTER_MS);
+    const timer = setTimeout(
+      () => setSearch(trimmed === '' ? {} : { smiles: trimmed }, { replace: true, preventScrollReset: true }),
+      ASK_AFTER_MS,
+    );
     return () => clearTimeout(timer);
   }, [trimmed, asked, setSearch]);
 
@@ -48,7 +51,16 @@ export function Component() {
           {prediction === undefined ? null : (
             <Panel title="Atom numbers" className={isFetching ? 'opacity-60' : ''}>
               <div ref={frame} className="flex min-h-[200px] justify-center">
-                {width === 0 ? null : <StructureDrawing smiles={prediction.smiles} width={width} height={200} hasAtomNumbers halos={litAtoms.length === 0 ? [] : [{ atoms: litAtoms, tone: 'indigo' }]} onAtomHover={(atom) => setLitAtoms(atom === null ? [] : [atom])} />}
+                {width === 0 ? null : (
+                  <StructureDrawing
+                    smiles={prediction.smiles}
+                    width={width}
+                    height={200}
+                    hasAtomNumbers
+                    halos={litAtoms.length === 0 ? [] : [{ atoms: litAtoms, tone: 'indigo' }]}
+                    onAtomHover={(atom) => setLitAtoms(atom === null ? [] : [atom])}
+                  />
+                )}
               </div>
             </Panel>
           )}
@@ -56,7 +68,9 @@ export function Component() {
         <div className="min-w-0 space-y-4" aria-live="polite" aria-busy={isFetching}>
           {asked === '' ? (
             <Panel isFlush>
-              <EmptyState title="No structure yet">Draw a structure or paste its SMILES. Its predicted ¹³C and ¹H spectra will stand here, with the reason for every number.</EmptyState>
+              <EmptyState title="No structure yet">
+                Draw a structure or paste its SMILES. Its predicted ¹³C and ¹H spectra will stand here, with the reason for every number.
+              </EmptyState>
             </Panel>
           ) : error !== null ? (
             <Panel isFlush>

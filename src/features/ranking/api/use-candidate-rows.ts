@@ -10,14 +10,23 @@ export interface CandidateRows {
   readonly retry: () => void;
 }
 
+export interface ShownPages {
+  readonly firstPage: number;
+  readonly lastPage: number;
+}
+
+/** Pages of a half-open range of positions, so that scrolling within a page changes nothing. */
+export function pagesOf(start: number, end: number): ShownPages {
+  const pageOf = (index: number) => Math.floor(Math.max(0, index) / CANDIDATE_PAGE_SIZE) + 1;
+  return { firstPage: pageOf(start), lastPage: pageOf(end - 1) };
+}
+
 /**
  * Candidates of a run in one order, loaded page by page where they are looked at.
  *
- * @param shown - the visible positions, half-open; their pages and the first one are loaded.
+ * @param shown - pages with visible positions, both included; they and the first one are loaded.
  */
-export function useCandidateRows(runId: string, order: CandidateOrder, shown: { readonly start: number; readonly end: number }): CandidateRows {
-  const firstPage = Math.floor(Math.max(0, shown.start) / CANDIDATE_PAGE_SIZE) + 1;
-  const lastPage = Math.floor(Math.max(0, shown.end - 1) / CANDIDATE_PAGE_SIZE) + 1;
+export function useCandidateRows(runId: string, order: CandidateOrder, { firstPage, lastPage }: ShownPages): CandidateRows {
   const pages = [1];
   for (let page = Math.max(2, firstPage); page <= lastPage; page++) pages.push(page);
   return useQueries({

@@ -1,7 +1,7 @@
 import { useQueryClient, type QueryClient } from '@tanstack/react-query';
 import { useEffect, useState } from 'react';
 import { runProgressSchema, runResponse } from '../../../../shared/schemas/runs';
-import { endpointUrl } from '../../../lib/api-client';
+import { callEndpoint, endpointUrl } from '../../../lib/api-client';
 import { candidateKeys } from '../../../lib/queries/candidate-queries';
 import { isEnded, runKeys, runQuery, type Run } from '../../../lib/queries/run-queries';
 import { unknownReadKeys } from '../../../lib/queries/unknown-queries';
@@ -19,7 +19,8 @@ function parseJson(text: string): unknown {
 }
 
 async function acceptRun(queryClient: QueryClient, run: Run): Promise<void> {
-  queryClient.setQueryData(runQuery(run.id).queryKey, run);
+  // An answer that was under way while the run ended must not bring it back to life.
+  queryClient.setQueryData(runQuery(run.id).queryKey, (known) => (known !== undefined && isEnded(known) ? known : run));
   if (!isEnded(run)) return;
   await Promise.all([
     queryClient.invalidateQueries({ queryKey: runKeys.lists() }),
@@ -49,9 +50,9 @@ export function useRunEvents(runId: string, isLive: boolean): 'connected' | 'rec
 
     const askForRun = async () => {
       try {
-        await acceptRun(queryClient, await queryClient.fetchQuery({ ...runQuery(runId), staleTime: 0 }));
+        await acceptRun(queryClient, await callEndpoint('readRun', { params: { runId } }));
       } catch {
-        // The query keeps the failure; the stream is tried again anyway.
+        // No answer, or the session has ended, which the api client announces; the stream is tried again anyway.
       }
     };
     const openLater = () => {
@@ -76,7 +77,9 @@ export function useRunEvents(runId: string, isLive: boolean): 'connected' | 'rec
       source.addEventListener('progress', (event: MessageEvent<string>) => {
         const progress = runProgressSchema.safeParse(parseJson(event.data));
         if (!progress.success) return;
-        queryClient.setQueryData(runQuery(runId).queryKey, (run) => (run === undefined || isEnded(run) ? run : { ...run, progress: progress.data }));
+        queryClient.setQueryData(runQuery(runId).queryKey, (run) =>
+          run === undefined || isEnded(run) ? run : { ...run, progress: progress.data },
+        );
       });
       source.addEventListener('run', (event: MessageEvent<string>) => {
         const run = runResponse.safeParse(parseJson(event.data));

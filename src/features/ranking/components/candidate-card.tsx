@@ -26,9 +26,23 @@ export function CandidateCard({ candidate, isSelected, isKept, isKeeping, canKee
   const remarks = tellingRemarks(candidate.remarks, 2);
   const tabIndex = isSelected ? 0 : -1;
   return (
-    <article aria-label={`Rank ${candidate.rank}`} className={classNames('group/card flex h-full min-w-0 flex-col rounded-panel border bg-cloth px-3 pt-2 pb-2.5', isSelected ? 'border-indigo ring-1 ring-indigo' : 'border-seam hover:border-selvage')} style={{ height: CARD_HEIGHT }}>
+    <article
+      aria-label={`Rank ${candidate.rank}`}
+      className={classNames(
+        'group/card flex h-full min-w-0 flex-col rounded-panel border bg-cloth px-3 pt-2 pb-2.5',
+        isSelected
+          ? 'border-indigo ring-1 ring-indigo group-focus-visible/grid:outline-2 group-focus-visible/grid:outline-offset-2 group-focus-visible/grid:outline-indigo'
+          : 'border-seam hover:border-selvage',
+      )}
+      style={{ height: CARD_HEIGHT }}
+    >
       <header className="flex items-center justify-between gap-2">
-        <Link to={paths.candidate(candidate.id)} onClick={onLeave} tabIndex={tabIndex} className="rounded-small text-lead font-semibold text-ink no-underline hover:text-indigo hover:underline">
+        <Link
+          to={paths.candidate(candidate.id)}
+          onClick={onLeave}
+          tabIndex={tabIndex}
+          className="rounded-small text-lead font-semibold text-ink no-underline hover:text-indigo hover:underline"
+        >
           <span className="sr-only">Open rank </span>
           {candidate.rank}
         </Link>
@@ -49,7 +63,14 @@ export function CandidateCard({ candidate, isSelected, isKept, isKeeping, canKee
           {misfitText(candidate)}
         </span>
         {isKept || canKeep ? (
-          <span className={classNames('shrink-0 transition-opacity', !isKept && !isSelected && 'opacity-0 group-focus-within/card:opacity-100 group-hover/card:opacity-100 pointer-coarse:opacity-100')}>
+          <span
+            className={classNames(
+              'shrink-0 transition-opacity',
+              !isKept &&
+                !isSelected &&
+                'opacity-0 group-focus-within/card:opacity-100 group-hover/card:opacity-100 pointer-coarse:opacity-100',
+            )}
+          >
             <KeepButton isKept={isKept} isBusy={isKeeping} onKeep={onKeep} tabIndex={tabIndex} />
           </span>
         ) : null}

@@ -10,7 +10,13 @@ import { formatSigned } from '../../../lib/numbers';
 import type { CandidateRow, CandidateSort } from '../../../lib/queries/candidate-queries';
 import { DeferredDrawing } from './deferred-drawing';
 
-const SHORT_TERM_NAMES: Readonly<Record<ScoreTermName, string>> = { carbon13: '¹³C', proton1: '¹H', multiplicity: 'Mult.', integral: 'Integral', plausibility: 'Plausib.' };
+const SHORT_TERM_NAMES: Readonly<Record<ScoreTermName, string>> = {
+  carbon13: '¹³C',
+  proton1: '¹H',
+  multiplicity: 'Mult.',
+  integral: 'Integr.',
+  plausibility: 'Plaus.',
+};
 
 export const ROW_HEIGHT = 68;
 
@@ -46,24 +52,67 @@ const deviation = (value: number | null, digits: number) => (value === null ? '�
 export function candidateColumns(terms: readonly ScoreTermName[]): CandidateColumn[] {
   return [
     {
-      key: 'rank', head: 'Rank', width: '72px', sort: 'rank',
+      key: 'rank',
+      head: 'Rank',
+      width: '72px',
+      sort: 'rank',
       cell: (candidate, { isSelected, onLeave }) => (
-        <Link to={paths.candidate(candidate.id)} onClick={onLeave} tabIndex={isSelected ? 0 : -1} className="rounded-small text-lead font-semibold text-ink no-underline hover:text-indigo hover:underline">
+        <Link
+          to={paths.candidate(candidate.id)}
+          onClick={onLeave}
+          tabIndex={isSelected ? 0 : -1}
+          className="rounded-small text-lead font-semibold text-ink no-underline hover:text-indigo hover:underline"
+        >
           <span className="sr-only">Open rank </span>
           {candidate.rank}
         </Link>
       ),
     },
-    { key: 'drawing', head: 'Structure', width: '124px', cell: (candidate) => <DeferredDrawing smiles={candidate.smiles} width={112} height={60} alt={`Structure of rank ${candidate.rank}`} /> },
-    { key: 'probability', head: 'Probability', width: '112px', cell: (candidate) => <ProbabilityThread probability={candidate.probability} length={32} /> },
-    { key: 'carbon', head: '¹³C misfit', hint: 'Mean absolute deviation of the matched ¹³C signals, ppm', width: '104px', sort: 'carbonDeviation', align: 'right', cell: (candidate) => deviation(candidate.carbonDeviation, 2) },
-    { key: 'proton', head: '¹H misfit', hint: 'Mean absolute deviation of the matched ¹H signals, ppm', width: '100px', sort: 'protonDeviation', align: 'right', cell: (candidate) => deviation(candidate.protonDeviation, 3) },
-    { key: 'score', head: 'Score', hint: 'Sum of the terms: log-likelihood, higher is better', width: '72px', align: 'right', cell: (candidate) => <span className="font-semibold">{formatSigned(candidate.score, 1)}</span> },
+    {
+      key: 'drawing',
+      head: 'Structure',
+      width: '120px',
+      cell: (candidate) => (
+        <DeferredDrawing smiles={candidate.smiles} width={112} height={60} alt={`Structure of rank ${candidate.rank}`} />
+      ),
+    },
+    {
+      key: 'probability',
+      head: 'Probability',
+      width: '104px',
+      cell: (candidate) => <ProbabilityThread probability={candidate.probability} length={28} />,
+    },
+    {
+      key: 'carbon',
+      head: '¹³C misfit',
+      hint: 'Mean absolute deviation of the matched ¹³C signals, ppm',
+      width: '102px',
+      sort: 'carbonDeviation',
+      align: 'right',
+      cell: (candidate) => deviation(candidate.carbonDeviation, 2),
+    },
+    {
+      key: 'proton',
+      head: '¹H misfit',
+      hint: 'Mean absolute deviation of the matched ¹H signals, ppm',
+      width: '96px',
+      sort: 'protonDeviation',
+      align: 'right',
+      cell: (candidate) => deviation(candidate.protonDeviation, 3),
+    },
+    {
+      key: 'score',
+      head: 'Score',
+      hint: 'Sum of the terms: log-likelihood, higher is better',
+      width: '70px',
+      align: 'right',
+      cell: (candidate) => <span className="font-semibold">{formatSigned(candidate.score, 1)}</span>,
+    },
     ...terms.map((term): CandidateColumn => ({
       key: term,
       head: SHORT_TERM_NAMES[term],
       hint: `${SCORE_TERM_NAMES[term]}: part of the score`,
-      width: '92px',
+      width: '70px',
       align: 'right',
       cell: (candidate) => {
         const value = candidate.terms[term];
@@ -71,7 +120,9 @@ export function candidateColumns(terms: readonly ScoreTermName[]): CandidateColu
       },
     })),
     {
-      key: 'remarks', head: 'Remarks', width: 'minmax(220px, 1fr)',
+      key: 'remarks',
+      head: 'Remarks',
+      width: 'minmax(220px, 1fr)',
       cell: (candidate) => (
         <ul className="text-small">
           {tellingRemarks(candidate.remarks, 2).map((remark) => (
@@ -82,7 +133,25 @@ export function candidateColumns(terms: readonly ScoreTermName[]): CandidateColu
         </ul>
       ),
     },
-    { key: 'smiles', head: 'SMILES', width: '160px', sort: 'smiles', cell: (candidate) => <span className="block truncate font-mono text-small text-faded" title={candidate.smiles}>{candidate.smiles}</span> },
-    { key: 'keep', head: <span className="sr-only">Shortlist</span>, width: '104px', align: 'right', isSticky: true, cell: (_candidate, { isSelected, isKept, isKeeping, canKeep, onKeep }) => (isKept || canKeep ? <KeepButton isKept={isKept} isBusy={isKeeping} onKeep={onKeep} tabIndex={isSelected ? 0 : -1} /> : null) },
+    {
+      key: 'smiles',
+      head: 'SMILES',
+      width: '160px',
+      sort: 'smiles',
+      cell: (candidate) => (
+        <span className="block truncate font-mono text-small text-faded" title={candidate.smiles}>
+          {candidate.smiles}
+        </span>
+      ),
+    },
+    {
+      key: 'keep',
+      head: <span className="sr-only">Shortlist</span>,
+      width: '104px',
+      align: 'right',
+      isSticky: true,
+      cell: (_candidate, { isSelected, isKept, isKeeping, canKeep, onKeep }) =>
+        isKept || canKeep ? <KeepButton isKept={isKept} isBusy={isKeeping} onKeep={onKeep} tabIndex={isSelected ? 0 : -1} /> : null,
+    },
   ];
 }

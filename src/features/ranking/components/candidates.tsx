@@ -7,7 +7,7 @@ import type { CandidateOrder, CandidateRow } from '../../../lib/queries/candidat
 import type { Run } from '../../../lib/queries/run-queries';
 import { useKeepCandidate, useKeptByIdcode } from '../../../lib/queries/shortlist-queries';
 import { formatCount } from '../../../lib/numbers';
-import { useCandidateRows } from '../api/use-candidate-rows';
+import { pagesOf, useCandidateRows, type ShownPages } from '../api/use-candidate-rows';
 import { selectionIndex } from '../hooks/selection-index';
 import { useRankingView } from '../hooks/use-ranking-view';
 import { CandidateCards } from './candidate-cards';
@@ -30,15 +30,29 @@ const ORDER_OPTIONS: ReadonlyArray<SelectOption & { readonly order: CandidateOrd
 export function Candidates({ run }: { run: Run }) {
   const navigate = useNavigate();
   const view = useRankingView();
-  const [shown, setShown] = useState({ start: 0, end: 1 });
+  const [shown, setShown] = useState<ShownPages>({ firstPage: 1, lastPage: 1 });
   const rows = useCandidateRows(run.id, view.order, shown);
   const keptByIdcode = useKeptByIdcode(run.unknownId);
   const keep = useKeepCandidate(run.unknownId);
-  const onShown = useCallback((start: number, end: number) => setShown({ start, end }), []);
+  const onShown = useCallback((start: number, end: number) => {
+    const next = pagesOf(start, end);
+    setShown((current) => (current.firstPage === next.firstPage && current.lastPage === next.lastPage ? current : next));
+  }, []);
 
-  if (rows.total === null) return rows.error === null ? <LoadingState label="Loading candidates" lines={8} /> : <ErrorState error={rows.error} onRetry={rows.retry} />;
+  if (rows.total === null)
+    return rows.error === null ? (
+      <LoadingState label="Loading candidates" lines={8} />
+    ) : (
+      <ErrorState error={rows.error} onRetry={rows.retry} />
+    );
   if (rows.total === 0) {
-    return <EmptyState title="No candidates">{run.survivorCount === 0 ? 'Every constitution was cut. The funnel above says where and why; loosen what cuts too much and start another run.' : 'This run kept no candidates.'}</EmptyState>;
+    return (
+      <EmptyState title="No candidates">
+        {run.survivorCount === 0
+          ? 'Every constitution was cut. The funnel above says where and why; loosen what cuts too much and start another run.'
+          : 'This run kept no candidates.'}
+      </EmptyState>
+    );
   }
 
   const { total } = rows;
@@ -47,10 +61,15 @@ export function Candidates({ run }: { run: Run }) {
     if (run.abilities.editShortlist && !keptByIdcode.has(candidate.idcode) && !keep.isPending) keep.mutate(candidate);
   };
   const listProps: CandidateListProps = {
-    rows, total, selectedIndex, onShown, onKeep,
+    rows,
+    total,
+    selectedIndex,
+    onShown,
+    onKeep,
     order: view.order,
     onSelect: (index) => {
-      const rank = rows.at(index)?.rank ?? (view.order.sort === 'rank' ? (view.order.direction === 'ascending' ? index + 1 : total - index) : null);
+      const rank =
+        rows.at(index)?.rank ?? (view.order.sort === 'rank' ? (view.order.direction === 'ascending' ? index + 1 : total - index) : null);
       if (rank !== null) view.select(rank);
     },
     onOpen: (candidate) => {
@@ -72,7 +91,12 @@ export function Candidates({ run }: { run: Run }) {
         </h2>
         <div className="flex flex-wrap items-center gap-3">
           <p className="hidden text-small text-faded desk:block">
-            <Key>Arrows</Key> move, <Key>Enter</Key> opens{run.abilities.editShortlist ? <>, <Key>K</Key> keeps</> : null}
+            <Key>Arrows</Key> move, <Key>Enter</Key> opens
+            {run.abilities.editShortlist ? (
+              <>
+                , <Key>K</Key> keeps
+              </>
+            ) : null}
           </p>
           <Select
             label="Order"

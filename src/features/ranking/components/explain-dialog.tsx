@@ -42,10 +42,18 @@ export function ExplainDialog({ runId, asked, onAsk, onClose }: ExplainDialogPro
       }
     >
       <div className="grid grid-cols-[minmax(0,1fr)] gap-6 desk:grid-cols-[minmax(0,1fr)_minmax(0,360px)]">
-        <StructureEditor label="Structure" value={smiles} onValueChange={setSmiles} error={isAnswered && error !== null ? (issueFor(error, 'smiles') ?? undefined) : undefined} />
+        <StructureEditor
+          label="Structure"
+          value={smiles}
+          onValueChange={setSmiles}
+          error={isAnswered && error !== null ? (issueFor(error, 'smiles') ?? undefined) : undefined}
+        />
         <div aria-live="polite" className="min-w-0">
           {asked === '' ? (
-            <p className="text-faded">Draw the structure you miss, or paste its SMILES, and ask. The answer names the stage that cut it and the atoms concerned, or its rank.</p>
+            <p className="text-faded">
+              Draw the structure you miss, or paste its SMILES, and ask. The answer names the stage that cut it and the atoms concerned, or
+              its rank.
+            </p>
           ) : !isAnswered ? (
             <p className="text-faded">The structure was changed. Ask again for its answer.</p>
           ) : error !== null ? (

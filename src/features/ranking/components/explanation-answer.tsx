@@ -21,12 +21,28 @@ function RejectionAnswer({ explanation }: { explanation: Rejection }) {
       <StatusWord tone="madder" icon={Scissors}>
         <strong className="font-semibold">Cut at: {FUNNEL_STAGE_TEXT[stage].name}</strong>
       </StatusWord>
-      <StructureDrawing smiles={smiles} width={340} height={200} hasAtomNumbers alt="The structure, with the atoms concerned marked" halos={shown.map((reason) => ({ atoms: reason.atoms, tone: 'madder' }))} />
+      <StructureDrawing
+        smiles={smiles}
+        width={340}
+        height={200}
+        hasAtomNumbers
+        alt="The structure, with the atoms concerned marked"
+        halos={shown.map((reason) => ({ atoms: reason.atoms, tone: 'madder' }))}
+      />
       <ul className="space-y-1">
         {reasons.map((reason, index) => (
-          <li key={`${reason.reason}${index}`} onPointerEnter={() => setActive(index)} onPointerLeave={() => setActive(null)} className={classNames('rounded-small px-2 py-1', active === index ? 'bg-madder-wash' : 'bg-fold')}>
+          <li
+            key={`${reason.reason}${index}`}
+            onPointerEnter={() => setActive(index)}
+            onPointerLeave={() => setActive(null)}
+            className={classNames('rounded-small px-2 py-1', active === index ? 'bg-madder-wash' : 'bg-fold')}
+          >
             {reason.text}
-            {reason.atoms.length === 0 ? null : <span className="block text-small text-faded">{reason.atoms.length === 1 ? 'Atom' : 'Atoms'} {reason.atoms.map((atom) => atom + 1).join(', ')}</span>}
+            {reason.atoms.length === 0 ? null : (
+              <span className="block text-small text-faded">
+                {reason.atoms.length === 1 ? 'Atom' : 'Atoms'} {reason.atoms.map((atom) => atom + 1).join(', ')}
+              </span>
+            )}
           </li>
         ))}
       </ul>
@@ -48,9 +64,7 @@ export function ExplanationAnswer({ explanation }: { explanation: Explanation })
             </strong>
           </StatusWord>
           <StructureDrawing smiles={explanation.smiles} width={340} height={180} />
-          <ButtonLink to={paths.candidate(explanation.candidateId)}>
-            Open rank {explanation.rank}
-          </ButtonLink>
+          <ButtonLink to={paths.candidate(explanation.candidateId)}>Open rank {explanation.rank}</ButtonLink>
         </div>
       );
     case 'notKept':
@@ -62,7 +76,8 @@ export function ExplanationAnswer({ explanation }: { explanation: Explanation })
           <StructureDrawing smiles={explanation.smiles} width={340} height={180} />
           <p className="tabular">
             Its score is {formatSigned(explanation.score, 1)}
-            {explanation.lowestKeptScore === null ? '' : `; the last candidate kept has ${formatSigned(explanation.lowestKeptScore, 1)}`}. Its weight is part of the probabilities all the same.
+            {explanation.lowestKeptScore === null ? '' : `; the last candidate kept has ${formatSigned(explanation.lowestKeptScore, 1)}`}.
+            Its weight is part of the probabilities all the same.
           </p>
         </div>
       );
@@ -73,7 +88,8 @@ export function ExplanationAnswer({ explanation }: { explanation: Explanation })
             <strong className="font-semibold">It has another formula</strong>
           </StatusWord>
           <p>
-            The structure is <Formula formula={explanation.formula} className="font-semibold" />, this run weaves <Formula formula={explanation.expected} className="font-semibold" />.
+            The structure is <Formula formula={explanation.formula} className="font-semibold" />, this run weaves{' '}
+            <Formula formula={explanation.expected} className="font-semibold" />.
           </p>
         </div>
       );

@@ -48,11 +48,20 @@ export function ExportMenu({ runId, keptCount }: { runId: string; keptCount: num
         if (event.relatedTarget instanceof Node && !event.currentTarget.contains(event.relatedTarget)) setIsOpen(false);
       }}
     >
-      <Button icon={<Download aria-hidden="true" className="size-4" />} aria-expanded={isOpen} aria-controls={id} onClick={() => setIsOpen(!isOpen)}>
+      <Button
+        icon={<Download aria-hidden="true" className="size-4" />}
+        aria-expanded={isOpen}
+        aria-controls={id}
+        onClick={() => setIsOpen(!isOpen)}
+      >
         Export
       </Button>
       {isOpen ? (
-        <ul id={id} aria-label={`Export ${formatCount(keptCount)} candidates as`} className="absolute right-0 z-20 mt-1 w-72 rounded-panel border border-selvage bg-cloth p-1">
+        <ul
+          id={id}
+          aria-label={`Export ${formatCount(keptCount)} candidates as`}
+          className="absolute right-0 z-20 mt-1 w-72 rounded-panel border border-selvage bg-cloth p-1"
+        >
           {FORMATS.map(({ format, name, detail }) => (
             <li key={format}>
               <button type="button" className="w-full rounded-small px-3 py-1.5 text-left hover:bg-fold" onClick={() => void save(format)}>

@@ -16,7 +16,10 @@ export function LayoutSwitch({ current, onChange }: { current: RankingLayout; on
           key={layout}
           type="button"
           aria-pressed={layout === current}
-          className={classNames('inline-flex min-h-7 items-center gap-1.5 border-l border-selvage px-2.5 text-table font-semibold first:border-l-0', layout === current ? 'bg-indigo-wash text-indigo' : 'hover:bg-fold')}
+          className={classNames(
+            'inline-flex min-h-7 items-center gap-1.5 border-l border-selvage px-2.5 text-table font-semibold first:border-l-0',
+            layout === current ? 'bg-indigo-wash text-indigo' : 'hover:bg-fold',
+          )}
           onClick={() => onChange(layout)}
         >
           <Icon aria-hidden="true" className="size-4" />

@@ -8,12 +8,15 @@ export function RunFootnotes({ run }: { run: Run }) {
   const { multigraphCount, constitutionCount, settings } = run;
   return (
     <ul className="tabular text-small text-faded">
-      {multigraphCount === null || multigraphCount === constitutionCount ? null : <li>{formatCount(multigraphCount)} before merging resonance forms</li>}
+      {multigraphCount === null || multigraphCount === constitutionCount ? null : (
+        <li>{formatCount(multigraphCount)} before merging resonance forms</li>
+      )}
       <li>
         kept {formatCount(run.keptCount)} of at most {formatCount(settings.keep)}
       </li>
       <li>
-        {formatSeconds(run.cpuSeconds)} of CPU time, {settings.maxSeconds === null ? 'no limit' : `limit ${formatSeconds(settings.maxSeconds)}`}
+        {formatSeconds(run.cpuSeconds)} of CPU time,{' '}
+        {settings.maxSeconds === null ? 'no limit' : `limit ${formatSeconds(settings.maxSeconds)}`}
       </li>
       <li>
         {run.startedBy.name}, <Time iso={run.finishedAt ?? run.createdAt} />

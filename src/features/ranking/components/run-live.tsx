@@ -37,7 +37,11 @@ export function RunLive({ run, stream }: { run: Run; stream: 'connected' | 'reco
   const figure = (value: (progress: RunProgress) => string) => (progress === null ? '–' : value(progress));
   return (
     <Panel
-      title={<span role="status">{run.status === 'queued' ? 'Waiting for a free worker' : progress === null ? 'Starting' : STAGE_WORDS[progress.stage]}</span>}
+      title={
+        <span role="status">
+          {run.status === 'queued' ? 'Waiting for a free worker' : progress === null ? 'Starting' : STAGE_WORDS[progress.stage]}
+        </span>
+      }
       actions={
         <>
           {stream === 'reconnecting' ? (
@@ -46,23 +50,41 @@ export function RunLive({ run, stream }: { run: Run; stream: 'connected' | 'reco
             </StatusWord>
           ) : null}
           {run.abilities.cancel ? (
-            <Button size="small" icon={<CircleStop aria-hidden="true" className="size-4" />} isBusy={cancel.isPending} onClick={() => setIsAsking(true)}>
+            <Button
+              size="small"
+              icon={<CircleStop aria-hidden="true" className="size-4" />}
+              isBusy={cancel.isPending}
+              onClick={() => setIsAsking(true)}
+            >
               Cancel run
             </Button>
           ) : null}
         </>
       }
     >
-      <div role="progressbar" aria-label="Shards done" aria-valuemin={0} aria-valuemax={progress?.shardCount ?? 0} aria-valuenow={progress?.shardsDone ?? 0} className="mb-4 h-1 overflow-hidden rounded-full bg-seam">
+      <div
+        role="progressbar"
+        aria-label="Shards done"
+        aria-valuemin={0}
+        aria-valuemax={progress?.shardCount ?? 0}
+        aria-valuenow={progress?.shardsDone ?? 0}
+        className="mb-4 h-1 overflow-hidden rounded-full bg-seam"
+      >
         <div className="h-full bg-indigo transition-[width]" style={{ width: `${shardShare * 100}%` }} />
       </div>
       <dl className="mb-6 grid grid-cols-2 gap-x-6 gap-y-3 tablet:grid-cols-3 desk:grid-cols-6">
-        <Figure label="Shards done" value={figure(({ shardsDone, shardCount }) => `${formatCount(shardsDone)} of ${formatCount(shardCount)}`)} />
+        <Figure
+          label="Shards done"
+          value={figure(({ shardsDone, shardCount }) => `${formatCount(shardsDone)} of ${formatCount(shardCount)}`)}
+        />
         <Figure label="Constitutions seen" value={figure(({ constitutionsSeen }) => formatCount(constitutionsSeen))} />
         <Figure label="Kept so far" value={figure(({ survivors }) => formatCount(Math.min(survivors, run.settings.keep)))} />
         <Figure label="Rate" value={figure(({ ratePerSecond }) => `${formatCount(ratePerSecond)}\u2009/\u2009s`)} />
         <Figure label="Elapsed" value={figure(({ elapsedSeconds }) => formatSeconds(elapsedSeconds))} />
-        <Figure label="Time left" value={figure(({ secondsLeft }) => (secondsLeft === null ? 'not known yet' : `about ${formatSeconds(secondsLeft)}`))} />
+        <Figure
+          label="Time left"
+          value={figure(({ secondsLeft }) => (secondsLeft === null ? 'not known yet' : `about ${formatSeconds(secondsLeft)}`))}
+        />
       </dl>
       <FunnelPicture band={band} isLive />
       {isAsking ? (

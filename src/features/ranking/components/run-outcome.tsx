@@ -24,8 +24,14 @@ export function RunOutcome({ run }: { run: Run }) {
   }
   if (run.complete) return null;
   return (
-    <Notice tone="weld" title={`Incomplete: ${(INCOMPLETE_TEXT[run.status] ?? 'the search was not finished').replace(/^./, (letter) => letter.toLowerCase())}`}>
-      <p>Constitutions that were not reached are missing from this list and could rank above those in it.{run.failure === null ? '' : ` ${run.failure.message}`}</p>
+    <Notice
+      tone="weld"
+      title={`Incomplete: ${(INCOMPLETE_TEXT[run.status] ?? 'the search was not finished').replace(/^./, (letter) => letter.toLowerCase())}`}
+    >
+      <p>
+        Constitutions that were not reached are missing from this list and could rank above those in it.
+        {run.failure === null ? '' : ` ${run.failure.message}`}
+      </p>
     </Notice>
   );
 }

@@ -22,15 +22,26 @@ function Fact({ label, children }: { label: string; children: ReactNode }) {
 export function RunSummary({ run, best }: { run: Run; best: CandidateRow | undefined }) {
   const survivors = run.survivorCount ?? 0;
   const none = run.noneOfTheseProbability;
-  const cautions = best === undefined ? [] : fitCautions({ noneOfTheseProbability: none, carbonDeviation: best.carbonDeviation, protonDeviation: best.protonDeviation });
+  const cautions =
+    best === undefined
+      ? []
+      : fitCautions({ noneOfTheseProbability: none, carbonDeviation: best.carbonDeviation, protonDeviation: best.protonDeviation });
   const misfit = best === undefined ? '' : misfitText(best);
   const hasSignals = best === undefined || best.terms.carbon13 !== undefined || best.terms.proton1 !== undefined;
   return (
     <div>
       <p className="tabular text-lead font-semibold">
-        {survivors === 0 ? 'No constitution survived' : survivors === 1 ? 'The only one left under this model' : `Best of ${formatCount(survivors)} under this model`}
+        {survivors === 0
+          ? 'No constitution survived'
+          : survivors === 1
+            ? 'The only one left under this model'
+            : `Best of ${formatCount(survivors)} under this model`}
       </p>
-      <p className="text-table text-faded">{survivors === 0 ? 'Something in the evidence rules everything out: look at the reasons in the funnel.' : 'An order by fit to this evidence, not an identification.'}</p>
+      <p className="text-table text-faded">
+        {survivors === 0
+          ? 'Something in the evidence rules everything out: look at the reasons in the funnel.'
+          : 'An order by fit to this evidence, not an identification.'}
+      </p>
       <dl className="mt-3 text-table">
         {none === null ? null : (
           <Fact label="None of these">

@@ -5,7 +5,12 @@ import type { CandidateOrder } from '../../../lib/queries/candidate-queries';
  *
  * @param at - candidate at a position, undefined while not loaded.
  */
-export function selectionIndex(rank: number | null, order: CandidateOrder, total: number, at: (index: number) => { readonly rank: number } | undefined): number | null {
+export function selectionIndex(
+  rank: number | null,
+  order: CandidateOrder,
+  total: number,
+  at: (index: number) => { readonly rank: number } | undefined,
+): number | null {
   if (rank === null) return null;
   if (order.sort === 'rank') {
     if (rank > total) return null;

@@ -52,7 +52,8 @@ export function useGridKeys({ index, onMove, onOpen, onKeep, ...moves }: GridKey
       onMove(target);
       return;
     }
-    const isOnButton = event.target instanceof Element && event.target !== event.currentTarget && event.target.closest('button, a') !== null;
+    const isOnButton =
+      event.target instanceof Element && event.target !== event.currentTarget && event.target.closest('button, a') !== null;
     if (index === null || isOnButton) return;
     if (event.key === 'Enter') {
       event.preventDefault();

@@ -1,10 +1,11 @@
-import { useCallback, useEffect, useRef, useState } from 'react';
-import { useNavigation, useSearchParams } from 'react-router-dom';
+import { useEffect, useState } from 'react';
+import { useLocation, useSearchParams } from 'react-router-dom';
 import type { CandidateOrder, CandidateSort } from '../../../lib/queries/candidate-queries';
+import { addressWith, replaceAddress } from './address';
 
 export type RankingLayout = 'cards' | 'table';
 const SORTS: readonly CandidateSort[] = ['rank', 'carbonDeviation', 'protonDeviation', 'smiles'];
-/** Moving through a list by keyboard must not write the address on every step. */
+/** Moving through a list by keyboard must not write the address on every step: browsers limit how often it may change. */
 const WRITE_AFTER_MS = 200;
 
 export interface RankingView {
@@ -14,7 +15,7 @@ export interface RankingView {
   readonly selectedRank: number | null;
   readonly setLayout: (layout: RankingLayout) => void;
   readonly setOrder: (order: CandidateOrder) => void;
-  readonly select: (rank: number | null) => void;
+  readonly select: (rank: number) => void;
   /** Puts a selection into the address at once, before the page is left: back then returns to it. */
   readonly writeNow: (rank: number) => void;
 }
@@ -31,15 +32,12 @@ export function readRankingView(search: URLSearchParams): { layout: RankingLayou
   };
 }
 
-function withParam(search: URLSearchParams, name: string, value: string | null): URLSearchParams {
-  const next = new URLSearchParams(search);
-  if (value === null) next.delete(name);
-  else next.set(name, value);
-  return next;
-}
-
-/** Layout, order and selection of the ranking; all of them live in the address. */
+/**
+ * Layout, order and selection of the ranking; all of them live in the address. The selection is written past the
+ * router: it changes nothing that is loaded, and a navigation of its own could cancel one that leaves the page.
+ */
 export function useRankingView(): RankingView {
+  const { pathname } = useLocation();
   const [search, setSearch] = useSearchParams();
   const fromAddress = readRankingView(search);
   const [selectedRank, setSelectedRank] = useState(fromAddress.selectedRank);
@@ -49,29 +47,22 @@ export function useRankingView(): RankingView {
     setSeenInAddress(fromAddress.selectedRank);
     setSelectedRank(fromAddress.selectedRank);
   }
-  const setSearchRef = useRef(setSearch);
   useEffect(() => {
-    setSearchRef.current = setSearch;
-  });
-  const isLeaving = useNavigation().state !== 'idle';
-  useEffect(() => {
-    // Writing the address now would cancel the navigation that is under way.
-    if (selectedRank === seenInAddress || isLeaving) return undefined;
-    const timer = setTimeout(() => {
-      setSearchRef.current((current) => withParam(current, 'selected', selectedRank === null ? null : String(selectedRank)), { replace: true, preventScrollReset: true });
-    }, WRITE_AFTER_MS);
+    if (selectedRank === null) return undefined;
+    const timer = setTimeout(() => replaceAddress(pathname, { selected: String(selectedRank) }), WRITE_AFTER_MS);
     return () => clearTimeout(timer);
-  }, [selectedRank, seenInAddress, isLeaving]);
+  }, [selectedRank, pathname]);
 
-  const setLayout = useCallback((layout: RankingLayout) => setSearchRef.current((current) => withParam(current, 'view', layout === 'cards' ? null : layout), { preventScrollReset: true }), []);
-  const setOrder = useCallback(
-    (order: CandidateOrder) => setSearchRef.current((current) => withParam(withParam(current, 'sort', order.sort === 'rank' ? null : order.sort), 'direction', order.direction === 'ascending' ? null : order.direction), { preventScrollReset: true }),
-    [],
-  );
-  const writeNow = (rank: number) => {
-    // Not through the router: a second navigation would cancel the one that leaves the page.
-    const next = withParam(search, 'selected', String(rank));
-    window.history.replaceState(window.history.state, '', `${window.location.pathname}?${next.toString()}`);
+  const selected = selectedRank === null ? null : String(selectedRank);
+  return {
+    ...fromAddress,
+    selectedRank,
+    select: setSelectedRank,
+    setLayout: (layout) => setSearch(addressWith({ view: layout === 'cards' ? null : layout, selected }), { preventScrollReset: true }),
+    setOrder: ({ sort, direction }) =>
+      setSearch(addressWith({ sort: sort === 'rank' ? null : sort, direction: direction === 'ascending' ? null : direction, selected }), {
+        preventScrollReset: true,
+      }),
+    writeNow: (rank) => replaceAddress(pathname, { selected: String(rank) }),
   };
-  return { writeNow, layout: fromAddress.layout, order: fromAddress.order, selectedRank, setLayout, setOrder, select: setSelectedRank };
 }

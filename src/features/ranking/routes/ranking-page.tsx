@@ -1,6 +1,5 @@
 import { useQuery, useSuspenseQuery } from '@tanstack/react-query';
 import { CircleHelp } from 'lucide-react';
-import { useCallback } from 'react';
 import { Link, useParams, useSearchParams, type LoaderFunctionArgs } from 'react-router-dom';
 import { paths } from '../../../app/paths';
 import { Button } from '../../../components/button';
@@ -23,6 +22,7 @@ import { RunFootnotes } from '../components/run-footnotes';
 import { RunLive } from '../components/run-live';
 import { RunOutcome } from '../components/run-outcome';
 import { RunSummary } from '../components/run-summary';
+import { addressWith } from '../hooks/address';
 
 const BEST_FIRST = { sort: 'rank', direction: 'ascending' } as const;
 
@@ -43,19 +43,7 @@ export function Component() {
   const stream = useRunEvents(runId, isLive);
   const [search, setSearch] = useSearchParams();
   const asked = search.get('ask');
-  const setAsked = useCallback(
-    (smiles: string | null) =>
-      setSearch(
-        (current) => {
-          const next = new URLSearchParams(current);
-          if (smiles === null) next.delete('ask');
-          else next.set('ask', smiles);
-          return next;
-        },
-        { preventScrollReset: true },
-      ),
-    [setSearch],
-  );
+  const setAsked = (smiles: string | null) => setSearch(addressWith({ ask: smiles }), { preventScrollReset: true });
   return (
     <>
       <title>{`${run.unknownCode}, run ${run.number} – Isoloom`}</title>
@@ -106,7 +94,13 @@ function EndedRun({ run }: { run: Run }) {
             <RunSummary run={run} best={firstPage?.rows[0]} />
             <RunFootnotes run={run} />
           </div>
-          <div className="min-w-0">{run.funnel === null ? <p className="text-faded">This run ended before anything was counted.</p> : <FunnelPicture band={bandFromFunnel(run.funnel)} isIncomplete={!run.complete} />}</div>
+          <div className="min-w-0">
+            {run.funnel === null ? (
+              <p className="text-faded">This run ended before anything was counted.</p>
+            ) : (
+              <FunnelPicture band={bandFromFunnel(run.funnel)} isIncomplete={!run.complete} />
+            )}
+          </div>
         </div>
       </Panel>
       <ReadingNotes isComplete={run.complete} isRegulated={unknownRow?.purpose === 'regulated'} />

@@ -6,7 +6,15 @@ import { estimateQuery } from '../api/run-setup-queries';
 import { formatEstimate } from './estimate-text';
 
 /** How large the search is expected to be. Keeps its height while the probing goes on. */
-export function EstimateLine({ unknownId, revisionId, cpuSecondsLeft }: { unknownId: string; revisionId: string; cpuSecondsLeft: number | undefined }) {
+export function EstimateLine({
+  unknownId,
+  revisionId,
+  cpuSecondsLeft,
+}: {
+  unknownId: string;
+  revisionId: string;
+  cpuSecondsLeft: number | undefined;
+}) {
   const { data, error, isPending } = useQuery(estimateQuery(unknownId, revisionId));
   if (isPending) {
     return (
@@ -38,7 +46,11 @@ export function EstimateLine({ unknownId, revisionId, cpuSecondsLeft }: { unknow
         </span>
         , {formatSeconds(data.cpuSeconds)} of CPU time
       </p>
-      <p className={isTooLong ? 'text-weld' : 'text-small text-faded'}>{isTooLong ? `More than the ${formatSeconds(Math.max(0, cpuSecondsLeft))} left of your quota: the run would stop early and be incomplete.` : 'Estimated by random probing of the search tree; the run itself counts exactly.'}</p>
+      <p className={isTooLong ? 'text-weld' : 'text-small text-faded'}>
+        {isTooLong
+          ? `More than the ${formatSeconds(Math.max(0, cpuSecondsLeft))} left of your quota: the run would stop early and be incomplete.`
+          : 'Estimated by random probing of the search tree; the run itself counts exactly.'}
+      </p>
     </div>
   );
 }

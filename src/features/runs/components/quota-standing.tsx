@@ -17,7 +17,10 @@ export function QuotaStanding({ standing }: { standing: OwnQuota }) {
           {reservedCpuSeconds > 0 ? ` and ${formatSeconds(reservedCpuSeconds)} reserved` : ''} of {formatSeconds(quota.cpuSecondsPerMonth)}
           <span aria-hidden="true" className="relative mt-1 block h-1 overflow-hidden rounded-full bg-seam">
             <span className="absolute inset-y-0 left-0 bg-selvage" style={{ width: share(usedCpuSeconds + reservedCpuSeconds) }} />
-            <span className={classNames('absolute inset-y-0 left-0', isSpent ? 'bg-madder' : 'bg-ink')} style={{ width: share(usedCpuSeconds) }} />
+            <span
+              className={classNames('absolute inset-y-0 left-0', isSpent ? 'bg-madder' : 'bg-ink')}
+              style={{ width: share(usedCpuSeconds) }}
+            />
           </span>
         </dd>
       </div>

@@ -15,7 +15,12 @@ function runFigures(run: Run) {
   return {
     constitutions: run.constitutionCount ?? run.progress?.constitutionsSeen ?? null,
     survivors: run.survivorCount ?? run.progress?.survivors ?? null,
-    seconds: run.startedAt === null ? null : run.finishedAt === null ? (run.progress?.elapsedSeconds ?? null) : (Date.parse(run.finishedAt) - Date.parse(run.startedAt)) / 1000,
+    seconds:
+      run.startedAt === null
+        ? null
+        : run.finishedAt === null
+          ? (run.progress?.elapsedSeconds ?? null)
+          : (Date.parse(run.finishedAt) - Date.parse(run.startedAt)) / 1000,
   };
 }
 const count = (value: number | null) => (value === null ? '–' : formatCount(value));
@@ -126,7 +131,7 @@ function RunEntry({ run, hasUnknown }: { run: Run; hasUnknown: boolean }) {
       <div className="flex items-start justify-between gap-3">
         <div className="min-w-0">
           <p className="flex flex-wrap items-center gap-x-3">
-            <Link to={paths.run(run.id)} className="font-semibold text-indigo no-underline after:absolute after:inset-0">
+            <Link to={paths.run(run.id)} className="inline-block py-px font-semibold text-indigo no-underline after:absolute after:inset-0">
               Run {run.number}
             </Link>
             <RunState run={run} />

@@ -99,11 +99,28 @@ function SettingsForm({ unknownId, revision, standing, initial, onClose }: Setti
           <p className="mb-1 text-faded">
             <Formula formula={revision.formula} className="text-ink" />, evidence revision {revision.number}
           </p>
-          <EstimateLine unknownId={unknownId} revisionId={revision.id} cpuSecondsLeft={quota.cpuSecondsPerMonth - usedCpuSeconds - reservedCpuSeconds} />
+          <EstimateLine
+            unknownId={unknownId}
+            revisionId={revision.id}
+            cpuSecondsLeft={quota.cpuSecondsPerMonth - usedCpuSeconds - reservedCpuSeconds}
+          />
         </div>
         <div className="grid gap-4 tablet:grid-cols-2">
-          <NumberInput label="Candidates to keep" hint="The best ones; every constitution is counted and weighed all the same." value={draft.keep} error={check.keep} onValueChange={(keep) => setDraft({ ...draft, keep })} />
-          <NumberInput label="Time limit" unit="s" hint="Empty: no limit. A run that hits it is marked incomplete." value={draft.maxSeconds} error={check.maxSeconds} onValueChange={(maxSeconds) => setDraft({ ...draft, maxSeconds })} />
+          <NumberInput
+            label="Candidates to keep"
+            hint="The best ones; every constitution is counted and weighed all the same."
+            value={draft.keep}
+            error={check.keep}
+            onValueChange={(keep) => setDraft({ ...draft, keep })}
+          />
+          <NumberInput
+            label="Time limit"
+            unit="s"
+            hint="Empty: no limit. A run that hits it is marked incomplete."
+            value={draft.maxSeconds}
+            error={check.maxSeconds}
+            onValueChange={(maxSeconds) => setDraft({ ...draft, maxSeconds })}
+          />
         </div>
         <section aria-label="Your quota" className="border-t border-seam pt-4">
           <QuotaStanding standing={standing} />

@@ -12,7 +12,10 @@ import { RUNS_PAGE_SIZE, teamRunsQuery, type TeamRunFilter } from '../../../lib/
 import { useCurrentTeam } from '../../../lib/session';
 import { RunsTable } from '../components/runs-table';
 
-const STATUS_OPTIONS: ReadonlyArray<SelectOption<TeamRunFilter['status']>> = [{ value: 'all', label: 'All states' }, ...RUN_STATUSES.map((status) => ({ value: status, label: RUN_STATUS_LOOKS[status].word }))];
+const STATUS_OPTIONS: ReadonlyArray<SelectOption<TeamRunFilter['status']>> = [
+  { value: 'all', label: 'All states' },
+  ...RUN_STATUSES.map((status) => ({ value: status, label: RUN_STATUS_LOOKS[status].word })),
+];
 
 function readFilter(search: URLSearchParams): TeamRunFilter {
   const status = RUN_STATUSES.find((known) => known === search.get('status')) ?? 'all';
@@ -31,14 +34,25 @@ function TeamRuns({ teamId }: { teamId: string }) {
   const [search, setSearch] = useSearchParams();
   const filter = readFilter(search);
   const { data, error, refetch } = useQuery(teamRunsQuery(teamId, filter));
-  const change = (next: TeamRunFilter) => setSearch({ ...(next.status === 'all' ? {} : { status: next.status }), ...(next.page === 1 ? {} : { page: String(next.page) }) });
+  const change = (next: TeamRunFilter) =>
+    setSearch({ ...(next.status === 'all' ? {} : { status: next.status }), ...(next.page === 1 ? {} : { page: String(next.page) }) });
   const isEmpty = data !== undefined && data.rows.length === 0;
   return (
     <>
       <PageHeader
         title="Runs"
         lead="Every search of the team, newest first."
-        actions={<Select label="State" isLabelHidden options={STATUS_OPTIONS} value={filter.status} onChange={(event) => change({ status: STATUS_OPTIONS.find((option) => option.value === event.target.value)?.value ?? 'all', page: 1 })} />}
+        actions={
+          <Select
+            label="State"
+            isLabelHidden
+            options={STATUS_OPTIONS}
+            value={filter.status}
+            onChange={(event) =>
+              change({ status: STATUS_OPTIONS.find((option) => option.value === event.target.value)?.value ?? 'all', page: 1 })
+            }
+          />
+        }
       />
       <Panel isFlush>
         {data === undefined ? (
@@ -59,7 +73,9 @@ function TeamRuns({ teamId }: { teamId: string }) {
           <RunsTable runs={data.rows} caption="Runs of the team" hasUnknown />
         )}
       </Panel>
-      {data === undefined || data.total <= RUNS_PAGE_SIZE ? null : <Pagination page={filter.page} pageSize={RUNS_PAGE_SIZE} total={data.total} onPage={(page) => change({ ...filter, page })} />}
+      {data === undefined || data.total <= RUNS_PAGE_SIZE ? null : (
+        <Pagination page={filter.page} pageSize={RUNS_PAGE_SIZE} total={data.total} onPage={(page) => change({ ...filter, page })} />
+      )}
     </>
   );
 }

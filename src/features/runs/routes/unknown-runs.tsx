@@ -42,16 +42,38 @@ export function Component() {
           <ErrorState error={runs.error} onRetry={() => void runs.refetch()} />
         )
       ) : isEmpty ? (
-        <NoRuns unknownId={unknownId} hasEvidence={currentRevisionId !== null} startButton={startButton} canSaveEvidence={abilities.saveEvidence} />
+        <NoRuns
+          unknownId={unknownId}
+          hasEvidence={currentRevisionId !== null}
+          startButton={startButton}
+          canSaveEvidence={abilities.saveEvidence}
+        />
       ) : (
         <RunsTable runs={runs.data.runs} caption="Runs of this unknown" />
       )}
-      {isStarting && currentRevisionId !== null ? <StartRunDialog unknownId={unknownId} teamId={unknownRow.teamId} revisionId={currentRevisionId} onClose={() => setIsStarting(false)} /> : null}
+      {isStarting && currentRevisionId !== null ? (
+        <StartRunDialog
+          unknownId={unknownId}
+          teamId={unknownRow.teamId}
+          revisionId={currentRevisionId}
+          onClose={() => setIsStarting(false)}
+        />
+      ) : null}
     </Panel>
   );
 }
 
-function NoRuns({ unknownId, hasEvidence, startButton, canSaveEvidence }: { unknownId: string; hasEvidence: boolean; startButton: ReactNode; canSaveEvidence: boolean }) {
+function NoRuns({
+  unknownId,
+  hasEvidence,
+  startButton,
+  canSaveEvidence,
+}: {
+  unknownId: string;
+  hasEvidence: boolean;
+  startButton: ReactNode;
+  canSaveEvidence: boolean;
+}) {
   if (!hasEvidence) {
     return (
       <EmptyState

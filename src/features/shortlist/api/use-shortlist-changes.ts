@@ -18,7 +18,9 @@ export function useUpdateItem(unknownId: string, itemId: string) {
     // Changes of one item reach the server in the order in which they were made.
     scope: { id: `shortlist-item-${itemId}` },
     onSuccess: (item) => {
-      queryClient.setQueryData(shortlistQuery(unknownId).queryKey, (list) => (list === undefined ? list : { items: list.items.map((other) => (other.id === item.id ? item : other)) }));
+      queryClient.setQueryData(shortlistQuery(unknownId).queryKey, (list) =>
+        list === undefined ? list : { items: list.items.map((other) => (other.id === item.id ? item : other)) },
+      );
     },
   });
 }
@@ -29,7 +31,9 @@ export function useStrikeOut(unknownId: string, itemId: string) {
     mutationFn: () => callEndpoint('removeShortlistItem', { params: { itemId } }),
     meta: { showsOwnErrors: true },
     onSuccess: async () => {
-      queryClient.setQueryData(shortlistQuery(unknownId).queryKey, (list) => (list === undefined ? list : { items: list.items.filter((other) => other.id !== itemId) }));
+      queryClient.setQueryData(shortlistQuery(unknownId).queryKey, (list) =>
+        list === undefined ? list : { items: list.items.filter((other) => other.id !== itemId) },
+      );
       await queryClient.invalidateQueries({ queryKey: unknownReadKeys.all });
     },
   });

@@ -34,7 +34,15 @@ export function NoteField({ unknownId, item }: { unknownId: string; item: Shortl
     return () => clearTimeout(timer.current);
   }, [typed]);
 
-  const state = update.isPending ? 'Saving …' : update.isError && isDirty ? `Not saved: ${errorMessage(update.error)}` : isDirty ? 'Not saved yet' : update.isSuccess ? 'Saved' : '';
+  const state = update.isPending
+    ? 'Saving …'
+    : update.isError && isDirty
+      ? `Not saved: ${errorMessage(update.error)}`
+      : isDirty
+        ? 'Not saved yet'
+        : update.isSuccess
+          ? 'Saved'
+          : '';
   return (
     <div>
       {draft.offered === null || draft.offered.value === item.note || typed !== null ? null : (

@@ -26,9 +26,18 @@ export function ShortlistCard({ unknownId, item }: { unknownId: string; item: Sh
   const verdict = update.isPending ? (update.variables.verdict ?? item.verdict) : item.verdict;
   const origin = `Rank ${snapshot.rank} of run ${snapshot.runNumber}`;
   return (
-    <article aria-label={origin} className="grid gap-x-6 gap-y-4 rounded-panel border border-seam bg-cloth p-5 tablet:grid-cols-[260px_minmax(0,1fr)]">
+    <article
+      aria-label={origin}
+      className="grid gap-x-6 gap-y-4 rounded-panel border border-seam bg-cloth p-5 tablet:grid-cols-[260px_minmax(0,1fr)]"
+    >
       <div className={classNames('flex flex-col items-center', verdict === 'refuted' && 'opacity-60')}>
-        <StructureDrawing smiles={item.smiles} width={260} height={180} alt={`Structure kept as rank ${snapshot.rank} of run ${snapshot.runNumber}`} isExpandable />
+        <StructureDrawing
+          smiles={item.smiles}
+          width={260}
+          height={180}
+          alt={`Structure kept as rank ${snapshot.rank} of run ${snapshot.runNumber}`}
+          isExpandable
+        />
       </div>
       <div className="min-w-0 space-y-4">
         <div className="flex flex-wrap items-start justify-between gap-x-4 gap-y-2">
@@ -51,22 +60,43 @@ export function ShortlistCard({ unknownId, item }: { unknownId: string; item: Sh
           <VerdictChoice verdict={verdict} onChoose={item.abilities.update ? (chosen) => update.mutate({ verdict: chosen }) : null} />
         </div>
         <InlineError message={update.isError ? `The verdict was not saved. ${errorMessage(update.error)}` : undefined} />
-        {item.abilities.update ? <NoteField unknownId={unknownId} item={item} /> : item.note === '' ? <p className="text-faded">No note.</p> : <p className="whitespace-pre-wrap">{item.note}</p>}
+        {item.abilities.update ? (
+          <NoteField unknownId={unknownId} item={item} />
+        ) : item.note === '' ? (
+          <p className="text-faded">No note.</p>
+        ) : (
+          <p className="whitespace-pre-wrap">{item.note}</p>
+        )}
         <footer className="flex flex-wrap items-center justify-between gap-3 text-small text-faded">
           <p>
             Kept by {item.addedBy.name}, <Time iso={item.addedAt} />
           </p>
           {item.abilities.remove ? (
-            <Button variant="quiet" size="small" className="text-madder!" icon={<Trash2 aria-hidden="true" className="size-4" />} onClick={() => setIsAsking(true)}>
+            <Button
+              variant="quiet"
+              size="small"
+              className="text-madder!"
+              icon={<Trash2 aria-hidden="true" className="size-4" />}
+              onClick={() => setIsAsking(true)}
+            >
               Strike out
             </Button>
           ) : null}
         </footer>
       </div>
       {isAsking ? (
-        <ConfirmDialog title="Strike this structure out?" confirmLabel="Strike out" isDestructive isBusy={strikeOut.isPending} error={strikeOut.isError ? errorMessage(strikeOut.error) : undefined} onCancel={() => setIsAsking(false)} onConfirm={() => strikeOut.mutate()}>
+        <ConfirmDialog
+          title="Strike this structure out?"
+          confirmLabel="Strike out"
+          isDestructive
+          isBusy={strikeOut.isPending}
+          error={strikeOut.isError ? errorMessage(strikeOut.error) : undefined}
+          onCancel={() => setIsAsking(false)}
+          onConfirm={() => strikeOut.mutate()}
+        >
           <p>
-            {origin} leaves the shortlist{item.note === '' && item.verdict === 'open' ? '' : ' together with its note and verdict'}. To remember that it was considered, set its verdict to refuted instead.
+            {origin} leaves the shortlist{item.note === '' && item.verdict === 'open' ? '' : ' together with its note and verdict'}. To
+            remember that it was considered, set its verdict to refuted instead.
           </p>
         </ConfirmDialog>
       ) : null}

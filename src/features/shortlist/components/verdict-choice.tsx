@@ -21,7 +21,13 @@ export function VerdictChoice({ verdict, onChoose }: { verdict: Verdict; onChoos
         const { icon: Icon, word } = VERDICT_LOOKS[option];
         const isChosen = option === verdict;
         return (
-          <label key={option} className={classNames('inline-flex min-h-8 items-center gap-1.5 px-2.5 text-table font-semibold has-focus-visible:outline-2 has-focus-visible:-outline-offset-2 has-focus-visible:outline-indigo', isChosen ? CHOSEN[option] : 'text-faded hover:bg-fold')}>
+          <label
+            key={option}
+            className={classNames(
+              'inline-flex min-h-8 items-center gap-1.5 px-2.5 text-table font-semibold has-focus-visible:outline-2 has-focus-visible:-outline-offset-2 has-focus-visible:outline-indigo',
+              isChosen ? CHOSEN[option] : 'text-faded hover:bg-fold',
+            )}
+          >
             <input type="radio" name={name} value={option} checked={isChosen} onChange={() => onChoose(option)} className="sr-only" />
             <Icon aria-hidden="true" className="size-4" />
             {word}

@@ -22,13 +22,28 @@ export function Component() {
   const { data: unknownRow } = useSuspenseQuery(unknownQuery(unknownId));
   const { data, error, refetch } = useQuery(shortlistQuery(unknownId));
   if (data === undefined) {
-    return <Panel>{error === null ? <LoadingState label="Loading the shortlist" lines={8} className="p-0" /> : <ErrorState error={error} onRetry={() => void refetch()} />}</Panel>;
+    return (
+      <Panel>
+        {error === null ? (
+          <LoadingState label="Loading the shortlist" lines={8} className="p-0" />
+        ) : (
+          <ErrorState error={error} onRetry={() => void refetch()} />
+        )}
+      </Panel>
+    );
   }
   if (data.items.length === 0) {
     const { lastRun } = unknownRow;
     return (
       <Panel isFlush>
-        <EmptyState title="Nothing kept yet" action={<ButtonLink to={lastRun === null ? paths.unknownRuns(unknownId) : paths.run(lastRun.id)}>{lastRun === null ? 'Go to the runs' : `Open run ${lastRun.number}`}</ButtonLink>}>
+        <EmptyState
+          title="Nothing kept yet"
+          action={
+            <ButtonLink to={lastRun === null ? paths.unknownRuns(unknownId) : paths.run(lastRun.id)}>
+              {lastRun === null ? 'Go to the runs' : `Open run ${lastRun.number}`}
+            </ButtonLink>
+          }
+        >
           Candidates kept from a ranking gather here, with notes and a verdict each. They stay even when their run is removed.
         </EmptyState>
       </Panel>

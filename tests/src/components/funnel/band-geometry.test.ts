@@ -82,8 +82,18 @@ describe('the layout of a finished run', () => {
   it('keeps every count of the funnel in the words beside the picture', () => {
     const funnel: Funnel = [
       { stage: 'constitutions', entered: 300, passed: 300, rejections: [] },
-      { stage: 'plausibility', entered: 300, passed: 212, rejections: [{ reason: 'allene', text: 'Cumulated double bonds in a small ring', count: 88 }] },
-      { stage: 'signals', entered: 212, passed: 40, rejections: [{ reason: 'carbonCount', text: 'Fewer carbon environments than signals', count: 172 }] },
+      {
+        stage: 'plausibility',
+        entered: 300,
+        passed: 212,
+        rejections: [{ reason: 'allene', text: 'Cumulated double bonds in a small ring', count: 88 }],
+      },
+      {
+        stage: 'signals',
+        entered: 212,
+        passed: 40,
+        rejections: [{ reason: 'carbonCount', text: 'Fewer carbon environments than signals', count: 172 }],
+      },
       { stage: 'ranked', entered: 40, passed: 40, rejections: [] },
     ];
     const text = describeBand(bandFromFunnel(funnel), String);

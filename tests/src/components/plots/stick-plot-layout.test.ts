@@ -1,6 +1,14 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { axisTicks, panRange, spreadLabels, stickHeight, wholeRange, zoomRange, type Stick } from '../../../../src/components/plots/stick-plot-layout.js';
+import {
+  axisTicks,
+  panRange,
+  spreadLabels,
+  stickHeight,
+  wholeRange,
+  zoomRange,
+  type Stick,
+} from '../../../../src/components/plots/stick-plot-layout.js';
 
 const sticks = (nucleus: '13C' | '1H'): fc.Arbitrary<Stick[]> =>
   fc.array(
@@ -42,7 +50,10 @@ describe('axis ticks', () => {
 });
 
 describe('spread labels', () => {
-  const placing = fc.tuple(fc.array(fc.double({ min: -20, max: 420, noNaN: true }), { maxLength: 25 }), fc.double({ min: 4, max: 16, noNaN: true }));
+  const placing = fc.tuple(
+    fc.array(fc.double({ min: -20, max: 420, noNaN: true }), { maxLength: 25 }),
+    fc.double({ min: 4, max: 16, noNaN: true }),
+  );
 
   it('keep their distance, their order and the frame', () => {
     fc.assert(
@@ -75,12 +86,17 @@ describe('zoom and pan', () => {
 
   it('never leave the whole range', () => {
     fc.assert(
-      fc.property(fc.double({ min: 0.05, max: 4, noNaN: true }), fc.double({ min: 0, max: 220, noNaN: true }), fc.double({ min: -3, max: 3, noNaN: true }), (factor, about, share) => {
-        const range = panRange(zoomRange({ low: 40, high: 140 }, factor, Math.min(140, Math.max(40, about)), whole), share, whole);
-        expect(range.low).toBeGreaterThanOrEqual(-1e-9);
-        expect(range.high).toBeLessThanOrEqual(220 + 1e-9);
-        expect(range.high).toBeGreaterThan(range.low);
-      }),
+      fc.property(
+        fc.double({ min: 0.05, max: 4, noNaN: true }),
+        fc.double({ min: 0, max: 220, noNaN: true }),
+        fc.double({ min: -3, max: 3, noNaN: true }),
+        (factor, about, share) => {
+          const range = panRange(zoomRange({ low: 40, high: 140 }, factor, Math.min(140, Math.max(40, about)), whole), share, whole);
+          expect(range.low).toBeGreaterThanOrEqual(-1e-9);
+          expect(range.high).toBeLessThanOrEqual(220 + 1e-9);
+          expect(range.high).toBeGreaterThan(range.low);
+        },
+      ),
     );
   });
 });
