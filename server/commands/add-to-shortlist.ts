@@ -15,7 +15,12 @@ import type { Actor } from '../policies/actor.js';
  * @throws InvalidInputError when the candidate is not one of this unknown
  * @throws ConflictError `alreadyShortlisted`, whichever run it came from
  */
-export async function addToShortlist(context: AppContext, actor: Actor, unknownId: string, input: z.output<typeof shortlistAddRequest>): Promise<ShortlistItem> {
+export async function addToShortlist(
+  context: AppContext,
+  actor: Actor,
+  unknownId: string,
+  input: z.output<typeof shortlistAddRequest>,
+): Promise<ShortlistItem> {
   return await context.sequelize.transaction(async (transaction) => {
     const unknown = await Unknown.findByPk(unknownId, { transaction, lock: transaction.LOCK.UPDATE, rejectOnEmpty: true });
     const candidate = await Candidate.findOne({
@@ -26,7 +31,11 @@ export async function addToShortlist(context: AppContext, actor: Actor, unknownI
     if (candidate === null || candidate.run === undefined) {
       throw new InvalidInputError([{ path: 'candidateId', message: `expected a candidate of a run of ${unknown.code}` }]);
     }
-    const [shortlist] = await Shortlist.findOrCreate({ where: { unknownId }, defaults: { teamId: unknown.teamId, unknownId }, transaction });
+    const [shortlist] = await Shortlist.findOrCreate({
+      where: { unknownId },
+      defaults: { teamId: unknown.teamId, unknownId },
+      transaction,
+    });
     const kept = await ShortlistItem.findOne({ where: { shortlistId: shortlist.id, idcodeHash: candidate.idcodeHash }, transaction });
     if (kept !== null) throw new ConflictError('alreadyShortlisted', 'This structure is on the shortlist already.');
     const { smiles, idcode, idcodeHash, rank, probability, carbonDeviation, protonDeviation } = candidate;
@@ -46,7 +55,13 @@ export async function addToShortlist(context: AppContext, actor: Actor, unknownI
       },
       { transaction },
     );
-    await recordAudit(transaction, actor, 'unknown.editShortlist', { kind: 'shortlist', id: item.id, label: `of ${unknown.code}`, teamId: unknown.teamId }, { added: smiles });
+    await recordAudit(
+      transaction,
+      actor,
+      'unknown.editShortlist',
+      { kind: 'shortlist', id: item.id, label: `of ${unknown.code}`, teamId: unknown.teamId },
+      { added: smiles },
+    );
     return item;
   });
 }

@@ -8,10 +8,17 @@ import type { Unknown } from '../models/unknown.js';
  * @throws ConflictError `noEvidence` when nothing has been saved yet
  * @throws InvalidInputError when the revision is not of this unknown
  */
-export async function chooseRevision(unknown: Unknown, revisionId: string | undefined, transaction?: Transaction): Promise<EvidenceRevision> {
+export async function chooseRevision(
+  unknown: Unknown,
+  revisionId: string | undefined,
+  transaction?: Transaction,
+): Promise<EvidenceRevision> {
   const id = revisionId ?? unknown.currentRevisionId;
   if (id === null) throw new ConflictError('noEvidence', 'There is no evidence yet. Save at least a molecular formula first.');
-  const revision = await EvidenceRevision.findOne({ where: { id, unknownId: unknown.id }, ...(transaction === undefined ? {} : { transaction }) });
+  const revision = await EvidenceRevision.findOne({
+    where: { id, unknownId: unknown.id },
+    ...(transaction === undefined ? {} : { transaction }),
+  });
   if (revision === null) throw new InvalidInputError([{ path: 'revisionId', message: `expected a revision of ${unknown.code}` }]);
   return revision;
 }

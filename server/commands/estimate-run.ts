@@ -10,7 +10,11 @@ const SEED = 1;
 const MAX_SECONDS = 3;
 
 /** Size of the search that a run with these settings would make, by random probing. Saves nothing. */
-export async function estimateRun(context: AppContext, unknown: Unknown, input: z.output<typeof runStartRequest>): Promise<z.input<typeof estimateResponse>> {
+export async function estimateRun(
+  context: AppContext,
+  unknown: Unknown,
+  input: z.output<typeof runStartRequest>,
+): Promise<z.input<typeof estimateResponse>> {
   const { evidence } = await chooseRevision(unknown, input.revisionId);
   return await ask(context, 'estimate', { evidence, probes: PROBES, seed: SEED, maxSeconds: MAX_SECONDS }, 'evidence.');
 }

@@ -19,7 +19,8 @@ export async function explainStructure(context: AppContext, run: Run, smiles: st
     case 'survives': {
       const keyHash = createHash('sha256').update(explanation.key).digest('hex');
       const kept = await Candidate.findOne({ where: { runId: run.id, keyHash }, attributes: ['id', 'rank', 'probability'] });
-      if (kept !== null) return { kind: 'ranked', smiles: explanation.smiles, rank: kept.rank, candidateId: kept.id, probability: kept.probability };
+      if (kept !== null)
+        return { kind: 'ranked', smiles: explanation.smiles, rank: kept.rank, candidateId: kept.id, probability: kept.probability };
       const lowest = await Candidate.findOne({ where: { runId: run.id }, attributes: ['score'], order: [['rank', 'DESC']] });
       return { kind: 'notKept', smiles: explanation.smiles, score: explanation.score, lowestKeptScore: lowest?.score ?? null };
     }

@@ -4,7 +4,10 @@ import type { AppContext } from '../app-context.js';
 import { ask } from '../compute/ask.js';
 
 /** Spectra of a structure that somebody drew; nothing is saved. */
-export async function predictSpectra(context: AppContext, input: z.output<typeof predictRequest>): Promise<z.input<typeof predictResponse>> {
+export async function predictSpectra(
+  context: AppContext,
+  input: z.output<typeof predictRequest>,
+): Promise<z.input<typeof predictResponse>> {
   const { carbons, protons, smiles, notes } = await ask(context, 'predict', input);
   return {
     smiles,

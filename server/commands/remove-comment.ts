@@ -8,6 +8,11 @@ export async function removeComment(context: AppContext, actor: Actor, comment: 
   await context.sequelize.transaction(async (transaction) => {
     const unknown = await Unknown.findByPk(comment.unknownId, { transaction, rejectOnEmpty: true });
     await comment.destroy({ transaction });
-    await recordAudit(transaction, actor, 'comment.remove', { kind: 'comment', id: comment.id, label: `on ${unknown.code}`, teamId: comment.teamId });
+    await recordAudit(transaction, actor, 'comment.remove', {
+      kind: 'comment',
+      id: comment.id,
+      label: `on ${unknown.code}`,
+      teamId: comment.teamId,
+    });
   });
 }

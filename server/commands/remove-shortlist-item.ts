@@ -10,6 +10,12 @@ export async function removeShortlistItem(context: AppContext, actor: Actor, ite
     const unknown = await Unknown.findByPk(item.unknownId, { attributes: ['code'], transaction, rejectOnEmpty: true });
     await item.destroy({ transaction });
     const detail = { removed: item.smiles, verdict: item.verdict, note: item.note };
-    await recordAudit(transaction, actor, 'shortlistItem.remove', { kind: 'shortlist', id: item.id, label: `of ${unknown.code}`, teamId: item.teamId }, detail);
+    await recordAudit(
+      transaction,
+      actor,
+      'shortlistItem.remove',
+      { kind: 'shortlist', id: item.id, label: `of ${unknown.code}`, teamId: item.teamId },
+      detail,
+    );
   });
 }

@@ -7,6 +7,12 @@ import type { Actor } from '../policies/actor.js';
 export async function removeTeamFragment(context: AppContext, actor: Actor, fragment: TeamFragment): Promise<void> {
   await context.sequelize.transaction(async (transaction) => {
     await fragment.destroy({ transaction });
-    await recordAudit(transaction, actor, 'fragment.remove', { kind: 'fragment', id: fragment.id, label: fragment.name, teamId: fragment.teamId }, { smiles: fragment.smiles });
+    await recordAudit(
+      transaction,
+      actor,
+      'fragment.remove',
+      { kind: 'fragment', id: fragment.id, label: fragment.name, teamId: fragment.teamId },
+      { smiles: fragment.smiles },
+    );
   });
 }

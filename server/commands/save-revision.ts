@@ -34,10 +34,14 @@ export async function saveRevision(context: AppContext, actor: Actor, unknownId:
     const unknown = await Unknown.findByPk(unknownId, { transaction, lock: transaction.LOCK.UPDATE, rejectOnEmpty: true });
     const latest = await latestNumber(unknownId, transaction);
     if (latest !== input.basedOn) {
-      throw new ConflictError('revisionConflict', `Somebody saved revision ${latest} meanwhile. Compare it with yours and save again on top of it.`, {
-        basedOn: input.basedOn,
-        latest,
-      });
+      throw new ConflictError(
+        'revisionConflict',
+        `Somebody saved revision ${latest} meanwhile. Compare it with yours and save again on top of it.`,
+        {
+          basedOn: input.basedOn,
+          latest,
+        },
+      );
     }
     return await addRevision(transaction, actor, unknown, { evidence: input.evidence, comment: input.comment, notes, number: latest + 1 });
   });
@@ -51,9 +55,15 @@ export async function restoreRevision(context: AppContext, actor: Actor, old: Ev
   const { notes } = requireConsistentEvidence(old.evidence);
   return await context.sequelize.transaction(async (transaction) => {
     const unknown = await Unknown.findByPk(old.unknownId, { transaction, lock: transaction.LOCK.UPDATE, rejectOnEmpty: true });
-    if (unknown.currentRevisionId === old.id) throw new ConflictError('alreadyCurrent', `Revision ${old.number} is the current one already.`);
+    if (unknown.currentRevisionId === old.id)
+      throw new ConflictError('alreadyCurrent', `Revision ${old.number} is the current one already.`);
     const number = (await latestNumber(unknown.id, transaction)) + 1;
-    return await addRevision(transaction, actor, unknown, { evidence: old.evidence, comment: `Revision ${old.number} restored`, notes, number });
+    return await addRevision(transaction, actor, unknown, {
+      evidence: old.evidence,
+      comment: `Revision ${old.number} restored`,
+      notes,
+      number,
+    });
   });
 }
 
@@ -68,14 +78,34 @@ interface NewRevision {
   readonly number: number;
 }
 
-async function addRevision(transaction: Transaction, actor: Actor, unknown: Unknown, { evidence, comment, notes, number }: NewRevision): Promise<EvidenceRevision> {
+async function addRevision(
+  transaction: Transaction,
+  actor: Actor,
+  unknown: Unknown,
+  { evidence, comment, notes, number }: NewRevision,
+): Promise<EvidenceRevision> {
   const parsed = parseFormula(evidence.formula);
   const formula = parsed.ok ? formatHill(parsed.counts) : evidence.formula;
   const revision = await EvidenceRevision.create(
-    { teamId: unknown.teamId, unknownId: unknown.id, number, authorId: actor.userId, comment, formula, evidence: { ...evidence, formula }, notes: [...notes] },
+    {
+      teamId: unknown.teamId,
+      unknownId: unknown.id,
+      number,
+      authorId: actor.userId,
+      comment,
+      formula,
+      evidence: { ...evidence, formula },
+      notes: [...notes],
+    },
     { transaction },
   );
   await unknown.update({ currentRevisionId: revision.id, formula }, { transaction });
-  await recordAudit(transaction, actor, 'unknown.saveEvidence', { kind: 'unknown', id: unknown.id, label: unknown.code, teamId: unknown.teamId }, { revision: number });
+  await recordAudit(
+    transaction,
+    actor,
+    'unknown.saveEvidence',
+    { kind: 'unknown', id: unknown.id, label: unknown.code, teamId: unknown.teamId },
+    { revision: number },
+  );
   return revision;
 }

@@ -16,7 +16,12 @@ import { requireConsistentEvidence } from './save-revision.js';
  * Starts a run: reserves its share of the quota, freezes evidence and settings, hands it to the queue.
  * @throws ConflictError `quotaExceeded` with the figures, `noEvidence`, `unknownShelved`
  */
-export async function startRun(context: AppContext, actor: Actor, unknownId: string, input: z.output<typeof runStartRequest>): Promise<Run> {
+export async function startRun(
+  context: AppContext,
+  actor: Actor,
+  unknownId: string,
+  input: z.output<typeof runStartRequest>,
+): Promise<Run> {
   const { compute, queue, sequelize } = context;
   if (compute === undefined || queue === undefined) throw new UnavailableError('noCompute', 'The server runs without its compute threads.');
   // Read committed: what is counted once the membership is locked must include what others committed while it was waited for.

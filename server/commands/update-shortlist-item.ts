@@ -7,7 +7,12 @@ import { Unknown } from '../models/unknown.js';
 import type { Actor } from '../policies/actor.js';
 
 /** Changes verdict or note of a shortlisted candidate. */
-export async function updateShortlistItem(context: AppContext, actor: Actor, item: ShortlistItem, input: z.output<typeof shortlistUpdateRequest>): Promise<void> {
+export async function updateShortlistItem(
+  context: AppContext,
+  actor: Actor,
+  item: ShortlistItem,
+  input: z.output<typeof shortlistUpdateRequest>,
+): Promise<void> {
   await context.sequelize.transaction(async (transaction) => {
     const unknown = await Unknown.findByPk(item.unknownId, { attributes: ['code'], transaction, rejectOnEmpty: true });
     const before = item.verdict;
@@ -16,6 +21,12 @@ export async function updateShortlistItem(context: AppContext, actor: Actor, ite
       { transaction },
     );
     const detail = { smiles: item.smiles, ...(before === item.verdict ? {} : { verdict: item.verdict, before }) };
-    await recordAudit(transaction, actor, 'shortlistItem.update', { kind: 'shortlist', id: item.id, label: `of ${unknown.code}`, teamId: item.teamId }, detail);
+    await recordAudit(
+      transaction,
+      actor,
+      'shortlistItem.update',
+      { kind: 'shortlist', id: item.id, label: `of ${unknown.code}`, teamId: item.teamId },
+      detail,
+    );
   });
 }

@@ -127,13 +127,27 @@ class EmbeddedQueue implements RunQueue {
   /** @returns null when the run cannot be gone on with; its row then says why */
   async #describeTask(run: Run): Promise<RunTask | null> {
     const evidence = evidenceDocument.safeParse(run.evidence);
-    if (!evidence.success) return this.#interrupt(run, 'evidenceUnreadable', 'The server was updated while this run was under way, and its evidence cannot be read any more. Save the evidence again and start a new run.');
+    if (!evidence.success)
+      return this.#interrupt(
+        run,
+        'evidenceUnreadable',
+        'The server was updated while this run was under way, and its evidence cannot be read any more. Save the evidence again and start a new run.',
+      );
     const wasKilled = run.status === 'running';
     if (wasKilled) await this.#store.countInterruption(run.id);
     const shards = await this.#store.loadShards(run.id);
-    if (shards === null) return this.#interrupt(run, 'planOutdated', 'The server was updated while this run was under way, and its search plan no longer holds. Start the run again.');
+    if (shards === null)
+      return this.#interrupt(
+        run,
+        'planOutdated',
+        'The server was updated while this run was under way, and its search plan no longer holds. Start the run again.',
+      );
     if (shards.some(({ interruptions, result }) => result === null && interruptions >= MAX_INTERRUPTIONS)) {
-      return this.#interrupt(run, 'interruptedTooOften', `The server was killed ${MAX_INTERRUPTIONS} times while this run was under way; it was not taken up again.`);
+      return this.#interrupt(
+        run,
+        'interruptedTooOften',
+        `The server was killed ${MAX_INTERRUPTIONS} times while this run was under way; it was not taken up again.`,
+      );
     }
     const lastDone = shards.reduce((latest, { finishedAt }) => Math.max(latest, finishedAt?.getTime() ?? 0), 0);
     return {
@@ -150,8 +164,16 @@ class EmbeddedQueue implements RunQueue {
 
   async #interrupt(run: Run, code: string, message: string): Promise<null> {
     const end: RunEnd = {
-      status: 'interrupted', complete: false, constitutionCount: null, multigraphCount: null, survivorCount: null, funnel: null,
-      logSumExp: null, noneOfTheseProbability: null, candidates: [], failure: { code, message },
+      status: 'interrupted',
+      complete: false,
+      constitutionCount: null,
+      multigraphCount: null,
+      survivorCount: null,
+      funnel: null,
+      logSumExp: null,
+      noneOfTheseProbability: null,
+      candidates: [],
+      failure: { code, message },
       cpuSeconds: await this.#store.sumCpuSeconds(run.id),
     };
     await this.#store.end(run, end, new Date());

@@ -24,8 +24,18 @@ const IDLE_THREAD_MS = 60_000;
 export function createComputePool(options: PoolOptions = {}): ComputeService {
   const threadCount = Math.max(1, options.threads ?? availableParallelism());
   const onFault = options.onFault ?? (() => undefined);
-  const shards = new JobThreads({ workerUrl: options.workerUrl ?? defaultWorkerUrl(), threads: threadCount, maxQueue: MAX_WAITING_JOBS, onFault });
-  const interactive = new JobThreads({ workerUrl: options.workerUrl ?? defaultWorkerUrl(), threads: 1, maxQueue: MAX_WAITING_INTERACTIVE_JOBS, onFault });
+  const shards = new JobThreads({
+    workerUrl: options.workerUrl ?? defaultWorkerUrl(),
+    threads: threadCount,
+    maxQueue: MAX_WAITING_JOBS,
+    onFault,
+  });
+  const interactive = new JobThreads({
+    workerUrl: options.workerUrl ?? defaultWorkerUrl(),
+    threads: 1,
+    maxQueue: MAX_WAITING_INTERACTIVE_JOBS,
+    onFault,
+  });
 
   return {
     threadCount,

@@ -148,7 +148,11 @@ export class RunDriver {
       const started = performance.now();
       this.#underWay.set(counters, started);
       try {
-        const answer = await compute.runJob('shard', { evidence, settings, shard, counters, deadlineEpochMs: this.#clock.deadlineEpochMs() }, { signal });
+        const answer = await compute.runJob(
+          'shard',
+          { evidence, settings, shard, counters, deadlineEpochMs: this.#clock.deadlineEpochMs() },
+          { signal },
+        );
         while (this.#writes.size >= MAX_PENDING_WRITES) await Promise.race(this.#writes);
         return answer;
       } catch (error) {
@@ -188,7 +192,7 @@ export class RunDriver {
    */
   async #perform<T>(what: string, job: (signal: AbortSignal) => Promise<T | null>): Promise<T | null> {
     const lane = { teamId: this.#task.teamId, runId: this.#task.id };
-    for (let crashes = 0; !this.#isHalted; ) {
+    for (let crashes = 0; !this.#isHalted;) {
       const abort = new AbortController();
       try {
         return await this.#options.scheduler.schedule(lane, async () => {
@@ -207,7 +211,8 @@ export class RunDriver {
         if (abort.signal.aborted) return null;
         crashes += 1;
         this.#options.logger.warn({ runId: this.#task.id, what, crashes, err: error }, 'a compute thread ended under its job');
-        if (crashes >= MAX_CRASHES) throw new WorkerCrash(`A compute thread ended ${MAX_CRASHES} times at the same place (${what}): ${error.message}`);
+        if (crashes >= MAX_CRASHES)
+          throw new WorkerCrash(`A compute thread ended ${MAX_CRASHES} times at the same place (${what}): ${error.message}`);
       } finally {
         this.#aborts.delete(abort);
       }
@@ -262,7 +267,14 @@ export class RunDriver {
     } catch (error) {
       if (this.#isClosing) return;
       const { code, message } = this.#describeFault(error);
-      const failed: RunEnd = { ...end, status: 'failed', complete: false, candidates: [], noneOfTheseProbability: null, failure: { code, message } };
+      const failed: RunEnd = {
+        ...end,
+        status: 'failed',
+        complete: false,
+        candidates: [],
+        noneOfTheseProbability: null,
+        failure: { code, message },
+      };
       await this.#onDatabase(() => store.end(this.#task, failed, new Date())).catch((again: unknown) => this.#describeFault(again));
     }
   }
@@ -280,7 +292,8 @@ export class RunDriver {
     const isPlanned = this.#clock.shardCount !== null;
     const isCut = stop !== null || !merged.complete;
     return {
-      status: stop === null || stop.kind === 'limit' ? (isCut ? 'stopped' : 'finished') : stop.kind === 'closing' ? 'interrupted' : stop.kind,
+      status:
+        stop === null || stop.kind === 'limit' ? (isCut ? 'stopped' : 'finished') : stop.kind === 'closing' ? 'interrupted' : stop.kind,
       complete: !isCut,
       constitutionCount: isPlanned ? merged.constitutionCount : null,
       multigraphCount: isPlanned ? merged.multigraphCount : null,
@@ -303,7 +316,11 @@ export class RunDriver {
 
   #watchTime(): void {
     if (!this.#clock.isOver()) return;
-    this.#stopWith({ kind: 'limit', code: 'timeLimit', message: `Stopped at the time limit of ${this.#task.settings.maxSeconds} s; what was found by then is ranked.` });
+    this.#stopWith({
+      kind: 'limit',
+      code: 'timeLimit',
+      message: `Stopped at the time limit of ${this.#task.settings.maxSeconds} s; what was found by then is ranked.`,
+    });
   }
 
   /** Reserves more CPU seconds as they are needed; stops the run when the month has no more. */
@@ -319,7 +336,11 @@ export class RunDriver {
       this.#isExtending = false;
     }
     if (usedSeconds >= this.#reservedCpuSeconds) {
-      this.#stopWith({ kind: 'limit', code: 'quotaUsedUp', message: 'Stopped because the CPU seconds of this month are used up; what was found by then is ranked.' });
+      this.#stopWith({
+        kind: 'limit',
+        code: 'quotaUsedUp',
+        message: 'Stopped because the CPU seconds of this month are used up; what was found by then is ranked.',
+      });
     }
   }
 
@@ -339,7 +360,11 @@ export class RunDriver {
       return { kind: 'failed', code: error.failure.code, message };
     }
     if (error instanceof WorkerCrash) {
-      return { kind: 'failed', code: 'workerCrashed', message: `${error.message}. Narrow the evidence, or ask whoever runs the server to look into its log.` };
+      return {
+        kind: 'failed',
+        code: 'workerCrashed',
+        message: `${error.message}. Narrow the evidence, or ask whoever runs the server to look into its log.`,
+      };
     }
     return { kind: 'failed', ...this.#describeFault(error) };
   }

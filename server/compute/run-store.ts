@@ -160,7 +160,11 @@ export class RunStore {
     });
   }
 
-  async #saveCandidates(run: { id: string; teamId: string }, candidates: readonly RankedCandidate[], transaction: Transaction): Promise<void> {
+  async #saveCandidates(
+    run: { id: string; teamId: string },
+    candidates: readonly RankedCandidate[],
+    transaction: Transaction,
+  ): Promise<void> {
     for (let start = 0; start < candidates.length; start += CANDIDATES_PER_STATEMENT) {
       const rows = candidates.slice(start, start + CANDIDATES_PER_STATEMENT).map(({ key, ...candidate }) => ({
         ...candidate,

@@ -88,7 +88,11 @@ export const DEMO_UNKNOWNS: readonly DemoUnknown[] = [
     ],
     run: true,
     shortlist: [
-      { smiles: 'CCC(=O)Oc1ccc(C)cc1', verdict: 'confirmed', note: 'Same retention time and 1H as material made from the phenol on the shelf.' },
+      {
+        smiles: 'CCC(=O)Oc1ccc(C)cc1',
+        verdict: 'confirmed',
+        note: 'Same retention time and 1H as material made from the phenol on the shelf.',
+      },
       { smiles: 'CCOC(=O)c1ccc(C)cc1', verdict: 'refuted', note: 'An O–CH2 would be near 61 ppm; nothing is there.' },
     ],
     comments: [
@@ -182,7 +186,12 @@ export const DEMO_UNKNOWNS: readonly DemoUnknown[] = [
         comment: 'HRMS and NMR',
         evidence: {
           formula: 'C8H9ClO',
-          fragments: { required: [{ smiles: '*c1ccc(*)c(*)c1', count: 1, label: '1,2,4-trisubstituted benzene' }, { smiles: '*OC', count: 1, label: 'methoxy' }] },
+          fragments: {
+            required: [
+              { smiles: '*c1ccc(*)c(*)c1', count: 1, label: '1,2,4-trisubstituted benzene' },
+              { smiles: '*OC', count: 1, label: 'methoxy' },
+            ],
+          },
           carbonSignals: [
             { shift: 158.3, hydrogens: 0 },
             { shift: 134.8, hydrogens: 0 },
@@ -231,7 +240,10 @@ export const DEMO_UNKNOWNS: readonly DemoUnknown[] = [
             { shift: 2.58, count: 1, multiplicity: 'sept', couplings: [7.0] },
             { shift: 1.18, count: 6, multiplicity: 'd', couplings: [7.0] },
           ],
-          infraredBands: [{ wavenumber: 1737, intensity: 'strong' }, { wavenumber: 1649, intensity: 'weak' }],
+          infraredBands: [
+            { wavenumber: 1737, intensity: 'strong' },
+            { wavenumber: 1649, intensity: 'weak' },
+          ],
         },
       },
     ],

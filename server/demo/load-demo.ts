@@ -55,7 +55,11 @@ async function listAccounts(passwordByEmail: Readonly<Record<string, string>>): 
   });
 }
 
-async function load(context: LoadContext, passwordByEmail: Readonly<Record<string, string>>, announce: (line: string) => void): Promise<void> {
+async function load(
+  context: LoadContext,
+  passwordByEmail: Readonly<Record<string, string>>,
+  announce: (line: string) => void,
+): Promise<void> {
   const [team] = await Team.findOrCreate({ where: { isDemo: true }, defaults: { name: DEMO_TEAM, isDemo: true } });
   const actorByRole = await loadPeople(context, team, passwordByEmail);
   for (const [index, demo] of DEMO_UNKNOWNS.entries()) {
@@ -64,7 +68,11 @@ async function load(context: LoadContext, passwordByEmail: Readonly<Record<strin
   }
 }
 
-async function loadPeople(context: LoadContext, team: Team, passwordByEmail: Readonly<Record<string, string>>): Promise<Record<TeamRole, Actor>> {
+async function loadPeople(
+  context: LoadContext,
+  team: Team,
+  passwordByEmail: Readonly<Record<string, string>>,
+): Promise<Record<TeamRole, Actor>> {
   const actors: Partial<Record<TeamRole, Actor>> = {};
   for (const { email, name, role } of DEMO_PEOPLE) {
     const passwordHash = await hashPassword(context.config, passwordByEmail[email] ?? '');
@@ -78,10 +86,17 @@ async function loadPeople(context: LoadContext, team: Team, passwordByEmail: Rea
   return { chemist, lead, reader };
 }
 
-async function loadUnknown(context: LoadContext, team: Team, actorByRole: Readonly<Record<TeamRole, Actor>>, demo: DemoUnknown): Promise<void> {
+async function loadUnknown(
+  context: LoadContext,
+  team: Team,
+  actorByRole: Readonly<Record<TeamRole, Actor>>,
+  demo: DemoUnknown,
+): Promise<void> {
   const actor = actorByRole[demo.owner];
   const { title, description, purpose } = demo;
-  const unknown = (await Unknown.findOne({ where: { teamId: team.id, title } })) ?? (await createUnknown(context, actor, team.id, { title, description, purpose }));
+  const unknown =
+    (await Unknown.findOne({ where: { teamId: team.id, title } })) ??
+    (await createUnknown(context, actor, team.id, { title, description, purpose }));
   const savedCount = await EvidenceRevision.count({ where: { unknownId: unknown.id } });
   for (const [index, { comment, evidence }] of [...demo.revisions.entries()].slice(savedCount)) {
     await saveRevision(context, actor, unknown.id, { evidence: evidenceDocument.parse(evidence), comment, basedOn: index });

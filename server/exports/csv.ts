@@ -1,6 +1,9 @@
 import type { Candidate } from '../models/candidate.js';
 
-type CsvCandidate = Pick<Candidate, 'rank' | 'smiles' | 'idcode' | 'probability' | 'score' | 'terms' | 'carbonDeviation' | 'protonDeviation' | 'remarks'>;
+type CsvCandidate = Pick<
+  Candidate,
+  'rank' | 'smiles' | 'idcode' | 'probability' | 'score' | 'terms' | 'carbonDeviation' | 'protonDeviation' | 'remarks'
+>;
 
 const COLUMNS: ReadonlyArray<readonly [name: string, value: (candidate: CsvCandidate) => string | number | null | undefined]> = [
   ['rank', ({ rank }) => rank],

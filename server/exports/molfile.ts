@@ -17,14 +17,18 @@ export function molfile(structure: LaidOutStructure, name: string): string {
   const chargeLines: string[] = [];
   for (let start = 0; start < charged.length; start += CHARGES_PER_LINE) {
     const part = charged.slice(start, start + CHARGES_PER_LINE);
-    chargeLines.push(`M  CHG${columns(part.length, 3)}${part.map(({ number, charge }) => columns(number, 4) + columns(charge, 4)).join('')}`);
+    chargeLines.push(
+      `M  CHG${columns(part.length, 3)}${part.map(({ number, charge }) => columns(number, 4) + columns(charge, 4)).join('')}`,
+    );
   }
   return [
     name.replace(/[\r\n]+/g, ' ').slice(0, 80),
     '  Isoloom           2D',
     '',
     `${columns(atoms.length, 3)}${columns(bonds.length, 3)}  0  0  0  0  0  0  0  0999 V2000`,
-    ...atoms.map(({ symbol, x, y }) => `${coordinate(x)}${coordinate(y)}${coordinate(0)} ${symbol.padEnd(3)} 0  0  0  0  0  0  0  0  0  0  0  0`),
+    ...atoms.map(
+      ({ symbol, x, y }) => `${coordinate(x)}${coordinate(y)}${coordinate(0)} ${symbol.padEnd(3)} 0  0  0  0  0  0  0  0  0  0  0  0`,
+    ),
     ...bonds.map(({ from, to, order }) => `${columns(from + 1, 3)}${columns(to + 1, 3)}${columns(order, 3)}  0  0  0  0`),
     ...chargeLines,
     'M  END',

@@ -25,7 +25,12 @@ export function presentCandidateRow(candidate: Candidate, shortlistItemId: strin
 export function presentCandidate(
   actor: Actor,
   candidate: Candidate,
-  around: { readonly unknownId: string; readonly shortlistItemId: string | null; readonly previousId: string | null; readonly nextId: string | null },
+  around: {
+    readonly unknownId: string;
+    readonly shortlistItemId: string | null;
+    readonly previousId: string | null;
+    readonly nextId: string | null;
+  },
 ): z.input<typeof candidateResponse> {
   const { carbons, protons } = candidate.spectra;
   return {

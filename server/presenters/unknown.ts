@@ -10,7 +10,15 @@ import { presentPerson } from './person.js';
 
 function presentRunBrief(run: Run): z.input<typeof runBrief> {
   const { id, number, status, constitutionCount, survivorCount, funnel, finishedAt } = run;
-  return { id, number, status, constitutionCount, survivorCount, funnel: presentFunnel(funnel), finishedAt: finishedAt?.toISOString() ?? null };
+  return {
+    id,
+    number,
+    status,
+    constitutionCount,
+    survivorCount,
+    funnel: presentFunnel(funnel),
+    finishedAt: finishedAt?.toISOString() ?? null,
+  };
 }
 
 /** An unknown as lists show it. */
@@ -30,7 +38,12 @@ export function presentUnknownRow(unknown: Unknown, lastRun: Run | undefined): z
 }
 
 /** An unknown as its own page shows it. */
-export function presentUnknown(actor: Actor, unknown: Unknown, lastRun: Run | undefined, counts: UnknownCounts): z.input<typeof unknownResponse> {
+export function presentUnknown(
+  actor: Actor,
+  unknown: Unknown,
+  lastRun: Run | undefined,
+  counts: UnknownCounts,
+): z.input<typeof unknownResponse> {
   return {
     ...presentUnknownRow(unknown, lastRun),
     description: unknown.description,

@@ -38,7 +38,13 @@ export async function listCandidates(runId: string, query: CandidateListQuery): 
 
 /** The best candidates of a run, from `start` ranks below the first. */
 export async function listByRank(runId: string, start: number, count: number): Promise<Candidate[]> {
-  return await Candidate.findAll({ where: { runId }, attributes: { exclude: DETAILS }, order: [['rank', 'ASC']], offset: start, limit: count });
+  return await Candidate.findAll({
+    where: { runId },
+    attributes: { exclude: DETAILS },
+    order: [['rank', 'ASC']],
+    offset: start,
+    limit: count,
+  });
 }
 
 /** Equal values are ordered by rank; candidates without the value come last either way. */
@@ -46,7 +52,11 @@ function orderBy({ sort, direction }: CandidateListQuery): Order {
   const way = direction === 'ascending' ? 'ASC' : 'DESC';
   if (sort === 'rank') return [['rank', way]];
   const field = Candidate.getAttributes()[sort].field ?? sort;
-  return [[literal(`\`${field}\` IS NULL`), 'ASC'], [col(field), way], ['rank', 'ASC']];
+  return [
+    [literal(`\`${field}\` IS NULL`), 'ASC'],
+    [col(field), way],
+    ['rank', 'ASC'],
+  ];
 }
 
 /** Ids of the candidates one rank above and one below. */

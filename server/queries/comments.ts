@@ -6,7 +6,14 @@ const author = { model: User, as: 'author', attributes: ['id', 'name'], required
 
 /** Comments on an unknown, oldest first. */
 export async function listComments(unknownId: string): Promise<Comment[]> {
-  return await Comment.findAll({ where: { unknownId }, include: [author], order: [['createdAt', 'ASC'], ['id', 'ASC']] });
+  return await Comment.findAll({
+    where: { unknownId },
+    include: [author],
+    order: [
+      ['createdAt', 'ASC'],
+      ['id', 'ASC'],
+    ],
+  });
 }
 
 /** A comment in one of the actor's teams. */

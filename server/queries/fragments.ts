@@ -6,7 +6,15 @@ const createdBy = { model: User, as: 'createdBy', attributes: ['id', 'name'], re
 
 /** The library of a team, by group and name. */
 export async function listFragments(teamId: string): Promise<TeamFragment[]> {
-  return await TeamFragment.findAll({ where: { teamId }, include: [createdBy], order: [['group', 'ASC'], ['name', 'ASC'], ['id', 'ASC']] });
+  return await TeamFragment.findAll({
+    where: { teamId },
+    include: [createdBy],
+    order: [
+      ['group', 'ASC'],
+      ['name', 'ASC'],
+      ['id', 'ASC'],
+    ],
+  });
 }
 
 /** A fragment of one of the actor's teams. */

@@ -24,12 +24,18 @@ export async function listRunsOfUnknown(unknownId: string): Promise<Run[]> {
 }
 
 /** One page of a team's runs, newest first. */
-export async function listRunsOfTeam(teamId: string, { status, page, pageSize }: z.output<typeof runListQuery>): Promise<{ rows: Run[]; total: number }> {
+export async function listRunsOfTeam(
+  teamId: string,
+  { status, page, pageSize }: z.output<typeof runListQuery>,
+): Promise<{ rows: Run[]; total: number }> {
   const { rows, count } = await Run.findAndCountAll({
     where: { teamId, ...(status === 'all' ? {} : { status }) },
     attributes: { exclude: ['evidence'] },
     include: around,
-    order: [['createdAt', 'DESC'], ['id', 'ASC']],
+    order: [
+      ['createdAt', 'DESC'],
+      ['id', 'ASC'],
+    ],
     offset: (page - 1) * pageSize,
     limit: pageSize,
   });

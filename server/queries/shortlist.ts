@@ -6,7 +6,14 @@ const addedBy = { model: User, as: 'addedBy', attributes: ['id', 'name'], requir
 
 /** What people keep of an unknown, in the order in which it was added. */
 export async function listShortlist(unknownId: string): Promise<ShortlistItem[]> {
-  return await ShortlistItem.findAll({ where: { unknownId }, include: [addedBy], order: [['createdAt', 'ASC'], ['id', 'ASC']] });
+  return await ShortlistItem.findAll({
+    where: { unknownId },
+    include: [addedBy],
+    order: [
+      ['createdAt', 'ASC'],
+      ['id', 'ASC'],
+    ],
+  });
 }
 
 /** A shortlist item of one of the actor's teams. */

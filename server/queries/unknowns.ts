@@ -49,7 +49,10 @@ export async function listUnknowns(teamId: string, query: UnknownListQuery): Pro
 
 /** Each word must occur in code, title, description or formula, whatever its case; subscript digits count as digits. */
 function matches(search: string): WhereOptions {
-  const words = search.toLowerCase().split(/\s+/).filter((word) => word !== '');
+  const words = search
+    .toLowerCase()
+    .split(/\s+/)
+    .filter((word) => word !== '');
   return {
     [Op.and]: words.map((word) => {
       const plain = word.replace(/[₀-₉]/g, (digit) => String(digit.charCodeAt(0) - 0x2080));
@@ -69,12 +72,22 @@ function orderBy({ sort, direction }: UnknownListQuery): Order {
     case 'code':
       return [['number', way]];
     case 'status':
-      return [[statusRank, way], ['number', 'DESC']];
+      return [
+        [statusRank, way],
+        ['number', 'DESC'],
+      ];
     case 'formula':
       // Unknowns without evidence come last either way.
-      return [[literal('`Unknown`.`formula` IS NULL'), 'ASC'], ['formula', way], ['number', 'DESC']];
+      return [
+        [literal('`Unknown`.`formula` IS NULL'), 'ASC'],
+        ['formula', way],
+        ['number', 'DESC'],
+      ];
     default:
-      return [[sort, way], ['number', 'DESC']];
+      return [
+        [sort, way],
+        ['number', 'DESC'],
+      ];
   }
 }
 

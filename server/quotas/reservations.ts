@@ -35,12 +35,18 @@ const reservationStep = (figures: QuotaFigures): number =>
  */
 export async function checkQuota(transaction: Transaction, figures: QuotaFigures, demand: RunDemand, now: Date): Promise<number> {
   const { usedCpuSeconds, reservedCpuSeconds } = await readUsage(transaction, demand.teamId, demand.userId, usageMonth(now));
-  const runningCount = await Run.count({ where: { teamId: demand.teamId, startedById: demand.userId, status: ['queued', 'running'] }, transaction });
+  const runningCount = await Run.count({
+    where: { teamId: demand.teamId, startedById: demand.userId, status: ['queued', 'running'] },
+    transaction,
+  });
   if (runningCount >= figures.runsAtOnce) {
-    throw quotaExceeded(`You have ${runningCount} of at most ${figures.runsAtOnce} runs under way at once. Wait for one to end, or cancel it.`, {
-      runningCount,
-      runsAtOnce: figures.runsAtOnce,
-    });
+    throw quotaExceeded(
+      `You have ${runningCount} of at most ${figures.runsAtOnce} runs under way at once. Wait for one to end, or cancel it.`,
+      {
+        runningCount,
+        runsAtOnce: figures.runsAtOnce,
+      },
+    );
   }
   if (demand.keep > figures.candidatesPerRun) {
     throw quotaExceeded(`The run asks to keep ${demand.keep} candidates; your quota allows ${figures.candidatesPerRun}.`, {
@@ -59,8 +65,16 @@ export async function checkQuota(transaction: Transaction, figures: QuotaFigures
 }
 
 /** Sets CPU seconds aside for a run, in the transaction that creates it. */
-export async function reserveUsage(transaction: Transaction, run: { id: string; teamId: string; startedById: string }, cpuSeconds: number, now: Date): Promise<void> {
-  await UsageEntry.create({ teamId: run.teamId, userId: run.startedById, runId: run.id, month: usageMonth(now), kind: 'reserved', cpuSeconds }, { transaction });
+export async function reserveUsage(
+  transaction: Transaction,
+  run: { id: string; teamId: string; startedById: string },
+  cpuSeconds: number,
+  now: Date,
+): Promise<void> {
+  await UsageEntry.create(
+    { teamId: run.teamId, userId: run.startedById, runId: run.id, month: usageMonth(now), kind: 'reserved', cpuSeconds },
+    { transaction },
+  );
 }
 
 /** CPU seconds set aside for a run; 0 once it is settled. */
@@ -97,4 +111,5 @@ export async function settleUsage(transaction: Transaction, runId: string, cpuSe
   await UsageEntry.update({ kind: 'settled', cpuSeconds }, { where: { runId, kind: 'reserved' }, transaction });
 }
 
-const quotaExceeded = (message: string, figures: Record<string, number>): ConflictError => new ConflictError('quotaExceeded', message, figures);
+const quotaExceeded = (message: string, figures: Record<string, number>): ConflictError =>
+  new ConflictError('quotaExceeded', message, figures);

@@ -27,9 +27,19 @@ export async function listen(testApp: TestApp): Promise<Server> {
 }
 
 /** Opens an event stream below /api/v1 the way a browser does: with gzip accepted. */
-export async function openStream(server: Server, client: TestClient, path: string, headers: Record<string, string> = {}): Promise<EventStream> {
+export async function openStream(
+  server: Server,
+  client: TestClient,
+  path: string,
+  headers: Record<string, string> = {},
+): Promise<EventStream> {
   const { port } = server.address() as AddressInfo;
-  const request = get({ host: '127.0.0.1', port, path: `/api/v1${path}`, headers: { Cookie: client.cookies.join('; '), Accept: 'text/event-stream', 'Accept-Encoding': 'gzip', ...headers } });
+  const request = get({
+    host: '127.0.0.1',
+    port,
+    path: `/api/v1${path}`,
+    headers: { Cookie: client.cookies.join('; '), Accept: 'text/event-stream', 'Accept-Encoding': 'gzip', ...headers },
+  });
   const [response] = (await once(request, 'response')) as [IncomingMessage];
   const events: StreamedEvent[] = [];
   let all = '';

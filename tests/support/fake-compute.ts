@@ -37,10 +37,24 @@ export function fakeShardResult(index: number): ShardResult {
   });
   const funnel: Funnel = [
     { stage: 'constitutions', entered: SEEN_PER_SHARD, passed: SEEN_PER_SHARD, rejections: [] },
-    { stage: 'plausibility', entered: SEEN_PER_SHARD, passed: 10, rejections: [{ reason: 'peroxide', text: 'has an O–O bond', count: SEEN_PER_SHARD - 10 }] },
+    {
+      stage: 'plausibility',
+      entered: SEEN_PER_SHARD,
+      passed: 10,
+      rejections: [{ reason: 'peroxide', text: 'has an O–O bond', count: SEEN_PER_SHARD - 10 }],
+    },
   ];
   const logSumExp = Math.log(kept.reduce((sum, { score }) => sum + Math.exp(score), 0));
-  return { index, constitutionCount: SEEN_PER_SHARD, multigraphCount: SEEN_PER_SHARD + 1, funnel, kept, logSumExp, cpuSeconds: 0.5, complete: true };
+  return {
+    index,
+    constitutionCount: SEEN_PER_SHARD,
+    multigraphCount: SEEN_PER_SHARD + 1,
+    funnel,
+    kept,
+    logSumExp,
+    cpuSeconds: 0.5,
+    complete: true,
+  };
 }
 
 function fakeCandidate(candidate: ShardCandidate, index: number, logSumExp: number | null): RankedCandidate {
@@ -81,7 +95,12 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
     addToCounter(counters, 'constitutionsSeen', 10);
     if (behaviour === 'crashes') throw new WorkerCrash('worker exited with code: 1');
     if (behaviour === 'fails') throw new ComputeFailure({ code: 'internal', message: 'the engine lost a bond' });
-    if (behaviour === 'refuses') throw new ComputeFailure({ code: 'badInput', message: 'the search cannot be started', issues: [{ path: 'fragments.required', message: 'too symmetric' }] });
+    if (behaviour === 'refuses')
+      throw new ComputeFailure({
+        code: 'badInput',
+        message: 'the search cannot be started',
+        issues: [{ path: 'fragments.required', message: 'too symmetric' }],
+      });
     if (behaviour === 'done') return result;
     return await new Promise((resolve, reject) => {
       const finish = (action: () => void) => {
@@ -90,7 +109,13 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
         action();
       };
       const release = () => finish(() => resolve(result));
-      const cut = (): ShardResult => ({ ...result, constitutionCount: 10, multigraphCount: 10, funnel: [{ stage: 'constitutions', entered: 10, passed: 10, rejections: [] }], complete: false });
+      const cut = (): ShardResult => ({
+        ...result,
+        constitutionCount: 10,
+        multigraphCount: 10,
+        funnel: [{ stage: 'constitutions', entered: 10, passed: 10, rejections: [] }],
+        complete: false,
+      });
       const watch = setInterval(() => {
         if (behaviour === 'ignoresFlag') return;
         if (isCancelled(counters)) finish(() => reject(new ComputeFailure({ code: 'cancelled', message: 'cancelled' })));
@@ -101,9 +126,16 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
     });
   }
 
-  const handlers: { [K in JobName]: (input: JobContract[K]['input'], signal: AbortSignal | undefined) => Promise<JobContract[K]['output']> } = {
+  const handlers: {
+    [K in JobName]: (input: JobContract[K]['input'], signal: AbortSignal | undefined) => Promise<JobContract[K]['output']>;
+  } = {
     plan: async () => ({
-      shards: Array.from({ length: shardCount }, (_, index) => ({ index, firstDistribution: index, endDistribution: index + 1, prefix: [] })),
+      shards: Array.from({ length: shardCount }, (_, index) => ({
+        index,
+        firstDistribution: index,
+        endDistribution: index + 1,
+        prefix: [],
+      })),
       notes: [],
     }),
     shard: runShard,
@@ -127,7 +159,8 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
   };
   function answer<K extends keyof FakeCompute['answers']>(name: K): JobContract[K]['output'] {
     const given = answers[name];
-    if (given === undefined) throw new ComputeFailure({ code: 'badInput', message: 'no answer', issues: [{ path: 'smiles', message: 'expected a structure' }] });
+    if (given === undefined)
+      throw new ComputeFailure({ code: 'badInput', message: 'no answer', issues: [{ path: 'smiles', message: 'expected a structure' }] });
     return given;
   }
 
@@ -136,7 +169,8 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
     started,
     answers,
     release: () => [...waiting].forEach((release) => release()),
-    runJob: <K extends JobName>(name: K, input: JobContract[K]['input'], { signal }: JobOptions = {}): Promise<JobContract[K]['output']> => handlers[name](input, signal),
+    runJob: <K extends JobName>(name: K, input: JobContract[K]['input'], { signal }: JobOptions = {}): Promise<JobContract[K]['output']> =>
+      handlers[name](input, signal),
     close: async () => undefined,
   };
 }

@@ -17,12 +17,19 @@ export interface Laboratory {
 /** A team with one person of each role. */
 export async function createLaboratory(): Promise<Laboratory> {
   const team = await createTeam();
-  const [chemist, lead, reader] = [await createMember(team, 'chemist'), await createMember(team, 'lead'), await createMember(team, 'reader')];
+  const [chemist, lead, reader] = [
+    await createMember(team, 'chemist'),
+    await createMember(team, 'lead'),
+    await createMember(team, 'reader'),
+  ];
   return { team, people: { chemist, lead, reader } };
 }
 
 /** An unknown with one evidence revision. */
-export async function createUnknownWithEvidence({ team, people }: Laboratory, evidence: EvidenceInput = { formula: 'C4H10O' }): Promise<Unknown> {
+export async function createUnknownWithEvidence(
+  { team, people }: Laboratory,
+  evidence: EvidenceInput = { formula: 'C4H10O' },
+): Promise<Unknown> {
   const unknown = await createUnknown(team, people.chemist);
   await createRevision(unknown, people.chemist, evidence);
   return unknown;
@@ -32,11 +39,22 @@ export async function createUnknownWithEvidence({ team, people }: Laboratory, ev
 export async function createQueuedRun(
   laboratory: Laboratory,
   unknown: Unknown,
-  { settings = { keep: 10, maxSeconds: null }, reservedCpuSeconds = 1_000, startedBy = laboratory.people.chemist }: Partial<{ settings: Run['settings']; reservedCpuSeconds: number; startedBy: User }> = {},
+  {
+    settings = { keep: 10, maxSeconds: null },
+    reservedCpuSeconds = 1_000,
+    startedBy = laboratory.people.chemist,
+  }: Partial<{ settings: Run['settings']; reservedCpuSeconds: number; startedBy: User }> = {},
 ): Promise<Run> {
   const revision = await EvidenceRevision.findByPk(unknown.currentRevisionId ?? '', { rejectOnEmpty: true });
   const run = await createRun(revision, startedBy);
   await run.update({ settings });
-  await UsageEntry.create({ teamId: unknown.teamId, userId: startedBy.id, runId: run.id, month: usageMonth(new Date()), kind: 'reserved', cpuSeconds: reservedCpuSeconds });
+  await UsageEntry.create({
+    teamId: unknown.teamId,
+    userId: startedBy.id,
+    runId: run.id,
+    month: usageMonth(new Date()),
+    kind: 'reserved',
+    cpuSeconds: reservedCpuSeconds,
+  });
   return run;
 }

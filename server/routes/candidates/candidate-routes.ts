@@ -9,14 +9,26 @@ export function candidateRoutes(): Route[] {
     route('listCandidates', async ({ actor, params, query }) => {
       const run = authorize(actor, 'run.read', await findRun(actor, params.runId));
       const { rows, total } = await listCandidates(run.id, query);
-      const shortlisted = await findShortlisted(run.unknownId, rows.map(({ idcodeHash }) => idcodeHash));
-      return { rows: rows.map((candidate) => presentCandidateRow(candidate, shortlisted.get(candidate.idcodeHash) ?? null)), total, page: query.page, pageSize: query.pageSize };
+      const shortlisted = await findShortlisted(
+        run.unknownId,
+        rows.map(({ idcodeHash }) => idcodeHash),
+      );
+      return {
+        rows: rows.map((candidate) => presentCandidateRow(candidate, shortlisted.get(candidate.idcodeHash) ?? null)),
+        total,
+        page: query.page,
+        pageSize: query.pageSize,
+      };
     }),
     route('readCandidate', async ({ actor, params }) => {
       const candidate = authorize(actor, 'candidate.read', await findCandidate(actor, params.candidateId));
       const unknownId = unknownOf(candidate);
       const [neighbours, shortlisted] = await Promise.all([findNeighbours(candidate), findShortlisted(unknownId, [candidate.idcodeHash])]);
-      return presentCandidate(actor, candidate, { unknownId, shortlistItemId: shortlisted.get(candidate.idcodeHash) ?? null, ...neighbours });
+      return presentCandidate(actor, candidate, {
+        unknownId,
+        shortlistItemId: shortlisted.get(candidate.idcodeHash) ?? null,
+        ...neighbours,
+      });
     }),
   ];
 }

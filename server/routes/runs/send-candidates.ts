@@ -11,7 +11,12 @@ import type { Run } from '../../models/run.js';
 import { listByRank } from '../../queries/candidates.js';
 
 /** Sends the candidates of a run as a file, piece by piece. */
-export async function sendCandidates(context: AppContext, run: Run, { format, limit }: z.output<typeof exportQuery>, response: Response): Promise<void> {
+export async function sendCandidates(
+  context: AppContext,
+  run: Run,
+  { format, limit }: z.output<typeof exportQuery>,
+  response: Response,
+): Promise<void> {
   if (run.keptCount === 0) throw new ConflictError('noCandidates', 'This run has no candidates to export.');
   const origin = { code: run.unknown?.code ?? 'unknown', runNumber: run.number, complete: run.complete };
   const pieces = exportCandidates(

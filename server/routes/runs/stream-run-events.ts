@@ -22,7 +22,11 @@ export async function streamRunEvents(context: AppContext, actor: Actor, run: Ru
     response.status(204).end();
     return;
   }
-  response.writeHead(200, { 'Content-Type': 'text/event-stream; charset=utf-8', 'Cache-Control': 'no-cache, no-transform', 'X-Accel-Buffering': 'no' });
+  response.writeHead(200, {
+    'Content-Type': 'text/event-stream; charset=utf-8',
+    'Cache-Control': 'no-cache, no-transform',
+    'X-Accel-Buffering': 'no',
+  });
   response.flushHeaders();
 
   let eventNumber = 0;

@@ -14,7 +14,12 @@ export function unknownRoutes(context: AppContext): Route[] {
       const team = authorize(actor, 'team.readUnknowns', await Team.findByPk(params.teamId));
       const { rows, total } = await listUnknowns(team.id, query);
       const lastRuns = await findLastRuns(rows.map(({ id }) => id));
-      return { rows: rows.map((unknown) => presentUnknownRow(unknown, lastRuns.get(unknown.id))), total, page: query.page, pageSize: query.pageSize };
+      return {
+        rows: rows.map((unknown) => presentUnknownRow(unknown, lastRuns.get(unknown.id))),
+        total,
+        page: query.page,
+        pageSize: query.pageSize,
+      };
     }),
     route(
       'createUnknown',
@@ -27,7 +32,11 @@ export function unknownRoutes(context: AppContext): Route[] {
     ),
     route('readUnknown', async ({ actor, params }) => await presentOne(actor, params.unknownId)),
     route('updateUnknown', async ({ actor, params, body }) => {
-      const unknown = authorize(actor, body.status === 'shelved' ? 'unknown.shelve' : 'unknown.update', await findUnknown(actor, params.unknownId));
+      const unknown = authorize(
+        actor,
+        body.status === 'shelved' ? 'unknown.shelve' : 'unknown.update',
+        await findUnknown(actor, params.unknownId),
+      );
       await updateUnknown(context, actor, unknown, body);
       return await presentOne(actor, unknown.id);
     }),

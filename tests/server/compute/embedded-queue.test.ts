@@ -4,7 +4,7 @@ import { createEmbeddedQueue } from '../../../server/compute/embedded-queue.js';
 import type { RunEvent, RunQueue } from '../../../server/compute/queue.js';
 import { Candidate } from '../../../server/models/candidate.js';
 import { Quota } from '../../../server/models/quota.js';
-import { Run } from '../../../server/models/run.js';
+import { type Run } from '../../../server/models/run.js';
 import { RunShard } from '../../../server/models/run-shard.js';
 import { UsageEntry } from '../../../server/models/usage-entry.js';
 import { createTestDatabase, type TestDatabase } from '../../support/database.js';
@@ -34,7 +34,8 @@ function createQueue(compute: FakeCompute, hardStopMs = 5_000): RunQueue {
 function kill(queue: RunQueue): void {
   queues.splice(queues.indexOf(queue), 1);
 }
-const createRun = async (options: Parameters<typeof createQueuedRun>[2] = {}) => createQueuedRun(laboratory, await createUnknownWithEvidence(laboratory), options);
+const createRun = async (options: Parameters<typeof createQueuedRun>[2] = {}) =>
+  createQueuedRun(laboratory, await createUnknownWithEvidence(laboratory), options);
 const usageOf = async (run: Run) => (await UsageEntry.findOne({ where: { runId: run.id }, rejectOnEmpty: true })).get();
 async function runToEnd(queue: RunQueue, run: Run): Promise<Run> {
   queue.submit(run.id);
@@ -45,14 +46,27 @@ async function runToEnd(queue: RunQueue, run: Run): Promise<Run> {
 describe('a run in the embedded queue', () => {
   it('goes from queued to finished with counts, funnel, candidates and its CPU seconds charged', async () => {
     const run = await runToEnd(createQueue(createFakeCompute({ shardCount: 6 })), await createRun());
-    expect(run).toMatchObject({ status: 'finished', complete: true, constitutionCount: 6_000, multigraphCount: 6_006, survivorCount: 60, keptCount: 10, noneOfTheseProbability: 0.1, failure: null, shardCount: 6 });
+    expect(run).toMatchObject({
+      status: 'finished',
+      complete: true,
+      constitutionCount: 6_000,
+      multigraphCount: 6_006,
+      survivorCount: 60,
+      keptCount: 10,
+      noneOfTheseProbability: 0.1,
+      failure: null,
+      shardCount: 6,
+    });
     expect(run.startedAt).not.toBeNull();
     expect(run.finishedAt).not.toBeNull();
     expect(run.funnel).toEqual([
       { stage: 'constitutions', entered: 6_000, passed: 6_000, rejections: [] },
       { stage: 'plausibility', entered: 6_000, passed: 60, rejections: [{ reason: 'peroxide', text: 'has an O–O bond', count: 5_940 }] },
     ]);
-    const best = Array.from({ length: 6 }, (_, index) => fakeShardResult(index).kept).flat().sort((a, b) => b.score - a.score || (a.key < b.key ? -1 : 1)).slice(0, 10);
+    const best = Array.from({ length: 6 }, (_, index) => fakeShardResult(index).kept)
+      .flat()
+      .sort((a, b) => b.score - a.score || (a.key < b.key ? -1 : 1))
+      .slice(0, 10);
     const candidates = await Candidate.findAll({ where: { runId: run.id }, order: [['rank', 'ASC']] });
     expect(candidates.map(({ idcode }) => idcode)).toEqual(best.map(({ key }) => `id-${key}`));
     expect(run.cpuSeconds).toBeGreaterThanOrEqual(3);
@@ -82,12 +96,21 @@ describe('a run in the embedded queue', () => {
   });
 
   it('fails with the reason when the engine refuses the evidence', async () => {
-    const run = await runToEnd(createQueue(createFakeCompute({ onShard: (index) => (index === 1 ? 'refuses' : 'waits') })), await createRun());
-    expect(run).toMatchObject({ status: 'failed', failure: { code: 'badInput', message: 'the search cannot be started (fragments.required: too symmetric)' } });
+    const run = await runToEnd(
+      createQueue(createFakeCompute({ onShard: (index) => (index === 1 ? 'refuses' : 'waits') })),
+      await createRun(),
+    );
+    expect(run).toMatchObject({
+      status: 'failed',
+      failure: { code: 'badInput', message: 'the search cannot be started (fragments.required: too symmetric)' },
+    });
   });
 
   it('says that the fault is ours, without its inner details, when the engine fails', async () => {
-    const run = await runToEnd(createQueue(createFakeCompute({ onShard: (index) => (index === 1 ? 'fails' : 'waits') })), await createRun());
+    const run = await runToEnd(
+      createQueue(createFakeCompute({ onShard: (index) => (index === 1 ? 'fails' : 'waits') })),
+      await createRun(),
+    );
     expect(run).toMatchObject({ status: 'failed', failure: { code: 'internal' } });
     expect(run.failure?.message).not.toContain('lost a bond');
   });
@@ -235,7 +258,11 @@ describe('a restart', () => {
     await run.reload();
     expect(run).toMatchObject({ status: 'finished', complete: true, constitutionCount: 6_000 });
     expect(run.logSumExp).toBe(whole.logSumExp);
-    const ranking = async ({ id }: Run) => (await Candidate.findAll({ where: { runId: id }, order: [['rank', 'ASC']] })).map(({ idcode, probability }) => ({ idcode, probability }));
+    const ranking = async ({ id }: Run) =>
+      (await Candidate.findAll({ where: { runId: id }, order: [['rank', 'ASC']] })).map(({ idcode, probability }) => ({
+        idcode,
+        probability,
+      }));
     expect(await ranking(run)).toEqual(await ranking(whole));
   });
 

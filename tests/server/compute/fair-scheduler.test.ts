@@ -36,9 +36,9 @@ describe('FairScheduler', () => {
 
   it('lets teams take turns, and runs inside a team', async () => {
     const { started, schedule, releaseAll } = createBench(1);
-    schedule('t1', 'a1', 4);
-    schedule('t1', 'a2', 4);
-    schedule('t2', 'b1', 4);
+    void schedule('t1', 'a1', 4);
+    void schedule('t1', 'a2', 4);
+    void schedule('t2', 'b1', 4);
     await releaseAll();
     expect(started.slice(0, 8)).toEqual(['a1', 'b1', 'a2', 'b1', 'a1', 'b1', 'a2', 'b1']);
     expect(started).toHaveLength(12);
@@ -46,10 +46,10 @@ describe('FairScheduler', () => {
 
   it('makes a run that comes late wait for one task at most', async () => {
     const { started, schedule, releaseOne, releaseAll } = createBench(1);
-    schedule('t1', 'long', 100);
+    void schedule('t1', 'long', 100);
     await releaseOne();
     await releaseOne();
-    schedule('t1', 'late', 1);
+    void schedule('t1', 'late', 1);
     await releaseOne();
     expect(started.at(-1)).toBe('late');
     await releaseAll();
@@ -58,7 +58,7 @@ describe('FairScheduler', () => {
   it('skips what a dropped run has waiting and starts the others', async () => {
     const { scheduler, started, schedule, releaseAll } = createBench(1);
     const dropped = schedule('t1', 'a', 3);
-    schedule('t1', 'b', 1);
+    void schedule('t1', 'b', 1);
     scheduler.drop('a');
     await releaseAll();
     expect(await Promise.all(dropped)).toEqual(['a', null, null]);

@@ -5,7 +5,10 @@ import { compareCandidates, ShardMerger } from '../../../server/compute/merge-sh
 
 const score = fc.double({ min: -200, max: 10, noNaN: true });
 /** Few distinct scores and keys, so that ties are common. */
-const candidate = fc.record({ key: fc.string({ minLength: 1, maxLength: 3, unit: fc.constantFrom('a', 'b', 'c', 'd') }), score: fc.oneof(score, fc.constantFrom(-3, -2, -1)) });
+const candidate = fc.record({
+  key: fc.string({ minLength: 1, maxLength: 3, unit: fc.constantFrom('a', 'b', 'c', 'd') }),
+  score: fc.oneof(score, fc.constantFrom(-3, -2, -1)),
+});
 
 const shards = fc
   .array(
@@ -34,7 +37,9 @@ const shards = fc
         multigraphCount: entered,
         funnel,
         // Constitutions of different shards differ: the shard number makes their keys differ too.
-        kept: [...draft.kept.map((kept): ShardCandidate => ({ ...kept, key: `${kept.key}${index}`, packed: 'p', terms: {} }))].sort(compareCandidates),
+        kept: [...draft.kept.map((kept): ShardCandidate => ({ ...kept, key: `${kept.key}${index}`, packed: 'p', terms: {} }))].sort(
+          compareCandidates,
+        ),
         logSumExp: draft.logSumExp,
         cpuSeconds: draft.cpuSeconds,
         complete: draft.complete,
@@ -52,7 +57,9 @@ describe('ShardMerger', () => {
   it('gives the same counts, funnel and ranking in any order of arrival', () => {
     fc.assert(
       fc.property(
-        shards.chain((results) => fc.tuple(fc.constant(results), fc.shuffledSubarray(results, { minLength: results.length, maxLength: results.length }))),
+        shards.chain((results) =>
+          fc.tuple(fc.constant(results), fc.shuffledSubarray(results, { minLength: results.length, maxLength: results.length })),
+        ),
         fc.integer({ min: 1, max: 10 }),
         ([results, shuffled], keep) => {
           expect(mergeAll(shuffled, keep)).toEqual(mergeAll(results, keep));
@@ -64,7 +71,10 @@ describe('ShardMerger', () => {
   it('keeps exactly the best of all candidates by score, then key', () => {
     fc.assert(
       fc.property(shards, fc.integer({ min: 1, max: 10 }), (results, keep) => {
-        const expected = results.flatMap(({ kept }) => kept).sort(compareCandidates).slice(0, keep);
+        const expected = results
+          .flatMap(({ kept }) => kept)
+          .sort(compareCandidates)
+          .slice(0, keep);
         expect(mergeAll(results, keep).kept).toEqual(expected);
       }),
     );
@@ -96,14 +106,32 @@ describe('ShardMerger', () => {
   });
 
   it('adds probabilities without overflow or underflow', () => {
-    const base: ShardResult = { index: 0, constitutionCount: 1, multigraphCount: 1, funnel: [], kept: [], logSumExp: -2000, cpuSeconds: 0, complete: true };
+    const base: ShardResult = {
+      index: 0,
+      constitutionCount: 1,
+      multigraphCount: 1,
+      funnel: [],
+      kept: [],
+      logSumExp: -2000,
+      cpuSeconds: 0,
+      complete: true,
+    };
     const { logSumExp } = mergeAll([base, { ...base, index: 1 }, { ...base, index: 2, logSumExp: null }], 1);
     // log(2·e^−2000) = −2000 + log 2
     expect(logSumExp).toBeCloseTo(-2000 + Math.LN2, 9);
   });
 
   it('says incomplete as soon as one shard was cut short', () => {
-    const base: ShardResult = { index: 0, constitutionCount: 1, multigraphCount: 1, funnel: [], kept: [], logSumExp: null, cpuSeconds: 0, complete: true };
+    const base: ShardResult = {
+      index: 0,
+      constitutionCount: 1,
+      multigraphCount: 1,
+      funnel: [],
+      kept: [],
+      logSumExp: null,
+      cpuSeconds: 0,
+      complete: true,
+    };
     expect(mergeAll([base, { ...base, index: 1 }], 1).complete).toBe(true);
     expect(mergeAll([base, { ...base, index: 1, complete: false }], 1).complete).toBe(false);
   });

@@ -5,10 +5,20 @@ import { ComputeFailure, WorkerCrash } from '../../../server/compute/compute-ser
 import { createComputePool } from '../../../server/compute/pool.js';
 
 const faults: Error[] = [];
-const pool = createComputePool({ threads: 1, workerUrl: new URL('./fixtures/jobs.ts', import.meta.url), onFault: (error) => faults.push(error) });
+const pool = createComputePool({
+  threads: 1,
+  workerUrl: new URL('./fixtures/jobs.ts', import.meta.url),
+  onFault: (error) => faults.push(error),
+});
 const evidence = evidenceDocument.parse({ formula: 'C2H6O' });
 const settings = { keep: 10, maxSeconds: null, mode: 'rank' } as const;
-const shardInput = (counters: SharedArrayBuffer) => ({ evidence, settings, shard: { index: 0, firstDistribution: 0, endDistribution: 1, prefix: [] }, counters, deadlineEpochMs: null });
+const shardInput = (counters: SharedArrayBuffer) => ({
+  evidence,
+  settings,
+  shard: { index: 0, firstDistribution: 0, endDistribution: 1, prefix: [] },
+  counters,
+  deadlineEpochMs: null,
+});
 const until = async (condition: () => boolean) => {
   while (!condition()) await new Promise((resolve) => setTimeout(resolve, 5));
 };
@@ -17,7 +27,12 @@ afterAll(() => pool.close());
 
 describe('the compute pool', () => {
   it('returns what the job answers', async () => {
-    expect(await pool.runJob('predict', { smiles: 'CCO', solvent: 'CDCl3' })).toEqual({ carbons: [], protons: [], smiles: 'CCO', notes: [] });
+    expect(await pool.runJob('predict', { smiles: 'CCO', solvent: 'CDCl3' })).toEqual({
+      carbons: [],
+      protons: [],
+      smiles: 'CCO',
+      notes: [],
+    });
   });
 
   it('keeps code and issues of a failure across the thread boundary', async () => {
@@ -56,7 +71,11 @@ describe('the compute pool', () => {
   });
 
   it('hands jobs back when a thread cannot load its file', async () => {
-    const broken = createComputePool({ threads: 1, workerUrl: new URL('./fixtures/missing.js', import.meta.url), onFault: (error) => faults.push(error) });
+    const broken = createComputePool({
+      threads: 1,
+      workerUrl: new URL('./fixtures/missing.js', import.meta.url),
+      onFault: (error) => faults.push(error),
+    });
     await expect(broken.runJob('predict', { smiles: 'C', solvent: 'CDCl3' })).rejects.toBeInstanceOf(WorkerCrash);
     await broken.close();
   });

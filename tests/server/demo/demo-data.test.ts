@@ -29,12 +29,11 @@ describe('the demo', () => {
     expect(DEMO_UNKNOWNS.some(({ revisions }) => revisions.length > 1)).toBe(true);
   });
 
-  it.each(DEMO_UNKNOWNS.flatMap(({ title, revisions }) => revisions.map(({ evidence }, index) => ({ title, number: index + 1, evidence }))))(
-    'says nothing that contradicts itself: $title, revision $number',
-    ({ evidence }) => {
-      expect(checkEvidence(evidenceDocument.parse(evidence)).issues).toEqual([]);
-    },
-  );
+  it.each(
+    DEMO_UNKNOWNS.flatMap(({ title, revisions }) => revisions.map(({ evidence }, index) => ({ title, number: index + 1, evidence }))),
+  )('says nothing that contradicts itself: $title, revision $number', ({ evidence }) => {
+    expect(checkEvidence(evidenceDocument.parse(evidence)).issues).toEqual([]);
+  });
 
   it.each(DEMO_UNKNOWNS.map(({ title, revisions }) => ({ title, evidence: revisions[revisions.length - 1].evidence })))(
     'is chemically sound: the engine finds the meant structure among the first three of $title',
@@ -43,7 +42,8 @@ describe('the demo', () => {
       const settings = { keep: 3, maxSeconds: null, mode: 'rank' } as const;
       const { shards } = await pool.runJob('plan', { evidence, settings, targetShards: 8 });
       const merger = new ShardMerger(settings.keep);
-      for (const shard of shards) merger.add(await pool.runJob('shard', { evidence, settings, shard, counters: createCounters(), deadlineEpochMs: null }));
+      for (const shard of shards)
+        merger.add(await pool.runJob('shard', { evidence, settings, shard, counters: createCounters(), deadlineEpochMs: null }));
       const meant = await pool.runJob('explain', { evidence, settings, smiles: MEANT[title] });
       expect(meant).toMatchObject({ kind: 'survives' });
       const keys = merger.merged().kept.map(({ key }: ShardCandidate) => key);

@@ -10,13 +10,35 @@ import { loadRdkit } from '../../support/rdkit.js';
 
 const origin = { code: 'U-0042', runNumber: 3, complete: false };
 const candidate = {
-  rank: 2, smiles: 'CC(=O)OCC=C', idcode: 'gNp@`', probability: 0.125, score: -3.5, terms: { carbon13: -2.5, plausibility: -1 }, carbonDeviation: 1.25, protonDeviation: null,
-  remarks: [{ kind: 'fit', tone: 'doubts', text: 'carbonyl, 4 ppm off', atoms: [1] }, { kind: 'stereo', tone: 'notes', text: 'a "double" bond\nof two forms', atoms: [] }],
+  rank: 2,
+  smiles: 'CC(=O)OCC=C',
+  idcode: 'gNp@`',
+  probability: 0.125,
+  score: -3.5,
+  terms: { carbon13: -2.5, plausibility: -1 },
+  carbonDeviation: 1.25,
+  protonDeviation: null,
+  remarks: [
+    { kind: 'fit', tone: 'doubts', text: 'carbonyl, 4 ppm off', atoms: [1] },
+    { kind: 'stereo', tone: 'notes', text: 'a "double" bond\nof two forms', atoms: [] },
+  ],
 } as unknown as Candidate;
 
 describe('V2000 connection tables', () => {
   /** Structures of many kinds; both readers must get back what was written. */
-  const structures = ['CC(=O)OCC=C', 'Cc1ccncc1', 'C[N+](=O)[O-]', 'CCN=[N+]=[N-]', '[C-]#[N+]CC', 'CS(=O)(=O)C', 'CC#CC1CC1', 'Clc1ccc(Br)c(I)c1F', 'C[Si](C)(C)C', 'CP(=O)(OC)OC', 'c1ccc2[nH]ccc2c1'];
+  const structures = [
+    'CC(=O)OCC=C',
+    'Cc1ccncc1',
+    'C[N+](=O)[O-]',
+    'CCN=[N+]=[N-]',
+    '[C-]#[N+]CC',
+    'CS(=O)(=O)C',
+    'CC#CC1CC1',
+    'Clc1ccc(Br)c(I)c1F',
+    'C[Si](C)(C)C',
+    'CP(=O)(OC)OC',
+    'c1ccc2[nH]ccc2c1',
+  ];
 
   it.each(structures)('are read back as the same structure: %s', async (smiles) => {
     const text = molfile(layOut(smiles), 'test');
@@ -34,7 +56,7 @@ describe('V2000 connection tables', () => {
     expect(lines[0]).toBe('nitro methane');
     expect(lines[1].slice(20, 22)).toBe('2D');
     expect(lines[3]).toBe('  4  3  0  0  0  0  0  0  0  0999 V2000');
-    for (const atom of lines.slice(4, 8)) expect(atom).toMatch(/^( {1,5}-?\d+\.\d{4}){3} [CNO]   0  0/);
+    for (const atom of lines.slice(4, 8)) expect(atom).toMatch(/^( {1,5}-?\d+\.\d{4}){3} [CNO] {3}0 {2}0/);
     for (const atom of lines.slice(4, 8)) expect(atom.slice(30, 31)).toBe(' ');
     expect(lines.slice(8, 11)).toEqual(['  1  2  1  0  0  0  0', '  2  3  2  0  0  0  0', '  2  4  1  0  0  0  0']);
     expect(lines.slice(11)).toEqual(['M  CHG  2   2   1   4  -1', 'M  END', '']);
@@ -64,7 +86,9 @@ describe('CSV rows', () => {
     expect(csvHeader()).toBe(
       'rank,smiles,probability,score,score_carbon13,score_proton1,score_multiplicity,score_integral,score_plausibility,carbon13_mean_absolute_deviation_ppm,proton1_mean_absolute_deviation_ppm,remarks,idcode\r\n',
     );
-    expect(csvRow(candidate)).toBe('2,CC(=O)OCC=C,0.125,-3.5,-2.5,,,,-1,1.25,,"carbonyl, 4 ppm off; a ""double"" bond\nof two forms",gNp@`\r\n');
+    expect(csvRow(candidate)).toBe(
+      '2,CC(=O)OCC=C,0.125,-3.5,-2.5,,,,-1,1.25,,"carbonyl, 4 ppm off; a ""double"" bond\nof two forms",gNp@`\r\n',
+    );
   });
 
   it('keep spreadsheets from running a text as a formula', () => {

@@ -48,7 +48,8 @@ afterAll(async () => {
 });
 
 describe('GET /runs/:runId/candidates', () => {
-  const ranks = async (query: string) => (await reader.get(`/runs/${runId}/candidates?${query}`)).body.rows.map(({ rank }: { rank: number }) => rank);
+  const ranks = async (query: string) =>
+    (await reader.get(`/runs/${runId}/candidates?${query}`)).body.rows.map(({ rank }: { rank: number }) => rank);
 
   it('lists candidates by rank, page by page', async () => {
     expect(await ranks('')).toEqual([1, 2, 3, 4, 5, 6, 7, 8, 9, 10, 11, 12]);
@@ -76,8 +77,14 @@ describe('GET /candidates/:candidateId', () => {
   it('shows spectra and matches, and its neighbours by rank', async () => {
     const { body } = await reader.get(`/candidates/${candidates[1].id}`);
     expect(body).toMatchObject({
-      unknownId: unknown.id, rank: 2, previousId: candidates[0].id, nextId: candidates[2].id, shortlistItemId: null, abilities: { editShortlist: false },
-      spectra: { carbons: [{ atoms: [0], hydrogens: 3 }], protons: [] }, matches: [{ nucleus: '13C', observedIndex: 0 }],
+      unknownId: unknown.id,
+      rank: 2,
+      previousId: candidates[0].id,
+      nextId: candidates[2].id,
+      shortlistItemId: null,
+      abilities: { editShortlist: false },
+      spectra: { carbons: [{ atoms: [0], hydrogens: 3 }], protons: [] },
+      matches: [{ nucleus: '13C', observedIndex: 0 }],
     });
     expect((await reader.get(`/candidates/${candidates[0].id}`)).body.previousId).toBeNull();
     expect((await reader.get(`/candidates/${candidates[11].id}`)).body.nextId).toBeNull();
@@ -92,7 +99,13 @@ describe('POST /runs/:runId/explanations', () => {
     // The best candidate of shard 0, as the fake engine calls it.
     const kept = await Candidate.findOne({ where: { runId, idcode: 'id-key-0-0' }, rejectOnEmpty: true });
     compute.answers.explain = { kind: 'survives', score: -1, terms: {}, key: 'key-0-0', smiles: 'CCOCC' };
-    expect((await explain('CCOCC')).body).toEqual({ kind: 'ranked', smiles: 'CCOCC', rank: kept.rank, candidateId: kept.id, probability: kept.probability });
+    expect((await explain('CCOCC')).body).toEqual({
+      kind: 'ranked',
+      smiles: 'CCOCC',
+      rank: kept.rank,
+      candidateId: kept.id,
+      probability: kept.probability,
+    });
   });
 
   it('tells a structure that survived from one that was kept', async () => {
@@ -101,8 +114,19 @@ describe('POST /runs/:runId/explanations', () => {
   });
 
   it('tells why a structure was rejected, or that its formula is another', async () => {
-    compute.answers.explain = { kind: 'rejected', stage: 'plausibility', reasons: [{ reason: 'peroxide', text: 'has an O–O bond', atoms: [1, 2] }], key: 'k', smiles: 'COOC' };
-    expect((await explain('COOC')).body).toEqual({ kind: 'rejected', smiles: 'COOC', stage: 'plausibility', reasons: [{ reason: 'peroxide', text: 'has an O–O bond', atoms: [1, 2] }] });
+    compute.answers.explain = {
+      kind: 'rejected',
+      stage: 'plausibility',
+      reasons: [{ reason: 'peroxide', text: 'has an O–O bond', atoms: [1, 2] }],
+      key: 'k',
+      smiles: 'COOC',
+    };
+    expect((await explain('COOC')).body).toEqual({
+      kind: 'rejected',
+      smiles: 'COOC',
+      stage: 'plausibility',
+      reasons: [{ reason: 'peroxide', text: 'has an O–O bond', atoms: [1, 2] }],
+    });
     compute.answers.explain = { kind: 'otherFormula', formula: 'C6H6', expected: 'C4H10O', smiles: 'c1ccccc1' };
     expect((await explain('c1ccccc1')).body).toEqual({ kind: 'otherFormula', smiles: 'c1ccccc1', formula: 'C6H6', expected: 'C4H10O' });
   });
@@ -119,13 +143,29 @@ describe('POST /runs/:runId/explanations', () => {
 
 describe('the shortlist', () => {
   it('keeps a candidate once, with the figures it has now', async () => {
-    const { status, body } = await chemist.post(`/unknowns/${unknown.id}/shortlist`, { candidateId: candidates[2].id, note: 'fits the IR' });
+    const { status, body } = await chemist.post(`/unknowns/${unknown.id}/shortlist`, {
+      candidateId: candidates[2].id,
+      note: 'fits the IR',
+    });
     expect(status).toBe(201);
     expect(body).toMatchObject({
-      verdict: 'open', note: 'fits the IR', smiles: candidates[2].smiles, addedBy: { id: laboratory.people.chemist.id },
-      snapshot: { candidateId: candidates[2].id, runId, runNumber: 1, rank: 3, probability: candidates[2].probability, carbonDeviation: 2, protonDeviation: null },
+      verdict: 'open',
+      note: 'fits the IR',
+      smiles: candidates[2].smiles,
+      addedBy: { id: laboratory.people.chemist.id },
+      snapshot: {
+        candidateId: candidates[2].id,
+        runId,
+        runNumber: 1,
+        rank: 3,
+        probability: candidates[2].probability,
+        carbonDeviation: 2,
+        protonDeviation: null,
+      },
     });
-    expect((await chemist.post(`/unknowns/${unknown.id}/shortlist`, { candidateId: candidates[2].id })).body.error.code).toBe('alreadyShortlisted');
+    expect((await chemist.post(`/unknowns/${unknown.id}/shortlist`, { candidateId: candidates[2].id })).body.error.code).toBe(
+      'alreadyShortlisted',
+    );
     expect((await reader.get(`/runs/${runId}/candidates`)).body.rows[2].shortlistItemId).toBe(body.id);
     expect((await reader.get(`/candidates/${candidates[2].id}`)).body.shortlistItemId).toBe(body.id);
     expect((await reader.get(`/unknowns/${unknown.id}`)).body.shortlistCount).toBe(1);
@@ -133,7 +173,10 @@ describe('the shortlist', () => {
 
   it('takes notes and verdicts', async () => {
     const [item] = (await chemist.get(`/unknowns/${unknown.id}/shortlist`)).body.items;
-    expect((await chemist.patch(`/shortlist-items/${item.id}`, { verdict: 'supported' })).body).toMatchObject({ verdict: 'supported', note: 'fits the IR' });
+    expect((await chemist.patch(`/shortlist-items/${item.id}`, { verdict: 'supported' })).body).toMatchObject({
+      verdict: 'supported',
+      note: 'fits the IR',
+    });
     expect((await chemist.patch(`/shortlist-items/${item.id}`, { note: '' })).body).toMatchObject({ verdict: 'supported', note: '' });
     expect((await chemist.patch(`/shortlist-items/${item.id}`, { verdict: 'maybe' })).status).toBe(422);
     expect((await reader.patch(`/shortlist-items/${item.id}`, { verdict: 'refuted' })).status).toBe(403);
@@ -157,7 +200,9 @@ describe('the shortlist', () => {
     await Run.destroy({ where: { id: gone } });
     expect(await Candidate.count({ where: { runId: gone } })).toBe(0);
     const { body } = await reader.get(`/unknowns/${sample.id}/shortlist`);
-    expect(body.items).toMatchObject([{ smiles: best.smiles, snapshot: { candidateId: null, runId: null, runNumber: 1, rank: 1, probability: best.probability } }]);
+    expect(body.items).toMatchObject([
+      { smiles: best.smiles, snapshot: { candidateId: null, runId: null, runNumber: 1, rank: 1, probability: best.probability } },
+    ]);
   });
 
   it('lets go of an item', async () => {
@@ -169,15 +214,23 @@ describe('the shortlist', () => {
 });
 
 describe('GET /runs/:runId/export', () => {
-  const download = (query: string, client = reader) => client.get(`/runs/${runId}/export?${query}`).buffer(true).parse((response, done) => {
-    let text = '';
-    response.setEncoding('utf8');
-    response.on('data', (chunk: string) => (text += chunk));
-    response.on('end', () => done(null, text));
-  });
+  const download = (query: string, client = reader) =>
+    client
+      .get(`/runs/${runId}/export?${query}`)
+      .buffer(true)
+      .parse((response, done) => {
+        let text = '';
+        response.setEncoding('utf8');
+        response.on('data', (chunk: string) => (text += chunk));
+        response.on('end', () => done(null, text));
+      });
 
   it('sends each format as a file with a name that tells what it is', async () => {
-    for (const [format, extension] of [['smiles', 'smi'], ['sdf', 'sdf'], ['csv', 'csv']]) {
+    for (const [format, extension] of [
+      ['smiles', 'smi'],
+      ['sdf', 'sdf'],
+      ['csv', 'csv'],
+    ]) {
       const { status, headers } = await download(`format=${format}`);
       expect(status).toBe(200);
       expect(headers['content-disposition']).toBe(`attachment; filename="${unknown.code}-run-1-candidates.${extension}"`);
@@ -213,7 +266,12 @@ describe('POST /unknowns/:unknownId/estimate and /predictions', () => {
     compute.answers.estimate = { estimate: 1_200, low: 900, high: 1_500, cpuSeconds: 0.4, seconds: 0.1 };
     expect((await chemist.post(`/unknowns/${unknown.id}/estimate`, {})).body).toEqual(compute.answers.estimate);
     expect((await reader.post(`/unknowns/${unknown.id}/estimate`, {})).status).toBe(403);
-    compute.answers.predict = { smiles: 'CCO', notes: ['stereo dropped'], carbons: [{ atoms: [0], shift: 18.4, sd: 2, hydrogens: 3, basis: 'alkane increments' }], protons: [] };
+    compute.answers.predict = {
+      smiles: 'CCO',
+      notes: ['stereo dropped'],
+      carbons: [{ atoms: [0], shift: 18.4, sd: 2, hydrogens: 3, basis: 'alkane increments' }],
+      protons: [],
+    };
     expect((await reader.post('/predictions', { smiles: 'CCO' })).body).toEqual(compute.answers.predict);
     expect((await (await testApp.as()).post('/predictions', { smiles: 'CCO' })).status).toBe(401);
   });

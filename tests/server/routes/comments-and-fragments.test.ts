@@ -26,7 +26,11 @@ describe('comments', () => {
   it('are written by everybody in the team, readers too, and shown oldest first', async () => {
     const unknown = await createUnknown(laboratory.team, laboratory.people.chemist);
     const path = `/unknowns/${unknown.id}/comments`;
-    expect((await chemist.post(path, { text: ' Smells of pear. ' })).body).toMatchObject({ text: 'Smells of pear.', author: { id: laboratory.people.chemist.id }, abilities: { remove: true } });
+    expect((await chemist.post(path, { text: ' Smells of pear. ' })).body).toMatchObject({
+      text: 'Smells of pear.',
+      author: { id: laboratory.people.chemist.id },
+      abilities: { remove: true },
+    });
     expect((await reader.post(path, { text: 'Which batch?' })).status).toBe(201);
     const { body } = await lead.get(path);
     expect(body.comments.map(({ text }: { text: string }) => text)).toEqual(['Smells of pear.', 'Which batch?']);
@@ -52,7 +56,13 @@ describe('the fragment library of a team', () => {
   it('takes a fragment with attachment points, once', async () => {
     const { status, body } = await chemist.post(path(), { name: 'Prenyl', smiles: ' *CC=C(C)C ' });
     expect(status).toBe(201);
-    expect(body).toMatchObject({ name: 'Prenyl', group: 'Own', smiles: '*CC=C(C)C', createdBy: { id: laboratory.people.chemist.id }, abilities: { remove: true } });
+    expect(body).toMatchObject({
+      name: 'Prenyl',
+      group: 'Own',
+      smiles: '*CC=C(C)C',
+      createdBy: { id: laboratory.people.chemist.id },
+      abilities: { remove: true },
+    });
     const again = await lead.post(path(), { name: 'Dimethylallyl', smiles: '*CC=C(C)C' });
     expect(again.status).toBe(409);
     expect(again.body.error.message).toContain('Prenyl');

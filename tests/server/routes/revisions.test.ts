@@ -29,13 +29,32 @@ const save = (evidence: object, basedOn: number, comment = '') => chemist.post(p
 
 describe('POST /unknowns/:unknownId/revisions', () => {
   it('saves evidence as the next revision, with author and comment, and shows its formula on the unknown', async () => {
-    const first = await save({ formula: 'O2C9H10', carbonSignals: [{ shift: 166.9, hydrogens: 0, count: 1 }] }, 0, 'from the first spectrum');
+    const first = await save(
+      { formula: 'O2C9H10', carbonSignals: [{ shift: 166.9, hydrogens: 0, count: 1 }] },
+      0,
+      'from the first spectrum',
+    );
     expect(first.status).toBe(201);
-    expect(first.body).toMatchObject({ number: 1, comment: 'from the first spectrum', isCurrent: true, formula: 'C9H10O2', author: { id: laboratory.people.chemist.id }, abilities: { restore: true } });
-    expect(first.body.evidence).toMatchObject({ formula: 'C9H10O2', carbonSignals: [{ shift: 166.9, hydrogens: 0, count: 1 }], options: { keep: 1000 } });
+    expect(first.body).toMatchObject({
+      number: 1,
+      comment: 'from the first spectrum',
+      isCurrent: true,
+      formula: 'C9H10O2',
+      author: { id: laboratory.people.chemist.id },
+      abilities: { restore: true },
+    });
+    expect(first.body.evidence).toMatchObject({
+      formula: 'C9H10O2',
+      carbonSignals: [{ shift: 166.9, hydrogens: 0, count: 1 }],
+      options: { keep: 1000 },
+    });
     const second = await save({ formula: 'C8H8O3' }, 1);
     expect(second.body).toMatchObject({ number: 2, isCurrent: true });
-    expect((await chemist.get(`/unknowns/${unknown.id}`)).body).toMatchObject({ formula: 'C8H8O3', currentRevisionId: second.body.id, revisionCount: 2 });
+    expect((await chemist.get(`/unknowns/${unknown.id}`)).body).toMatchObject({
+      formula: 'C8H8O3',
+      currentRevisionId: second.body.id,
+      revisionCount: 2,
+    });
     expect((await chemist.get(`/revisions/${first.body.id}`)).body).toMatchObject({ isCurrent: false, evidence: { formula: 'C9H10O2' } });
   });
 
@@ -53,7 +72,10 @@ describe('POST /unknowns/:unknownId/revisions', () => {
   });
 
   it('names field and cure of every shape that is wrong', async () => {
-    const { status, body } = await save({ formula: 'C9H10O2', carbonSignals: [{ shift: 20 }, { shift: 'twenty' }, { shift: 900 }], colour: 'blue' }, 0);
+    const { status, body } = await save(
+      { formula: 'C9H10O2', carbonSignals: [{ shift: 20 }, { shift: 'twenty' }, { shift: 900 }], colour: 'blue' },
+      0,
+    );
     expect(status).toBe(422);
     const issues = Object.fromEntries(body.error.issues.map(({ path: at, message }: { path: string; message: string }) => [at, message]));
     expect(issues['evidence.carbonSignals[1].shift']).toBe('expected a number between -50 and 300 ppm');
@@ -67,11 +89,19 @@ describe('POST /unknowns/:unknownId/revisions', () => {
     ['too many hydrogens', { formula: 'C4H12' }, 'evidence.formula'],
     ['an odd number of hydrogens', { formula: 'C4H9' }, 'evidence.formula'],
     ['over 40 heavy atoms', { formula: 'C41H84' }, 'evidence.formula'],
-    ['a fragment that cannot be read', { formula: 'C4H8O', fragments: { required: [{ smiles: '*C(' }] } }, 'evidence.fragments.required[0].smiles'],
+    [
+      'a fragment that cannot be read',
+      { formula: 'C4H8O', fragments: { required: [{ smiles: '*C(' }] } },
+      'evidence.fragments.required[0].smiles',
+    ],
     ['an isotope', { formula: 'C4H8O', fragments: { required: [{ smiles: '*[13CH3]' }] } }, 'evidence.fragments.required[0].smiles'],
     ['a radical', { formula: 'C4H8O', fragments: { required: [{ smiles: '*[CH2]' }] } }, 'evidence.fragments.required[0].smiles'],
     ['a charge', { formula: 'C4H11NO', fragments: { required: [{ smiles: '*[NH3+]' }] } }, 'evidence.fragments.required[0].smiles'],
-    ['more carbon signals than carbons', { formula: 'C2H6O', carbonSignals: [{ shift: 10 }, { shift: 20 }, { shift: 30 }] }, 'evidence.carbonSignals'],
+    [
+      'more carbon signals than carbons',
+      { formula: 'C2H6O', carbonSignals: [{ shift: 10 }, { shift: 20 }, { shift: 30 }] },
+      'evidence.carbonSignals',
+    ],
     ['more hydrogens than the formula has', { formula: 'C2H6O', protonSignals: [{ shift: 1, count: 7 }] }, 'evidence.protonSignals'],
   ])('refuses %s', async (_what, evidence, at) => {
     const { status, body } = await save(evidence, 0);

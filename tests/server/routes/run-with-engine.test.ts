@@ -15,11 +15,19 @@ const evidence = {
   formula: 'C6H12O2',
   carbonSignals: [
     // Without attached hydrogens, which would narrow the search before it begins.
-    { shift: 171.2 }, { shift: 64.36 }, { shift: 30.7 }, { shift: 20.99 }, { shift: 19.16 }, { shift: 13.71 },
+    { shift: 171.2 },
+    { shift: 64.36 },
+    { shift: 30.7 },
+    { shift: 20.99 },
+    { shift: 19.16 },
+    { shift: 13.71 },
   ],
   protonSignals: [
-    { shift: 4.07, count: 2, multiplicity: 't', couplings: [6.7] }, { shift: 2.05, count: 3, multiplicity: 's' }, { shift: 1.58, count: 2, multiplicity: 'm' },
-    { shift: 1.38, count: 2, multiplicity: 'm' }, { shift: 0.94, count: 3, multiplicity: 't', couplings: [7.4] },
+    { shift: 4.07, count: 2, multiplicity: 't', couplings: [6.7] },
+    { shift: 2.05, count: 3, multiplicity: 's' },
+    { shift: 1.58, count: 2, multiplicity: 'm' },
+    { shift: 1.38, count: 2, multiplicity: 'm' },
+    { shift: 0.94, count: 3, multiplicity: 't', couplings: [7.4] },
   ],
 };
 let testApp: TestApp;
@@ -64,7 +72,12 @@ describe('a run with the real engine', () => {
     const again = await chemist.post(`/unknowns/${unknownId}/runs`, { keep: 100 });
     await queue.settled(again.body.id);
     const ranking = async (id: string) =>
-      (await chemist.get(`/runs/${id}/candidates`)).body.rows.map(({ rank, smiles, probability, score }: Record<string, unknown>) => ({ rank, smiles, probability, score }));
+      (await chemist.get(`/runs/${id}/candidates`)).body.rows.map(({ rank, smiles, probability, score }: Record<string, unknown>) => ({
+        rank,
+        smiles,
+        probability,
+        score,
+      }));
     expect(await ranking(again.body.id)).toEqual(await ranking(runId));
   });
 
@@ -79,11 +92,15 @@ describe('a run with the real engine', () => {
   });
 
   it('exports the candidates as an SDF with places for the atoms', async () => {
-    const { text } = await chemist.get(`/runs/${runId}/export?format=sdf&limit=5`).buffer(true).parse((response, done) => {
-      let all = '';
-      response.on('data', (chunk: Buffer) => (all += chunk.toString('utf8')));
-      response.on('end', () => done(null, all));
-    }).then(({ body }) => ({ text: body as string }));
+    const { text } = await chemist
+      .get(`/runs/${runId}/export?format=sdf&limit=5`)
+      .buffer(true)
+      .parse((response, done) => {
+        let all = '';
+        response.on('data', (chunk: Buffer) => (all += chunk.toString('utf8')));
+        response.on('end', () => done(null, all));
+      })
+      .then(({ body }) => ({ text: body as string }));
     expect(text.split('$$$$\n').length - 1).toBe(Math.min(5, (await chemist.get(`/runs/${runId}`)).body.keptCount));
     expect(text).toContain('V2000');
   });

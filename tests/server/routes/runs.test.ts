@@ -59,9 +59,20 @@ const startOn = async (client: TestClient, body: object = {}, evidence?: Paramet
   return { unknown, answer: await client.post(`/unknowns/${unknown.id}/runs`, body) };
 };
 /** A member of the laboratory with a quota of their own and nothing used of it. */
-async function createLimited(figures: { cpuSecondsPerMonth?: number; candidatesPerRun?: number; runsAtOnce?: number }): Promise<{ user: User; client: TestClient }> {
+async function createLimited(figures: {
+  cpuSecondsPerMonth?: number;
+  candidatesPerRun?: number;
+  runsAtOnce?: number;
+}): Promise<{ user: User; client: TestClient }> {
   const user = await createMember(laboratory.team, 'chemist');
-  await Quota.create({ teamId: laboratory.team.id, userId: user.id, cpuSecondsPerMonth: null, candidatesPerRun: null, runsAtOnce: null, ...figures });
+  await Quota.create({
+    teamId: laboratory.team.id,
+    userId: user.id,
+    cpuSecondsPerMonth: null,
+    candidatesPerRun: null,
+    runsAtOnce: null,
+    ...figures,
+  });
   return { user, client: await testApp.as(user) };
 }
 
@@ -70,12 +81,26 @@ describe('POST /unknowns/:unknownId/runs', () => {
     const { unknown, answer } = await startOn(chemist, { keep: 5, maxSeconds: 60 });
     expect(answer.status).toBe(201);
     expect(answer.body).toMatchObject({
-      number: 1, unknownCode: unknown.code, revisionId: unknown.currentRevisionId, revisionNumber: 1, formula: 'C4H10O',
-      settings: { keep: 5, maxSeconds: 60 }, startedBy: { id: laboratory.people.chemist.id }, abilities: { cancel: true, export: true, editShortlist: true },
+      number: 1,
+      unknownCode: unknown.code,
+      revisionId: unknown.currentRevisionId,
+      revisionNumber: 1,
+      formula: 'C4H10O',
+      settings: { keep: 5, maxSeconds: 60 },
+      startedBy: { id: laboratory.people.chemist.id },
+      abilities: { cancel: true, export: true, editShortlist: true },
     });
     await queue.settled(answer.body.id);
     const { body } = await chemist.get(`/runs/${answer.body.id}`);
-    expect(body).toMatchObject({ status: 'finished', complete: true, constitutionCount: 3_000, survivorCount: 30, keptCount: 5, progress: null, failure: null });
+    expect(body).toMatchObject({
+      status: 'finished',
+      complete: true,
+      constitutionCount: 3_000,
+      survivorCount: 30,
+      keptCount: 5,
+      progress: null,
+      failure: null,
+    });
     expect((await unknown.reload()).status).toBe('inProgress');
   });
 
@@ -157,7 +182,10 @@ describe('the quota', () => {
     await UsageEntry.update({ cpuSeconds: 40 }, { where: { runId: second.body.id } });
     const third = (await startOn(client)).answer;
     expect(third.status).toBe(409);
-    expect(third.body.error).toMatchObject({ code: 'quotaExceeded', figures: { usedCpuSeconds: 60, reservedCpuSeconds: 40, cpuSecondsPerMonth: 100 } });
+    expect(third.body.error).toMatchObject({
+      code: 'quotaExceeded',
+      figures: { usedCpuSeconds: 60, reservedCpuSeconds: 40, cpuSecondsPerMonth: 100 },
+    });
   });
 
   it('forgets what was used in another month', async () => {
@@ -249,7 +277,12 @@ describe('GET /runs/:runId/events', () => {
     expect(stream.headers['content-encoding']).toBeUndefined();
     await until(() => stream.events.filter(({ event }) => event === 'progress').length >= 3);
     expect(stream.events[0]).toMatchObject({ event: 'run', data: { id: answer.body.id, abilities: { cancel: false, export: true } } });
-    expect(stream.events.findLast(({ event }) => event === 'progress')?.data).toMatchObject({ stage: 'enumerating', shardCount: 3, shardsDone: 0, constitutionsSeen: 20 });
+    expect(stream.events.findLast(({ event }) => event === 'progress')?.data).toMatchObject({
+      stage: 'enumerating',
+      shardCount: 3,
+      shardsDone: 0,
+      constitutionsSeen: 20,
+    });
     behaviour = 'done';
     compute.release();
     await stream.ended;

@@ -27,7 +27,16 @@ describe('POST /teams/:teamId/unknowns', () => {
     const answers = await Promise.all(['Still bottoms', 'Brown oil', 'Crystals'].map((title) => chemist.post(listPath(), { title })));
     expect(answers.map(({ status }) => status)).toEqual([201, 201, 201]);
     expect(answers.map(({ body }) => body.code).sort()).toEqual(['U-0001', 'U-0002', 'U-0003']);
-    expect(answers[0].body).toMatchObject({ status: 'new', formula: null, revisionCount: 0, currentRevisionId: null, lastRun: null, isDemo: false, purpose: 'research', createdBy: { id: laboratory.people.chemist.id } });
+    expect(answers[0].body).toMatchObject({
+      status: 'new',
+      formula: null,
+      revisionCount: 0,
+      currentRevisionId: null,
+      lastRun: null,
+      isDemo: false,
+      purpose: 'research',
+      createdBy: { id: laboratory.people.chemist.id },
+    });
     expect(await AuditEvent.count({ where: { action: 'unknown.create', teamId: laboratory.team.id } })).toBe(3);
   });
 
@@ -35,7 +44,14 @@ describe('POST /teams/:teamId/unknowns', () => {
     const { body } = await chemist.post(listPath(), { title: 'Abilities' });
     expect(body.abilities).toEqual({ update: true, shelve: true, saveEvidence: true, startRun: true, editShortlist: true, comment: true });
     const seen = await reader.get(`/unknowns/${body.id}`);
-    expect(seen.body.abilities).toEqual({ update: false, shelve: false, saveEvidence: false, startRun: false, editShortlist: false, comment: true });
+    expect(seen.body.abilities).toEqual({
+      update: false,
+      shelve: false,
+      saveEvidence: false,
+      startRun: false,
+      editShortlist: false,
+      comment: true,
+    });
   });
 
   it('names the field that is wrong', async () => {
