@@ -11,7 +11,7 @@ import { ProblemError } from './enumeration/problem.js';
 import { planShards } from './enumeration/search.js';
 import { explainStructure } from './jobs/explain.js';
 import { layOut } from './jobs/layout.js';
-import { searchFor } from './jobs/search-cache.js';
+import { evaluatorFor, searchFor } from './jobs/search-cache.js';
 import { runShard } from './jobs/shard.js';
 import { predictSpectra } from './prediction/predict-spectra.js';
 import { finishRanking } from './ranking/finish.js';
@@ -33,7 +33,11 @@ function handler<K extends JobName>(work: (input: JobContract[K]['input']) => Jo
   };
 }
 
-export const plan = handler<'plan'>(({ evidence, targetShards }) => ({ shards: planShards(searchFor(evidence), targetShards), notes: [] }));
+export const plan = handler<'plan'>(({ evidence, settings, targetShards }) => {
+  // Made here although the shards use it, so that an unreadable pattern is bad input of the run, not a fault of a shard.
+  evaluatorFor(evidence, settings);
+  return { shards: planShards(searchFor(evidence), targetShards), notes: [] };
+});
 
 export const shard = handler<'shard'>(runShard);
 

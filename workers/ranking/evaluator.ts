@@ -28,7 +28,7 @@ export interface Evaluator {
  * the score. Deterministic, the same in any worker; not re-entrant.
  *
  * @param settings - in the modes `count` and `list` nothing is predicted and every survivor scores 0.
- * @throws RangeError on an unreadable excluded fragment.
+ * @throws ProblemError on an unreadable excluded fragment.
  */
 export function createEvaluator(evidence: EvidenceDocument, settings: RunSettings): Evaluator {
   const scratch = new AnalysisScratch();

@@ -1,6 +1,7 @@
 import { Molecule, SSSearcher } from 'openchemlib';
 import { parseExcludedPattern } from '../../shared/chemistry/excluded-pattern.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
+import { ProblemError } from '../enumeration/problem.js';
 import type { StructureAnalysis } from '../graph/analysis.js';
 import { moleculeFromGraph } from '../graph/openchemlib.js';
 import { SubstructureMatcher } from './substructure.js';
@@ -19,25 +20,35 @@ export interface ExcludedFragmentTest {
  * Compiles the excluded fragments of a document. Plain patterns run on the own matcher; those that need SMARTS go
  * through openchemlib, some hundred times slower, so they are tested last.
  *
- * @throws RangeError on a pattern that neither can read; documents are checked before they come here.
+ * @throws ProblemError, naming the field, on a pattern that neither can read.
  */
 export function compileExcludedFragments(evidence: EvidenceDocument): readonly ExcludedFragmentTest[] {
   const plain: ExcludedFragmentTest[] = [];
   const smarts: ExcludedFragmentTest[] = [];
-  for (const { smiles } of evidence.fragments.excluded) {
+  evidence.fragments.excluded.forEach(({ smiles }, index) => {
+    const path = `fragments.excluded[${index}].smiles`;
     const reason = `${EXCLUDED_FRAGMENT_REASON_PREFIX}${smiles}`;
     const parsed = parseExcludedPattern(smiles);
-    if (parsed.kind === 'fault') throw new RangeError(`excluded fragment ${smiles}: ${parsed.message}`);
+    if (parsed.kind === 'fault') throw new ProblemError([{ path, message: parsed.message }]);
     if (parsed.kind === 'query') {
       const matcher = new SubstructureMatcher(parsed.query);
       plain.push({ reason, occursIn: (structure) => matcher.occursIn(structure), findIn: (structure) => matcher.findIn(structure) });
-    } else smarts.push({ reason, ...compileSmarts(smiles) });
-  }
+    } else smarts.push({ reason, ...compileSmarts(smiles, path) });
+  });
   return [...plain, ...smarts];
 }
 
-function compileSmarts(pattern: string): Omit<ExcludedFragmentTest, 'reason'> {
-  const fragment = Molecule.fromSmiles(pattern, { smartsMode: 'smarts', noCoordinates: true, noStereo: true });
+function readSmarts(pattern: string, path: string): Molecule {
+  try {
+    return Molecule.fromSmiles(pattern, { smartsMode: 'smarts', noCoordinates: true, noStereo: true });
+  } catch (error) {
+    const detail = error instanceof Error ? error.message : String(error);
+    throw new ProblemError([{ path, message: `expected a SMILES or SMARTS; this one cannot be read (${detail})` }]);
+  }
+}
+
+function compileSmarts(pattern: string, path: string): Omit<ExcludedFragmentTest, 'reason'> {
+  const fragment = readSmarts(pattern, path);
   fragment.setFragment(true);
   const searcher = new SSSearcher();
   searcher.setFragment(fragment);

@@ -41,7 +41,7 @@ export function finishRanking(input: JobContract['finish']['input']): JobContrac
   };
 }
 
-/** Without ranking nothing is laid on signals: a list of structures with their spectra and remarks on stereo and plausibility. */
+/** Without ranking only the structures are written out: a list can be long, and nobody looks at the spectra of each. */
 function createDescriber(evidence: EvidenceDocument, isRanked: boolean): (candidate: ShardCandidate, rank: number, posterior: Posterior) => RankedCandidate {
   const { soft } = selectRules(evidence);
   const scorer = new Scorer(evidence, soft);
@@ -52,23 +52,22 @@ function createDescriber(evidence: EvidenceDocument, isRanked: boolean): (candid
   return (candidate, rank, posterior) => {
     const packed = unpackGraph(candidate.packed);
     const { smiles, idcode, order } = canonicalStructure(packed);
+    if (!isRanked) return { ...unranked(candidate), rank, smiles, idcode };
     const graph = reorderGraph(packed, order);
     const structure = analyseStructure(graph);
     const spectra = predictSpectra(graph, evidence.options.solvent);
     const matches: SignalMatch[] = [];
-    if (isRanked) {
-      environments.find(structure);
-      bounds.find(structure, environments);
-      scorer.score(structure, environments, bounds);
-      if (scorer.carbon !== null) matches.push(...listCarbonMatches(scorer.carbon, evidence, spectra, temperature));
-      if (scorer.proton !== null) matches.push(...listProtonMatches(scorer.proton, evidence, spectra, temperature));
-    }
+    environments.find(structure);
+    bounds.find(structure, environments);
+    scorer.score(structure, environments, bounds);
+    if (scorer.carbon !== null) matches.push(...listCarbonMatches(scorer.carbon, evidence, spectra, temperature));
+    if (scorer.proton !== null) matches.push(...listProtonMatches(scorer.proton, evidence, spectra, temperature));
     return {
       rank,
       key: candidate.key,
       smiles,
       idcode,
-      probability: isRanked ? posterior.probabilityOf(candidate.score) : 0,
+      probability: posterior.probabilityOf(candidate.score),
       score: candidate.score,
       terms: candidate.terms,
       carbonDeviation: meanDeviation(matches, '13C'),
@@ -82,6 +81,10 @@ function createDescriber(evidence: EvidenceDocument, isRanked: boolean): (candid
       ],
     };
   };
+}
+
+function unranked({ key, score, terms }: ShardCandidate): Omit<RankedCandidate, 'rank' | 'smiles' | 'idcode'> {
+  return { key, score, terms, probability: 0, carbonDeviation: null, protonDeviation: null, spectra: { carbons: [], protons: [] }, matches: [], remarks: [] };
 }
 
 /** Mean absolute deviation of the matched signals of a nucleus, ppm; null without any. */

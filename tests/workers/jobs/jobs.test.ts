@@ -76,6 +76,12 @@ describe('the shard job', () => {
     expect(result).toMatchObject({ ok: false, failure: { code: 'badInput', issues: [{ path: 'fragments.required[0].smiles' }, {}] } });
   });
 
+  it('names an excluded pattern that nothing can read', () => {
+    const evidence = evidenceDocument.parse({ formula: 'C6H6', fragments: { excluded: [{ smiles: '[#6;Q9]~*' }] } });
+    const result = jobs.plan({ evidence, settings, targetShards: 4 });
+    expect(result).toMatchObject({ ok: false, failure: { code: 'badInput', issues: [{ path: 'fragments.excluded[0].smiles' }] } });
+  });
+
   it('only counts in mode count', () => {
     const results = shardsOf({ formula: 'C5H8' }, 4, { ...settings, mode: 'count' });
     expect(results.flatMap((result) => result.kept)).toEqual([]);
