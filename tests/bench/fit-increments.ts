@@ -1,20 +1,27 @@
 /*
  * Fits corrections to the published increments on the open NMR data and writes workers/prediction/fitted-increments.ts:
- * npx tsx tests/bench/fit-increments.ts
+ * npm run bench -- fit-increments
  * Fold 0 is never used. Deterministic: no random numbers, records in file order.
  */
 import { writeFileSync } from 'node:fs';
 import { resolve } from 'node:path';
+import { format } from 'prettier';
 import { analyseStructure, AnalysisScratch } from '../../workers/graph/analysis.js';
 import { ATOM_TYPE_COUNT, fillAtomTypes } from '../../workers/prediction/atom-types.js';
 import { createTextbookTables } from '../../workers/prediction/create-shift-predictor.js';
 import { createTermScratch, fillTerms, MAX_TERMS, TERM_COUNT, termName } from '../../workers/prediction/features.js';
-import { CARBON_SPREAD, priorSpreadOf, PROTON_SPREAD, type IncrementTable, type PriorSpread } from '../../workers/prediction/increment-table.js';
+import {
+  CARBON_SPREAD,
+  priorSpreadOf,
+  PROTON_SPREAD,
+  type IncrementTable,
+  type PriorSpread,
+} from '../../workers/prediction/increment-table.js';
 import { createPredictedShifts } from '../../workers/prediction/predicted-shifts.js';
 import { carbonClassOf, modeOf, protonClassOf } from '../../workers/prediction/shift-classes.js';
 import { createIncrementPredictor } from '../../workers/prediction/shift-predictor.js';
-import { readNmrData, type NmrRecord } from './nmr-data.js';
-import { matchCarbons } from './prediction-errors.js';
+import { readNmrData, type NmrRecord } from '../support/nmr-data.js';
+import { matchCarbons } from '../support/prediction-errors.js';
 
 /** An observed shift with the terms of its atom. */
 interface Sample {
@@ -43,7 +50,11 @@ function termsOf(record: NmrRecord, atom: number): { carbonRow: number; protonRo
   const analysis = analyseStructure(record.graph, analysisScratch);
   fillAtomTypes(analysis, types);
   const count = fillTerms(analysis, types, atom, modeOf(types[atom]), termScratch, buffer);
-  return { carbonRow: record.graph.atomicNumbers[atom] === 6 ? carbonClassOf(analysis, types, atom) : -1, protonRow: protonClassOf(analysis, types, atom), terms: buffer.slice(0, count) };
+  return {
+    carbonRow: record.graph.atomicNumbers[atom] === 6 ? carbonClassOf(analysis, types, atom) : -1,
+    protonRow: protonClassOf(analysis, types, atom),
+    terms: buffer.slice(0, count),
+  };
 }
 
 function assignedCarbons(): Sample[] {
@@ -59,7 +70,12 @@ function assignedCarbons(): Sample[] {
 /** Signals of complete lists without atoms, laid on the predictions of the last fit; counted less than known ones. */
 function matchedCarbons(table: IncrementTable, weight: number): Sample[] {
   const { proton } = createTextbookTables();
-  const predictor = createIncrementPredictor(table, proton, { carbonFloor: new Float32Array(table.classes.length).fill(2), protonFloor: new Float32Array(proton.classes.length).fill(1), carbonWeight: 0.3, protonWeight: 1 });
+  const predictor = createIncrementPredictor(table, proton, {
+    carbonFloor: new Float32Array(table.classes.length).fill(2),
+    protonFloor: new Float32Array(proton.classes.length).fill(1),
+    carbonWeight: 0.3,
+    protonWeight: 1,
+  });
   const out = createPredictedShifts();
   return fitting.flatMap((record) => {
     if (record.carbonAssignment === 'molfile') return [];
@@ -118,7 +134,12 @@ function fitClass(samples: readonly Sample[], start: Float32Array, spread: Prior
     residuals = target.map((value, s) => value - rows[s].reduce((sum, i) => sum + solution[i], 0));
     sigma = Math.max(sigmaFloor, spreadOf(residuals));
   }
-  const terms = new Map(active.map((term, i) => [term, { correction: solution[i], spread: sigma / Math.sqrt(counts[i] + (sigma / priorSpreadOf(term, spread)) ** 2) }]));
+  const terms = new Map(
+    active.map((term, i) => [
+      term,
+      { correction: solution[i], spread: sigma / Math.sqrt(counts[i] + (sigma / priorSpreadOf(term, spread)) ** 2) },
+    ]),
+  );
   return { terms, sigma };
 }
 
@@ -150,7 +171,12 @@ function solveCholesky(a: Float64Array, b: Float64Array, n: number, x: Float64Ar
 }
 
 /** Fits every class; returns the table and the classes. */
-function fitTable(samples: readonly Sample[], start: IncrementTable, spread: PriorSpread, sigmaFloor: number): { table: IncrementTable; classes: (FittedClass | null)[] } {
+function fitTable(
+  samples: readonly Sample[],
+  start: IncrementTable,
+  spread: PriorSpread,
+  sigmaFloor: number,
+): { table: IncrementTable; classes: (FittedClass | null)[] } {
   const values = Float32Array.from(start.values);
   const variances = Float32Array.from(start.variances);
   const classes = start.classes.map((_, row) => {
@@ -179,8 +205,15 @@ const evaluate = (table: IncrementTable, sample: Sample): { error: number; varia
 /**
  * Spread model from errors on compounds not fitted: the weight of the term variances under which a Student-type
  * likelihood is best, and per class the floor that puts 68.3 % of the errors within one standard deviation.
+ *
+ * @param floorElsewhere - for classes with fewer than 30 errors, ppm: common practice for textbook rules.
  */
-function calibrate(checks: ReadonlyArray<{ row: number; error: number; variance: number }>, classes: readonly string[], digits: number): { floors: Record<string, number>; floorElsewhere: number; termWeight: number } {
+function calibrate(
+  checks: ReadonlyArray<{ row: number; error: number; variance: number }>,
+  classes: readonly string[],
+  digits: number,
+  floorElsewhere: number,
+): { floors: Record<string, number>; floorElsewhere: number; termWeight: number } {
   const floorFor = (own: typeof checks, weight: number): number => {
     let low = 0;
     let high = 50;
@@ -193,7 +226,7 @@ function calibrate(checks: ReadonlyArray<{ row: number; error: number; variance:
     return Math.max(high, 10 ** -digits * 5);
   };
   let best = { likelihood: -Infinity, weight: 1 };
-  for (const weight of [0.01, 0.02, 0.05, 0.1, 0.15, 0.2, 0.3, 0.5, 0.8, 1.2]) {
+  for (const weight of [0.01, 0.02, 0.05, 0.1, 0.15, 0.2, 0.3, 0.5, 0.8, 1.2, 2, 3, 5, 8, 12, 20]) {
     const floor = floorFor(checks, weight);
     let likelihood = 0;
     for (const { error, variance } of checks) {
@@ -207,16 +240,27 @@ function calibrate(checks: ReadonlyArray<{ row: number; error: number; variance:
     const own = checks.filter((check) => check.row === row);
     if (own.length >= 30) floors[name] = Number(floorFor(own, best.weight).toFixed(digits));
   });
-  const known = Object.values(floors).sort((a, b) => a - b);
-  return { floors, floorElsewhere: Number((1.5 * known[Math.floor(known.length * 0.75)]).toFixed(digits)), termWeight: best.weight };
+  return { floors, floorElsewhere, termWeight: best.weight };
 }
 
 /** Errors of assigned samples when their own third of the folds is left out. */
-function crossValidate(samples: readonly Sample[], assignedCount: number, start: IncrementTable, spread: PriorSpread, sigmaFloor: number): { row: number; error: number; variance: number }[] {
+function crossValidate(
+  samples: readonly Sample[],
+  assignedCount: number,
+  start: IncrementTable,
+  spread: PriorSpread,
+  sigmaFloor: number,
+): { row: number; error: number; variance: number }[] {
   const checks: { row: number; error: number; variance: number }[] = [];
   for (let part = 0; part < 3; part++) {
-    const { table } = fitTable(samples.filter((sample) => sample.fold % 3 !== part), start, spread, sigmaFloor);
-    for (const sample of samples.slice(0, assignedCount)) if (sample.fold % 3 === part) checks.push({ row: sample.row, ...evaluate(table, sample) });
+    const { table } = fitTable(
+      samples.filter((sample) => sample.fold % 3 !== part),
+      start,
+      spread,
+      sigmaFloor,
+    );
+    for (const sample of samples.slice(0, assignedCount))
+      if (sample.fold % 3 === part) checks.push({ row: sample.row, ...evaluate(table, sample) });
   }
   return checks;
 }
@@ -228,7 +272,9 @@ function writeCorrections(classes: readonly (FittedClass | null)[], names: reado
     .flatMap((fitted, row) => {
       if (fitted === null) return [];
       const items = [...fitted.terms]
-        .filter(([term, { correction, spread: width }]) => Math.abs(correction) >= resolution / 2 || width < 0.8 * priorSpreadOf(term, spread))
+        .filter(
+          ([term, { correction, spread: width }]) => Math.abs(correction) >= resolution / 2 || width < 0.8 * priorSpreadOf(term, spread),
+        )
         .map(([term, { correction, spread: width }]) => `${termName(term)}=${trim(correction, digits)}±${trim(width, digits)}`);
       return items.length === 0 ? [] : [`${names[row]}|${items.join(';')}`];
     })
@@ -261,9 +307,7 @@ console.log('1H assigned:', summary(protonChecks), `(${ATOM_TYPE_COUNT} atom typ
 const literal = (name: string, corrections: string, model: ReturnType<typeof calibrate>): string =>
   `export const ${name}: FittedIncrements = {\n  corrections: \`\n${corrections}\n\`,\n  floors: ${JSON.stringify(model.floors)},\n  floorElsewhere: ${model.floorElsewhere},\n  termWeight: ${model.termWeight},\n};\n`;
 const target = resolve(folder, '../../workers/prediction/fitted-increments.ts');
-writeFileSync(
-  target,
-  `/*
+const text = `/*
  * Written by tests/bench/fit-increments.ts; do not edit. Corrections fitted on the open database nmrshiftdb2
  * (Kuhn & Schlörer, Magn. Reson. Chem. 2015, 53, 582), folds 1 to 9 by InChIKey skeleton, by robust ridge regression
  * towards the published increments. ${assigned.length} assigned and ${carbonSamples.length - assigned.length} matched 13C signals, ${protons.length} assigned 1H signals.
@@ -281,7 +325,7 @@ export interface FittedIncrements {
   readonly termWeight: number;
 }
 
-${literal('FITTED_CARBON', writeCorrections(carbonFit.classes, textbook.carbon.classes, CARBON_SPREAD, 1), calibrate(carbonChecks, textbook.carbon.classes, 1))}
-${literal('FITTED_PROTON', writeCorrections(protonFit.classes, textbook.proton.classes, PROTON_SPREAD, 2), calibrate(protonChecks, textbook.proton.classes, 2))}`,
-);
+${literal('FITTED_CARBON', writeCorrections(carbonFit.classes, textbook.carbon.classes, CARBON_SPREAD, 1), calibrate(carbonChecks, textbook.carbon.classes, 1, 3))}
+${literal('FITTED_PROTON', writeCorrections(protonFit.classes, textbook.proton.classes, PROTON_SPREAD, 2), calibrate(protonChecks, textbook.proton.classes, 2, 0.3))}`;
+writeFileSync(target, await format(text, { parser: 'typescript', printWidth: 140, singleQuote: true }));
 console.log('written', target);

@@ -1,13 +1,13 @@
 /*
- * Errors and speed of the shift predictor: npx tsx tests/bench/prediction.ts
+ * Errors and speed of the shift predictor: npm run bench -- prediction
  * Scored on fold 0 of the open data, which the committed increments were not fitted on.
  */
 import { analyseStructure, AnalysisScratch } from '../../workers/graph/analysis.js';
 import { createShiftPredictor } from '../../workers/prediction/create-shift-predictor.js';
 import { createPredictedShifts } from '../../workers/prediction/predicted-shifts.js';
-import { readNmrData, type NmrRecord } from './nmr-data.js';
-import { scorePredictor, type ErrorSet } from './prediction-errors.js';
-import { summarise } from './sorted-matching.js';
+import { readNmrData, type NmrRecord } from '../support/nmr-data.js';
+import { scorePredictor, type ErrorSet } from '../support/prediction-errors.js';
+import { summarise } from '../support/sorted-matching.js';
 
 const records = readNmrData('train.jsonl.gz');
 if (records === null) {
@@ -16,7 +16,11 @@ if (records === null) {
   const heldOut = records.filter((record) => record.fold === 0);
   const small = heldOut.filter((record) => record.heavyAtoms <= 16);
   for (const source of ['textbook', 'fitted'] as const) {
-    for (const [name, set] of [['all', heldOut], ['up to 16 heavy atoms', small]] as const) report(`${source}, ${name}`, set, source);
+    for (const [name, set] of [
+      ['all', heldOut],
+      ['up to 16 heavy atoms', small],
+    ] as const)
+      report(`${source}, ${name}`, set, source);
   }
   measureSpeed(records.filter((record) => record.heavyAtoms === 12));
 }
@@ -28,7 +32,9 @@ function report(title: string, set: readonly NmrRecord[], source: 'fitted' | 'te
     const inside = errors.scaled.filter((z) => Math.abs(z) <= 1).length / errors.scaled.length;
     return `  ${name}: ${count} compounds, ${errors.perSignal.length} signals; mean of compounds ${mean.toFixed(digits)}, median ${median.toFixed(digits)}, 90 % ${p90.toFixed(digits)} ppm; within 1 sd ${(100 * inside).toFixed(0)} %`;
   };
-  console.log(`${title} (fold 0)\n${line('13C matched', scores.matched, 2)}\n${line('13C assigned', scores.assigned, 2)}\n${line('1H assigned', scores.proton, 3)}`);
+  console.log(
+    `${title} (fold 0)\n${line('13C matched', scores.matched, 2)}\n${line('13C assigned', scores.assigned, 2)}\n${line('1H assigned', scores.proton, 3)}`,
+  );
 }
 
 /** Analysis + prediction of real 12-atom molecules on one thread, best of three. */
@@ -46,5 +52,7 @@ function measureSpeed(molecules: readonly NmrRecord[]): void {
     times.both = Math.min(times.both, performance.now() - start);
   }
   const rate = (milliseconds: number): string => Math.round((1000 * molecules.length) / milliseconds).toLocaleString('en');
-  console.log(`speed, ${molecules.length} real molecules of 12 heavy atoms: analysis alone ${rate(times.analysis)}/s, analysis + prediction ${rate(times.both)}/s`);
+  console.log(
+    `speed, ${molecules.length} real molecules of 12 heavy atoms: analysis alone ${rate(times.analysis)}/s, analysis + prediction ${rate(times.both)}/s`,
+  );
 }

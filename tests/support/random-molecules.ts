@@ -12,7 +12,18 @@ export function createRandom(seed: number): () => number {
 }
 
 const ELEMENTS: ReadonlyArray<readonly [atomicNumber: number, valence: number, weight: number]> = [
-  [6, 4, 60], [7, 3, 10], [8, 2, 12], [16, 2, 4], [16, 6, 2], [9, 1, 3], [17, 1, 3], [35, 1, 2], [53, 1, 1], [14, 4, 1], [15, 3, 1], [15, 5, 1],
+  [6, 4, 60],
+  [7, 3, 10],
+  [8, 2, 12],
+  [16, 2, 4],
+  [16, 6, 2],
+  [9, 1, 3],
+  [17, 1, 3],
+  [35, 1, 2],
+  [53, 1, 1],
+  [14, 4, 1],
+  [15, 3, 1],
+  [15, 5, 1],
 ];
 
 /**
@@ -107,7 +118,13 @@ export function permutationOf(n: number, seed: number): number[] {
 /** The same molecule with atom a renamed to `permutation[a]`. */
 export function relabelGraph(graph: MolecularGraph, permutation: readonly number[]): MolecularGraph {
   const n = graph.atomCount;
-  const result = { atomCount: n, atomicNumbers: new Uint8Array(n), hydrogens: new Uint8Array(n), charges: new Int8Array(n), bondOrders: new Uint8Array(n * n) };
+  const result = {
+    atomCount: n,
+    atomicNumbers: new Uint8Array(n),
+    hydrogens: new Uint8Array(n),
+    charges: new Int8Array(n),
+    bondOrders: new Uint8Array(n * n),
+  };
   for (let a = 0; a < n; a++) {
     result.atomicNumbers[permutation[a]] = graph.atomicNumbers[a];
     result.hydrogens[permutation[a]] = graph.hydrogens[a];

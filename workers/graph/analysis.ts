@@ -101,7 +101,10 @@ export class AnalysisScratch implements StructureAnalysis {
  * @returns the scratch, valid until it is used for the next structure.
  * @throws RangeError if the structure has more atoms than the scratch was made for.
  */
-export function analyseStructure(graph: MolecularGraph, scratch: AnalysisScratch = new AnalysisScratch(graph.atomCount)): StructureAnalysis {
+export function analyseStructure(
+  graph: MolecularGraph,
+  scratch: AnalysisScratch = new AnalysisScratch(graph.atomCount),
+): StructureAnalysis {
   const n = graph.atomCount;
   if (n > scratch.maxAtoms) throw new RangeError(`analyseStructure: ${n} atoms, scratch made for ${scratch.maxAtoms}`);
   scratch.reset(graph);
@@ -189,7 +192,14 @@ function fillRingSizes(n: number, scratch: AnalysisScratch): boolean {
 
 /** Atoms of the smallest ring through the bond a–b, 0 if the bond is a bridge. Breadth first from a, bond a–b left out. */
 function smallestRingThrough(
-  a: number, b: number, n: number, neighbours: Uint8Array, degrees: Uint8Array, inCore: Uint8Array, queue: Uint8Array, depth: Uint8Array,
+  a: number,
+  b: number,
+  n: number,
+  neighbours: Uint8Array,
+  degrees: Uint8Array,
+  inCore: Uint8Array,
+  queue: Uint8Array,
+  depth: Uint8Array,
 ): number {
   depth.fill(0, 0, n);
   depth[a] = 1;

@@ -7,16 +7,106 @@ import { NEIGHBOUR_STRIDE } from '../graph/analysis.js';
  * behind O, N and S stand the partners: `sp2` aryl or vinyl, `acyl` C=O or C=S.
  */
 export const ATOM_TYPES = [
-  'sp3:1', 'sp3:2', 'sp3:3', 'sp3:4', 'ring3:2', 'ring3:3', 'ring3:4',
-  '=CH2', '=CH', '=C', '=C=', '#CH', '#C', 'nitrile', 'isonitrile', 'cumulated',
-  'CHO', 'CO', 'COar', 'COOH', 'COOR', 'CON', 'COX', 'HCOX', 'carbonic', 'COS', 'C=N:H', 'C=N:C', 'C=N:X', 'C=S',
-  'ar6:CH', 'ar6:C', 'ar6:fused', 'ar6:C=O', 'ar5:CH', 'ar5:C', 'ar5:fused', 'ar5:C=O', 'C:other',
-  'OH:alkyl', 'OH:sp2', 'OH:acyl', 'OH:other', 'O:alkyl2', 'O:alkyl-sp2', 'O:sp2-sp2', 'O:alkyl-acyl', 'O:sp2-acyl', 'O:acyl2',
-  'O:N', 'O:other', 'O:ring3', '=O:C', '=O:other', 'O:minus', 'o:ar',
-  'NH2:alkyl', 'NH:alkyl', 'N:alkyl', 'NH2:sp2', 'NH:sp2', 'N:sp2', 'NH2:acyl', 'NH:acyl', 'N:acyl', 'N:SP', 'N:N', 'N:O',
-  'N=C', 'N=N', 'N=O', 'NO2', 'N:oxide', 'N:plus', 'N:cumulated', 'nitrileN', 'n6', 'n5', 'nH', 'nR', 'n:oxide',
-  'SH', 'S:alkyl2', 'S:sp2', 'S:acyl', 'S:S', 'SO', 'SO2', 'SO2X', '=S', 's:ar', 'S:other',
-  'F', 'Cl', 'Br', 'I', 'P3', 'P5', 'Si', 'other',
+  'sp3:1',
+  'sp3:2',
+  'sp3:3',
+  'sp3:4',
+  'ring3:2',
+  'ring3:3',
+  'ring3:4',
+  '=CH2',
+  '=CH',
+  '=C',
+  '=C=',
+  '#CH',
+  '#C',
+  'nitrile',
+  'isonitrile',
+  'cumulated',
+  'CHO',
+  'CO',
+  'COar',
+  'COOH',
+  'COOR',
+  'CON',
+  'COX',
+  'HCOX',
+  'carbonic',
+  'COS',
+  'C=N:H',
+  'C=N:C',
+  'C=N:X',
+  'C=S',
+  'ar6:CH',
+  'ar6:C',
+  'ar6:fused',
+  'ar6:C=O',
+  'ar5:CH',
+  'ar5:C',
+  'ar5:fused',
+  'ar5:C=O',
+  'C:other',
+  'OH:alkyl',
+  'OH:sp2',
+  'OH:acyl',
+  'OH:other',
+  'O:alkyl2',
+  'O:alkyl-sp2',
+  'O:sp2-sp2',
+  'O:alkyl-acyl',
+  'O:sp2-acyl',
+  'O:acyl2',
+  'O:N',
+  'O:other',
+  'O:ring3',
+  '=O:C',
+  '=O:other',
+  'O:minus',
+  'o:ar',
+  'NH2:alkyl',
+  'NH:alkyl',
+  'N:alkyl',
+  'NH2:sp2',
+  'NH:sp2',
+  'N:sp2',
+  'NH2:acyl',
+  'NH:acyl',
+  'N:acyl',
+  'N:SP',
+  'N:N',
+  'N:O',
+  'N=C',
+  'N=N',
+  'N=O',
+  'NO2',
+  'N:oxide',
+  'N:plus',
+  'N:cumulated',
+  'nitrileN',
+  'n6',
+  'n5',
+  'nH',
+  'nR',
+  'n:oxide',
+  'SH',
+  'S:alkyl2',
+  'S:sp2',
+  'S:acyl',
+  'S:S',
+  'SO',
+  'SO2',
+  'SO2X',
+  '=S',
+  's:ar',
+  'S:other',
+  'F',
+  'Cl',
+  'Br',
+  'I',
+  'P3',
+  'P5',
+  'Si',
+  'other',
 ] as const;
 export type AtomType = (typeof ATOM_TYPES)[number];
 export const ATOM_TYPE_COUNT = ATOM_TYPES.length;
@@ -29,7 +119,24 @@ export function atomTypeIndex(type: AtomType): number {
 
 /** Coarse kinds for pair terms. */
 export const ATOM_GROUPS = [
-  'alkyl', 'vinyl', 'aryl', 'acyl', 'O', '=O', 'N', '=N', 'arN', 'arNR', 'arX', 'S', 'F', 'Cl', 'Br', 'I', 'Si',
+  'alkyl',
+  'vinyl',
+  'linear',
+  'aryl',
+  'acyl',
+  'O',
+  '=O',
+  'N',
+  '=N',
+  'arN',
+  'arNR',
+  'arX',
+  'S',
+  'F',
+  'Cl',
+  'Br',
+  'I',
+  'Si',
 ] as const;
 export type AtomGroup = (typeof ATOM_GROUPS)[number];
 export const ATOM_GROUP_COUNT = ATOM_GROUPS.length;
@@ -37,9 +144,10 @@ export const ATOM_GROUP_COUNT = ATOM_GROUPS.length;
 function groupOf(type: AtomType): AtomGroup {
   if (type === 'F' || type === 'Cl' || type === 'Br' || type === 'I') return type;
   if (/^(sp3|ring3)/.test(type)) return 'alkyl';
-  if (/^(=CH2|=CH|=C|=C=|#CH|#C|cumulated|C:other)$/.test(type)) return 'vinyl';
+  if (/^(#CH|#C|nitrile|isonitrile)$/.test(type)) return 'linear';
+  if (/^(=CH2|=CH|=C|=C=|cumulated|C:other)$/.test(type)) return 'vinyl';
   if (/^ar/.test(type)) return 'aryl';
-  if (/^(nitrile|isonitrile|CHO|CO|COar|COOH|COOR|CON|COX|HCOX|carbonic|COS|C=N:.|C=S)$/.test(type)) return 'acyl';
+  if (/^(CHO|CO|COar|COOH|COOR|CON|COX|HCOX|carbonic|COS|C=N:.|C=S)$/.test(type)) return 'acyl';
   if (/^(=O:|O:minus|=S)/.test(type)) return '=O';
   if (type === 'o:ar' || type === 's:ar') return 'arX';
   if (/^O/.test(type)) return 'O';
@@ -72,17 +180,38 @@ export function fillAtomTypes(analysis: StructureAnalysis, types: Uint8Array): v
   const z = analysis.graph.atomicNumbers;
   for (let a = 0; a < n; a++) {
     switch (z[a]) {
-      case 6: types[a] = carbonType(analysis, a); break;
-      case 7: types[a] = nitrogenType(analysis, a); break;
-      case 8: types[a] = oxygenType(analysis, a); break;
-      case 16: types[a] = sulfurType(analysis, a); break;
-      case 9: types[a] = INDEX.F; break;
-      case 17: types[a] = INDEX.Cl; break;
-      case 35: types[a] = INDEX.Br; break;
-      case 53: types[a] = INDEX.I; break;
-      case 15: types[a] = analysis.hybridisation[a] === 3 && analysis.degrees[a] + analysis.graph.hydrogens[a] > 3 ? INDEX.P5 : INDEX.P3; break;
-      case 14: types[a] = INDEX.Si; break;
-      default: types[a] = INDEX.other;
+      case 6:
+        types[a] = carbonType(analysis, a);
+        break;
+      case 7:
+        types[a] = nitrogenType(analysis, a);
+        break;
+      case 8:
+        types[a] = oxygenType(analysis, a);
+        break;
+      case 16:
+        types[a] = sulfurType(analysis, a);
+        break;
+      case 9:
+        types[a] = INDEX.F;
+        break;
+      case 17:
+        types[a] = INDEX.Cl;
+        break;
+      case 35:
+        types[a] = INDEX.Br;
+        break;
+      case 53:
+        types[a] = INDEX.I;
+        break;
+      case 15:
+        types[a] = analysis.hybridisation[a] === 3 && analysis.degrees[a] + analysis.graph.hydrogens[a] > 3 ? INDEX.P5 : INDEX.P3;
+        break;
+      case 14:
+        types[a] = INDEX.Si;
+        break;
+      default:
+        types[a] = INDEX.other;
     }
   }
 }
@@ -109,8 +238,19 @@ function carbonType(analysis: StructureAnalysis, a: number): number {
     if (smallestRingOfAtom[a] === 3) return RING3_2 + degree - 2;
     return SP3_1 + (degree === 0 ? 0 : degree - 1);
   }
-  let oxo = 0, thio = 0, imino = 0, doubleCarbon = 0, tripleNitrogen = 0, tripleCarbon = 0, doubleOther = 0;
-  let singleO = 0, singleN = 0, singleS = 0, halogen = 0, conjugated = 0, hydroxyl = 0;
+  let oxo = 0,
+    thio = 0,
+    imino = 0,
+    doubleCarbon = 0,
+    tripleNitrogen = 0,
+    tripleCarbon = 0,
+    doubleOther = 0;
+  let singleO = 0,
+    singleN = 0,
+    singleS = 0,
+    halogen = 0,
+    conjugated = 0,
+    hydroxyl = 0;
   for (let k = 0; k < degree; k++) {
     const b = neighbours[base + k];
     const order = bondOrders[a * n + b];
@@ -196,7 +336,13 @@ function nitrogenType(analysis: StructureAnalysis, a: number): number {
   const { atomCount: n, atomicNumbers: z, bondOrders, hydrogens, charges } = graph;
   const degree = degrees[a];
   const base = a * NEIGHBOUR_STRIDE;
-  let oxides = 0, doubleTo = 0, hasTriple = false, nitrogen = false, oxygen = false, sulfurOrPhosphorus = false, kind = 0;
+  let oxides = 0,
+    doubleTo = 0,
+    hasTriple = false,
+    nitrogen = false,
+    oxygen = false,
+    sulfurOrPhosphorus = false,
+    kind = 0;
   for (let k = 0; k < degree; k++) {
     const b = neighbours[base + k];
     const order = bondOrders[a * n + b];
@@ -246,7 +392,12 @@ function sulfurType(analysis: StructureAnalysis, a: number): number {
   const { atomCount: n, atomicNumbers: z, bondOrders, hydrogens } = graph;
   if (aromaticAtoms[a] === 1) return INDEX['s:ar'];
   const degree = degrees[a];
-  let oxo = 0, otherDouble = 0, hetero = 0, sulfur = 0, kind = 0, isCyano = false;
+  let oxo = 0,
+    otherDouble = 0,
+    hetero = 0,
+    sulfur = 0,
+    kind = 0,
+    isCyano = false;
   for (let k = 0; k < degree; k++) {
     const b = neighbours[a * NEIGHBOUR_STRIDE + k];
     if (bondOrders[a * n + b] === 2) {

@@ -48,9 +48,12 @@ function isAldehyde(analysis: StructureAnalysis, a: number): boolean {
 
 /** Neighbouring hydrogens of one aromatic ring. */
 function aromaticVicinal(analysis: StructureAnalysis, a: number, b: number): number {
-  if (analysis.smallestRingOfBond[a * analysis.graph.atomCount + b] !== 5) return hasRingNitrogen(analysis, a) || hasRingNitrogen(analysis, b) ? 5 : ORTHO;
+  if (analysis.smallestRingOfBond[a * analysis.graph.atomCount + b] !== 5)
+    return hasRingNitrogen(analysis, a) || hasRingNitrogen(analysis, b) ? 5 : ORTHO;
   const { atomicNumbers, hydrogens } = analysis.graph;
-  const donors = [a, b].flatMap((atom) => neighboursOf(analysis, atom).filter((c) => analysis.aromaticAtoms[c] === 1 && atomicNumbers[c] !== 6));
+  const donors = [a, b].flatMap((atom) =>
+    neighboursOf(analysis, atom).filter((c) => analysis.aromaticAtoms[c] === 1 && atomicNumbers[c] !== 6),
+  );
   const donor = donors.find((c) => atomicNumbers[c] === 8 || atomicNumbers[c] === 16 || hydrogens[c] > 0 || analysis.degrees[c] === 3);
   if (donor === undefined) return 3.5;
   if (atomicNumbers[donor] === 8) return 1.8;
@@ -59,7 +62,9 @@ function aromaticVicinal(analysis: StructureAnalysis, a: number, b: number): num
 }
 
 function hasRingNitrogen(analysis: StructureAnalysis, atom: number): boolean {
-  return neighboursOf(analysis, atom).some((c) => analysis.graph.atomicNumbers[c] === 7 && analysis.aromaticBonds[atom * analysis.graph.atomCount + c] === 1);
+  return neighboursOf(analysis, atom).some(
+    (c) => analysis.graph.atomicNumbers[c] === 7 && analysis.aromaticBonds[atom * analysis.graph.atomCount + c] === 1,
+  );
 }
 
 /** Four-bond coupling over the path a–middle–c, 0 when none is worth naming. */

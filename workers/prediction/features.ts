@@ -84,7 +84,14 @@ export function createTermScratch(maxAtoms: number = MAX_ATOMS): TermScratch {
  * @param terms - receives the offsets, room for MAX_TERMS; a term can occur several times.
  * @returns how many terms were written.
  */
-export function fillTerms(analysis: StructureAnalysis, types: Uint8Array, atom: number, mode: number, scratch: TermScratch, terms: Int32Array): number {
+export function fillTerms(
+  analysis: StructureAnalysis,
+  types: Uint8Array,
+  atom: number,
+  mode: number,
+  scratch: TermScratch,
+  terms: Int32Array,
+): number {
   const { graph, neighbours, degrees, aromaticBonds, hybridisation, smallestRingOfAtom, ringBondCounts } = analysis;
   const { atomCount: n, atomicNumbers, bondOrders } = graph;
   const { queue, distance, path } = scratch;

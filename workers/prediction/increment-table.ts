@@ -21,8 +21,8 @@ export interface PriorSpread {
   readonly chain: number;
 }
 /** Guesses from the scatter of textbook rules (common practice), refined where data exist. */
-export const CARBON_SPREAD: PriorSpread = { base: 6, byDistance: [6, 3, 1.5, 0.7], ring: 3, pair: 4, chain: 2 };
-export const PROTON_SPREAD: PriorSpread = { base: 0.4, byDistance: [0.4, 0.2, 0.1, 0.05], ring: 0.2, pair: 0.3, chain: 0.15 };
+export const CARBON_SPREAD: PriorSpread = { base: 2, byDistance: [6, 3, 1.5, 0.7], ring: 3, pair: 4, chain: 2 };
+export const PROTON_SPREAD: PriorSpread = { base: 0.2, byDistance: [0.4, 0.2, 0.1, 0.05], ring: 0.2, pair: 0.3, chain: 0.15 };
 
 /** Prior standard deviation of a term, ppm. */
 export function priorSpreadOf(term: number, spread: PriorSpread): number {
@@ -38,7 +38,7 @@ export function priorSpreadOf(term: number, spread: PriorSpread): number {
 const PAIR_START = TERM_BY_NAME.get('alkyl&alkyl')!;
 const CHAIN_START = TERM_BY_NAME.get('alkyl>alkyl')!;
 
-/** Table with published increments only. @throws Error on an unknown class or term: a slip in the tables. */
+/** Table with published increments only. @throws Error on an unknown class or term, or one given twice: a slip in the tables. */
 export function createTextbookTable(classes: readonly string[], entries: readonly TextbookEntry[], spread: PriorSpread): IncrementTable {
   const values = new Float32Array(classes.length * TERM_COUNT);
   const variances = new Float32Array(classes.length * TERM_COUNT);
@@ -46,13 +46,16 @@ export function createTextbookTable(classes: readonly string[], entries: readonl
     const variance = priorSpreadOf(term, spread) ** 2;
     for (let c = 0; c < classes.length; c++) variances[c * TERM_COUNT + term] = variance;
   }
+  const isSet = new Set<number>();
   for (const { classes: names, term, value } of entries) {
     const offset = TERM_BY_NAME.get(term);
     if (offset === undefined) throw new Error(`Increment table: no term "${term}"`);
     for (const name of names) {
       const row = classes.indexOf(name);
       if (row === -1) throw new Error(`Increment table: no class "${name}"`);
-      values[row * TERM_COUNT + offset] += value;
+      if (isSet.has(row * TERM_COUNT + offset)) throw new Error(`Increment table: "${name}" has "${term}" twice`);
+      isSet.add(row * TERM_COUNT + offset);
+      values[row * TERM_COUNT + offset] = value;
     }
   }
   return { values, variances, classes };
@@ -74,7 +77,10 @@ export function applyCorrections(table: IncrementTable, text: string): void {
       const equals = item.lastIndexOf('=');
       const offset = TERM_BY_NAME.get(item.slice(0, equals));
       if (offset === undefined) throw new Error(`Fitted increments: no term "${item.slice(0, equals)}"`);
-      const [correction, spread] = item.slice(equals + 1).split('±').map(Number);
+      const [correction, spread] = item
+        .slice(equals + 1)
+        .split('±')
+        .map(Number);
       table.values[row * TERM_COUNT + offset] += correction;
       table.variances[row * TERM_COUNT + offset] = spread ** 2;
     }

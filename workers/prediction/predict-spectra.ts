@@ -61,7 +61,9 @@ export function predictSpectra(graph: MolecularGraph, solvent = 'CDCl3'): Predic
     const isExchangeable = IS_EXCHANGEABLE_CLASS[protonClass] === 1;
     if (isExchangeable && exchange.isDeuterating) continue;
     const inSolvent = isExchangeable ? exchange.shifts[PROTON_CLASSES[protonClass]] : undefined;
-    const pattern = isExchangeable ? exchangeablePattern(analysis, first) : patternOf(analysis, equivalence, group, shifts.protonShift, exchange);
+    const pattern = isExchangeable
+      ? exchangeablePattern(analysis, first)
+      : patternOf(analysis, equivalence, group, shifts.protonShift, exchange);
     protons.push({
       atoms: group.atoms,
       shift: round(inSolvent ?? shifts.protonShift[first] + placeOffset(analysis, types, group), 3),
@@ -73,7 +75,8 @@ export function predictSpectra(graph: MolecularGraph, solvent = 'CDCl3'): Predic
       basis: predictor.protonRules[shifts.protonRule[first]],
     });
   }
-  const byFallingShift = (a: { shift: number; atoms: readonly number[] }, b: { shift: number; atoms: readonly number[] }): number => b.shift - a.shift || a.atoms[0] - b.atoms[0];
+  const byFallingShift = (a: { shift: number; atoms: readonly number[] }, b: { shift: number; atoms: readonly number[] }): number =>
+    b.shift - a.shift || a.atoms[0] - b.atoms[0];
   return { carbons: carbons.sort(byFallingShift), protons: protons.sort(byFallingShift) };
 }
 

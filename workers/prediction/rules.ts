@@ -1,13 +1,30 @@
 /** Names of the rules behind carbon shifts, for people. */
 export const CARBON_RULES = [
-  'alkane increments', 'cyclopropane increments', 'alkene increments', 'alkyne increments', 'nitrile rule', 'cumulated double bonds',
-  'carbonyl rule', 'imine rule', 'benzene increments', 'five-ring heteroarene increments', 'range',
+  'alkane increments',
+  'cyclopropane increments',
+  'alkene increments',
+  'alkyne increments',
+  'nitrile rule',
+  'cumulated double bonds',
+  'carbonyl rule',
+  'imine rule',
+  'benzene increments',
+  'five-ring heteroarene increments',
+  'range',
 ] as const;
 
 /** Names of the rules behind proton shifts, for people. */
 export const PROTON_RULES = [
-  'alkyl increments', 'CH2XY rule', 'cyclopropane increments', 'alkene increments', 'alkyne range', 'aldehyde rule',
-  'benzene increments', 'five-ring heteroarene increments', 'exchangeable, range', 'range',
+  'alkyl increments',
+  'CH2XY rule',
+  'cyclopropane increments',
+  'alkene increments',
+  'alkyne range',
+  'aldehyde rule',
+  'benzene increments',
+  'five-ring heteroarene increments',
+  'exchangeable, range',
+  'range',
 ] as const;
 
 /** Rule index of a carbon class name. */

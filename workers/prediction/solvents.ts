@@ -18,7 +18,11 @@ const DIMETHYL_SULFOXIDE: ExchangeBehaviour = {
   isSlow: true,
   shifts: { 'OH:alkyl': 4.6, 'OH:sp2': 9.4, 'OH:acyl': 12.3, 'OH:other': 10.8, 'NH:sp2': 5.6, 'NH:acyl': 8, nH: 11.5, 'NH:other': 8 },
 };
-const ACETONE: ExchangeBehaviour = { isDeuterating: false, isSlow: true, shifts: { 'OH:alkyl': 3.6, 'OH:sp2': 8.3, 'OH:acyl': 10.8, 'NH:acyl': 7.4, nH: 10.2 } };
+const ACETONE: ExchangeBehaviour = {
+  isDeuterating: false,
+  isSlow: true,
+  shifts: { 'OH:alkyl': 3.6, 'OH:sp2': 8.3, 'OH:acyl': 10.8, 'NH:acyl': 7.4, nH: 10.2 },
+};
 
 /**
  * Looks a solvent up by the names in common use (`CDCl3`, `DMSO-d6`, `acetone-d6`, `CD3OD`, `D2O` …); unknown names

@@ -15,7 +15,7 @@ const ALKENYL = named(/^(=CH2|=CH|=C|=C=|cumulated|C=N:.|C=S|C:other)$/);
 const ALKYNYL = named(/^#C/);
 const ARYL = named(/^ar/);
 const ETHER_O = named(/^O:(alkyl2|alkyl-sp2|ring3|N|other|sp2-sp2)$/);
-const AMINE_N = named(/^(NH2|NH|N):(alkyl|sp2|acyl|SP|N|O)$|^N(=|:)|^n/);
+const AMINE_N = named(/^(NH2|NH|N):|^N=|^n(5|6|H|R|:oxide)$/);
 const THIOETHER = named(/^(S:alkyl2|S:sp2|S:acyl|S:S|S:other|=S|s:ar)$/);
 const CHAIN_CLASSES: CarbonClass[] = CARBON_CLASSES.filter((name) => /^(sp3|ring3)/.test(name));
 const ALKENE_CLASSES: CarbonClass[] = ['=CH2', '=CH', '=C'];
@@ -81,7 +81,14 @@ for (const [types, alpha, beta, gamma] of CHAIN_GROUPS) {
   addEach(CHAIN_CLASSES, 'γ0', types, gamma);
 }
 /** Rings: shift of the cycloalkane (from memory: −2.8, 22.4, 25.6, 26.9, 28.2, 26.6) less the alkane increments. */
-for (const [size, value] of [['3', -18.7], ['4', -2.9], ['5', -9.1], ['6', -5.3], ['7', -1.5], ['8+', -3.4]] as const) {
+for (const [size, value] of [
+  ['3', -18.7],
+  ['4', -2.9],
+  ['5', -9.1],
+  ['6', -5.3],
+  ['7', -1.5],
+  ['8+', -3.4],
+] as const) {
   for (const bonds of [2, 3, 4]) add(CHAIN_CLASSES, `ring ${size}/${bonds}`, value);
 }
 
@@ -168,7 +175,10 @@ add(['ar6:fused'], 'ring 6/3', 5.1);
 add(['ar6:CH', 'ar6:C'], 'α0 ar6:fused', -0.5);
 add(['ar6:CH', 'ar6:C'], 'β0 ar6:fused', -2.6);
 /** Pyridine 149.90, 123.71, 135.89 (Babij et al. 2016) less benzene; N-oxide from memory. */
-for (const [type, ortho, meta, para] of [['n6', 21.4, -4.8, 7.4], ['n:oxide', 10.5, -2.5, -2]] as const) {
+for (const [type, ortho, meta, para] of [
+  ['n6', 21.4, -4.8, 7.4],
+  ['n:oxide', 10.5, -2.5, -2],
+] as const) {
   add(BENZENE_CLASSES, `α0 ${type}`, ortho);
   add(BENZENE_CLASSES, `β0 ${type}`, meta);
   add(BENZENE_CLASSES, `γ0 ${type}`, para);
@@ -178,8 +188,18 @@ add(['ar5:CH@O', 'ar5:C@O'], 'base', 142.7);
 add(['ar5:CH@S', 'ar5:C@S'], 'base', 125.1);
 add(['ar5:CH@N', 'ar5:C@N'], 'base', 118);
 add(['ar5:CH', 'ar5:C'], 'base', 109.6);
-for (const [type, value] of [['s:ar', 17.3], ['nH', -1.7], ['nR', -1.7], ['n5', -2]] as const) add(['ar5:CH', 'ar5:C'], `β0 ${type}`, value);
-add(RING_CLASSES.filter((name) => name.startsWith('ar5')), 'α0 n5', 15);
+for (const [type, value] of [
+  ['s:ar', 17.3],
+  ['nH', -1.7],
+  ['nR', -1.7],
+  ['n5', -2],
+] as const)
+  add(['ar5:CH', 'ar5:C'], `β0 ${type}`, value);
+add(
+  RING_CLASSES.filter((name) => name.startsWith('ar5')),
+  'α0 n5',
+  15,
+);
 add(['ar5:fused'], 'base', 128);
 add(['ar5:fused@X'], 'base', 140);
 add(['ar5:C=O', 'ar6:C=O'], 'base', 162);

@@ -7,8 +7,8 @@ const SATURATED = named(/^(sp3|ring3)/);
 const ALKENYL = named(/^(=CH2|=CH|=C|=C=|cumulated|C=N:.|C=S|C:other)$/);
 const ALKYNYL = named(/^#C/);
 const ARYL = named(/^ar/);
-const AMINE_N = named(/^(NH2|NH|N):(alkyl|sp2|N|O)$|^N(=|:)/);
-const AMIDE_N = named(/^(NH2|NH|N):(acyl|SP)$|^n/);
+const AMINE_N = named(/^(NH2|NH|N):(alkyl|sp2|N|O|oxide|plus|cumulated)$|^N=/);
+const AMIDE_N = named(/^(NH2|NH|N):(acyl|SP)$|^n(5|6|H|R|:oxide)$/);
 const SULFIDE = named(/^(SH|S:alkyl2|S:sp2|S:acyl|S:S|S:other|=S|s:ar)$/);
 
 const entries: TextbookEntry[] = [];
@@ -181,9 +181,25 @@ add(['ar5:CH', 'ar5:CH@O', 'ar5:CH@S', 'ar5:CH@N'], 'α0 n5', 0.7);
 
 /** Middles of the textbook ranges (SCIENCE.md 3.1) for everything without additive rules; exchangeable ones in CDCl3. */
 const MIDDLES: ReadonlyArray<readonly [ProtonClass, number]> = [
-  ['#CH', 2.4], ['CHO', 9.8], ['HCOX', 8.05], ['HC=N', 7.9], ['CH:other', 5],
-  ['OH:alkyl', 2.5], ['OH:sp2', 6], ['OH:acyl', 11], ['OH:other', 8], ['NH:alkyl', 1.8], ['NH:sp2', 3.9], ['NH:acyl', 6.5],
-  ['NH:other', 6], ['nH', 9.5], ['N=H', 9], ['SH', 2], ['PH', 5], ['SiH', 4], ['XH', 3],
+  ['#CH', 2.4],
+  ['CHO', 9.8],
+  ['HCOX', 8.05],
+  ['HC=N', 7.9],
+  ['CH:other', 5],
+  ['OH:alkyl', 2.5],
+  ['OH:sp2', 6],
+  ['OH:acyl', 11],
+  ['OH:other', 8],
+  ['NH:alkyl', 1.8],
+  ['NH:sp2', 3.9],
+  ['NH:acyl', 6.5],
+  ['NH:other', 6],
+  ['nH', 9.5],
+  ['N=H', 9],
+  ['SH', 2],
+  ['PH', 5],
+  ['SiH', 4],
+  ['XH', 3],
 ];
 for (const [name, value] of MIDDLES) add([name], 'base', value);
 

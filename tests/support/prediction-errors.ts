@@ -44,9 +44,17 @@ export function matchCarbons(record: NmrRecord, shift: Float64Array, sd: Float64
   }
   const matches: CarbonMatch[] = [];
   for (const hydrogens of [0, 1, 2, 3]) {
-    const predicted = [...members.values()].filter((atoms) => Math.min(3, graph.hydrogens[atoms[0]]) === hydrogens).sort((a, b) => shift[a[0]] - shift[b[0]]);
-    const observed = carbons.filter((signal) => signal.hydrogens === hydrogens).map((signal) => signal.shift).sort((a, b) => a - b);
-    const pairs = matchSorted(predicted.map((atoms) => shift[atoms[0]]), observed);
+    const predicted = [...members.values()]
+      .filter((atoms) => Math.min(3, graph.hydrogens[atoms[0]]) === hydrogens)
+      .sort((a, b) => shift[a[0]] - shift[b[0]]);
+    const observed = carbons
+      .filter((signal) => signal.hydrogens === hydrogens)
+      .map((signal) => signal.shift)
+      .sort((a, b) => a - b);
+    const pairs = matchSorted(
+      predicted.map((atoms) => shift[atoms[0]]),
+      observed,
+    );
     if (pairs === null) return null;
     for (const [p, o] of pairs) {
       const atoms = predicted[p];
@@ -57,7 +65,10 @@ export function matchCarbons(record: NmrRecord, shift: Float64Array, sd: Float64
 }
 
 /** Scores a predictor: 13C matched and assigned, 1H assigned (hydrogens on carbon). */
-export function scorePredictor(records: readonly NmrRecord[], predictor: ShiftPredictor): { matched: ErrorSet; assigned: ErrorSet; proton: ErrorSet } {
+export function scorePredictor(
+  records: readonly NmrRecord[],
+  predictor: ShiftPredictor,
+): { matched: ErrorSet; assigned: ErrorSet; proton: ErrorSet } {
   const scratch = new AnalysisScratch();
   const out = createPredictedShifts();
   const result = { matched: emptySet(), assigned: emptySet(), proton: emptySet() };
@@ -71,13 +82,26 @@ export function scorePredictor(records: readonly NmrRecord[], predictor: ShiftPr
   };
   for (const record of records) {
     predictor.predictInto(record.graph, analyseStructure(record.graph, scratch), out);
-    push(result.matched, (matchCarbons(record, out.carbonShift, out.carbonSd) ?? []).map((m) => [m.observed - m.predicted, m.sd] as const));
-    push(result.assigned, (record.carbons ?? []).flatMap((signal) => (signal.atoms === null || signal.atoms.length === 0 ? [] : [[signal.shift - out.carbonShift[signal.atoms[0]], out.carbonSd[signal.atoms[0]]] as const])));
-    push(result.proton, (record.protons ?? []).flatMap((signal) => {
-      const atom = signal.atoms?.[0];
-      if (atom === undefined || record.graph.atomicNumbers[atom] !== 6) return [];
-      return [[signal.shift - out.protonShift[atom], out.protonSd[atom]] as const];
-    }));
+    push(
+      result.matched,
+      (matchCarbons(record, out.carbonShift, out.carbonSd) ?? []).map((m) => [m.observed - m.predicted, m.sd] as const),
+    );
+    push(
+      result.assigned,
+      (record.carbons ?? []).flatMap((signal) =>
+        signal.atoms === null || signal.atoms.length === 0
+          ? []
+          : [[signal.shift - out.carbonShift[signal.atoms[0]], out.carbonSd[signal.atoms[0]]] as const],
+      ),
+    );
+    push(
+      result.proton,
+      (record.protons ?? []).flatMap((signal) => {
+        const atom = signal.atoms?.[0];
+        if (atom === undefined || record.graph.atomicNumbers[atom] !== 6) return [];
+        return [[signal.shift - out.protonShift[atom], out.protonSd[atom]] as const];
+      }),
+    );
   }
   return result;
 }
