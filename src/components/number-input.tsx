@@ -34,7 +34,8 @@ export function NumberInput({
   const read = parseNumberText(text);
   const textValue = read.kind === 'number' ? read.value : read.kind === 'empty' ? null : Number.NaN;
   // The value was changed from outside (pasted, restored): show it instead of what was typed.
-  if (!Object.is(textValue, value)) setText(value === null || Number.isNaN(value) ? (Number.isNaN(value) ? text : '') : String(value));
+  const shown = value === null ? '' : Number.isNaN(value) ? text : String(value);
+  if (!Object.is(textValue, value) && shown !== text) setText(shown);
   return (
     <Field
       label={label}
