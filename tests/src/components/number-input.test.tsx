@@ -2,7 +2,8 @@ import { renderToStaticMarkup } from 'react-dom/server';
 import { describe, expect, it } from 'vitest';
 import { NumberInput } from '../../../src/components/number-input';
 
-const render = (value: number | null) => renderToStaticMarkup(<NumberInput label="Shift" value={value} unit="ppm" onValueChange={() => undefined} />);
+const render = (value: number | null) =>
+  renderToStaticMarkup(<NumberInput label="Shift" value={value} unit="ppm" onValueChange={() => undefined} />);
 
 describe('a number field', () => {
   it.each([
