@@ -40,8 +40,7 @@ export interface DriverOptions {
 type Stop =
   | { readonly kind: 'limit'; readonly code: 'timeLimit' | 'quotaUsedUp'; readonly message: string }
   | { readonly kind: 'failed'; readonly code: string; readonly message: string }
-  | { readonly kind: 'cancelled' }
-  | { readonly kind: 'closing' };
+  | { readonly kind: 'cancelled' };
 
 const TICK_MS = 500;
 const MAX_CRASHES = 3;
@@ -62,7 +61,7 @@ export class RunDriver {
   #shardsAtRest: Promise<unknown> = Promise.resolve();
   #stage: RunProgress['stage'] = 'planning';
   #stop: Stop | null = null;
-  /** The process is about to end: the database is not waited for any more. */
+  /** The process is about to end: the run is given back, and the database is not waited for any more. */
   #isClosing = false;
   #announceHalt!: () => void;
   readonly #halt = new Promise<null>((resolve) => (this.#announceHalt = () => resolve(null)));
@@ -92,7 +91,7 @@ export class RunDriver {
     this.#stage = 'done';
     clearInterval(ticker);
     this.#emitProgress();
-    if (this.#stop?.kind === 'closing') await this.#giveBack();
+    if (this.#isClosing) await this.#giveBack();
     else await this.#writeEnd(this.#isHalted || end === null ? this.#describeEnd([], null) : end);
     this.#options.emit({ kind: 'changed' });
   }
@@ -103,7 +102,8 @@ export class RunDriver {
 
   close(): void {
     this.#isClosing = true;
-    this.#stopWith({ kind: 'closing' });
+    this.#bringToRest();
+    this.#announceHalt();
   }
 
   progress(): RunProgress {
@@ -237,21 +237,27 @@ export class RunDriver {
     }
   }
 
-  /** Cancelled, failed or given back: nothing more of this run is started or waited for. */
+  /** Cancelled, failed or about to be given back: nothing more of this run is started or waited for. */
   get #isHalted(): boolean {
-    return this.#stop !== null && this.#stop.kind !== 'limit';
+    return this.#isClosing || (this.#stop !== null && this.#stop.kind !== 'limit');
   }
 
   #stopWith(stop: Stop): void {
     // The first reason stays, except that a limit does not stand in the way of a cancellation.
     if (this.#isHalted || this.#stage === 'done' || (this.#stop !== null && stop.kind === 'limit')) return;
     this.#stop = stop;
+    this.#bringToRest();
+    if (stop.kind !== 'limit') this.#announceHalt();
+  }
+
+  /** Starts nothing more, asks what is under way to stop, and ends the threads that do not listen. */
+  #bringToRest(): void {
     this.#options.scheduler.drop(this.#task.id);
-    // Shards know the time limit themselves, and then still tell what they have found.
-    if (!(stop.kind === 'limit' && stop.code === 'timeLimit')) for (const counters of this.#underWay.keys()) cancelRun(counters);
+    // At the time limit shards stop by themselves, and then still tell what they have found.
+    const isTimeLimit = !this.#isHalted && this.#stop?.kind === 'limit' && this.#stop.code === 'timeLimit';
+    if (!isTimeLimit) for (const counters of this.#underWay.keys()) cancelRun(counters);
     const aborts = [...this.#aborts];
     setTimeout(() => aborts.filter((abort) => this.#aborts.has(abort)).forEach((abort) => abort.abort()), this.#options.hardStopMs).unref();
-    if (stop.kind !== 'limit') this.#announceHalt();
   }
 
   /** Waits until no shard of this run is under way and nothing is left to be written. */
@@ -292,8 +298,7 @@ export class RunDriver {
     const isPlanned = this.#clock.shardCount !== null;
     const isCut = stop !== null || !merged.complete;
     return {
-      status:
-        stop === null || stop.kind === 'limit' ? (isCut ? 'stopped' : 'finished') : stop.kind === 'closing' ? 'interrupted' : stop.kind,
+      status: stop === null || stop.kind === 'limit' ? (isCut ? 'stopped' : 'finished') : stop.kind,
       complete: !isCut,
       constitutionCount: isPlanned ? merged.constitutionCount : null,
       multigraphCount: isPlanned ? merged.multigraphCount : null,
