@@ -1,7 +1,7 @@
 import { queryOptions, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
 import { callEndpoint, type EndpointResponse } from '../api-client';
 import { showToast } from '../toasts';
-import { unknownReadKeys } from './unknown-queries';
+import { unknownKeys } from '../unknown-queries';
 
 export type Shortlist = EndpointResponse<'readShortlist'>;
 export type ShortlistItem = Shortlist['items'][number];
@@ -42,7 +42,7 @@ export function useKeepCandidate(unknownId: string) {
       showToast('done', `Rank ${candidate.rank} is on the shortlist.`);
       await Promise.all([
         queryClient.invalidateQueries({ queryKey: shortlistKeys.ofUnknown(unknownId) }),
-        queryClient.invalidateQueries({ queryKey: unknownReadKeys.all }),
+        queryClient.invalidateQueries({ queryKey: unknownKeys.all }),
       ]);
     },
   });

@@ -10,12 +10,13 @@ import { Select } from '../../../components/field';
 import { PageHeader } from '../../../components/panel';
 import { ProbabilityThread } from '../../../components/plots/probability-thread';
 import { Badge } from '../../../components/status-word';
+import { usePageTitle } from '../../../components/use-page-title';
 import { formatCount } from '../../../lib/numbers';
 import { queryClient } from '../../../lib/query-client';
 import { candidateQuery, type CandidateDetail } from '../../../lib/queries/candidate-queries';
 import { runQuery } from '../../../lib/queries/run-queries';
 import { shortlistQuery, useKeepCandidate, useKeptByIdcode } from '../../../lib/queries/shortlist-queries';
-import { revisionQuery, unknownQuery } from '../../../lib/queries/unknown-queries';
+import { revisionQuery, unknownQuery } from '../../../lib/unknown-queries';
 import { signalRows, type RowOrder } from '../components/signal-rows';
 import { SpectrumPanel } from '../components/spectrum-panel';
 import { StructurePanel } from '../components/structure-panel';
@@ -70,6 +71,7 @@ function CandidateView({ candidate }: { candidate: CandidateDetail }) {
   const order: RowOrder = search.get('order') === 'shift' ? 'shift' : 'misfit';
   const keep = useKeepCandidate(candidate.unknownId);
   const isKept = useKeptByIdcode(candidate.unknownId).has(candidate.idcode);
+  usePageTitle(`${run.unknownCode}, rank ${candidate.rank}`);
   useNeighbourKeys(candidate);
 
   const { evidence } = revision;
@@ -81,7 +83,6 @@ function CandidateView({ candidate }: { candidate: CandidateDetail }) {
   const neighbour = (id: string) => ({ pathname: paths.candidate(id), search: search.toString() });
   return (
     <>
-      <title>{`${run.unknownCode}, rank ${candidate.rank} – Isoloom`}</title>
       <nav aria-label="Where this belongs" className="mb-1 truncate text-table text-faded">
         <Link to={paths.unknownRuns(run.unknownId)} className="text-indigo no-underline hover:underline">
           <span className="font-mono text-small">{run.unknownCode}</span> {run.unknownTitle}

@@ -7,6 +7,7 @@ import { EmptyState, ErrorState, LoadingState } from '../../../components/states
 import { Notice } from '../../../components/status-word';
 import { StructureDrawing } from '../../../components/structure/structure-drawing';
 import { StructureEditor } from '../../../components/structure/structure-editor';
+import { usePageTitle } from '../../../components/use-page-title';
 import { issueFor } from '../../../lib/api-error';
 import { predictionQuery } from '../api/prediction-query';
 import { PredictedPanel } from '../components/predicted-panel';
@@ -15,6 +16,7 @@ const ASK_AFTER_MS = 400;
 
 /** Draw or paste a structure, see its predicted spectra. The structure lives in the address. */
 export function Component() {
+  usePageTitle('Predict');
   const [search, setSearch] = useSearchParams();
   const asked = search.get('smiles') ?? '';
   const [smiles, setSmiles] = useState(asked);
@@ -41,7 +43,6 @@ export function Component() {
   const prediction = asked === '' || error !== null ? undefined : data;
   return (
     <>
-      <title>Predict – Isoloom</title>
       <PageHeader title="Predict" lead="Shifts, multiplicities and couplings of a structure, by the rules that also rank candidates." />
       <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-4 desk:grid-cols-[minmax(0,420px)_minmax(0,1fr)]">
         <div className="min-w-0 space-y-4">

@@ -4,7 +4,7 @@ import { runProgressSchema, runResponse } from '../../../../shared/schemas/runs'
 import { callEndpoint, endpointUrl } from '../../../lib/api-client';
 import { candidateKeys } from '../../../lib/queries/candidate-queries';
 import { isEnded, runKeys, runQuery, type Run } from '../../../lib/queries/run-queries';
-import { unknownReadKeys } from '../../../lib/queries/unknown-queries';
+import { unknownKeys } from '../../../lib/unknown-queries';
 
 const FIRST_RETRY_MS = 1000;
 const LONGEST_RETRY_MS = 15_000;
@@ -25,7 +25,7 @@ async function acceptRun(queryClient: QueryClient, run: Run): Promise<void> {
   await Promise.all([
     queryClient.invalidateQueries({ queryKey: runKeys.lists() }),
     queryClient.invalidateQueries({ queryKey: candidateKeys.ofRun(run.id) }),
-    queryClient.invalidateQueries({ queryKey: unknownReadKeys.all }),
+    queryClient.invalidateQueries({ queryKey: unknownKeys.all }),
   ]);
 }
 

@@ -8,11 +8,12 @@ import { FunnelPicture } from '../../../components/funnel/funnel-picture';
 import { bandFromFunnel } from '../../../components/funnel/funnel-stages';
 import { PageHeader, Panel } from '../../../components/panel';
 import { RunStatusWord } from '../../../components/status-word';
+import { usePageTitle } from '../../../components/use-page-title';
 import { queryClient } from '../../../lib/query-client';
 import { candidatePageQuery } from '../../../lib/queries/candidate-queries';
 import { isEnded, runQuery, type Run } from '../../../lib/queries/run-queries';
 import { shortlistQuery } from '../../../lib/queries/shortlist-queries';
-import { unknownQuery } from '../../../lib/queries/unknown-queries';
+import { unknownQuery } from '../../../lib/unknown-queries';
 import { useRunEvents } from '../api/use-run-events';
 import { Candidates } from '../components/candidates';
 import { ExplainDialog } from '../components/explain-dialog';
@@ -39,6 +40,7 @@ export async function loader({ params }: LoaderFunctionArgs) {
 export function Component() {
   const runId = useParams()['runId'] ?? '';
   const { data: run } = useSuspenseQuery(runQuery(runId));
+  usePageTitle(`${run.unknownCode}, run ${run.number}`);
   const isLive = !isEnded(run);
   const stream = useRunEvents(runId, isLive);
   const [search, setSearch] = useSearchParams();
@@ -46,7 +48,6 @@ export function Component() {
   const setAsked = (smiles: string | null) => setSearch(addressWith({ ask: smiles }), { preventScrollReset: true });
   return (
     <>
-      <title>{`${run.unknownCode}, run ${run.number} – Isoloom`}</title>
       <nav aria-label="Where this belongs" className="mb-1 truncate text-table text-faded">
         <Link to={paths.unknownRuns(run.unknownId)} className="text-indigo no-underline hover:underline">
           <span className="font-mono text-small">{run.unknownCode}</span> {run.unknownTitle}
@@ -70,7 +71,7 @@ export function Component() {
               <Button icon={<CircleHelp aria-hidden="true" className="size-4" />} onClick={() => setAsked('')}>
                 Why is X not here?
               </Button>
-              {run.abilities.export && run.keptCount > 0 ? <ExportMenu runId={runId} keptCount={run.keptCount} /> : null}
+              {run.abilities.export && run.keptCount > 0 ? <ExportMenu runId={runId} /> : null}
             </>
           )
         }

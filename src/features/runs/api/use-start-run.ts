@@ -1,7 +1,7 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { callEndpoint } from '../../../lib/api-client';
 import { runKeys, runQuery } from '../../../lib/queries/run-queries';
-import { unknownReadKeys } from '../../../lib/queries/unknown-queries';
+import { unknownKeys } from '../../../lib/unknown-queries';
 import { runSetupKeys } from './keys';
 
 export interface StartRunInput {
@@ -19,7 +19,7 @@ export function useStartRun(unknownId: string) {
       queryClient.setQueryData(runQuery(run.id).queryKey, run);
       await Promise.all([
         queryClient.invalidateQueries({ queryKey: runKeys.lists() }),
-        queryClient.invalidateQueries({ queryKey: unknownReadKeys.all }),
+        queryClient.invalidateQueries({ queryKey: unknownKeys.all }),
         queryClient.invalidateQueries({ queryKey: runSetupKeys.all, refetchType: 'none' }),
       ]);
     },

@@ -8,6 +8,7 @@ import { Cell, HeaderCell, Row, Table } from '../../../components/table';
 import { Time } from '../../../components/time';
 import { formatSeconds } from '../../../lib/dates';
 import { formatCount } from '../../../lib/numbers';
+import { useMediaQuery } from '../hooks/use-media-query';
 import { isEnded, type Run } from '../../../lib/queries/run-queries';
 
 /** Figures of a run, live ones while it is going on. */
@@ -49,67 +50,68 @@ interface RunsTableProps {
 
 /** Runs as a table; on a phone as stacked entries. */
 export function RunsTable({ runs, caption, hasUnknown = false }: RunsTableProps) {
-  return (
-    <>
-      <ul aria-label={caption} className="divide-y divide-seam tablet:hidden">
+  const isPhone = useMediaQuery('(width < 720px)');
+  if (isPhone) {
+    return (
+      <ul aria-label={caption} className="divide-y divide-seam">
         {runs.map((run) => (
           <RunEntry key={run.id} run={run} hasUnknown={hasUnknown} />
         ))}
       </ul>
-      <div className="hidden tablet:block">
-        <Table
-          caption={caption}
-          head={
-            <>
-              <HeaderCell>Run</HeaderCell>
-              {hasUnknown ? <HeaderCell>Unknown</HeaderCell> : null}
-              <HeaderCell>State</HeaderCell>
-              <HeaderCell>Threads</HeaderCell>
-              <HeaderCell align="right">Constitutions</HeaderCell>
-              <HeaderCell align="right">Survive</HeaderCell>
-              <HeaderCell align="right">Time</HeaderCell>
-              <HeaderCell>Evidence</HeaderCell>
-              <HeaderCell>Started</HeaderCell>
-            </>
-          }
-        >
-          {runs.map((run) => {
-            const { constitutions, survivors, seconds } = runFigures(run);
-            return (
-              <Row key={run.id} className="relative">
-                <Cell className="font-semibold whitespace-nowrap">
-                  <Link to={paths.run(run.id)} className="text-indigo no-underline after:absolute after:inset-0 hover:underline">
-                    Run {run.number}
-                  </Link>
-                </Cell>
-                {hasUnknown ? (
-                  <Cell className="max-w-[240px]">
-                    <UnknownLink run={run} />
-                  </Cell>
-                ) : null}
-                <Cell>
-                  <RunState run={run} />
-                </Cell>
-                <Cell className="py-0">
-                  <FunnelMini funnel={run.funnel} progress={run.progress} isIncomplete={isIncompleteRun(run)} />
-                </Cell>
-                <Cell align="right">{count(constitutions)}</Cell>
-                <Cell align="right">{count(survivors)}</Cell>
-                <Cell align="right" className="whitespace-nowrap">
-                  {seconds === null ? '–' : formatSeconds(Math.max(0, seconds))}
-                </Cell>
-                <Cell className="whitespace-nowrap">
-                  <Formula formula={run.formula} /> <span className="text-faded">rev. {run.revisionNumber}</span>
-                </Cell>
-                <Cell className="whitespace-nowrap">
-                  <Time iso={run.createdAt} /> <span className="text-faded">{run.startedBy.name}</span>
-                </Cell>
-              </Row>
-            );
-          })}
-        </Table>
-      </div>
-    </>
+    );
+  }
+  return (
+    <Table
+      caption={caption}
+      head={
+        <>
+          <HeaderCell>Run</HeaderCell>
+          {hasUnknown ? <HeaderCell>Unknown</HeaderCell> : null}
+          <HeaderCell>State</HeaderCell>
+          <HeaderCell>Threads</HeaderCell>
+          <HeaderCell align="right">Constitutions</HeaderCell>
+          <HeaderCell align="right">Survive</HeaderCell>
+          <HeaderCell align="right">Time</HeaderCell>
+          <HeaderCell>Evidence</HeaderCell>
+          <HeaderCell>Started</HeaderCell>
+        </>
+      }
+    >
+      {runs.map((run) => {
+        const { constitutions, survivors, seconds } = runFigures(run);
+        return (
+          <Row key={run.id} className="relative">
+            <Cell className="font-semibold whitespace-nowrap">
+              <Link to={paths.run(run.id)} className="text-indigo no-underline after:absolute after:inset-0 hover:underline">
+                Run {run.number}
+              </Link>
+            </Cell>
+            {hasUnknown ? (
+              <Cell className="max-w-[240px]">
+                <UnknownLink run={run} />
+              </Cell>
+            ) : null}
+            <Cell>
+              <RunState run={run} />
+            </Cell>
+            <Cell className="py-0">
+              <FunnelMini funnel={run.funnel} progress={run.progress} isIncomplete={isIncompleteRun(run)} />
+            </Cell>
+            <Cell align="right">{count(constitutions)}</Cell>
+            <Cell align="right">{count(survivors)}</Cell>
+            <Cell align="right" className="whitespace-nowrap">
+              {seconds === null ? '–' : formatSeconds(Math.max(0, seconds))}
+            </Cell>
+            <Cell className="whitespace-nowrap">
+              <Formula formula={run.formula} /> <span className="text-faded">rev. {run.revisionNumber}</span>
+            </Cell>
+            <Cell className="whitespace-nowrap">
+              <Time iso={run.createdAt} /> <span className="text-faded">{run.startedBy.name}</span>
+            </Cell>
+          </Row>
+        );
+      })}
+    </Table>
   );
 }
 

@@ -9,7 +9,7 @@ import { NumberInput } from '../../../components/number-input';
 import { ErrorState, LoadingState } from '../../../components/states';
 import { Notice } from '../../../components/status-word';
 import { ApiError, errorMessage } from '../../../lib/api-error';
-import { revisionQuery } from '../../../lib/queries/unknown-queries';
+import { revisionQuery } from '../../../lib/unknown-queries';
 import { ownQuotaQuery, type OwnQuota } from '../api/run-setup-queries';
 import { useStartRun } from '../api/use-start-run';
 import { EstimateLine } from './estimate-line';

@@ -8,6 +8,7 @@ import { Pagination } from '../../../components/pagination';
 import { PageHeader, Panel } from '../../../components/panel';
 import { EmptyState, ErrorState, LoadingState } from '../../../components/states';
 import { RUN_STATUS_LOOKS } from '../../../components/status-word';
+import { usePageTitle } from '../../../components/use-page-title';
 import { RUNS_PAGE_SIZE, teamRunsQuery, type TeamRunFilter } from '../../../lib/queries/run-queries';
 import { useCurrentTeam } from '../../../lib/session';
 import { RunsTable } from '../components/runs-table';
@@ -25,6 +26,7 @@ function readFilter(search: URLSearchParams): TeamRunFilter {
 
 /** Every run of the team, newest first. */
 export function Component() {
+  usePageTitle('Runs');
   const team = useCurrentTeam();
   if (team === null) return <EmptyState title="No team yet">Runs belong to a team. Ask a lead or an admin for an invitation.</EmptyState>;
   return <TeamRuns key={team.teamId} teamId={team.teamId} />;

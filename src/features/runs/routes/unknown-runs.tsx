@@ -8,7 +8,7 @@ import { Panel } from '../../../components/panel';
 import { EmptyState, ErrorState, LoadingState } from '../../../components/states';
 import { queryClient } from '../../../lib/query-client';
 import { unknownRunsQuery } from '../../../lib/queries/run-queries';
-import { unknownQuery } from '../../../lib/queries/unknown-queries';
+import { unknownQuery } from '../../../lib/unknown-queries';
 import { RunsTable } from '../components/runs-table';
 import { StartRunDialog } from '../components/start-run-dialog';
 

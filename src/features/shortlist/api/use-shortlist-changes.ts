@@ -2,7 +2,7 @@ import { useMutation, useQueryClient } from '@tanstack/react-query';
 import type { Verdict } from '../../../../shared/types/states';
 import { callEndpoint } from '../../../lib/api-client';
 import { shortlistQuery } from '../../../lib/queries/shortlist-queries';
-import { unknownReadKeys } from '../../../lib/queries/unknown-queries';
+import { unknownKeys } from '../../../lib/unknown-queries';
 
 export interface ItemChange {
   readonly verdict?: Verdict;
@@ -34,7 +34,7 @@ export function useStrikeOut(unknownId: string, itemId: string) {
       queryClient.setQueryData(shortlistQuery(unknownId).queryKey, (list) =>
         list === undefined ? list : { items: list.items.filter((other) => other.id !== itemId) },
       );
-      await queryClient.invalidateQueries({ queryKey: unknownReadKeys.all });
+      await queryClient.invalidateQueries({ queryKey: unknownKeys.all });
     },
   });
 }

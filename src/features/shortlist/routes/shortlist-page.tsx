@@ -6,7 +6,7 @@ import { Panel } from '../../../components/panel';
 import { EmptyState, ErrorState, LoadingState } from '../../../components/states';
 import { queryClient } from '../../../lib/query-client';
 import { shortlistQuery } from '../../../lib/queries/shortlist-queries';
-import { unknownQuery } from '../../../lib/queries/unknown-queries';
+import { unknownQuery } from '../../../lib/unknown-queries';
 import { ShortlistCard } from '../components/shortlist-card';
 
 export async function loader({ params }: LoaderFunctionArgs) {
