@@ -106,7 +106,7 @@ export function EvidenceEditor({ unknown, revision }: { unknown: UnknownDetail; 
       <SignalsSection draft={edit.draft} issues={issues} isReadOnly={isReadOnly} onChange={change} />
       <OptionsSection draft={edit.draft} issues={issues} isReadOnly={isReadOnly} onChange={(options) => change({ options })} />
       {isReadOnly ? null : (
-        <div className="sticky bottom-0 z-10 -mx-1 border-t border-seam bg-linen px-1 py-3">
+        <div className="sticky bottom-(--foot-bar) z-10 -mx-1 border-t border-seam bg-linen px-1 py-3 tablet:bottom-0">
           {unplaced.length > 0 ? (
             <Notice tone="madder" className="mb-3" title="This cannot be saved yet">
               {unplaced.map((issue) => (

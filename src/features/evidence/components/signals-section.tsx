@@ -15,7 +15,7 @@ const CARBON_COLUMNS: ReadonlyArray<SignalColumn<keyof CarbonRow>> = [
 const PROTON_COLUMNS: ReadonlyArray<SignalColumn<keyof ProtonRow>> = [
   { key: 'shift', name: 'Shift', label: 'δ (ppm)', placeholder: '7.21' },
   { key: 'count', name: 'Protons', label: 'protons', placeholder: '2', inputMode: 'numeric' },
-  { key: 'multiplicity', name: 'Multiplicity', label: 'multiplicity', placeholder: 'd', inputMode: 'text' },
+  { key: 'multiplicity', name: 'Multiplicity', label: 'pattern', placeholder: 'd', inputMode: 'text' },
   {
     key: 'couplings',
     name: 'Couplings',
