@@ -49,7 +49,7 @@ export function Component() {
         {places.length === 0 ? null : (
           <nav
             aria-label="Places"
-            className="fixed inset-x-0 bottom-0 z-20 flex border-t border-seam bg-cloth px-1 pb-[env(safe-area-inset-bottom)] tablet:static tablet:mt-4 tablet:w-full tablet:flex-col tablet:gap-1 tablet:border-t-0 tablet:p-0"
+            className="fixed inset-x-0 bottom-0 z-20 flex h-(--foot-bar) border-t border-seam bg-cloth px-1 pb-[env(safe-area-inset-bottom)] tablet:static tablet:mt-4 tablet:h-auto tablet:w-full tablet:flex-col tablet:gap-1 tablet:border-t-0 tablet:p-0"
           >
             {places.map((place) => (
               <RailLink key={place.to} place={place} />

@@ -4,6 +4,7 @@ import { paths } from '../../../app/paths';
 import { Button } from '../../../components/button';
 import { ConfirmDialog } from '../../../components/confirm-dialog';
 import { Badge } from '../../../components/status-word';
+import { Email } from '../../../components/email';
 import { Cell, HeaderCell, Row, Table } from '../../../components/table';
 import { Time } from '../../../components/time';
 import { errorMessage } from '../../../lib/api-error';
@@ -76,7 +77,9 @@ export function PeopleTable({ people }: { people: readonly Person[] }) {
                 {person.isAdmin ? <Badge tone="indigo">admin</Badge> : null}
                 {person.isDisabled ? <Badge tone="madder">disabled</Badge> : null}
               </span>
-              <span className="block wrap-anywhere text-faded">{person.email}</span>
+              <span className="block wrap-anywhere text-faded">
+                <Email address={person.email} />
+              </span>
             </Cell>
             <Cell>
               {person.teams.length === 0 ? (

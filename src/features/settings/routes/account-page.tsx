@@ -1,4 +1,5 @@
 import { Button } from '../../../components/button';
+import { Email } from '../../../components/email';
 import { PageHeader, Panel } from '../../../components/panel';
 import { Badge } from '../../../components/status-word';
 import { ThemeSwitch } from '../../../components/theme-switch';
@@ -25,7 +26,9 @@ export function Component() {
               {me.user.name} {me.user.isAdmin ? <Badge tone="indigo">admin</Badge> : null}
             </dd>
             <dt className="text-faded">E-mail</dt>
-            <dd className="wrap-anywhere">{me.user.email}</dd>
+            <dd className="wrap-anywhere">
+              <Email address={me.user.email} />
+            </dd>
             <dt className="text-faded">Teams</dt>
             <dd>
               {me.memberships.length === 0

@@ -1,5 +1,6 @@
 import { X } from 'lucide-react';
 import { IconButton } from '../../../components/icon-button';
+import { Email } from '../../../components/email';
 import { Cell, HeaderCell, Row, Table } from '../../../components/table';
 import { Time } from '../../../components/time';
 import { useRevokeInvitation, type Invitation } from '../api/team';
@@ -25,7 +26,9 @@ export function InvitationTable({ teamId, invitations }: { teamId: string; invit
     >
       {invitations.map((invitation) => (
         <Row key={invitation.id}>
-          <Cell className="wrap-anywhere">{invitation.email}</Cell>
+          <Cell className="wrap-anywhere">
+            <Email address={invitation.email} />
+          </Cell>
           <Cell>{roleLabel(invitation.role)}</Cell>
           <Cell className="hidden text-faded tablet:table-cell">{invitation.invitedBy}</Cell>
           <Cell className="text-faded">

@@ -3,6 +3,7 @@ import { useState } from 'react';
 import { ConfirmDialog } from '../../../components/confirm-dialog';
 import { Select } from '../../../components/field';
 import { IconButton } from '../../../components/icon-button';
+import { Email } from '../../../components/email';
 import { Cell, HeaderCell, Row, Table } from '../../../components/table';
 import { Time } from '../../../components/time';
 import { errorMessage } from '../../../lib/api-error';
@@ -33,9 +34,13 @@ export function MemberTable({ teamId, members }: { teamId: string; members: read
           <Row key={member.userId}>
             <Cell>
               <span className="font-semibold">{member.name}</span>
-              <span className="block text-small wrap-anywhere text-faded tablet:hidden">{member.email}</span>
+              <span className="block text-small wrap-anywhere text-faded tablet:hidden">
+                <Email address={member.email} />
+              </span>
             </Cell>
-            <Cell className="hidden text-faded tablet:table-cell">{member.email}</Cell>
+            <Cell className="hidden text-faded tablet:table-cell">
+              <Email address={member.email} />
+            </Cell>
             <Cell>
               {member.abilities.changeRole ? (
                 <Select

@@ -19,7 +19,7 @@ function LastRun({ run }: { run: UnknownRow['lastRun'] }) {
   if (run === null) return <span className="text-faded">No run yet</span>;
   if (run.funnel === null) return <RunStatusWord status={run.status} />;
   return (
-    <span className="flex items-center gap-3">
+    <span className="flex items-start gap-3">
       <FunnelMini funnel={run.funnel} isIncomplete={run.status !== 'finished'} />
       {run.status === 'finished' && run.survivorCount !== null ? (
         <span>{formatCount(run.survivorCount)} ranked</span>
