@@ -10,12 +10,13 @@ interface FunnelMiniProps {
   /** Live figures of a run without a funnel yet. */
   progress?: { readonly constitutionsSeen: number; readonly survivors: number } | null;
   isIncomplete?: boolean;
+  keptCount?: number;
 }
 
 /** The band of a run, small enough for a list. */
-export function FunnelMini({ funnel, progress = null, isIncomplete = false }: FunnelMiniProps) {
+export function FunnelMini({ funnel, progress = null, isIncomplete = false, keptCount }: FunnelMiniProps) {
   if (funnel === null && progress === null) return null;
-  const band = funnel === null ? bandFromProgress(progress) : bandFromFunnel(funnel);
+  const band = funnel === null ? bandFromProgress(progress) : bandFromFunnel(funnel, keptCount);
   return (
     <span role="img" aria-label={describeBand(band, formatCount)} className="inline-block align-middle">
       <BandSvg band={band} geometry={layOutBand(band, FRAME)} frame={FRAME} isIncomplete={isIncomplete} isSmall />

@@ -25,7 +25,7 @@ function CutNote({ gate, isCompact = false, isLive }: { gate: BandGate; isCompac
       </p>
       <ul className="text-faded">
         {shown.map((reason) => (
-          <li key={reason.reason} className="wrap-break-word">
+          <li key={reason.reason} className="line-clamp-3 wrap-break-word" title={reason.text}>
             {gate.reasons.length > 1 ? <span className="text-ink">{formatCount(reason.count)} </span> : null}
             {reason.text}
           </li>

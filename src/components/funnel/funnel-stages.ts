@@ -48,8 +48,10 @@ function gateOf(stage: FunnelStage, step: FunnelStep | undefined, arriving: numb
 /**
  * Turns the funnel of a run into a band. A stage that the run left out lets everything through. The first
  * stage is the warp itself; it becomes a gate only when the engine cut something there.
+ *
+ * @param keptCount - candidates that the run keeps; the funnel itself ends with what was ranked. Absent = not known.
  */
-export function bandFromFunnel(funnel: Funnel): Band {
+export function bandFromFunnel(funnel: Funnel, keptCount?: number): Band {
   const byStage = new Map(funnel.map((step) => [step.stage, step]));
   const start = byStage.get('constitutions');
   const woven = start?.entered ?? funnel[0]?.entered ?? 0;
@@ -60,6 +62,12 @@ export function bandFromFunnel(funnel: Funnel): Band {
     const gate = gateOf(stage, byStage.get(stage), arriving);
     gates.push(gate);
     arriving = gate.left ?? arriving;
+  }
+  const last = gates.at(-1);
+  if (keptCount !== undefined && last !== undefined && last.left !== null && last.left > keptCount) {
+    const count = last.left - keptCount;
+    const reason = { reason: 'keepLimit', text: `Ranked below the ${keptCount} that are kept`, count };
+    gates[gates.length - 1] = { ...last, left: keptCount, cut: last.cut + count, reasons: [...last.reasons, reason] };
   }
   return { woven, gates };
 }

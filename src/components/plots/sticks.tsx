@@ -36,8 +36,8 @@ export function Sticks({ nucleus, observed, predicted, links, range, activeKeys,
   const scale = useXAxisScale();
   const inverse = useXAxisInverseScale();
   const [drag, setDrag] = useState<{ from: number; to: number } | null>(null);
-  // In its first pass the chart has no axis yet and its scale gives no numbers.
-  if (area === undefined || scale === undefined || !Number.isFinite(Number(scale(range.low)))) return null;
+  // In its first pass the chart's scale knows nothing but the ends of the range.
+  if (area === undefined || scale === undefined || !Number.isFinite(Number(scale((range.low + range.high) / 2)))) return null;
 
   const isVisible = (shift: number) => shift >= range.low && shift <= range.high;
   const place = (list: readonly Stick[]): PlacedStick[] =>

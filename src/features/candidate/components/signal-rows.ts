@@ -122,9 +122,15 @@ export function signalRows(candidate: Pick<CandidateDetail, 'spectra' | 'matches
 
 const shiftOf = (row: SignalRow) => row.observed?.shift ?? row.predicted[0]?.shift ?? 0;
 
-/** Rows in reading order: what costs most likelihood first, or from high to low shift. */
+/**
+ * How badly a row fits, in units of log-likelihood, so that misfits and missing signals compare. The term of a matched
+ * signal is not asked: its density also falls with the width of the prediction, which is no misfit.
+ */
+const badness = (row: SignalRow) => (row.misfit === null ? -row.term : row.misfit ** 2 / 2);
+
+/** Rows in reading order: what fits worst first, or from high to low shift. */
 export function sortRows(rows: readonly SignalRow[], order: RowOrder): SignalRow[] {
-  return [...rows].sort((a, b) => (order === 'misfit' && a.term !== b.term ? a.term - b.term : shiftOf(b) - shiftOf(a)));
+  return [...rows].sort((a, b) => (order === 'misfit' ? badness(b) - badness(a) : 0) || shiftOf(b) - shiftOf(a));
 }
 
 /** The matched signal with the largest misfit, or null. */

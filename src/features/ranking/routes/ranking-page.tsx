@@ -99,7 +99,7 @@ function EndedRun({ run }: { run: Run }) {
             {run.funnel === null ? (
               <p className="text-faded">This run ended before anything was counted.</p>
             ) : (
-              <FunnelPicture band={bandFromFunnel(run.funnel)} isIncomplete={!run.complete} />
+              <FunnelPicture band={bandFromFunnel(run.funnel, run.keptCount)} isIncomplete={!run.complete} />
             )}
           </div>
         </div>

@@ -95,7 +95,12 @@ export function RunsTable({ runs, caption, hasUnknown = false }: RunsTableProps)
               <RunState run={run} />
             </Cell>
             <Cell className="py-0">
-              <FunnelMini funnel={run.funnel} progress={run.progress} isIncomplete={isIncompleteRun(run)} />
+              <FunnelMini
+                funnel={run.funnel}
+                progress={run.progress}
+                isIncomplete={isIncompleteRun(run)}
+                {...(isEnded(run) ? { keptCount: run.keptCount } : {})}
+              />
             </Cell>
             <Cell align="right">{count(constitutions)}</Cell>
             <Cell align="right">{count(survivors)}</Cell>
@@ -140,7 +145,12 @@ function RunEntry({ run, hasUnknown }: { run: Run; hasUnknown: boolean }) {
           </p>
           {hasUnknown ? <UnknownLink run={run} /> : null}
         </div>
-        <FunnelMini funnel={run.funnel} progress={run.progress} isIncomplete={isIncompleteRun(run)} />
+        <FunnelMini
+          funnel={run.funnel}
+          progress={run.progress}
+          isIncomplete={isIncompleteRun(run)}
+          {...(isEnded(run) ? { keptCount: run.keptCount } : {})}
+        />
       </div>
       <p className="tabular text-table">
         {count(constitutions)} constitutions, {count(survivors)} survive{seconds === null ? '' : `, ${formatSeconds(Math.max(0, seconds))}`}

@@ -122,3 +122,21 @@ describe('the layout of a run that is going on', () => {
     expect(geometry.cut).toEqual([]);
   });
 });
+
+describe('candidates that are ranked but not kept', () => {
+  const funnel: Funnel = [
+    { stage: 'constitutions', entered: 5493, passed: 5493, rejections: [] },
+    { stage: 'signals', entered: 5493, passed: 5273, rejections: [{ reason: 's', text: 'Too few signals', count: 220 }] },
+    { stage: 'ranked', entered: 5273, passed: 5273, rejections: [] },
+  ];
+
+  it('leave at the last gate with their count', () => {
+    const last = bandFromFunnel(funnel, 1000).gates.at(-1)!;
+    expect(last).toMatchObject({ left: 1000, cut: 4273 });
+    expect(last.reasons.map(({ count }) => count)).toEqual([4273]);
+  });
+
+  it('are not there when everything was kept', () => {
+    expect(bandFromFunnel(funnel, 5273).gates.at(-1)).toMatchObject({ left: 5273, cut: 0, reasons: [] });
+  });
+});

@@ -45,8 +45,19 @@ describe('the rows of a comparison', () => {
     expect(carbonRows[3].misfit).toBeNull();
   });
 
-  it('start with what costs the most likelihood, unmatched signals included', () => {
+  it('start with what fits worst, missing signals weighed against misfits', () => {
     expect(sortRows(carbonRows, 'misfit').map((row) => row.term)).toEqual([-8, -7, -6.1, -1.2, -1.1]);
+    const mild = carbonRows.map((row) => (row.misfit === null ? { ...row, term: -1 } : row));
+    expect(sortRows(mild, 'misfit')[0].misfit).toBeCloseTo(3.02);
+  });
+
+  it('do not mistake a wide prediction for a misfit', () => {
+    // The density of a wide prediction is low even where it is met: its term is the lower one of the two.
+    const [narrow, wide] = [
+      { ...carbonRows[0], misfit: 1.5, term: -1.4 },
+      { ...carbonRows[2], misfit: 0.1, term: -3 },
+    ];
+    expect(sortRows([wide, narrow], 'misfit')).toEqual([narrow, wide]);
   });
 
   it('can be read from high to low shift, a missing observed one in the place of its prediction', () => {
