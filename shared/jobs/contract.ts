@@ -11,14 +11,19 @@ export interface RunSettings {
   readonly mode: 'count' | 'list' | 'rank';
 }
 
-/** Part of a run's search tree that one worker does on its own. Opaque outside `workers/enumeration`; JSON-safe. */
-export interface ShardSpec {
-  readonly index: number;
+/** A piece of the search tree. Opaque outside `workers/enumeration`; JSON-safe. */
+export interface SearchNode {
   /** Hydrogen distributions [first, end) of the plan; more than one only without a prefix. */
   readonly firstDistribution: number;
   readonly endDistribution: number;
   /** Number of rows already filled, then their bond orders in filling order; empty = whole distributions. */
   readonly prefix: readonly number[];
+}
+
+/** Part of a run's search tree that one worker does on its own. */
+export interface ShardSpec {
+  readonly index: number;
+  readonly nodes: readonly SearchNode[];
 }
 
 /** Stages of the funnel in the order in which constitutions pass them. */

@@ -132,9 +132,7 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
     plan: async () => ({
       shards: Array.from({ length: shardCount }, (_, index) => ({
         index,
-        firstDistribution: index,
-        endDistribution: index + 1,
-        prefix: [],
+        nodes: [{ firstDistribution: index, endDistribution: index + 1, prefix: [] }],
       })),
       notes: [],
     }),

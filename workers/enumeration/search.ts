@@ -1,5 +1,5 @@
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
-import type { ShardSpec } from '../../shared/jobs/contract.js';
+import type { SearchNode, ShardSpec } from '../../shared/jobs/contract.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { createLayout, listDistributions, type Distribution, type SearchLayout } from './distributions.js';
 import { createFiller } from './fill.js';
@@ -34,10 +34,14 @@ export interface ConstitutionSink {
  * @throws TooSymmetricError when the units' group is too large.
  */
 export function enumerateShard(search: Search, shard: ShardSpec, sink: ConstitutionSink): boolean {
-  for (let d = shard.firstDistribution; d < shard.endDistribution; d++) {
+  return shard.nodes.every((node) => enumerateNode(search, node, sink));
+}
+
+function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink): boolean {
+  for (let d = node.firstDistribution; d < node.endDistribution; d++) {
     const layout = createLayout(search.problem, search.distributions[d]);
     const judge = createLeafJudge(search.problem, layout);
-    const complete = createFiller(layout).run(shard.prefix, 0, {
+    const complete = createFiller(layout).run(node.prefix, 0, {
       onLeaf(filled) {
         const verdict = judge(filled);
         if (verdict.multigraphs !== 0) sink.onMultigraphs(verdict.multigraphs);
@@ -55,39 +59,36 @@ export function enumerateShard(search: Search, shard: ShardSpec, sink: Constitut
 const MAX_PREFIX_ROWS = 4;
 
 /**
- * Splits a search into about `target` shards, deterministically: a few distributions a shard where there are many, else
- * prefixes of growing depth.
+ * Splits a search into at most `target` shards, deterministically. Where there are few distributions they are cut into
+ * prefixes of growing depth; nodes are then dealt out in turn, so that neighbours of like size end in different shards.
  */
 export function planShards(search: Search, target: number): ShardSpec[] {
-  const total = search.distributions.length;
-  if (total >= target) {
+  let nodes: SearchNode[] = search.distributions.map((_, d) => ({ firstDistribution: d, endDistribution: d + 1, prefix: [] }));
+  if (nodes.length >= target) {
     return Array.from({ length: target }, (_, index) => ({
       index,
-      firstDistribution: Math.floor((index * total) / target),
-      endDistribution: Math.floor(((index + 1) * total) / target),
-      prefix: [],
+      nodes: [
+        {
+          firstDistribution: Math.floor((index * nodes.length) / target),
+          endDistribution: Math.floor(((index + 1) * nodes.length) / target),
+          prefix: [],
+        },
+      ],
     }));
   }
-  let nodes: Omit<ShardSpec, 'index'>[] = search.distributions.map((_, d) => ({
-    firstDistribution: d,
-    endDistribution: d + 1,
-    prefix: [],
-  }));
   for (let rows = 1; rows <= MAX_PREFIX_ROWS && nodes.length < target; rows++) {
-    nodes = nodes.flatMap((node) => {
-      if (node.prefix.length > 0 && node.prefix[0] !== rows - 1) return [node];
-      const children = expandNode(search, node, rows);
-      return children.length === 0 ? [] : children;
-    });
+    nodes = nodes.flatMap((node) => (node.prefix.length > 0 && node.prefix[0] !== rows - 1 ? [node] : expandNode(search, node, rows)));
   }
-  return nodes.map((node, index) => ({ index, ...node }));
+  const shards: SearchNode[][] = Array.from({ length: Math.min(target, nodes.length) }, () => []);
+  nodes.forEach((node, k) => shards[k % shards.length].push(node));
+  return shards.map((list, index) => ({ index, nodes: list }));
 }
 
 /**
  * Prefixes one row deeper than a node; the node itself when a leaf lies above that depth (leaves stay with it), and an
  * empty list when nothing is below.
  */
-function expandNode(search: Search, node: Omit<ShardSpec, 'index'>, rows: number): Omit<ShardSpec, 'index'>[] {
+function expandNode(search: Search, node: SearchNode, rows: number): SearchNode[] {
   const layout: SearchLayout = createLayout(search.problem, search.distributions[node.firstDistribution]);
   const prefixes: number[][] = [];
   let leaves = 0;

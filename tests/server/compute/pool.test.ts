@@ -15,7 +15,7 @@ const settings = { keep: 10, maxSeconds: null, mode: 'rank' } as const;
 const shardInput = (counters: SharedArrayBuffer) => ({
   evidence,
   settings,
-  shard: { index: 0, firstDistribution: 0, endDistribution: 1, prefix: [] },
+  shard: { index: 0, nodes: [{ firstDistribution: 0, endDistribution: 1, prefix: [] }] },
   counters,
   deadlineEpochMs: null,
 });
