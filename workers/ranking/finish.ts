@@ -60,8 +60,8 @@ function createDescriber(evidence: EvidenceDocument, isRanked: boolean): (candid
     environments.find(structure);
     bounds.find(structure, environments);
     scorer.score(structure, environments, bounds);
-    if (scorer.carbon !== null) matches.push(...listCarbonMatches(scorer.carbon, evidence, spectra, temperature));
-    if (scorer.proton !== null) matches.push(...listProtonMatches(scorer.proton, evidence, spectra, temperature));
+    if (scorer.carbon !== null) matches.push(...listCarbonMatches(scorer.carbon, evidence, spectra, temperature.carbon));
+    if (scorer.proton !== null) matches.push(...listProtonMatches(scorer.proton, evidence, spectra, temperature.proton));
     return {
       rank,
       key: candidate.key,

@@ -21,7 +21,8 @@ export function nameCarbon(s: StructureAnalysis, atom: number): string {
     if (hasBond(s, atom, 16, 2)) return 'C=S';
     return `alkene ${type}${hetero === '' ? '' : ` on ${hetero}`}`;
   }
-  return hetero === '' ? type : `${hetero}${type}`;
+  if (hetero === '') return type;
+  return s.graph.hydrogens[atom] === 0 ? `C–${hetero}` : `${hetero}${type}`;
 }
 
 /** What carries a hydrogen: the carbon's name, or OH, NH, NH₂, SH. */

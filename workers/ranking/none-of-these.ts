@@ -46,8 +46,9 @@ export function anyProtonCost(shift: number): number {
  * signals of its type lie in compounds at large, tempered like the candidates' scores.
  */
 export function noneOfTheseLogLikelihood(carbons: CarbonObservations, protons: ProtonObservations, model: ScoreModel): number {
-  let cost = 0;
-  for (let i = 0; i < carbons.size; i++) cost += anyCarbonCost(carbons.shift[i], carbons.hydrogens[i]);
-  for (let i = 0; i < protons.size; i++) cost += anyProtonCost(protons.shift[i]);
-  return -cost / model.temperature;
+  let carbonCost = 0;
+  let protonCost = 0;
+  for (let i = 0; i < carbons.size; i++) carbonCost += anyCarbonCost(carbons.shift[i], carbons.hydrogens[i]);
+  for (let i = 0; i < protons.size; i++) protonCost += anyProtonCost(protons.shift[i]);
+  return -carbonCost / model.temperature.carbon - protonCost / model.temperature.proton;
 }

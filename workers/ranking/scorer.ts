@@ -11,6 +11,14 @@ import { ProtonLikelihood } from './proton-likelihood.js';
 import { SCORE_MODEL, type ScoreModel } from './score-model.js';
 import type { SignalBounds } from './signal-bounds.js';
 
+let predictor: ShiftPredictor | null = null;
+
+/** The predictor of this thread: its tables take longer to read than many a run, and it keeps nothing between calls. */
+function sharedPredictor(): ShiftPredictor {
+  predictor ??= createShiftPredictor();
+  return predictor;
+}
+
 /**
  * Log posterior of a structure up to a constant: tempered log-likelihood of each kind of evidence plus the log prior of
  * the soft plausibility rules. The same code scores every candidate of a run and explains the kept ones, so both see the
@@ -22,7 +30,6 @@ export class Scorer {
   readonly carbon: CarbonLikelihood | null;
   readonly proton: ProtonLikelihood | null;
   readonly shifts = createPredictedShifts();
-  private readonly predictor: ShiftPredictor;
   private readonly hasMultiplicities: boolean;
   private readonly hasCounts: boolean;
 
@@ -31,7 +38,6 @@ export class Scorer {
     private readonly soft: readonly ActiveRule[],
     private readonly model: ScoreModel = SCORE_MODEL,
   ) {
-    this.predictor = createShiftPredictor();
     this.carbon = evidence.carbonSignals.length === 0 ? null : new CarbonLikelihood(readCarbonObservations(evidence), model.carbon);
     this.proton = evidence.protonSignals.length === 0 ? null : new ProtonLikelihood(readProtonObservations(evidence), evidence.protonSignals, model.proton);
     this.hasMultiplicities = evidence.protonSignals.some(({ multiplicity }) => multiplicity !== undefined);
@@ -45,21 +51,21 @@ export class Scorer {
   score(s: StructureAnalysis, environments: Environments, bounds: SignalBounds): number {
     const { terms, carbon, proton, shifts } = this;
     let score = 0;
-    if (carbon !== null || proton !== null) this.predictor.predictInto(s.graph, s, shifts);
+    if (carbon !== null || proton !== null) sharedPredictor().predictInto(s.graph, s, shifts);
     if (carbon !== null) {
-      terms.carbon13 = carbon.score(s, environments, bounds, shifts) / this.model.temperature;
+      terms.carbon13 = carbon.score(s, environments, bounds, shifts) / this.model.temperature.carbon;
       score += terms.carbon13;
     }
     if (proton !== null) {
       proton.score(s, environments, bounds, shifts);
-      terms.proton1 = proton.shiftTerm / this.model.temperature;
+      terms.proton1 = proton.shiftTerm / this.model.temperature.proton;
       score += terms.proton1;
       if (this.hasMultiplicities) {
-        terms.multiplicity = proton.multiplicityTerm / this.model.temperature;
+        terms.multiplicity = proton.multiplicityTerm / this.model.temperature.proton;
         score += terms.multiplicity;
       }
       if (this.hasCounts) {
-        terms.integral = proton.integralTerm / this.model.temperature;
+        terms.integral = proton.integralTerm / this.model.temperature.proton;
         score += terms.integral;
       }
     }

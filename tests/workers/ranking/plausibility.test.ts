@@ -31,6 +31,9 @@ const CASES: Readonly<Record<PlausibilityRuleId, { finds: readonly [smiles: stri
   alleneInSmallRing: { finds: ['C1CCCCC=C=C1', [5, 6, 7]], passes: ['C1CCCCCC=C=C1', 'CC=C=CC', 'C1CC1C=C=C'] },
   // Bredt: norbornene at the bridgehead; a fused ring with C=C at the fusion and trans-cyclooctene size bridges pass.
   twistedRingAlkene: { finds: ['C1CC2=CC1CC2', [2, 3]], passes: ['C1CC2CC1C=C2', 'C1CCC2=CCCCC2C1', 'C1CCC2=C(C1)CCCC2', 'C1CC2CCCC=C(C1)CCC2', 'c1ccc2c(c1)CCC2', 'C1c2ccccc21'] },
+  // [5]Metacyclophane and [5]paracyclophane have been made; julolidine, acenaphthene and fluorene have bridges from ortho.
+  bridgedArene: { finds: ['c1cc2CCCCc(c1)c2', [2, 7]], passes: ['c1cc2CCCCCc(c1)c2', 'C1Cc2ccccc2C1', 'C1Cc2cccc3c2N(C1)CCC3', 'C1Cc2cccc3cccc1c23', 'C1c2ccccc2-c2ccccc12', 'c1ccc2c(c1)[nH]c1ccccc12'] },
+  alkyneInMediumRing: { finds: ['C1CCCCCC#C1', [6, 7]], passes: ['C1CCCCCCCCCC#C1', 'CC#CC', 'C1CCCCCCC1C#C'] },
   heterocumuleneInSmallRing: { finds: ['C1CCN=C=NC1', [3, 4, 5]], passes: ['CN=C=NC', 'C1CCCCCN=C=N1'] },
   cumulatedDoubleBonds: { finds: ['CC=C=NC', [1, 2, 3]], passes: ['C=C=C', 'CC=C=O', 'CN=C=O', 'CN=C=S', 'CN=C=NC', 'CN=[N+]=[N-]', 'CC=[N+]=[N-]', 'CS(C)(=O)=O'] },
   peroxide: { finds: ['COOC', [1, 2]], passes: ['COCOC', 'C1OCCO1'] },

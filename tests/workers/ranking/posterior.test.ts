@@ -69,7 +69,7 @@ describe('none of these', () => {
     const carbons = readCarbonObservations(evidence);
     const none = readProtonObservations(evidenceDocument.parse({ formula: 'C2H6O' }));
     const both = noneOfTheseLogLikelihood(carbons, readProtonObservations(evidence), SCORE_MODEL);
-    expect(noneOfTheseLogLikelihood(carbons, none, SCORE_MODEL)).toBeCloseTo(-anyCarbonCost(58.3, 2) / SCORE_MODEL.temperature, 9);
+    expect(noneOfTheseLogLikelihood(carbons, none, SCORE_MODEL)).toBeCloseTo(-anyCarbonCost(58.3, 2) / SCORE_MODEL.temperature.carbon, 9);
     expect(both).toBeLessThan(noneOfTheseLogLikelihood(carbons, none, SCORE_MODEL));
   });
 });

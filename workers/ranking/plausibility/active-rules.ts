@@ -12,7 +12,7 @@ import {
   findAcylHalidesWithNucleophile, findAldehydesWithAmine, findBetaKetoAcids, findCarbamicAcids, findCarbonicHalfEsters, findIsocyanatesWithNucleophile,
 } from './incompatible-groups.js';
 import {
-  findAllenesInSmallRings, findAlkynesInSmallRings, findFourMemberedRings, findFusedSmallRings, findHeterocumulenesInSmallRings, findSmallRingAlkenes,
+  findAllenesInSmallRings, findAlkynesInMediumRings, findAlkynesInSmallRings, findBridgedArenes, findFourMemberedRings, findFusedSmallRings, findHeterocumulenesInSmallRings, findSmallRingAlkenes,
   findThreeMemberedRings, findTwistedRingAlkenes,
 } from './ring-geometry.js';
 import {
@@ -29,6 +29,8 @@ const TESTS: Readonly<Record<PlausibilityRuleId, { readonly test: RuleTest; read
   alkyneInSmallRing: { test: findAlkynesInSmallRings, needs: { C: 2 } },
   alleneInSmallRing: { test: findAllenesInSmallRings, needs: { C: 3 } },
   twistedRingAlkene: { test: findTwistedRingAlkenes, needs: { C: 2 } },
+  bridgedArene: { test: findBridgedArenes, needs: {} },
+  alkyneInMediumRing: { test: findAlkynesInMediumRings, needs: { C: 2 } },
   heterocumuleneInSmallRing: { test: findHeterocumulenesInSmallRings, needs: {} },
   cumulatedDoubleBonds: { test: findCumulatedDoubleBonds, needs: {} },
   peroxide: { test: findPeroxides, needs: { O: 2 } },

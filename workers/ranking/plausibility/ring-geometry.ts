@@ -5,6 +5,18 @@ import { CARBON, findNeighbour, neighbour, orderOf, type OccurrenceReport } from
 const SMALLEST_ALKYNE_RING = 8;
 const SMALLEST_ALLENE_RING = 9;
 const SMALLEST_TRANS_RING = 8;
+/** Atoms of the shortest bridge over an aromatic ring from meta or para: [5]cyclophanes have been made (from memory). */
+const SHORTEST_ARENE_BRIDGE = 5;
+const LARGEST_ARENE = 7;
+/** Triple bonds in rings below this size are bent although they keep. */
+const UNSTRAINED_ALKYNE_RING = 12;
+
+/** Scratch of the breadth-first searches below; the rules run one after the other, never nested. */
+const queue = new Uint8Array(256);
+const depth = new Uint8Array(256);
+/** Marks in `depth` beside real depths. */
+const IN_RING = 255;
+const SEEN_ACROSS = 254;
 
 export function findAlkynesInSmallRings(s: StructureAnalysis, report: OccurrenceReport): number {
   const n = s.graph.atomCount;
@@ -16,6 +28,20 @@ export function findAlkynesInSmallRings(s: StructureAnalysis, report: Occurrence
     if (b < a) continue;
     const size = s.smallestRingOfBond[a * n + b];
     if (size === 0 || size >= SMALLEST_ALKYNE_RING) continue;
+    count++;
+    report?.([a, b]);
+  }
+  return count;
+}
+
+/** Triple bonds in rings large enough to keep and small enough to bend them. */
+export function findAlkynesInMediumRings(s: StructureAnalysis, report: OccurrenceReport): number {
+  const n = s.graph.atomCount;
+  let count = 0;
+  for (let a = 0; a < n; a++) {
+    if (s.ringBondCounts[a] === 0 || s.smallestRingOfAtom[a] < SMALLEST_ALKYNE_RING || s.smallestRingOfAtom[a] >= UNSTRAINED_ALKYNE_RING) continue;
+    const b = findNeighbour(s, a, 0, 3);
+    if (b < a) continue;
     count++;
     report?.([a, b]);
   }
@@ -83,6 +109,68 @@ export function findTwistedRingAlkenes(s: StructureAnalysis, report: OccurrenceR
   return count;
 }
 
+/** Aromatic rings with a bridge of fewer than five atoms between atoms that are not neighbours in the ring. */
+export function findBridgedArenes(s: StructureAnalysis, report: OccurrenceReport): number {
+  if (!mayBridgeArene(s)) return 0;
+  const n = s.graph.atomCount;
+  let count = 0;
+  for (const ring of s.rings) {
+    // Large conjugated rings (porphyrins) are bridged by nature.
+    if (ring.length > LARGEST_ARENE || !ring.every((atom, i) => s.aromaticBonds[atom * n + ring[(i + 1) % ring.length]] === 1)) continue;
+    for (const a of ring) if (s.ringBondCounts[a] >= 3) count += countShortBridges(s, ring, a, report);
+  }
+  return count;
+}
+
+/** Cheap necessary test: two aromatic atoms with a ring bond that is not aromatic. */
+function mayBridgeArene(s: StructureAnalysis): boolean {
+  const n = s.graph.atomCount;
+  let anchors = 0;
+  for (let a = 0; a < n; a++) {
+    if (s.aromaticAtoms[a] === 0 || s.ringBondCounts[a] < 3) continue;
+    for (let k = 0; k < s.degrees[a]; k++) {
+      const b = neighbour(s, a, k);
+      if (s.smallestRingOfBond[a * n + b] > 0 && s.aromaticBonds[a * n + b] === 0) {
+        anchors++;
+        break;
+      }
+    }
+  }
+  return anchors >= 2;
+}
+
+/** Ring atoms after `a` and not beside it in the ring that a bridge of fewer than five atoms outside the ring joins to it. */
+function countShortBridges(s: StructureAnalysis, ring: readonly number[], a: number, report: OccurrenceReport): number {
+  const n = s.graph.atomCount;
+  depth.fill(0, 0, n);
+  for (const atom of ring) depth[atom] = IN_RING;
+  let tail = 0;
+  for (let k = 0; k < s.degrees[a]; k++) {
+    const b = neighbour(s, a, k);
+    if (depth[b] !== 0) continue;
+    depth[b] = 1;
+    queue[tail++] = b;
+  }
+  let count = 0;
+  for (let head = 0; head < tail; head++) {
+    const u = queue[head];
+    for (let k = 0; k < s.degrees[u]; k++) {
+      const v = neighbour(s, u, k);
+      if (depth[v] === IN_RING) {
+        // The bridge is met from its other end too; there it does not count.
+        if (v <= a || orderOf(s, a, v) !== 0) continue;
+        depth[v] = SEEN_ACROSS;
+        count++;
+        report?.([a, v]);
+      } else if (depth[v] === 0 && depth[u] + 1 < SHORTEST_ARENE_BRIDGE) {
+        depth[v] = depth[u] + 1;
+        queue[tail++] = v;
+      }
+    }
+  }
+  return count;
+}
+
 /** The index-th neighbour of `atom` other than `partner`, −1 for a hydrogen. */
 function substituent(s: StructureAnalysis, atom: number, partner: number, index: number): number {
   const degree = s.degrees[atom];
@@ -93,10 +181,6 @@ function substituent(s: StructureAnalysis, atom: number, partner: number, index:
   }
   return -1;
 }
-
-/** Scratch of the breadth-first search below; the rules run one after the other, never nested. */
-const queue = new Uint8Array(256);
-const depth = new Uint8Array(256);
 
 /** True when a ring p–a=b–q of fewer than 8 atoms exists, p on a and q on b. */
 function isTransTooTight(s: StructureAnalysis, a: number, b: number, p: number, q: number): boolean {
