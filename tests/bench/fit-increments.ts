@@ -16,6 +16,7 @@ import {
   PROTON_SPREAD,
   type IncrementTable,
   type PriorSpread,
+  termVariance,
 } from '../../workers/prediction/increment-table.js';
 import { createPredictedShifts } from '../../workers/prediction/predicted-shifts.js';
 import { carbonClassOf, modeOf, protonClassOf } from '../../workers/prediction/shift-classes.js';
@@ -73,8 +74,6 @@ function matchedCarbons(table: IncrementTable, weight: number): Sample[] {
   const predictor = createIncrementPredictor(table, proton, {
     carbonFloor: new Float32Array(table.classes.length).fill(2),
     protonFloor: new Float32Array(proton.classes.length).fill(1),
-    carbonWeight: 0.3,
-    protonWeight: 1,
   });
   const out = createPredictedShifts();
   return fitting.flatMap((record) => {
@@ -192,15 +191,26 @@ function fitTable(
   return { table: { values, variances, classes: start.classes }, classes };
 }
 
-const evaluate = (table: IncrementTable, sample: Sample): { error: number; variance: number } => {
+/** Weights of the term variances that are tried. */
+const WEIGHTS = [0.1, 0.2, 0.3, 0.5, 0.8, 1.2, 2, 3, 5, 8, 12, 20];
+
+/** Error of a prediction for a sample that was left out, with the term variance under each of WEIGHTS. */
+interface Check {
+  readonly row: number;
+  readonly error: number;
+  readonly variances: Float64Array;
+}
+
+function evaluate(table: IncrementTable, sample: Sample, spread: PriorSpread): Check {
   let shift = 0;
-  let variance = 0;
+  const variances = new Float64Array(WEIGHTS.length);
   for (const term of sample.terms) {
     shift += table.values[sample.row * TERM_COUNT + term];
-    variance += table.variances[sample.row * TERM_COUNT + term];
+    const prior = priorSpreadOf(term, spread);
+    WEIGHTS.forEach((weight, k) => (variances[k] += termVariance(table.variances[sample.row * TERM_COUNT + term], weight, prior)));
   }
-  return { error: sample.shift - shift, variance };
-};
+  return { row: sample.row, error: sample.shift - shift, variances };
+}
 
 /**
  * Spread model from errors on compounds not fitted: the weight of the term variances under which a Student-type
@@ -209,38 +219,38 @@ const evaluate = (table: IncrementTable, sample: Sample): { error: number; varia
  * @param floorElsewhere - for classes with fewer than 30 errors, ppm: common practice for textbook rules.
  */
 function calibrate(
-  checks: ReadonlyArray<{ row: number; error: number; variance: number }>,
+  checks: readonly Check[],
   classes: readonly string[],
   digits: number,
   floorElsewhere: number,
 ): { floors: Record<string, number>; floorElsewhere: number; termWeight: number } {
-  const floorFor = (own: typeof checks, weight: number): number => {
+  const floorFor = (own: readonly Check[], k: number): number => {
     let low = 0;
     let high = 50;
     for (let step = 0; step < 40; step++) {
       const middle = (low + high) / 2;
-      const inside = own.filter(({ error, variance }) => error * error <= middle * middle + weight * variance).length;
+      const inside = own.filter(({ error, variances }) => error * error <= middle * middle + variances[k]).length;
       if (inside < 0.683 * own.length) low = middle;
       else high = middle;
     }
     return Math.max(high, 10 ** -digits * 5);
   };
-  let best = { likelihood: -Infinity, weight: 1 };
-  for (const weight of [0.01, 0.02, 0.05, 0.1, 0.15, 0.2, 0.3, 0.5, 0.8, 1.2, 2, 3, 5, 8, 12, 20]) {
-    const floor = floorFor(checks, weight);
+  let best = { likelihood: -Infinity, k: 0 };
+  for (let k = 0; k < WEIGHTS.length; k++) {
+    const floor = floorFor(checks, k);
     let likelihood = 0;
-    for (const { error, variance } of checks) {
-      const scale = floor * floor + weight * variance;
+    for (const { error, variances } of checks) {
+      const scale = floor * floor + variances[k];
       likelihood -= 0.5 * Math.log(scale) + 2.5 * Math.log1p((error * error) / (4 * scale));
     }
-    if (likelihood > best.likelihood) best = { likelihood, weight };
+    if (likelihood > best.likelihood) best = { likelihood, k };
   }
   const floors: Record<string, number> = {};
   classes.forEach((name, row) => {
     const own = checks.filter((check) => check.row === row);
-    if (own.length >= 30) floors[name] = Number(floorFor(own, best.weight).toFixed(digits));
+    if (own.length >= 30) floors[name] = Number(floorFor(own, best.k).toFixed(digits));
   });
-  return { floors, floorElsewhere, termWeight: best.weight };
+  return { floors, floorElsewhere, termWeight: WEIGHTS[best.k] };
 }
 
 /** Errors of assigned samples when their own third of the folds is left out. */
@@ -250,8 +260,8 @@ function crossValidate(
   start: IncrementTable,
   spread: PriorSpread,
   sigmaFloor: number,
-): { row: number; error: number; variance: number }[] {
-  const checks: { row: number; error: number; variance: number }[] = [];
+): Check[] {
+  const checks: Check[] = [];
   for (let part = 0; part < 3; part++) {
     const { table } = fitTable(
       samples.filter((sample) => sample.fold % 3 !== part),
@@ -259,8 +269,7 @@ function crossValidate(
       spread,
       sigmaFloor,
     );
-    for (const sample of samples.slice(0, assignedCount))
-      if (sample.fold % 3 === part) checks.push({ row: sample.row, ...evaluate(table, sample) });
+    for (const sample of samples.slice(0, assignedCount)) if (sample.fold % 3 === part) checks.push(evaluate(table, sample, spread));
   }
   return checks;
 }
@@ -321,7 +330,7 @@ export interface FittedIncrements {
   readonly floors: Readonly<Record<string, number>>;
   /** For classes without enough data. */
   readonly floorElsewhere: number;
-  /** Weight of the summed term variances. */
+  /** See weightVariances. */
   readonly termWeight: number;
 }
 

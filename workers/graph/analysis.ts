@@ -30,7 +30,7 @@ export interface StructureAnalysis {
   readonly ringBondCounts: Uint8Array;
   /** 1 = sp, 2 = sp2 (aromatic atoms included), 3 = sp3 and everything else; length n. */
   readonly hybridisation: Uint8Array;
-  /** Minimum cycle basis, atoms in ring order; found on first use, because most callers never need it. */
+  /** Relevant rings, atoms in ring order; found on first use, because structures that cannot be aromatic rarely need them. */
   readonly rings: readonly (readonly number[])[];
 }
 
@@ -111,7 +111,7 @@ export function analyseStructure(
   fillNeighbours(graph, scratch);
   const hasRing = fillRingSizes(n, scratch);
   if (hasRing && mayBeAromatic(n, scratch)) {
-    const { atoms, bonds } = perceiveAromaticity(graph);
+    const { atoms, bonds } = perceiveAromaticity(graph, scratch.rings);
     scratch.aromaticAtoms = atoms;
     scratch.aromaticBonds = bonds;
   } else {

@@ -86,3 +86,22 @@ export function applyCorrections(table: IncrementTable, text: string): void {
     }
   }
 }
+
+/** A term never adds more than this multiple of its prior variance, however little is known of it. */
+const VARIANCE_CAP = 2.25;
+
+/** Variance that a term adds to a prediction: its own, weighted for what duplicates in the data hide, within the cap. */
+export function termVariance(variance: number, weight: number, prior: number): number {
+  return Math.min(weight * variance, VARIANCE_CAP * prior * prior);
+}
+
+/** Replaces the variances of a table by {@link termVariance}, so that a prediction only has to add them up. */
+export function weightVariances(table: IncrementTable, weight: number, spread: PriorSpread): void {
+  for (let term = 0; term < TERM_COUNT; term++) {
+    const prior = priorSpreadOf(term, spread);
+    for (let row = 0; row < table.classes.length; row++) {
+      const index = row * TERM_COUNT + term;
+      table.variances[index] = termVariance(table.variances[index], weight, prior);
+    }
+  }
+}

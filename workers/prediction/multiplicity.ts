@@ -13,8 +13,8 @@ export interface SignalPattern {
 
 /** Couplings closer than this merge into one, Hz (SCIENCE.md 3.4). */
 const MERGE_WIDTH = 1;
-/** Smaller couplings are not resolved, Hz (common practice for routine spectra). */
-export const RESOLVED = 1;
+/** Smaller couplings, the allylic ones above all, are as a rule not reported, Hz (common practice for routine spectra). */
+const RESOLVED = 1.5;
 const LETTERS = ['s', 'd', 't', 'q', 'quint', 'sext', 'sept', 'oct', 'non'];
 
 /**
@@ -24,7 +24,7 @@ const LETTERS = ['s', 'd', 't', 'q', 'quint', 'sext', 'sept', 'oct', 'non'];
  * set, compound patterns with a quintet or more, three different couplings unless at least two are doublets
  * (`ddd`, `ddt`, `ddq`), and four or more.
  *
- * @param partners - in any order; those below 1 Hz are ignored.
+ * @param partners - in any order; those below 1.5 Hz are ignored.
  */
 export function namePattern(partners: readonly CouplingPartners[]): SignalPattern {
   const resolved = partners.filter(({ coupling, count }) => coupling >= RESOLVED && count > 0).sort((a, b) => b.coupling - a.coupling);

@@ -12,13 +12,10 @@ import { carbonClassOf, modeOf, protonClassOf } from './shift-classes.js';
 export interface SpreadModel {
   readonly carbonFloor: Float32Array;
   readonly protonFloor: Float32Array;
-  /** Weight of the summed term variances: below 1 because the terms of one atom are correlated. */
-  readonly carbonWeight: number;
-  readonly protonWeight: number;
 }
 
 /**
- * Predictor that adds increments: shift = Σ increments of the terms of the atom, variance = floor² + w·Σ variances.
+ * Predictor that adds increments: shift = Σ increments of the terms of the atom, variance = floor² + Σ variances.
  * Every class has a base and every term a variance, so each atom gets a finite number; what the tables have never seen
  * shows as a wide standard deviation.
  */
@@ -26,7 +23,7 @@ export function createIncrementPredictor(carbon: IncrementTable, proton: Increme
   const types = new Uint8Array(MAX_ATOMS);
   const terms = new Int32Array(MAX_TERMS);
   const scratch = createTermScratch();
-  const { carbonFloor, protonFloor, carbonWeight, protonWeight } = spread;
+  const { carbonFloor, protonFloor } = spread;
   const carbonRuleOfClass = Uint8Array.from(carbon.classes, ruleOfCarbonClass);
   const protonRuleOfClass = Uint8Array.from(proton.classes, ruleOfProtonClass);
 
@@ -51,7 +48,7 @@ export function createIncrementPredictor(carbon: IncrementTable, proton: Increme
           variance += variances[start + terms[k]];
         }
         carbonShift[a] = shift;
-        carbonSd[a] = Math.sqrt(carbonFloor[row] * carbonFloor[row] + carbonWeight * variance);
+        carbonSd[a] = Math.sqrt(carbonFloor[row] * carbonFloor[row] + variance);
         carbonRule[a] = carbonRuleOfClass[row];
       }
       if (hydrogens[a] > 0) {
@@ -65,7 +62,7 @@ export function createIncrementPredictor(carbon: IncrementTable, proton: Increme
           variance += variances[start + terms[k]];
         }
         protonShift[a] = shift;
-        protonSd[a] = Math.sqrt(protonFloor[row] * protonFloor[row] + protonWeight * variance);
+        protonSd[a] = Math.sqrt(protonFloor[row] * protonFloor[row] + variance);
         protonRule[a] = protonRuleOfClass[row];
       }
     }
