@@ -73,6 +73,10 @@ export function Component() {
                 Draw a structure or paste its SMILES. Its predicted ¹³C and ¹H spectra will stand here, with the reason for every number.
               </EmptyState>
             </Panel>
+          ) : error !== null && issueFor(error, 'smiles') !== undefined ? (
+            <Panel isFlush>
+              <EmptyState title="No prediction for this structure">It cannot be used as it is; see the field below the drawing.</EmptyState>
+            </Panel>
           ) : error !== null ? (
             <Panel isFlush>
               <ErrorState title="No prediction for this structure" error={error} onRetry={() => void refetch()} />

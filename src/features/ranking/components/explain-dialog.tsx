@@ -58,7 +58,11 @@ export function ExplainDialog({ runId, asked, onAsk, onClose }: ExplainDialogPro
             <p className="text-faded">The structure was changed. Ask again for its answer.</p>
           ) : error !== null ? (
             <Notice tone="madder" title="No answer">
-              <p>{errorMessage(error)}</p>
+              <p>
+                {issueFor(error, 'smiles') === undefined
+                  ? errorMessage(error)
+                  : 'The structure cannot be looked up as it is; see the field below the drawing.'}
+              </p>
             </Notice>
           ) : data === undefined ? (
             <LoadingState label="Looking it up" className="p-0" />

@@ -6,7 +6,7 @@ import type { Run } from '../../../lib/queries/run-queries';
 const INCOMPLETE_TEXT: Readonly<Partial<Record<Run['status'], string>>> = {
   stopped: 'The run was stopped by its time limit or your quota',
   cancelled: 'The run was cancelled',
-  interrupted: 'The server was restarted while this run was going on',
+  interrupted: 'The server stopped while this run was going on',
   finished: 'Not every part of the search was done',
 };
 

@@ -44,12 +44,12 @@ export function EstimateLine({
         <span className="text-faded">
           ({formatEstimate(data.low)}–{formatEstimate(data.high)})
         </span>
-        , {formatSeconds(data.cpuSeconds)} of CPU time
+        , woven in {data.cpuSeconds < 0.1 ? 'under 0.1\u2009s' : `about ${formatSeconds(data.cpuSeconds)}`} of CPU time
       </p>
       <p className={isTooLong ? 'text-weld' : 'text-small text-faded'}>
         {isTooLong
           ? `More than the ${formatSeconds(Math.max(0, cpuSecondsLeft))} left of your quota: the run would stop early and be incomplete.`
-          : 'Estimated by random probing of the search tree; the run itself counts exactly.'}
+          : 'Estimated by random probing of the search tree; the run itself counts exactly. Prediction and scoring take time on top.'}
       </p>
     </div>
   );
