@@ -221,6 +221,13 @@ export function createFiller(layout: FillLayout): {
 
   // ---- rows ----
 
+  /** End of the cell that begins with vertex i, rows before i considered; a tied vertex is alone. */
+  function findCellEnd(i: number): number {
+    let end = i + 1;
+    if (i >= tied) while (end < n && same[i * width + end] === 1) end++;
+    return end;
+  }
+
   function startRow(i: number): void {
     if (stopped) return;
     if (--untilCheck === 0) {
@@ -240,9 +247,7 @@ export function createFiller(layout: FillLayout): {
       return;
     }
     const first = i < tied ? tied : i + 1;
-    let end = i + 1;
-    if (i >= tied) while (end < n && same[i * width + end] === 1) end++;
-    cellEnd[i] = end;
+    cellEnd[i] = findCellEnd(i);
     // Columns to the right can take this much of the row's valence; a row that needs more has no completion.
     const line = i * width;
     capacity[line + n] = 0;
@@ -308,9 +313,7 @@ export function createFiller(layout: FillLayout): {
     if (componentCount > 1) return;
     for (let i = row + 1; i < n; i++) {
       const line = i * width;
-      let end = i + 1;
-      if (i >= tied) while (end < n && same[line + end] === 1) end++;
-      cellEnd[i] = end;
+      cellEnd[i] = findCellEnd(i);
       let twin = i > tied && same[line - width + i] === 1 ? 1 : 0;
       for (let j = i + 1; twin === 1 && j < n; j++) if (a[(i - 1) * n + j] !== 0) twin = 0;
       isTwin[i] = twin;
@@ -491,8 +494,7 @@ export function createFiller(layout: FillLayout): {
     if (i >= top) return 2;
     const line = i * width;
     const here = i * n;
-    let end = i + 1;
-    while (end < n && same[line + end] === 1) end++;
+    const end = findCellEnd(i);
     const stamp = ++seenStamp;
     for (let p = i; p < end; p++) {
       const v = image[here + p];
@@ -556,9 +558,7 @@ export function createFiller(layout: FillLayout): {
       for (let j = first; j < n; j++) {
         same[(i + 1) * width + j] = j > first && same[i * width + j] === 1 && a[i * n + j] === a[i * n + j - 1] ? 1 : 0;
       }
-      let end = i + 1;
-      if (i >= tied) while (end < n && same[i * width + end] === 1) end++;
-      cellEnd[i] = end;
+      cellEnd[i] = findCellEnd(i);
     }
   }
 

@@ -47,17 +47,10 @@ export function FragmentSection({ draft, issues, isReadOnly, teamId, onChange }:
           <ul className="flex flex-wrap gap-2">
             {draft.required.map((row, index) => (
               <li key={index} className="w-[168px] rounded-panel border border-seam p-2">
-                <div className="flex items-start justify-between gap-1">
-                  <span className="line-clamp-2 text-small">{row.label === '' ? 'Drawn fragment' : row.label}</span>
-                  {isReadOnly ? null : (
-                    <IconButton
-                      label={`Remove ${row.label || row.smiles}`}
-                      tone="danger"
-                      icon={<X className="size-3.5" />}
-                      onClick={() => onChange({ required: draft.required.filter((_, at) => at !== index) })}
-                    />
-                  )}
-                </div>
+                <CardHead
+                  name={row.label || 'Drawn fragment'}
+                  {...(isReadOnly ? {} : { onRemove: () => onChange({ required: draft.required.filter((_, at) => at !== index) }) })}
+                />
                 <StructureDrawing smiles={row.smiles} width={150} height={88} alt={row.smiles} isExpandable />
                 <div className="mt-1 flex items-center justify-between gap-1">
                   <span className="text-small text-faded">copies</span>
@@ -103,17 +96,10 @@ export function FragmentSection({ draft, issues, isReadOnly, teamId, onChange }:
           <ul className="flex flex-wrap gap-2">
             {draft.excluded.map((row, index) => (
               <li key={index} className="w-[148px] rounded-panel border border-seam p-2">
-                <div className="flex items-start justify-between gap-1">
-                  <span className="line-clamp-2 text-small">{row.label === '' ? row.smiles : row.label}</span>
-                  {isReadOnly ? null : (
-                    <IconButton
-                      label={`Remove ${row.label || row.smiles}`}
-                      tone="danger"
-                      icon={<X className="size-3.5" />}
-                      onClick={() => onChange({ excluded: draft.excluded.filter((_, at) => at !== index) })}
-                    />
-                  )}
-                </div>
+                <CardHead
+                  name={row.label || row.smiles}
+                  {...(isReadOnly ? {} : { onRemove: () => onChange({ excluded: draft.excluded.filter((_, at) => at !== index) }) })}
+                />
                 <StructureDrawing smiles={row.smiles} width={130} height={72} alt={row.smiles} />
                 <InlineError message={issueAt(issues, `fragments.excluded[${index}]`)} />
               </li>
@@ -141,6 +127,17 @@ export function FragmentSection({ draft, issues, isReadOnly, teamId, onChange }:
         />
       )}
     </Panel>
+  );
+}
+
+function CardHead({ name, onRemove }: { name: string; onRemove?: () => void }) {
+  return (
+    <div className="flex items-start justify-between gap-1">
+      <span className="line-clamp-2 text-small">{name}</span>
+      {onRemove === undefined ? null : (
+        <IconButton label={`Remove ${name}`} tone="danger" icon={<X className="size-3.5" />} onClick={onRemove} />
+      )}
+    </div>
   );
 }
 
