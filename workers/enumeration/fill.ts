@@ -492,7 +492,6 @@ export function createFiller(layout: FillLayout): {
   /** @returns 1 when some completion is larger, 2 when one is equal up to `top`, 0 when all are smaller. */
   function search(i: number, top: number, known: number): number {
     if (i >= top) return 2;
-    const line = i * width;
     const here = i * n;
     const end = findCellEnd(i);
     const stamp = ++seenStamp;
