@@ -218,9 +218,19 @@ function smallestRingThrough(
   return 0;
 }
 
-/** Cheap necessary test: an aromatic ring has at least two ring double bonds, hence four sp2 ring atoms. */
+/** Cheap necessary test: every atom of an aromatic ring has two ring neighbours that can give π electrons, as saturated carbon cannot. */
 function mayBeAromatic(n: number, scratch: AnalysisScratch): boolean {
+  const { graph, neighbours, degrees, hybridisation, smallestRingOfBond, ringBondCounts } = scratch;
+  const z = graph.atomicNumbers;
   let count = 0;
-  for (let a = 0; a < n; a++) if (scratch.ringBondCounts[a] > 0 && scratch.hybridisation[a] === 2) count++;
-  return count >= 4;
+  for (let a = 0; a < n; a++) {
+    if (ringBondCounts[a] === 0 || (z[a] === 6 && hybridisation[a] === 3)) continue;
+    let able = 0;
+    for (let k = 0; k < degrees[a]; k++) {
+      const b = neighbours[a * NEIGHBOUR_STRIDE + k];
+      if (smallestRingOfBond[a * n + b] > 0 && (z[b] !== 6 || hybridisation[b] !== 3)) able++;
+    }
+    if (able >= 2 && ++count >= 3) return true;
+  }
+  return false;
 }

@@ -83,7 +83,9 @@ const STEP_LIMIT = 200_000;
  * @returns image per atom, or null if there is none (or the step limit was hit, which only ever splits classes).
  */
 export function findAutomorphism(
-  normalised: NormalisedGraph, forced: ReadonlyArray<readonly [number, number]>, checks: readonly AutomorphismCheck[] = [],
+  normalised: NormalisedGraph,
+  forced: ReadonlyArray<readonly [number, number]>,
+  checks: readonly AutomorphismCheck[] = [],
 ): Int16Array | null {
   const { atomCount: n, colours, bondTypes, neighbourLists } = normalised;
   const wanted = new Int16Array(n).fill(-1);

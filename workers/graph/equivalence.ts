@@ -40,9 +40,12 @@ export function findEquivalence(graph: MolecularGraph, analysis: StructureAnalys
   const units = listStereoUnits(normalised);
   const isStereogenic = findStereogenicUnits(normalised, units);
   const orbits = partition(normalised, (atom, other) => findAutomorphism(normalised, [[atom, other]]) !== null);
-  const shiftClasses = partition(normalised, (atom, other) =>
-    orbits[atom] === orbits[other]
-    && (hasSymmetry(normalised, units, isStereogenic, [[atom, other]], 1, 'lenient') || hasSymmetry(normalised, units, isStereogenic, [[atom, other]], -1, 'lenient')),
+  const shiftClasses = partition(
+    normalised,
+    (atom, other) =>
+      orbits[atom] === orbits[other] &&
+      (hasSymmetry(normalised, units, isStereogenic, [[atom, other]], 1, 'lenient') ||
+        hasSymmetry(normalised, units, isStereogenic, [[atom, other]], -1, 'lenient')),
   );
   const stereocentres: number[] = [];
   const stereoDoubleBonds: (readonly [number, number])[] = [];
@@ -83,8 +86,12 @@ function countClasses(classes: Uint8Array): number {
  * `strict` forbids moving stereogenic units outside cages, `lenient` allows it. Bonds keep their side under both.
  */
 function hasSymmetry(
-  normalised: NormalisedGraph, units: readonly StereoUnit[], isStereogenic: readonly boolean[],
-  forced: ReadonlyArray<readonly [number, number]>, hand: 1 | -1, policy: 'strict' | 'lenient',
+  normalised: NormalisedGraph,
+  units: readonly StereoUnit[],
+  isStereogenic: readonly boolean[],
+  forced: ReadonlyArray<readonly [number, number]>,
+  hand: 1 | -1,
+  policy: 'strict' | 'lenient',
 ): boolean {
   const checks = units.map((unit, index): AutomorphismCheck => {
     const wanted = unit.kind === 'centre' ? hand : 1;
@@ -101,7 +108,12 @@ function hasSymmetry(
 }
 
 /** Substitution test on the two hydrogens of one atom, put as a search for the symmetry that exchanges them. */
-function topicityOf(normalised: NormalisedGraph, units: readonly StereoUnit[], isStereogenic: readonly boolean[], atom: number): HydrogenTopicity {
+function topicityOf(
+  normalised: NormalisedGraph,
+  units: readonly StereoUnit[],
+  isStereogenic: readonly boolean[],
+  atom: number,
+): HydrogenTopicity {
   const { analysis, atomCount: n, bondTypes } = normalised;
   const { atomicNumbers, hydrogens } = analysis.graph;
   if (hydrogens[atom] !== 2 || (atomicNumbers[atom] !== 6 && atomicNumbers[atom] !== 14)) return 'none';
@@ -139,6 +151,7 @@ function topicityOf(normalised: NormalisedGraph, units: readonly StereoUnit[], i
   if (places.length === 0) return 'homotopic';
   if (places.length === 1) return 'diastereotopic';
   const swap = [...walked.map((a) => [a, a] as const), [places[0], places[1]] as const, [places[1], places[0]] as const];
-  const isExchanged = hasSymmetry(normalised, units, isStereogenic, swap, 1, 'strict') || hasSymmetry(normalised, units, isStereogenic, swap, -1, 'strict');
+  const isExchanged =
+    hasSymmetry(normalised, units, isStereogenic, swap, 1, 'strict') || hasSymmetry(normalised, units, isStereogenic, swap, -1, 'strict');
   return isExchanged ? 'homotopic' : 'diastereotopic';
 }

@@ -52,9 +52,16 @@ export function listStereoUnits(normalised: NormalisedGraph): StereoUnit[] {
 function isStereoDoubleBond(normalised: NormalisedGraph, a: number, b: number): boolean {
   const { analysis, atomCount: n, bondTypes } = normalised;
   const ring = analysis.smallestRingOfBond[a * n + b];
-  const isCarbonOrNitrogen = (atom: number): boolean => analysis.graph.atomicNumbers[atom] === 6 || analysis.graph.atomicNumbers[atom] === 7;
-  return bondTypes[a * n + b] === 2 && (ring === 0 || ring >= TRANS_RING)
-    && analysis.hybridisation[a] === 2 && analysis.hybridisation[b] === 2 && isCarbonOrNitrogen(a) && isCarbonOrNitrogen(b);
+  const isCarbonOrNitrogen = (atom: number): boolean =>
+    analysis.graph.atomicNumbers[atom] === 6 || analysis.graph.atomicNumbers[atom] === 7;
+  return (
+    bondTypes[a * n + b] === 2 &&
+    (ring === 0 || ring >= TRANS_RING) &&
+    analysis.hybridisation[a] === 2 &&
+    analysis.hybridisation[b] === 2 &&
+    isCarbonOrNitrogen(a) &&
+    isCarbonOrNitrogen(b)
+  );
 }
 
 /** Is a the carbonyl (or thiocarbonyl) carbon and b the nitrogen of RC(=O)–N(R')R''? Ureas and carbamates turn too easily. */
