@@ -10,7 +10,7 @@ import { existsSync, mkdtempSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join, resolve } from 'node:path';
 import { evidenceDocument } from '../../shared/schemas/evidence.js';
-import { createFiller } from '../../workers/enumeration/fill.js';
+import { fill } from '../../workers/enumeration/fill.js';
 import { createLayout } from '../../workers/enumeration/distributions.js';
 import { listPlacementSets } from '../../workers/enumeration/placements.js';
 import { createSearch, enumerateShard, planShards, type Search } from '../../workers/enumeration/search.js';
@@ -26,7 +26,7 @@ function searchOf(formula: string, required: { smiles: string; count?: number }[
 function countPlain(search: Search): number {
   let count = 0;
   for (const distribution of search.distributions) {
-    createFiller(createLayout(search.problem, distribution)).run([], 0, {
+    fill(createLayout(search.problem, distribution), [], 0, {
       onLeaf() {
         count++;
         return false;

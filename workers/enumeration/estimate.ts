@@ -1,5 +1,5 @@
 import { createLayout } from './distributions.js';
-import { createFiller } from './fill.js';
+import { fill } from './fill.js';
 import { createLeafJudge } from './leaf-judge.js';
 import type { Search } from './search.js';
 
@@ -74,7 +74,6 @@ export function estimateSearch(search: Search, maxProbes: number, seed: number, 
 /** One random walk; weight is an unbiased estimate of the constitutions below the distribution. */
 function probe(search: Search, d: number, random: () => number): { weight: number; visited: number } {
   const layout = createLayout(search.problem, search.distributions[d]);
-  const filler = createFiller(layout);
   const judge = createLeafJudge(search.problem, layout);
   let prefix: number[] = [];
   let factor = 1;
@@ -84,7 +83,7 @@ function probe(search: Search, d: number, random: () => number): { weight: numbe
     // Leaves above the stop row are met in full at this level: they count with the present factor.
     let children = 0;
     let chosen: number[] | null = null;
-    filler.run(prefix, rows, {
+    fill(layout, prefix, rows, {
       onLeaf(filled) {
         visited++;
         weight += factor * judge(filled).graphs.length;

@@ -3,6 +3,7 @@ import { perceiveAromaticity } from '../graph/aromaticity.js';
 import { canonicalForm, compareCodes } from '../graph/canonical.js';
 import { atomColour } from '../graph/atom-colour.js';
 import { placeForm, type SearchLayout } from './distributions.js';
+import { FILL_STRIDE } from './fill.js';
 import { forEachKekuleForm, hasAlternatingCycle } from './kekule.js';
 import { constitutionCode, listPlacementSets, meetsDemands, placementCode } from './placements.js';
 import type { SearchProblem } from './problem.js';
@@ -47,13 +48,13 @@ export function createLeafJudge(problem: SearchProblem, layout: SearchLayout): (
   const merge = problem.mergeResonanceForms && unsaturationOf(layout) >= 4;
 
   const build = (filled: Uint8Array): void => {
-    if (open === n && layout.isPlain) {
-      graph.bondOrders.set(filled);
-      return;
-    }
-    graph.bondOrders.set(base.bondOrders);
+    const { bondOrders } = graph;
+    if (!layout.isPlain) bondOrders.set(base.bondOrders);
     for (let i = 0; i < open; i++) {
-      for (let j = 0; j < open; j++) if (filled[i * open + j] !== 0) graph.bondOrders[i * n + j] = filled[i * open + j];
+      const to = i * n;
+      const from = i * FILL_STRIDE;
+      if (layout.isPlain) for (let j = 0; j < open; j++) bondOrders[to + j] = filled[from + j];
+      else for (let j = 0; j < open; j++) if (filled[from + j] !== 0) bondOrders[to + j] = filled[from + j];
     }
   };
 

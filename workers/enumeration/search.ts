@@ -2,7 +2,7 @@ import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { SearchNode, ShardSpec } from '../../shared/jobs/contract.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { createLayout, listDistributions, type Distribution, type SearchLayout } from './distributions.js';
-import { createFiller } from './fill.js';
+import { fill } from './fill.js';
 import { createLeafJudge } from './leaf-judge.js';
 import { createProblem, type SearchProblem } from './problem.js';
 
@@ -41,7 +41,7 @@ function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink)
   for (let d = node.firstDistribution; d < node.endDistribution; d++) {
     const layout = createLayout(search.problem, search.distributions[d]);
     const judge = createLeafJudge(search.problem, layout);
-    const complete = createFiller(layout).run(node.prefix, 0, {
+    const complete = fill(layout, node.prefix, 0, {
       onLeaf(filled) {
         const verdict = judge(filled);
         if (verdict.multigraphs !== 0) sink.onMultigraphs(verdict.multigraphs);
@@ -92,7 +92,7 @@ function expandNode(search: Search, node: SearchNode, rows: number): SearchNode[
   const layout: SearchLayout = createLayout(search.problem, search.distributions[node.firstDistribution]);
   const prefixes: number[][] = [];
   let leaves = 0;
-  createFiller(layout).run(node.prefix, rows, {
+  fill(layout, node.prefix, rows, {
     onLeaf: () => {
       leaves++;
       return false;
