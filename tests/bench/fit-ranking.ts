@@ -52,9 +52,13 @@ for (let part = 0; part < 4; part++) {
   fittedLoss += loss(fitted, held(part));
   presentLoss += loss(PRESENT, held(part));
 }
-console.log(`−ln P(truth) per case left out: fitted ${(fittedLoss / samples.length).toFixed(3)}, present ${(presentLoss / samples.length).toFixed(3)}`);
+console.log(
+  `−ln P(truth) per case left out: fitted ${(fittedLoss / samples.length).toFixed(3)}, present ${(presentLoss / samples.length).toFixed(3)}`,
+);
 const final = fit(everything);
-console.log(`temperature: carbon ${(1 / final[0]).toFixed(2)} (present ${SCORE_MODEL.temperature.carbon}), proton ${(1 / final[1]).toFixed(2)} (present ${SCORE_MODEL.temperature.proton})`);
+console.log(
+  `temperature: carbon ${(1 / final[0]).toFixed(2)} (present ${SCORE_MODEL.temperature.carbon}), proton ${(1 / final[1]).toFixed(2)} (present ${SCORE_MODEL.temperature.proton})`,
+);
 RULES.forEach(({ id, penalty }, r) => {
   const inTruths = samples.filter(({ truth }) => truth[2 + r] < 0).length;
   console.log(`  ${id.padEnd(28)} ${final[2 + r].toFixed(2)}  present ${penalty}  in ${inTruths} true structures`);
@@ -72,7 +76,10 @@ function sampleOf({ evidence, truth, truthTerms, candidates }: CaseResult): Samp
   };
   return {
     truth: features(truthTerms, truth),
-    others: candidates.map(({ terms, packed, weight }) => ({ features: features(terms, unpackGraph(packed)), logWeight: Math.log(weight) })),
+    others: candidates.map(({ terms, packed, weight }) => ({
+      features: features(terms, unpackGraph(packed)),
+      logWeight: Math.log(weight),
+    })),
   };
 }
 
@@ -106,10 +113,13 @@ function loss(parameters: readonly number[], indexes: readonly number[], gradien
 /** Minimises loss + hold by gradient steps of adaptive size; parameters stay positive. The function is convex. */
 function fit(indexes: readonly number[]): number[] {
   const value = (parameters: readonly number[], gradient?: Float64Array): number =>
-    parameters.reduce((sum, parameter, k) => {
-      if (gradient !== undefined) gradient[k] += 2 * HOLD[k] * (parameter - PRESENT[k]);
-      return sum + HOLD[k] * (parameter - PRESENT[k]) ** 2;
-    }, loss(parameters, indexes, gradient));
+    parameters.reduce(
+      (sum, parameter, k) => {
+        if (gradient !== undefined) gradient[k] += 2 * HOLD[k] * (parameter - PRESENT[k]);
+        return sum + HOLD[k] * (parameter - PRESENT[k]) ** 2;
+      },
+      loss(parameters, indexes, gradient),
+    );
   let parameters = [...PRESENT];
   const gradient = new Float64Array(PRESENT.length);
   let current = value(parameters, gradient);

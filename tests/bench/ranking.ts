@@ -29,7 +29,10 @@ const all = readRankingCases(values.cases);
 if (all === null) process.exit(0);
 const eligible = all.filter(
   ({ variant, heavyAtoms, fold }) =>
-    variant === values.variant && heavyAtoms >= Number(values.from) && heavyAtoms <= Number(values.to) && (values.folds === 'all' || fold === 0),
+    variant === values.variant &&
+    heavyAtoms >= Number(values.from) &&
+    heavyAtoms <= Number(values.to) &&
+    (values.folds === 'all' || fold === 0),
 );
 const count = Math.min(Number(values.limit), eligible.length);
 const chosen = Array.from({ length: count }, (_, i) => eligible[Math.floor((i * eligible.length) / count)]);
@@ -70,12 +73,24 @@ const line = (name: string, tally: Tally): string =>
 for (const [size, tally] of [...bySize].sort(([a], [b]) => a - b)) console.log(line(`${size} atoms`, tally));
 console.log(line(`all, ${values.variant}`, total));
 console.log('stated probability of the best candidate against hits:');
-for (const [low, high] of [[0, 0.5], [0.5, 0.7], [0.7, 0.9], [0.9, 1.01]] as const) {
+for (const [low, high] of [
+  [0, 0.5],
+  [0.5, 0.7],
+  [0.7, 0.9],
+  [0.9, 1.01],
+] as const) {
   const inside = stated.filter(({ probability }) => probability >= low && probability < high);
   const mean = inside.reduce((sum, { probability }) => sum + probability, 0) / Math.max(inside.length, 1);
-  console.log(`  ${low.toFixed(1)} to ${Math.min(high, 1).toFixed(1)}: ${inside.length} cases, stated ${percent(mean, 1)}, right ${percent(inside.filter(({ isRight }) => isRight).length, inside.length)}`);
+  console.log(
+    `  ${low.toFixed(1)} to ${Math.min(high, 1).toFixed(1)}: ${inside.length} cases, stated ${percent(mean, 1)}, right ${percent(inside.filter(({ isRight }) => isRight).length, inside.length)}`,
+  );
 }
-console.log(`"none of these", mean over finished cases: ${percent(none.reduce((sum, value) => sum + value, 0), none.length)}`);
+console.log(
+  `"none of these", mean over finished cases: ${percent(
+    none.reduce((sum, value) => sum + value, 0),
+    none.length,
+  )}`,
+);
 
 function countInto(tally: Tally, result: CaseResult | null): void {
   tally.cases++;

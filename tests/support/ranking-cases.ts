@@ -29,7 +29,10 @@ const folder = resolve(import.meta.dirname, '../../../shared/data/nmr');
 function readLines<T>(path: string): T[] {
   const bytes = readFileSync(path);
   const text = (path.endsWith('.gz') ? gunzipSync(bytes) : bytes).toString('utf8');
-  return text.trim().split('\n').map((line) => JSON.parse(line) as T);
+  return text
+    .trim()
+    .split('\n')
+    .map((line) => JSON.parse(line) as T);
 }
 
 /**
@@ -43,7 +46,9 @@ export function readRankingCases(file = resolve(folder, 'evidence-train.jsonl.gz
     return null;
   }
   const records = resolve(folder, 'cases-train.jsonl.gz');
-  const folds = new Map(existsSync(records) ? readLines<{ id: number; inchikey: string }>(records).map(({ id, inchikey }) => [id, foldOf(inchikey)]) : []);
+  const folds = new Map(
+    existsSync(records) ? readLines<{ id: number; inchikey: string }>(records).map(({ id, inchikey }) => [id, foldOf(inchikey)]) : [],
+  );
   return readLines<Omit<RankingCase, 'fold'>>(file)
     .filter(({ truth }) => parseSmiles(truth).ok)
     .map((entry) => ({ ...entry, fold: folds.get(entry.id) ?? 0 }));
@@ -112,7 +117,8 @@ export function runCase({ truth, evidence: input, id }: RankingCase, maxSeconds:
         if (evaluation.kind === 'rejected') return;
         survivors++;
         const { score } = evaluation;
-        logSumExp = logSumExp > score ? logSumExp + Math.log1p(Math.exp(score - logSumExp)) : score + Math.log1p(Math.exp(logSumExp - score));
+        logSumExp =
+          logSumExp > score ? logSumExp + Math.log1p(Math.exp(score - logSumExp)) : score + Math.log1p(Math.exp(logSumExp - score));
         // Only what scores like the truth can be the truth: keys cost more than scores.
         const isTruth = !wasSeen && truthScore !== null && Math.abs(score - truthScore) < 1e-6 && constitutionKey(graph, true) === truthKey;
         if (isTruth) {
@@ -149,7 +155,10 @@ export function runCase({ truth, evidence: input, id }: RankingCase, maxSeconds:
     logSumExp,
     truthScore: wasSeen ? truthScore : null,
     truthTerms,
-    candidates: [...best.map((candidate) => ({ ...candidate, weight: 1 })), ...others.map((candidate) => ({ ...candidate, weight: rest / others.length }))],
+    candidates: [
+      ...best.map((candidate) => ({ ...candidate, weight: 1 })),
+      ...others.map((candidate) => ({ ...candidate, weight: rest / others.length })),
+    ],
     cpuSeconds: elapsed(),
   };
 }

@@ -33,7 +33,10 @@ export class TransportSolver {
   private readonly rowFrom: Int32Array;
   private readonly columnFrom: Int32Array;
 
-  constructor(readonly maxRows: number, readonly maxColumns: number) {
+  constructor(
+    readonly maxRows: number,
+    readonly maxColumns: number,
+  ) {
     this.cost = new Float64Array(maxRows * maxColumns);
     this.gain = new Float64Array(maxRows * maxColumns);
     this.flow = new Int32Array(maxRows * maxColumns);

@@ -56,7 +56,9 @@ export class CarbonLikelihood {
     this.solver = new TransportSolver(MAX_ATOMS, Math.max(observed.size, 1));
     this.signalCost = new Float64Array(observed.size);
     this.covered = new Int32Array(observed.size);
-    this.all = Int32Array.from({ length: observed.size }, (_, i) => i).sort((a, b) => observed.shift[a] - observed.shift[b] || observed.count[a] - observed.count[b]);
+    this.all = Int32Array.from({ length: observed.size }, (_, i) => i).sort(
+      (a, b) => observed.shift[a] - observed.shift[b] || observed.count[a] - observed.count[b],
+    );
     this.byType = Array.from({ length: TYPE_COUNT }, (_, type) => this.all.filter((i) => observed.hydrogens[i] === type));
   }
 
@@ -96,7 +98,8 @@ export class CarbonLikelihood {
       if (bounds.carbonSignals[c] === 0) continue;
       const atom = environments.first[c];
       const type = Math.min(s.graph.hydrogens[atom], TYPE_COUNT - 1);
-      const showsTwice = bounds.carbonSignals[c] === 2 && (observed.isTyped ? byType[type].length > classesOfType[type] : observed.size > classes);
+      const showsTwice =
+        bounds.carbonSignals[c] === 2 && (observed.isTyped ? byType[type].length > classesOfType[type] : observed.size > classes);
       const size = environments.size[c];
       if (!showsTwice) {
         this.addRow(s, atom, size, 0, shifts);
@@ -113,7 +116,11 @@ export class CarbonLikelihood {
     const type = Math.min(s.graph.hydrogens[atom], TYPE_COUNT - 1);
     const shift = shifts.carbonShift[atom];
     let at = this.rowCount++;
-    while (at > 0 && (rowType[at - 1] > type || (rowType[at - 1] === type && (rowShift[at - 1] > shift || (rowShift[at - 1] === shift && rowSize[at - 1] > size))))) {
+    while (
+      at > 0 &&
+      (rowType[at - 1] > type ||
+        (rowType[at - 1] === type && (rowShift[at - 1] > shift || (rowShift[at - 1] === shift && rowSize[at - 1] > size))))
+    ) {
       rowAtom[at] = rowAtom[at - 1];
       rowSize[at] = rowSize[at - 1];
       rowType[at] = rowType[at - 1];

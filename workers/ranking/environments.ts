@@ -5,7 +5,7 @@ const NITRO_BOND = 5;
 
 function mix(hash: number, value: number): number {
   // The hash is scrambled before the value comes in: hash and value must not be interchangeable.
-  let h = Math.imul(Math.imul(hash, 0x2c1b3c6d) + 0x51ed270b ^ value, 0x9e3779b1);
+  let h = Math.imul((Math.imul(hash, 0x2c1b3c6d) + 0x51ed270b) ^ value, 0x9e3779b1);
   h ^= h >>> 15;
   h = Math.imul(h, 0x85ebca77);
   return h ^ (h >>> 13);
@@ -99,7 +99,8 @@ export class Environments {
       const degree = s.degrees[a];
       for (let k = 0; k < degree; k++) {
         const b = s.neighbours[a * NEIGHBOUR_STRIDE + k];
-        const bond = s.aromaticBonds[a * n + b] === 1 ? AROMATIC_BOND : isNitro[a] === 1 && isNitro[b] === 1 ? NITRO_BOND : bondOrders[a * n + b];
+        const bond =
+          s.aromaticBonds[a * n + b] === 1 ? AROMATIC_BOND : isNitro[a] === 1 && isNitro[b] === 1 ? NITRO_BOND : bondOrders[a * n + b];
         sum = (sum + mix(colour[b], bond)) | 0;
       }
       next[a] = mix(mix(colour[a], sum), degree);

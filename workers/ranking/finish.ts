@@ -42,7 +42,10 @@ export function finishRanking(input: JobContract['finish']['input']): JobContrac
 }
 
 /** Without ranking only the structures are written out: a list can be long, and nobody looks at the spectra of each. */
-function createDescriber(evidence: EvidenceDocument, isRanked: boolean): (candidate: ShardCandidate, rank: number, posterior: Posterior) => RankedCandidate {
+function createDescriber(
+  evidence: EvidenceDocument,
+  isRanked: boolean,
+): (candidate: ShardCandidate, rank: number, posterior: Posterior) => RankedCandidate {
   const { soft } = selectRules(evidence);
   const scorer = new Scorer(evidence, soft);
   const environments = new Environments();
@@ -84,7 +87,17 @@ function createDescriber(evidence: EvidenceDocument, isRanked: boolean): (candid
 }
 
 function unranked({ key, score, terms }: ShardCandidate): Omit<RankedCandidate, 'rank' | 'smiles' | 'idcode'> {
-  return { key, score, terms, probability: 0, carbonDeviation: null, protonDeviation: null, spectra: { carbons: [], protons: [] }, matches: [], remarks: [] };
+  return {
+    key,
+    score,
+    terms,
+    probability: 0,
+    carbonDeviation: null,
+    protonDeviation: null,
+    spectra: { carbons: [], protons: [] },
+    matches: [],
+    remarks: [],
+  };
 }
 
 /** Mean absolute deviation of the matched signals of a nucleus, ppm; null without any. */

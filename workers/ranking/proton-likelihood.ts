@@ -2,7 +2,14 @@ import type { ProtonSignal } from '../../shared/schemas/evidence.js';
 import { MAX_ATOMS, type StructureAnalysis } from '../graph/analysis.js';
 import type { PredictedShifts } from '../prediction/predicted-shifts.js';
 import { TransportSolver } from './assignment.js';
-import { createPredictedPattern, patternCost, predictPattern, readPattern, type ObservedPattern, type PredictedPattern } from './coupling-patterns.js';
+import {
+  createPredictedPattern,
+  patternCost,
+  predictPattern,
+  readPattern,
+  type ObservedPattern,
+  type PredictedPattern,
+} from './coupling-patterns.js';
 import type { Environments } from './environments.js';
 import type { ProtonObservations } from './observations.js';
 import type { ScoreModel } from './score-model.js';
@@ -67,7 +74,10 @@ export class ProtonLikelihood {
     this.rowPatterns = Array.from({ length: MAX_ATOMS }, createPredictedPattern);
     const text = signals.map(({ multiplicity, couplings }) => `${multiplicity ?? ''} ${(couplings ?? []).join(' ')}`);
     this.order = Int32Array.from({ length: observed.size }, (_, i) => i).sort(
-      (a, b) => observed.shift[a] - observed.shift[b] || observed.count[a] - observed.count[b] || (text[a] < text[b] ? -1 : text[a] > text[b] ? 1 : 0),
+      (a, b) =>
+        observed.shift[a] - observed.shift[b] ||
+        observed.count[a] - observed.count[b] ||
+        (text[a] < text[b] ? -1 : text[a] > text[b] ? 1 : 0),
     );
   }
 
@@ -123,7 +133,10 @@ export class ProtonLikelihood {
     const shift = shifts.protonShift[atom];
     const scale = (isExchangeable === 1 ? Math.max(shifts.protonSd[atom], model.exchangeableSpread) : shifts.protonSd[atom]) * model.scale;
     let at = this.rowCount++;
-    while (at > 0 && (rowShift[at - 1] > shift || (rowShift[at - 1] === shift && rowSupply[at - 1] * 2 + rowShowsTwice[at - 1] > supply * 2 + showsTwice))) {
+    while (
+      at > 0 &&
+      (rowShift[at - 1] > shift || (rowShift[at - 1] === shift && rowSupply[at - 1] * 2 + rowShowsTwice[at - 1] > supply * 2 + showsTwice))
+    ) {
       rowAtom[at] = rowAtom[at - 1];
       rowSupply[at] = rowSupply[at - 1];
       rowIsExchangeable[at] = rowIsExchangeable[at - 1];
@@ -256,7 +269,8 @@ export class ProtonLikelihood {
   private miscount(column: number): number {
     let covered = 0;
     for (let r = 0; r < this.rowCount; r++) {
-      if (this.solver.flow[r * this.observed.size + column] > 0 || (this.solver.rowLeft[r] > 0 && this.nearest[r] === column)) covered += this.rowSupply[r];
+      if (this.solver.flow[r * this.observed.size + column] > 0 || (this.solver.rowLeft[r] > 0 && this.nearest[r] === column))
+        covered += this.rowSupply[r];
     }
     const stated = this.observed.count[this.order[column]];
     return covered === stated || covered === 0 ? 0 : this.model.unevenSplit;

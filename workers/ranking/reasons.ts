@@ -11,7 +11,8 @@ import { describeSignalReason } from './signal-reasons.js';
  * @throws RangeError for a code that no stage gives.
  */
 export function describeReason(reason: string): string {
-  if (reason.startsWith(EXCLUDED_FRAGMENT_REASON_PREFIX)) return `It contains the excluded fragment ${reason.slice(EXCLUDED_FRAGMENT_REASON_PREFIX.length)}.`;
+  if (reason.startsWith(EXCLUDED_FRAGMENT_REASON_PREFIX))
+    return `It contains the excluded fragment ${reason.slice(EXCLUDED_FRAGMENT_REASON_PREFIX.length)}.`;
   if (reason === RING_TOO_SMALL) return 'It contains a ring smaller than allowed.';
   if (reason === RING_TOO_LARGE) return 'It contains a ring larger than allowed.';
   if (reason.startsWith(PLAUSIBILITY_REASON_PREFIX)) {

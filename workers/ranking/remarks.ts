@@ -22,11 +22,15 @@ const TELLING_GAIN = 1.5;
 export function stereoRemarks({ stereocentres, stereoDoubleBonds }: Equivalence): CandidateRemark[] {
   const remarks: CandidateRemark[] = [];
   if (stereocentres.length > 0) {
-    const text = stereocentres.length === 1 ? 'One stereocentre: its configuration is left open.' : `${stereocentres.length} stereocentres: their configurations are left open.`;
+    const text =
+      stereocentres.length === 1
+        ? 'One stereocentre: its configuration is left open.'
+        : `${stereocentres.length} stereocentres: their configurations are left open.`;
     remarks.push({ kind: 'stereo', tone: 'notes', text, atoms: [...stereocentres] });
   }
   if (stereoDoubleBonds.length > 0) {
-    const text = stereoDoubleBonds.length === 1 ? 'One double bond can be E or Z.' : `${stereoDoubleBonds.length} double bonds can be E or Z.`;
+    const text =
+      stereoDoubleBonds.length === 1 ? 'One double bond can be E or Z.' : `${stereoDoubleBonds.length} double bonds can be E or Z.`;
     remarks.push({ kind: 'stereo', tone: 'notes', text, atoms: [...new Set(stereoDoubleBonds.flat())] });
   }
   return remarks;
@@ -45,7 +49,12 @@ export function plausibilityRemarks(s: StructureAnalysis, soft: readonly ActiveR
 const ppm = (value: number, digits: number): string => value.toFixed(digits).replace('-', '−');
 
 /** The signals that speak most for the structure, and those that fit worst or not at all. */
-export function fitRemarks(s: StructureAnalysis, evidence: EvidenceDocument, spectra: PredictedSpectra, matches: readonly SignalMatch[]): CandidateRemark[] {
+export function fitRemarks(
+  s: StructureAnalysis,
+  evidence: EvidenceDocument,
+  spectra: PredictedSpectra,
+  matches: readonly SignalMatch[],
+): CandidateRemark[] {
   const supports: { weight: number; remark: CandidateRemark }[] = [];
   const doubts: { weight: number; remark: CandidateRemark }[] = [];
   for (const match of matches) {
@@ -71,13 +80,25 @@ export function fitRemarks(s: StructureAnalysis, evidence: EvidenceDocument, spe
       doubts.push({ weight: Math.abs(deviation) / sd, remark: { kind: 'fit', tone: 'doubts', text, atoms } });
     } else if (!isCarbon && match.remark !== null) {
       const shape = evidence.protonSignals[observedIndex].multiplicity ?? '';
-      doubts.push({ weight: MISFIT, remark: { kind: 'fit', tone: 'doubts', text: `${label} (${shape}): the splitting does not fit the neighbours of this ${name}.`, atoms } });
+      doubts.push({
+        weight: MISFIT,
+        remark: {
+          kind: 'fit',
+          tone: 'doubts',
+          text: `${label} (${shape}): the splitting does not fit the neighbours of this ${name}.`,
+          atoms,
+        },
+      });
     } else if (isCarbon && Math.abs(deviation) <= GOOD_FIT * sd) {
       const gain = anyCarbonCost(observed.shift, evidence.carbonSignals[observedIndex].hydrogens ?? UNKNOWN_HYDROGENS) - Math.log(sd * 2.5);
-      if (gain > TELLING_GAIN) supports.push({ weight: gain, remark: { kind: 'fit', tone: 'supports', text: `${label} fits ${name}.`, atoms } });
+      if (gain > TELLING_GAIN)
+        supports.push({ weight: gain, remark: { kind: 'fit', tone: 'supports', text: `${label} fits ${name}.`, atoms } });
     }
   }
   const strongest = (list: typeof supports): CandidateRemark[] =>
-    list.sort((a, b) => b.weight - a.weight || (a.remark.text < b.remark.text ? -1 : 1)).slice(0, MOST_FITS).map(({ remark }) => remark);
+    list
+      .sort((a, b) => b.weight - a.weight || (a.remark.text < b.remark.text ? -1 : 1))
+      .slice(0, MOST_FITS)
+      .map(({ remark }) => remark);
   return [...strongest(doubts), ...strongest(supports)];
 }

@@ -39,7 +39,10 @@ export class Scorer {
     private readonly model: ScoreModel = SCORE_MODEL,
   ) {
     this.carbon = evidence.carbonSignals.length === 0 ? null : new CarbonLikelihood(readCarbonObservations(evidence), model.carbon);
-    this.proton = evidence.protonSignals.length === 0 ? null : new ProtonLikelihood(readProtonObservations(evidence), evidence.protonSignals, model.proton);
+    this.proton =
+      evidence.protonSignals.length === 0
+        ? null
+        : new ProtonLikelihood(readProtonObservations(evidence), evidence.protonSignals, model.proton);
     this.hasMultiplicities = evidence.protonSignals.some(({ multiplicity }) => multiplicity !== undefined);
     this.hasCounts = evidence.protonSignals.some(({ count }) => count !== undefined);
   }

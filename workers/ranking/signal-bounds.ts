@@ -78,7 +78,12 @@ export class SignalBounds {
       if (!isCentre(s, pivot) || s.graph.hydrogens[pivot] > 1) continue;
       for (let k = 0; k < s.degrees[pivot]; k++) {
         const branch = classOf[s.neighbours[pivot * NEIGHBOUR_STRIDE + k]];
-        if (inProchiralBranch[branch] === 1 || !hasLaterOfClass(s, classOf, pivot, k, branch) || !otherNeighboursDiffer(s, classOf, pivot, branch)) continue;
+        if (
+          inProchiralBranch[branch] === 1 ||
+          !hasLaterOfClass(s, classOf, pivot, k, branch) ||
+          !otherNeighboursDiffer(s, classOf, pivot, branch)
+        )
+          continue;
         inProchiralBranch[branch] = 1;
         found = true;
       }
@@ -89,7 +94,8 @@ export class SignalBounds {
       const pivot = first[c];
       for (let k = 0; k < s.degrees[pivot]; k++) {
         const branch = classOf[s.neighbours[pivot * NEIGHBOUR_STRIDE + k]];
-        if (canSplit[branch] === 1 || !hasLaterOfClass(s, classOf, pivot, k, branch) || !this.pivotSplits(s, classOf, pivot, branch)) continue;
+        if (canSplit[branch] === 1 || !hasLaterOfClass(s, classOf, pivot, k, branch) || !this.pivotSplits(s, classOf, pivot, branch))
+          continue;
         canSplit[branch] = 1;
         found = true;
       }
@@ -110,7 +116,8 @@ export class SignalBounds {
     if (s.hybridisation[pivot] !== 2 || s.aromaticAtoms[pivot] === 1) return false;
     for (let k = 0; k < s.degrees[pivot]; k++) {
       const far = s.neighbours[pivot * NEIGHBOUR_STRIDE + k];
-      if (s.graph.bondOrders[pivot * s.graph.atomCount + far] === 2) return classOf[far] !== branch && farEndHasSides(s, classOf, far, pivot);
+      if (s.graph.bondOrders[pivot * s.graph.atomCount + far] === 2)
+        return classOf[far] !== branch && farEndHasSides(s, classOf, far, pivot);
     }
     return false;
   }
@@ -160,7 +167,7 @@ function countOfClass(s: StructureAnalysis, classOf: Uint8Array, atom: number, w
 /** Marks the classes farther out in marked branches: those of the same or a greater size next to a marked one. */
 function spreadOutwards(s: StructureAnalysis, environments: Environments, marked: Uint8Array): void {
   const { classCount, first, size, classOf } = environments;
-  for (let changed = true; changed; ) {
+  for (let changed = true; changed;) {
     changed = false;
     for (let c = 0; c < classCount; c++) {
       if (size[c] < 2 || marked[c] === 1) continue;
@@ -180,7 +187,9 @@ function spreadOutwards(s: StructureAnalysis, environments: Environments, marked
 function joinsUnevenRings(s: StructureAnalysis, atom: number, like: number, classOf: Uint8Array): boolean {
   for (const ring of s.rings) {
     if (!ring.includes(atom) || !ring.includes(like)) continue;
-    return !ring.some((other) => other !== like && classOf[other] === classOf[like] && s.graph.bondOrders[atom * s.graph.atomCount + other] > 0);
+    return !ring.some(
+      (other) => other !== like && classOf[other] === classOf[like] && s.graph.bondOrders[atom * s.graph.atomCount + other] > 0,
+    );
   }
   return false;
 }
@@ -242,7 +251,13 @@ function hasSlowNitrogen(s: StructureAnalysis): boolean {
 function hasAllene(s: StructureAnalysis): boolean {
   const { atomCount: n, atomicNumbers, bondOrders } = s.graph;
   for (let a = 0; a < n; a++) {
-    if (atomicNumbers[a] === CARBON && s.hybridisation[a] === 1 && s.degrees[a] === 2 && bondOrders[a * n + s.neighbours[a * NEIGHBOUR_STRIDE]] === 2) return true;
+    if (
+      atomicNumbers[a] === CARBON &&
+      s.hybridisation[a] === 1 &&
+      s.degrees[a] === 2 &&
+      bondOrders[a * n + s.neighbours[a * NEIGHBOUR_STRIDE]] === 2
+    )
+      return true;
   }
   return false;
 }

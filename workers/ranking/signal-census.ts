@@ -1,7 +1,13 @@
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { StructureAnalysis } from '../graph/analysis.js';
 import type { Environments } from './environments.js';
-import { readCarbonObservations, readProtonObservations, UNKNOWN_HYDROGENS, type CarbonObservations, type ProtonObservations } from './observations.js';
+import {
+  readCarbonObservations,
+  readProtonObservations,
+  UNKNOWN_HYDROGENS,
+  type CarbonObservations,
+  type ProtonObservations,
+} from './observations.js';
 import type { SignalBounds } from './signal-bounds.js';
 import { ALL_TYPES, SIGNAL_REASONS, type SignalReasonKind } from './signal-reasons.js';
 
@@ -103,7 +109,8 @@ export class SignalCensus {
       totalMost += most[type];
       const isShown = carbons.isComplete && type > 0;
       if (carbonsUnder[type] > atoms[type] && this.meet('tooFewCarbons', type, s, all)) return SIGNAL_REASONS.tooFewCarbons[type];
-      if (isShown && signals[type] === 0 && atoms[type] > 0 && this.meet('carbonAbsent', type, s, all)) return SIGNAL_REASONS.carbonAbsent[type];
+      if (isShown && signals[type] === 0 && atoms[type] > 0 && this.meet('carbonAbsent', type, s, all))
+        return SIGNAL_REASONS.carbonAbsent[type];
       if (signals[type] > most[type] && signals[type] <= atoms[type] && this.meet('carbonEnvironments', type, s, all)) {
         return SIGNAL_REASONS.carbonEnvironments[type];
       }
@@ -111,20 +118,28 @@ export class SignalCensus {
       if (carbonsUnder[type] < atoms[type] && this.meet('carbonCount', type, s, all)) return SIGNAL_REASONS.carbonCount[type];
       if (largest[type] > largestCount[type] && this.meet('equivalentCarbons', type, s, all)) return SIGNAL_REASONS.equivalentCarbons[type];
     }
-    if (this.totalCarbonsUnder > totalAtoms && this.meet('tooFewCarbons', ALL_TYPES, s, all)) return SIGNAL_REASONS.tooFewCarbons[ALL_TYPES];
-    if (!carbons.isTyped && this.carbonSignalCount > totalMost && this.carbonSignalCount <= totalAtoms && this.meet('carbonEnvironments', ALL_TYPES, s, all)) {
+    if (this.totalCarbonsUnder > totalAtoms && this.meet('tooFewCarbons', ALL_TYPES, s, all))
+      return SIGNAL_REASONS.tooFewCarbons[ALL_TYPES];
+    if (
+      !carbons.isTyped &&
+      this.carbonSignalCount > totalMost &&
+      this.carbonSignalCount <= totalAtoms &&
+      this.meet('carbonEnvironments', ALL_TYPES, s, all)
+    ) {
       return SIGNAL_REASONS.carbonEnvironments[ALL_TYPES];
     }
     if (this.exchangeableUnder > 0 || this.boundUnder > 0) {
       const bound = countBoundHydrogens(s);
       const exchangeable = countHydrogens(s) - bound;
-      if (this.exchangeableUnder > exchangeable && this.meet('exchangeableProtons', ALL_TYPES, s, all)) return SIGNAL_REASONS.exchangeableProtons[ALL_TYPES];
+      if (this.exchangeableUnder > exchangeable && this.meet('exchangeableProtons', ALL_TYPES, s, all))
+        return SIGNAL_REASONS.exchangeableProtons[ALL_TYPES];
       if (this.boundUnder > bound && this.meet('boundProtons', ALL_TYPES, s, all)) return SIGNAL_REASONS.boundProtons[ALL_TYPES];
     }
     if (this.protonSignalCount > 0) {
       let protonSignals = 0;
       for (let c = 0; c < environments.classCount; c++) protonSignals += bounds.protonSignals[c];
-      if (this.protonSignalCount > protonSignals && this.meet('protonEnvironments', ALL_TYPES, s, all)) return SIGNAL_REASONS.protonEnvironments[ALL_TYPES];
+      if (this.protonSignalCount > protonSignals && this.meet('protonEnvironments', ALL_TYPES, s, all))
+        return SIGNAL_REASONS.protonEnvironments[ALL_TYPES];
     }
     return null;
   }
@@ -178,10 +193,13 @@ function atomsConcerned(kind: SignalReasonKind, type: number, s: StructureAnalys
   for (let a = 0; a < n; a++) {
     const isCarbon = atomicNumbers[a] === CARBON;
     const concerns =
-      kind === 'protonEnvironments' ? hydrogens[a] > 0
-      : kind === 'exchangeableProtons' ? !isCarbon && hydrogens[a] > 0
-      : kind === 'boundProtons' ? isCarbon && hydrogens[a] > 0
-      : isCarbon && (type === ALL_TYPES || carbonType(hydrogens[a]) === type);
+      kind === 'protonEnvironments'
+        ? hydrogens[a] > 0
+        : kind === 'exchangeableProtons'
+          ? !isCarbon && hydrogens[a] > 0
+          : kind === 'boundProtons'
+            ? isCarbon && hydrogens[a] > 0
+            : isCarbon && (type === ALL_TYPES || carbonType(hydrogens[a]) === type);
     if (concerns) atoms.push(a);
   }
   return atoms;

@@ -6,7 +6,9 @@ import { solventOfCarbonSignal, solventOfProtonSignal } from './solvent-peaks.js
 
 /** What is said of a signal that nothing in the structure gives. */
 const unexplained = (solvent: string | null): string =>
-  solvent === null ? 'Nothing in this structure gives this signal.' : `Nothing in this structure gives this signal; ${solvent} has a line here.`;
+  solvent === null
+    ? 'Nothing in this structure gives this signal.'
+    : `Nothing in this structure gives this signal; ${solvent} has a line here.`;
 
 /** Indexes of the predicted signals that hold an atom. */
 function indexesOf(predicted: readonly { readonly atoms: readonly number[] }[], atom: number): number[] {
@@ -24,7 +26,12 @@ function deviationOf(observed: number, predicted: readonly { readonly shift: num
  *
  * @param temperature - of the score, so that the terms add up to it.
  */
-export function listCarbonMatches(carbon: CarbonLikelihood, evidence: EvidenceDocument, spectra: PredictedSpectra, temperature: number): SignalMatch[] {
+export function listCarbonMatches(
+  carbon: CarbonLikelihood,
+  evidence: EvidenceDocument,
+  spectra: PredictedSpectra,
+  temperature: number,
+): SignalMatch[] {
   const matches: SignalMatch[] = evidence.carbonSignals.map((observed, signal) => {
     const own: number[] = [];
     const under: number[] = [];
@@ -36,19 +43,28 @@ export function listCarbonMatches(carbon: CarbonLikelihood, evidence: EvidenceDo
       cost += carbon.rowCost[row];
     }
     const remark =
-      own.length === 0 ? unexplained(solventOfCarbonSignal(observed, evidence.options.solvent))
-      : under.some((index) => !own.includes(index)) ? 'Several environments lie under this signal.'
-      : null;
+      own.length === 0
+        ? unexplained(solventOfCarbonSignal(observed, evidence.options.solvent))
+        : under.some((index) => !own.includes(index))
+          ? 'Several environments lie under this signal.'
+          : null;
     return {
-      nucleus: '13C', observedIndex: signal, predictedIndexes: [...new Set([...own, ...under])],
-      deviation: deviationOf(observed.shift, spectra.carbons, own), term: -cost / temperature, remark,
+      nucleus: '13C',
+      observedIndex: signal,
+      predictedIndexes: [...new Set([...own, ...under])],
+      deviation: deviationOf(observed.shift, spectra.carbons, own),
+      term: -cost / temperature,
+      remark,
     };
   });
   for (let row = 0; row < carbon.rowCount; row++) {
     if (carbon.rowFate[row] !== NOT_SEEN) continue;
     const isQuaternary = spectra.carbons[indexesOf(spectra.carbons, carbon.rowAtom[row])[0]]?.hydrogens === 0;
     matches.push({
-      nucleus: '13C', observedIndex: null, predictedIndexes: indexesOf(spectra.carbons, carbon.rowAtom[row]), deviation: null,
+      nucleus: '13C',
+      observedIndex: null,
+      predictedIndexes: indexesOf(spectra.carbons, carbon.rowAtom[row]),
+      deviation: null,
       term: -carbon.rowCost[row] / temperature,
       remark: isQuaternary ? 'No signal found; quaternary carbons are weak and can be missing.' : 'No signal found.',
     });
@@ -57,7 +73,12 @@ export function listCarbonMatches(carbon: CarbonLikelihood, evidence: EvidenceDo
 }
 
 /** The same for 1H; exchangeable hydrogens without a signal are listed too. */
-export function listProtonMatches(proton: ProtonLikelihood, evidence: EvidenceDocument, spectra: PredictedSpectra, temperature: number): SignalMatch[] {
+export function listProtonMatches(
+  proton: ProtonLikelihood,
+  evidence: EvidenceDocument,
+  spectra: PredictedSpectra,
+  temperature: number,
+): SignalMatch[] {
   const bySignal = evidence.protonSignals.map(() => new Set<number>());
   const unseen: number[] = [];
   for (let row = 0; row < proton.rowCount; row++) {
@@ -76,17 +97,26 @@ export function listProtonMatches(proton: ProtonLikelihood, evidence: EvidenceDo
     const indexes = [...bySignal[signal]].sort((a, b) => a - b);
     const cost = proton.signalCost(signal);
     const remark =
-      indexes.length === 0 ? unexplained(solventOfProtonSignal(observed, evidence.options.solvent))
-      : cost.pattern >= 2 ? 'The splitting does not fit the neighbours.'
-      : null;
+      indexes.length === 0
+        ? unexplained(solventOfProtonSignal(observed, evidence.options.solvent))
+        : cost.pattern >= 2
+          ? 'The splitting does not fit the neighbours.'
+          : null;
     return {
-      nucleus: '1H', observedIndex: signal, predictedIndexes: indexes, deviation: deviationOf(observed.shift, spectra.protons, indexes),
-      term: -(cost.shift + cost.pattern) / temperature, remark,
+      nucleus: '1H',
+      observedIndex: signal,
+      predictedIndexes: indexes,
+      deviation: deviationOf(observed.shift, spectra.protons, indexes),
+      term: -(cost.shift + cost.pattern) / temperature,
+      remark,
     };
   });
   for (const row of unseen) {
     matches.push({
-      nucleus: '1H', observedIndex: null, predictedIndexes: indexesOf(spectra.protons, proton.rowAtom[row]), deviation: null,
+      nucleus: '1H',
+      observedIndex: null,
+      predictedIndexes: indexesOf(spectra.protons, proton.rowAtom[row]),
+      deviation: null,
       term: -proton.missingCost(row) / temperature,
       remark: proton.rowIsExchangeable[row] === 1 ? 'No signal found; exchangeable hydrogens can be missing.' : 'No signal found.',
     });

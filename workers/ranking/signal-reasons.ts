@@ -5,8 +5,14 @@ export const ALL_TYPES = 4;
 
 /** Kinds of contradiction between the numbers of signals and a structure. */
 export type SignalReasonKind =
-  | 'tooFewCarbons' | 'carbonAbsent' | 'carbonCount' | 'carbonEnvironments' | 'equivalentCarbons'
-  | 'protonEnvironments' | 'exchangeableProtons' | 'boundProtons';
+  | 'tooFewCarbons'
+  | 'carbonAbsent'
+  | 'carbonCount'
+  | 'carbonEnvironments'
+  | 'equivalentCarbons'
+  | 'protonEnvironments'
+  | 'exchangeableProtons'
+  | 'boundProtons';
 
 const byType = (kind: SignalReasonKind): readonly string[] => [0, 1, 2, 3, ALL_TYPES].map((type) => `signals:${kind}:${type}`);
 

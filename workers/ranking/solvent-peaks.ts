@@ -29,7 +29,8 @@ const CARBON_TOLERANCE = 0.3;
 const PROTON_TOLERANCE = 0.03;
 
 const findSolvent = (text: string): Solvent | undefined => SOLVENTS.find(({ pattern }) => pattern.test(text));
-const isNear = (shift: number, lines: readonly number[], tolerance: number): boolean => lines.some((line) => Math.abs(shift - line) <= tolerance);
+const isNear = (shift: number, lines: readonly number[], tolerance: number): boolean =>
+  lines.some((line) => Math.abs(shift - line) <= tolerance);
 
 /** Readable name of the solvent whose line a 13C signal may be, null if none. Signals known to carry hydrogen are none. */
 export function solventOfCarbonSignal({ shift, hydrogens }: CarbonSignal, solventText: string): string | null {

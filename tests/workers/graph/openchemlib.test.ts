@@ -6,8 +6,19 @@ import { canonicalStructure, graphFromMolecule, moleculeFromGraph, reorderGraph 
 const graphOf = (smiles: string) => graphFromMolecule(Molecule.fromSmiles(smiles, { noCoordinates: true, noStereo: true }));
 
 const STRUCTURES = [
-  'Cc1ccccc1C(O)=O', 'c1ccc2ccccc2c1', 'O=[N+]([O-])c1ccccc1', 'CS(C)(=O)=O', 'CP(=O)(O)OC', 'CN=[N+]=[N-]', 'C[N+]#[C-]',
-  'CC=CC(C)N', 'C1=CC=CC=CC=C1', 'Cn1cnc2c1c(=O)n(C)c(=O)n2C', 'c1ccc2cc3c(cc2c1)C3', 'C1CC2CC1CC2', 'BrC(F)(Cl)I',
+  'Cc1ccccc1C(O)=O',
+  'c1ccc2ccccc2c1',
+  'O=[N+]([O-])c1ccccc1',
+  'CS(C)(=O)=O',
+  'CP(=O)(O)OC',
+  'CN=[N+]=[N-]',
+  'C[N+]#[C-]',
+  'CC=CC(C)N',
+  'C1=CC=CC=CC=C1',
+  'Cn1cnc2c1c(=O)n(C)c(=O)n2C',
+  'c1ccc2cc3c(cc2c1)C3',
+  'C1CC2CC1CC2',
+  'BrC(F)(Cl)I',
 ];
 
 describe('canonicalStructure', () => {
@@ -49,7 +60,8 @@ describe('canonicalStructure', () => {
   });
 
   it('writes neither stereo centres nor double-bond geometry', () => {
-    for (const smiles of ['CC=CC(C)N', 'CC(O)C(N)C(=O)O', 'CC(C)=NO']) expect(canonicalStructure(graphOf(smiles)).smiles).not.toMatch(/[@/\\]/);
+    for (const smiles of ['CC=CC(C)N', 'CC(O)C(N)C(=O)O', 'CC(C)=NO'])
+      expect(canonicalStructure(graphOf(smiles)).smiles).not.toMatch(/[@/\\]/);
   });
 });
 

@@ -18,8 +18,13 @@ const problem = (maxSize: number, maxUnits: number): fc.Arbitrary<Problem> =>
     const units = fc.integer({ min: 1, max: maxUnits });
     const list = <T>(item: fc.Arbitrary<T>, size: number) => fc.array(item, { minLength: size, maxLength: size });
     return fc.record({
-      rows: fc.constant(rows), columns: fc.constant(columns), cost: list(price, rows * columns),
-      rowRest: list(price, rows), columnRest: list(price, columns), supply: list(units, rows), demand: list(units, columns),
+      rows: fc.constant(rows),
+      columns: fc.constant(columns),
+      cost: list(price, rows * columns),
+      rowRest: list(price, rows),
+      columnRest: list(price, columns),
+      supply: list(units, rows),
+      demand: list(units, columns),
     });
   });
 
@@ -59,10 +64,13 @@ function unitProblem(p: Problem): Problem {
   const rows = p.supply.flatMap((units, r) => new Array<number>(units).fill(r));
   const columns = p.demand.flatMap((units, c) => new Array<number>(units).fill(c));
   return {
-    rows: rows.length, columns: columns.length,
+    rows: rows.length,
+    columns: columns.length,
     cost: rows.flatMap((r) => columns.map((c) => p.cost[r * p.columns + c])),
-    rowRest: rows.map((r) => p.rowRest[r]), columnRest: columns.map((c) => p.columnRest[c]),
-    supply: rows.map(() => 1), demand: columns.map(() => 1),
+    rowRest: rows.map((r) => p.rowRest[r]),
+    columnRest: columns.map((c) => p.columnRest[c]),
+    supply: rows.map(() => 1),
+    demand: columns.map(() => 1),
   };
 }
 
@@ -117,8 +125,13 @@ describe('TransportSolver', () => {
         const sorted = [...observed].sort((a, b) => a - b);
         const best = [...predicted].sort((a, b) => a - b).reduce((sum, x, i) => sum + (x - sorted[i]) ** 2, 0);
         const found = solve({
-          rows: 5, columns: 5, cost: predicted.flatMap((x) => observed.map((y) => (x - y) ** 2)),
-          rowRest: [1e6, 1e6, 1e6, 1e6, 1e6], columnRest: [1e6, 1e6, 1e6, 1e6, 1e6], supply: [1, 1, 1, 1, 1], demand: [1, 1, 1, 1, 1],
+          rows: 5,
+          columns: 5,
+          cost: predicted.flatMap((x) => observed.map((y) => (x - y) ** 2)),
+          rowRest: [1e6, 1e6, 1e6, 1e6, 1e6],
+          columnRest: [1e6, 1e6, 1e6, 1e6, 1e6],
+          supply: [1, 1, 1, 1, 1],
+          demand: [1, 1, 1, 1, 1],
         });
         expect(Math.abs(found - best)).toBeLessThan(1e-6 * (1 + best));
       }),

@@ -1,6 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { analyseStructure } from '../../../workers/graph/analysis.js';
-import { createPredictedPattern, patternCost, predictPattern, readPattern, type ObservedPattern } from '../../../workers/ranking/coupling-patterns.js';
+import {
+  createPredictedPattern,
+  patternCost,
+  predictPattern,
+  readPattern,
+  type ObservedPattern,
+} from '../../../workers/ranking/coupling-patterns.js';
 import { Environments } from '../../../workers/ranking/environments.js';
 import { graphOf } from '../../support/graph-of.js';
 
@@ -37,8 +43,17 @@ describe('readPattern', () => {
 describe('patternCost', () => {
   // First-order patterns, SCIENCE.md 3.4 and the compounds of section 11.
   it.each<[string, number, string]>([
-    ['CCOC(C)=O', 0, 't'], ['CCOC(C)=O', 1, 'q'], ['CCOC(C)=O', 4, 's'], ['CC(C)O', 1, 'sept'], ['CC(C)O', 0, 'd'], ['CC(C)CO', 3, 'd'],
-    ['CC(C)(C)OC', 0, 's'], ['C1CCOC1', 2, 't'], ['Cc1ccc(C)cc1', 2, 's'], ['ClCCl', 1, 's'], ['COC(=O)OC', 0, 's'],
+    ['CCOC(C)=O', 0, 't'],
+    ['CCOC(C)=O', 1, 'q'],
+    ['CCOC(C)=O', 4, 's'],
+    ['CC(C)O', 1, 'sept'],
+    ['CC(C)O', 0, 'd'],
+    ['CC(C)CO', 3, 'd'],
+    ['CC(C)(C)OC', 0, 's'],
+    ['C1CCOC1', 2, 't'],
+    ['Cc1ccc(C)cc1', 2, 's'],
+    ['ClCCl', 1, 's'],
+    ['COC(=O)OC', 0, 's'],
   ])('%s, atom %i: %s is as expected', (smiles, atom, multiplicity) => {
     expect(cost(smiles, atom, multiplicity)).toBe(0);
   });

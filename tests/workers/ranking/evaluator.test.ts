@@ -22,9 +22,16 @@ describe('createEvaluator', () => {
 
   it('names the first stage that rejects, in the order of the funnel', () => {
     const everything: EvidenceInput = {
-      formula: 'C7H10O2', fragments: { excluded: [{ smiles: 'OO' }] }, options: { ringSizes: { min: 5 } }, carbonSignals: [{ shift: 10, hydrogens: 3 }],
+      formula: 'C7H10O2',
+      fragments: { excluded: [{ smiles: 'OO' }] },
+      options: { ringSizes: { min: 5 } },
+      carbonSignals: [{ shift: 10, hydrogens: 3 }],
     };
-    expect(evaluate(everything, 'C1CC2=CC1(OO)CC2')).toMatchObject({ kind: 'rejected', stage: 'excludedFragments', reason: 'excludedFragment:OO' });
+    expect(evaluate(everything, 'C1CC2=CC1(OO)CC2')).toMatchObject({
+      kind: 'rejected',
+      stage: 'excludedFragments',
+      reason: 'excludedFragment:OO',
+    });
     expect(evaluate(everything, 'OC1(O)C2CC1CC=C2')).toMatchObject({ stage: 'ringSizes', reason: 'ringTooSmall' });
     expect(evaluate(everything, 'OC1(O)C2=CCC1CC2')).toMatchObject({ stage: 'plausibility', reason: 'plausibility:twistedRingAlkene' });
     expect(evaluate(everything, 'OC1C(O)C2CCC1=C2'.replace('C1=C2', 'C1C2'))).toMatchObject({ stage: 'signals' });
@@ -67,11 +74,15 @@ describe('createEvaluator', () => {
       const graph = graphOf(smiles);
       const expected = scoreOf(evidence, graph);
       fc.assert(
-        fc.property(fc.integer(), fc.shuffledSubarray(evidence.carbonSignals!, { minLength: evidence.carbonSignals!.length }), fc.shuffledSubarray(evidence.protonSignals!, { minLength: evidence.protonSignals!.length }),
+        fc.property(
+          fc.integer(),
+          fc.shuffledSubarray(evidence.carbonSignals!, { minLength: evidence.carbonSignals!.length }),
+          fc.shuffledSubarray(evidence.protonSignals!, { minLength: evidence.protonSignals!.length }),
           (seed, carbonSignals, protonSignals) => {
             const relabelled = relabelGraph(graph, permutationOf(graph.atomCount, seed));
             expect(scoreOf({ ...evidence, carbonSignals, protonSignals }, relabelled)).toBeCloseTo(expected, 9);
-          }),
+          },
+        ),
         { numRuns: 8 },
       );
     }
@@ -88,7 +99,8 @@ describe('createEvaluator', () => {
     // Metamorphic: dropping the attached hydrogens or the 1H list leaves every reference compound in the list.
     for (const { evidence, smiles, name } of REFERENCE_COMPOUNDS) {
       const untyped = { ...evidence, carbonSignals: evidence.carbonSignals!.map(({ shift }) => ({ shift })) };
-      for (const input of [evidence, untyped, { ...evidence, protonSignals: [] }, { ...evidence, carbonSignals: [] }]) expect(evaluate(input, smiles).kind, name).toBe('scored');
+      for (const input of [evidence, untyped, { ...evidence, protonSignals: [] }, { ...evidence, carbonSignals: [] }])
+        expect(evaluate(input, smiles).kind, name).toBe('scored');
     }
   });
 });
@@ -96,15 +108,24 @@ describe('createEvaluator', () => {
 describe('explainEvaluation', () => {
   it('lists every reason of every stage with its atoms, the first stage first', () => {
     const evidence = evidenceDocument.parse({
-      formula: 'C7H10O2', fragments: { excluded: [{ smiles: 'OO' }] }, options: { ringSizes: { min: 6 } }, carbonSignals: [{ shift: 10, hydrogens: 3 }],
+      formula: 'C7H10O2',
+      fragments: { excluded: [{ smiles: 'OO' }] },
+      options: { ringSizes: { min: 6 } },
+      carbonSignals: [{ shift: 10, hydrogens: 3 }],
     });
     const explanation = explainEvaluation(evidence, settings('rank'), graphOf('C1CC2=CC1(OO)CC2'));
     if (explanation.kind !== 'rejected') throw new Error('survives');
     expect(explanation.stage).toBe('excludedFragments');
     expect(explanation.reasons.map(({ reason }) => reason)).toEqual([
-      'excludedFragment:OO', 'ringTooSmall', 'plausibility:twistedRingAlkene', 'signals:carbonAbsent:1', 'signals:carbonAbsent:2', 'signals:tooFewCarbons:3',
+      'excludedFragment:OO',
+      'ringTooSmall',
+      'plausibility:twistedRingAlkene',
+      'signals:carbonAbsent:1',
+      'signals:carbonAbsent:2',
+      'signals:tooFewCarbons:3',
     ]);
-    const atomsOf = (reason: string): number[] => [...explanation.reasons.find((entry) => entry.reason === reason)!.atoms].sort((a, b) => a - b);
+    const atomsOf = (reason: string): number[] =>
+      [...explanation.reasons.find((entry) => entry.reason === reason)!.atoms].sort((a, b) => a - b);
     expect(atomsOf('excludedFragment:OO')).toEqual([5, 6]);
     expect(atomsOf('plausibility:twistedRingAlkene')).toEqual([2, 3]);
     expect(atomsOf('signals:carbonAbsent:1')).toEqual([3]);

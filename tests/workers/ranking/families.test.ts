@@ -20,22 +20,36 @@ function rankTruth({ smiles }: ReferenceCompound, input: EvidenceInput): { rank:
     if (keys[index] === truth) own = evaluation.score;
     else scores.push(evaluation.score);
   });
-  return { rank: own === null ? 0 : 1 + scores.filter((score) => score >= own!).length, survivors: scores.length + (own === null ? 0 : 1), constitutions: graphs.length };
+  return {
+    rank: own === null ? 0 : 1 + scores.filter((score) => score >= own!).length,
+    survivors: scores.length + (own === null ? 0 : 1),
+    constitutions: graphs.length,
+  };
 }
 
 describe('reference compounds among their families (SCIENCE.md 11)', () => {
   const ranks = new Map<string, number>();
 
-  it.each([...REFERENCE_COMPOUNDS, ...REFERENCE_COMPOUNDS_WITH_FRAGMENTS.filter(({ name }) => !name.startsWith('caffeine'))].map((compound) => [compound.name, compound] as const))(
-    '%s survives every hard filter', (name, compound) => {
+  it.each(
+    [...REFERENCE_COMPOUNDS, ...REFERENCE_COMPOUNDS_WITH_FRAGMENTS.filter(({ name }) => !name.startsWith('caffeine'))].map(
+      (compound) => [compound.name, compound] as const,
+    ),
+  )(
+    '%s survives every hard filter',
+    (name, compound) => {
       const { rank } = rankTruth(compound, compound.evidence);
       ranks.set(name, rank);
       expect(rank).toBeGreaterThan(0);
-    }, 60_000,
+    },
+    60_000,
   );
 
   it('ranks the true structure in the top three in at least 25 of the rows, and first where the table asks for it', () => {
-    const topThree = new Set([...REFERENCE_COMPOUNDS, ...REFERENCE_COMPOUNDS_WITH_FRAGMENTS].filter(({ name }) => (ranks.get(name) ?? 0) >= 1 && ranks.get(name)! <= 3).map(({ row }) => row));
+    const topThree = new Set(
+      [...REFERENCE_COMPOUNDS, ...REFERENCE_COMPOUNDS_WITH_FRAGMENTS]
+        .filter(({ name }) => (ranks.get(name) ?? 0) >= 1 && ranks.get(name)! <= 3)
+        .map(({ row }) => row),
+    );
     expect(topThree.size).toBeGreaterThanOrEqual(25);
     for (const { name, row } of REFERENCE_COMPOUNDS) if (row === 24) expect(ranks.get(name), name).toBe(1);
   });
@@ -58,7 +72,10 @@ describe('reference compounds among their families (SCIENCE.md 11)', () => {
     const signals = isomers.map(({ evidence }) => evidence.carbonSignals!.length);
     expect(signals).toEqual([4, 5, 3, 6]);
     for (const { smiles, evidence } of isomers) {
-      const evaluator = createEvaluator(evidenceDocument.parse({ ...evidence, protonSignals: [], carbonSignals: evidence.carbonSignals!.map(({ shift }) => ({ shift })) }), { keep: 1, maxSeconds: null, mode: 'list' });
+      const evaluator = createEvaluator(
+        evidenceDocument.parse({ ...evidence, protonSignals: [], carbonSignals: evidence.carbonSignals!.map(({ shift }) => ({ shift })) }),
+        { keep: 1, maxSeconds: null, mode: 'list' },
+      );
       for (const other of isomers) {
         // More signals than a structure has environments rule it out; fewer do not.
         const isRuledOut = other.evidence.carbonSignals!.length < evidence.carbonSignals!.length;

@@ -52,9 +52,11 @@ describe('finishRanking', () => {
     const { carbonSignals = [], protonSignals = [] } = acetate.evidence;
     for (const { smiles, spectra, matches, remarks } of finished.candidates) {
       const graph = graphOf(smiles);
-      for (const { atoms, hydrogens } of spectra.carbons) for (const atom of atoms) expect([graph.atomicNumbers[atom], graph.hydrogens[atom]]).toEqual([6, hydrogens]);
+      for (const { atoms, hydrogens } of spectra.carbons)
+        for (const atom of atoms) expect([graph.atomicNumbers[atom], graph.hydrogens[atom]]).toEqual([6, hydrogens]);
       for (const { atoms } of spectra.protons) for (const atom of atoms) expect(graph.hydrogens[atom]).toBeGreaterThan(0);
-      const observed = (nucleus: string): (number | null)[] => matches.flatMap((match) => (match.nucleus === nucleus && match.observedIndex !== null ? [match.observedIndex] : []));
+      const observed = (nucleus: string): (number | null)[] =>
+        matches.flatMap((match) => (match.nucleus === nucleus && match.observedIndex !== null ? [match.observedIndex] : []));
       expect(observed('13C')).toEqual(carbonSignals.map((_, index) => index));
       expect(observed('1H')).toEqual(protonSignals.map((_, index) => index));
       for (const { nucleus, observedIndex, predictedIndexes, deviation } of matches) {
@@ -73,16 +75,30 @@ describe('finishRanking', () => {
 
   it('says which signals speak for the best candidate and which against others', () => {
     const [best] = finished.candidates;
-    expect(best.remarks).toContainEqual({ kind: 'fit', tone: 'supports', text: 'δ 171.2 fits ester C=O.', atoms: [best.smiles.startsWith('CCCCOC(C)=O') ? 5 : expect.any(Number)] });
+    expect(best.remarks).toContainEqual({
+      kind: 'fit',
+      tone: 'supports',
+      text: 'δ 171.2 fits ester C=O.',
+      atoms: [best.smiles.startsWith('CCCCOC(C)=O') ? 5 : expect.any(Number)],
+    });
     expect(best.carbonDeviation).toBeLessThan(3);
     expect(best.protonDeviation).toBeLessThan(0.3);
-    const doubts = finished.candidates.slice(1).flatMap(({ remarks }) => remarks.filter(({ tone, kind }) => tone === 'doubts' && kind !== 'plausibility'));
+    const doubts = finished.candidates
+      .slice(1)
+      .flatMap(({ remarks }) => remarks.filter(({ tone, kind }) => tone === 'doubts' && kind !== 'plausibility'));
     expect(doubts.length).toBeGreaterThan(0);
     expect(doubts.some(({ text }) => /the splitting does not fit/.test(text))).toBe(true);
   });
 
   it('shows every soft rule that fired, and what stereochemistry leaves open', () => {
-    const all = run({ formula: 'C4H8O2', carbonSignals: [{ shift: 60, hydrogens: 2 }, { shift: 20, hydrogens: 3 }, { shift: 100, hydrogens: 1 }] });
+    const all = run({
+      formula: 'C4H8O2',
+      carbonSignals: [
+        { shift: 60, hydrogens: 2 },
+        { shift: 20, hydrogens: 3 },
+        { shift: 100, hydrogens: 1 },
+      ],
+    });
     const texts = new Set(all.candidates.flatMap(({ remarks }) => remarks.map(({ text }) => text)));
     expect([...texts].some((text) => /three-membered ring/.test(text))).toBe(true);
     expect([...texts].some((text) => /stereocentre/.test(text))).toBe(true);
@@ -114,7 +130,8 @@ describe('finishRanking', () => {
   it('keeps the order when all shifts move by 0.01 ppm (SCIENCE.md 11 b)', () => {
     const { carbonSignals = [], protonSignals = [] } = acetate.evidence;
     const moved = run({
-      ...acetate.evidence, carbonSignals: carbonSignals.map((signal) => ({ ...signal, shift: signal.shift + 0.01 })),
+      ...acetate.evidence,
+      carbonSignals: carbonSignals.map((signal) => ({ ...signal, shift: signal.shift + 0.01 })),
       protonSignals: protonSignals.map((signal) => ({ ...signal, shift: signal.shift + 0.001 })),
     });
     expect(moved.candidates.slice(0, 5).map(({ key }) => key)).toEqual(finished.candidates.slice(0, 5).map(({ key }) => key));
@@ -129,7 +146,9 @@ describe('finishRanking', () => {
       const rank = rankOf(dropped, compound);
       expect(rank, `${name} without C=O`).toBeGreaterThan(0);
       expect(rank, `${name} without C=O`).toBeLessThanOrEqual(5);
-      const missing = dropped.candidates[rank - 1].matches.filter(({ nucleus, observedIndex }) => nucleus === '13C' && observedIndex === null);
+      const missing = dropped.candidates[rank - 1].matches.filter(
+        ({ nucleus, observedIndex }) => nucleus === '13C' && observedIndex === null,
+      );
       expect(missing.map(({ remark }) => remark)).toEqual(['No signal found; quaternary carbons are weak and can be missing.']);
     }
     // As many signals as carbons at most: 4-methyl-2-pentanone shows five of six.
@@ -138,6 +157,8 @@ describe('finishRanking', () => {
     const rank = rankOf(withSolvent, compound);
     expect(rank).toBeGreaterThan(0);
     expect(rank).toBeLessThanOrEqual(5);
-    expect(withSolvent.candidates[rank - 1].remarks.map(({ text }) => text)).toContain('δ 77.2 (¹³C) is given by nothing in this structure; CDCl₃ has a line there.');
+    expect(withSolvent.candidates[rank - 1].remarks.map(({ text }) => text)).toContain(
+      'δ 77.2 (¹³C) is given by nothing in this structure; CDCl₃ has a line there.',
+    );
   });
 });

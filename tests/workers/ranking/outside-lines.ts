@@ -13,7 +13,10 @@ export function readOutsideLines<T extends { truth?: string; smiles?: string }>(
     console.info(`skipped: reference data ${path} is not beside this checkout`);
     return null;
   }
-  return gunzipSync(readFileSync(file)).toString('utf8').trim().split('\n')
+  return gunzipSync(readFileSync(file))
+    .toString('utf8')
+    .trim()
+    .split('\n')
     .filter((_, line) => line % every < 2)
     .map((line) => JSON.parse(line) as T)
     .filter(({ truth, smiles }) => parseSmiles(truth ?? smiles ?? '').ok);

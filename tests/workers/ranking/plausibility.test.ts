@@ -25,19 +25,40 @@ function occurrences(id: string, smiles: string): { count: number; atoms: number
  * One structure that each rule must find (with the atoms it names) and near neighbours that it must let pass. The rules
  * and their exceptions: SCIENCE.md 2.4 and 2.3, common practice.
  */
-const CASES: Readonly<Record<PlausibilityRuleId, { finds: readonly [smiles: string, atoms: readonly number[]]; passes: readonly string[] }>> = {
+const CASES: Readonly<
+  Record<PlausibilityRuleId, { finds: readonly [smiles: string, atoms: readonly number[]]; passes: readonly string[] }>
+> = {
   // Cyclooctyne keeps, cycloheptyne does not; ring electrons of benzyne count as aromatic.
   alkyneInSmallRing: { finds: ['C1CCCCC#C1', [5, 6]], passes: ['C1CCCCCC#C1', 'CC#CC', 'C1CCCCCCC1C#C'] },
   alleneInSmallRing: { finds: ['C1CCCCC=C=C1', [5, 6, 7]], passes: ['C1CCCCCC=C=C1', 'CC=C=CC', 'C1CC1C=C=C'] },
   // Bredt: norbornene at the bridgehead; a fused ring with C=C at the fusion and trans-cyclooctene size bridges pass.
-  twistedRingAlkene: { finds: ['C1CC2=CC1CC2', [2, 3]], passes: ['C1CC2CC1C=C2', 'C1CCC2=CCCCC2C1', 'C1CCC2=C(C1)CCCC2', 'C1CC2CCCC=C(C1)CCC2', 'c1ccc2c(c1)CCC2', 'C1c2ccccc21'] },
+  twistedRingAlkene: {
+    finds: ['C1CC2=CC1CC2', [2, 3]],
+    passes: ['C1CC2CC1C=C2', 'C1CCC2=CCCCC2C1', 'C1CCC2=C(C1)CCCC2', 'C1CC2CCCC=C(C1)CCC2', 'c1ccc2c(c1)CCC2', 'C1c2ccccc21'],
+  },
   // [5]Metacyclophane and [5]paracyclophane have been made; julolidine, acenaphthene and fluorene have bridges from ortho.
-  bridgedArene: { finds: ['c1cc2CCCCc(c1)c2', [2, 7]], passes: ['c1cc2CCCCCc(c1)c2', 'C1Cc2ccccc2C1', 'C1Cc2cccc3c2N(C1)CCC3', 'C1Cc2cccc3cccc1c23', 'C1c2ccccc2-c2ccccc12', 'c1ccc2c(c1)[nH]c1ccccc12'] },
+  bridgedArene: {
+    finds: ['c1cc2CCCCc(c1)c2', [2, 7]],
+    passes: [
+      'c1cc2CCCCCc(c1)c2',
+      'C1Cc2ccccc2C1',
+      'C1Cc2cccc3c2N(C1)CCC3',
+      'C1Cc2cccc3cccc1c23',
+      'C1c2ccccc2-c2ccccc12',
+      'c1ccc2c(c1)[nH]c1ccccc12',
+    ],
+  },
   alkyneInMediumRing: { finds: ['C1CCCCCC#C1', [6, 7]], passes: ['C1CCCCCCCCCC#C1', 'CC#CC', 'C1CCCCCCC1C#C'] },
   heterocumuleneInSmallRing: { finds: ['C1CCN=C=NC1', [3, 4, 5]], passes: ['CN=C=NC', 'C1CCCCCN=C=N1'] },
-  cumulatedDoubleBonds: { finds: ['CC=C=NC', [1, 2, 3]], passes: ['C=C=C', 'CC=C=O', 'CN=C=O', 'CN=C=S', 'CN=C=NC', 'CN=[N+]=[N-]', 'CC=[N+]=[N-]', 'CS(C)(=O)=O'] },
+  cumulatedDoubleBonds: {
+    finds: ['CC=C=NC', [1, 2, 3]],
+    passes: ['C=C=C', 'CC=C=O', 'CN=C=O', 'CN=C=S', 'CN=C=NC', 'CN=[N+]=[N-]', 'CC=[N+]=[N-]', 'CS(C)(=O)=O'],
+  },
   peroxide: { finds: ['COOC', [1, 2]], passes: ['COCOC', 'C1OCCO1'] },
-  nitrogenOxygenBond: { finds: ['CN(C)OC', [1, 3]], passes: ['C[N+](=O)[O-]', 'CC=NO', 'CC=NOC', 'c1cnoc1', 'C[N+](C)(C)[O-]', 'CC(=O)NO', 'CN=O'] },
+  nitrogenOxygenBond: {
+    finds: ['CN(C)OC', [1, 3]],
+    passes: ['C[N+](=O)[O-]', 'CC=NO', 'CC=NOC', 'c1cnoc1', 'C[N+](C)(C)[O-]', 'CC(=O)NO', 'CN=O'],
+  },
   nitrogenChain: { finds: ['CN(C)N(C)N(C)C', [1, 3, 5]], passes: ['CNNC', 'CN=NC', 'c1cn[nH]n1', 'CN=[N+]=[N-]'] },
   heteroatomHalogen: { finds: ['CN(C)Cl', [1, 3]], passes: ['CCl', 'CS(=O)(=O)Cl', 'NCCCl'] },
   geminalDiol: { finds: ['CCC(O)O', [2]], passes: ['OC(O)C(Cl)(Cl)Cl', 'CC(=O)O', 'OCCO'] },
@@ -53,7 +74,10 @@ const CASES: Readonly<Record<PlausibilityRuleId, { finds: readonly [smiles: stri
   thioaldehyde: { finds: ['CC=S', [1, 2]], passes: ['NC=S', 'CC(C)=S'] },
   thioketone: { finds: ['CC(C)=S', [1, 3]], passes: ['CC(N)=S', 'COC(C)=S', 'CN=C=S', 'CC=S'] },
   // Cyclobutadiene; benzene, quinone and 1,4-dioxin pass.
-  antiaromaticRing: { finds: ['C1=CC=C1', [0, 1, 2, 3]], passes: ['c1ccccc1', 'O=C1C=CC(=O)C=C1', 'O1C=COC=C1', 'C1=CCC=C1', 'O=C1C=CC=CC=C1', 'C1=CC=CC=C1'] },
+  antiaromaticRing: {
+    finds: ['C1=CC=C1', [0, 1, 2, 3]],
+    passes: ['c1ccccc1', 'O=C1C=CC(=O)C=C1', 'O1C=COC=C1', 'C1=CCC=C1', 'O=C1C=CC=CC=C1', 'C1=CC=CC=C1'],
+  },
   threeMemberedRing: { finds: ['CC1CO1', [1, 2, 3]], passes: ['C1CCC1', 'CC'] },
   fourMemberedRing: { finds: ['CC1CCO1', [1, 2, 3, 4]], passes: ['C1CC1', 'C1CCCC1'] },
   smallRingAlkene: { finds: ['CC1=CC1', [1, 2]], passes: ['C=C1CC1', 'C1=CCCC1'] },
@@ -69,13 +93,16 @@ const CASES: Readonly<Record<PlausibilityRuleId, { finds: readonly [smiles: stri
 };
 
 describe('plausibility rules', () => {
-  it.each(PLAUSIBILITY_RULES.map(({ id, title }) => [id, title] as const))('%s (%s): finds it, names its atoms and lets its neighbours pass', (id) => {
-    const { finds, passes } = CASES[id];
-    const found = occurrences(id, finds[0]);
-    expect(found.count, finds[0]).toBe(1);
-    expect([...found.atoms[0]].sort((a, b) => a - b)).toEqual([...finds[1]]);
-    for (const smiles of passes) expect(occurrences(id, smiles).count, smiles).toBe(0);
-  });
+  it.each(PLAUSIBILITY_RULES.map(({ id, title }) => [id, title] as const))(
+    '%s (%s): finds it, names its atoms and lets its neighbours pass',
+    (id) => {
+      const { finds, passes } = CASES[id];
+      const found = occurrences(id, finds[0]);
+      expect(found.count, finds[0]).toBe(1);
+      expect([...found.atoms[0]].sort((a, b) => a - b)).toEqual([...finds[1]]);
+      for (const smiles of passes) expect(occurrences(id, smiles).count, smiles).toBe(0);
+    },
+  );
 
   it('finds a triple bond in a six-membered ring whose electrons count as aromatic', () => {
     expect(occurrences('alkyneInSmallRing', 'C1=CC=CC#C1').count).toBe(1);
@@ -104,7 +131,8 @@ describe('plausibility rules', () => {
       const formula = formulaOf(graph.atomicNumbers);
       const chosen = selectRules(evidenceDocument.parse({ formula }));
       const applied = new Set([...chosen.hard, ...chosen.soft].map(({ rule }) => rule.id));
-      for (const { rule, test } of everyRule()) if (test(structure, null) > 0) expect(applied, `${rule.id} in ${formula}`).toContain(rule.id);
+      for (const { rule, test } of everyRule())
+        if (test(structure, null) > 0) expect(applied, `${rule.id} in ${formula}`).toContain(rule.id);
     }
   });
 
@@ -120,7 +148,18 @@ describe('plausibility rules', () => {
   });
 });
 
-const SYMBOLS: Readonly<Record<number, string>> = { 6: 'C', 7: 'N', 8: 'O', 9: 'F', 14: 'Si', 15: 'P', 16: 'S', 17: 'Cl', 35: 'Br', 53: 'I' };
+const SYMBOLS: Readonly<Record<number, string>> = {
+  6: 'C',
+  7: 'N',
+  8: 'O',
+  9: 'F',
+  14: 'Si',
+  15: 'P',
+  16: 'S',
+  17: 'Cl',
+  35: 'Br',
+  53: 'I',
+};
 function formulaOf(atomicNumbers: Uint8Array): string {
   const counts = new Map<string, number>();
   for (const z of atomicNumbers) counts.set(SYMBOLS[z], (counts.get(SYMBOLS[z]) ?? 0) + 1);

@@ -65,7 +65,11 @@ describe('none of these', () => {
   });
 
   it('counts 13C and 1H signals, tempered like the scores', () => {
-    const evidence = evidenceDocument.parse({ formula: 'C2H6O', carbonSignals: [{ shift: 58.3, hydrogens: 2 }], protonSignals: [{ shift: 3.7 }] });
+    const evidence = evidenceDocument.parse({
+      formula: 'C2H6O',
+      carbonSignals: [{ shift: 58.3, hydrogens: 2 }],
+      protonSignals: [{ shift: 3.7 }],
+    });
     const carbons = readCarbonObservations(evidence);
     const none = readProtonObservations(evidenceDocument.parse({ formula: 'C2H6O' }));
     const both = noneOfTheseLogLikelihood(carbons, readProtonObservations(evidence), SCORE_MODEL);

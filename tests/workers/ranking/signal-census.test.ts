@@ -23,22 +23,86 @@ function judge(smiles: string, signals: Signals): { first: string | null; all: S
 }
 
 const carbons = (...list: readonly (readonly [shift: number, hydrogens?: number, count?: number])[]): Signals['carbonSignals'] =>
-  list.map(([shift, hydrogens, count]) => ({ shift, ...(hydrogens === undefined ? {} : { hydrogens }), ...(count === undefined ? {} : { count }) }));
+  list.map(([shift, hydrogens, count]) => ({
+    shift,
+    ...(hydrogens === undefined ? {} : { hydrogens }),
+    ...(count === undefined ? {} : { count }),
+  }));
 
 describe('SignalCensus', () => {
   // One constructed case for each reason: what the structure must have less or more of, and on which atoms.
   it.each<[string, string, Signals, string, readonly number[]]>([
-    ['more carbons under the signals of a type than there are', 'CCCC(=O)O', { carbonSignals: carbons([14, 3, 2], [20, 2], [36, 2]) }, 'signals:tooFewCarbons:3', [0]],
+    [
+      'more carbons under the signals of a type than there are',
+      'CCCC(=O)O',
+      { carbonSignals: carbons([14, 3, 2], [20, 2], [36, 2]) },
+      'signals:tooFewCarbons:3',
+      [0],
+    ],
     ['more signals of any type than carbons', 'CC(=O)O', { carbonSignals: carbons([20], [60], [170]) }, 'signals:tooFewCarbons:4', [0, 1]],
-    ['a type without any signal in a complete list', 'CC(C)C(=O)O', { carbonSignals: carbons([19, 3], [20, 3]) }, 'signals:carbonAbsent:1', [1]],
-    ['more carbons than a complete list with counts stands for', 'CCCCO', { carbonSignals: carbons([62, 2, 1], [19, 2, 1], [14, 3, 1]) }, 'signals:carbonCount:2', [1, 2, 3]],
-    ['fewer different carbons than signals', 'CC(C)CO', { carbonSignals: carbons([70, 2], [31, 1], [19, 3], [23, 3]) }, 'signals:carbonEnvironments:3', [0, 2]],
-    ['fewer different carbons than signals without known hydrogens', 'Cc1ccc(C)cc1', { carbonSignals: carbons([21], [129], [134], [140]) }, 'signals:carbonEnvironments:4', [0, 1, 2, 3, 4, 5, 6, 7]],
-    ['more equivalent carbons than any signal stands for', 'Cc1ccc(C)cc1', { carbonSignals: carbons([129, 1, 2], [130, 1, 2], [21, 3]) }, 'signals:carbonEnvironments:1', [2, 3, 6, 7]],
-    ['equivalent carbons that the counts keep apart', 'CC(C)(C)CC(C)=O', { carbonSignals: carbons([56, 2], [31, 3, 2], [30, 3, 2]) }, 'signals:equivalentCarbons:3', [0, 2, 3, 6]],
-    ['fewer different hydrogens than ¹H signals', 'CCOCC', { protonSignals: [{ shift: 3.5 }, { shift: 1.2 }, { shift: 2.0 }, { shift: 2.2 }] }, 'signals:protonEnvironments:4', [0, 1, 3, 4]],
-    ['fewer exchangeable hydrogens than marked', 'CCOCC', { protonSignals: [{ shift: 2.5, count: 1, exchangeable: true }] }, 'signals:exchangeableProtons:4', []],
-    ['fewer hydrogens on carbon than marked', 'CO', { protonSignals: [{ shift: 3.4, count: 4, exchangeable: false }] }, 'signals:boundProtons:4', [0]],
+    [
+      'a type without any signal in a complete list',
+      'CC(C)C(=O)O',
+      { carbonSignals: carbons([19, 3], [20, 3]) },
+      'signals:carbonAbsent:1',
+      [1],
+    ],
+    [
+      'more carbons than a complete list with counts stands for',
+      'CCCCO',
+      { carbonSignals: carbons([62, 2, 1], [19, 2, 1], [14, 3, 1]) },
+      'signals:carbonCount:2',
+      [1, 2, 3],
+    ],
+    [
+      'fewer different carbons than signals',
+      'CC(C)CO',
+      { carbonSignals: carbons([70, 2], [31, 1], [19, 3], [23, 3]) },
+      'signals:carbonEnvironments:3',
+      [0, 2],
+    ],
+    [
+      'fewer different carbons than signals without known hydrogens',
+      'Cc1ccc(C)cc1',
+      { carbonSignals: carbons([21], [129], [134], [140]) },
+      'signals:carbonEnvironments:4',
+      [0, 1, 2, 3, 4, 5, 6, 7],
+    ],
+    [
+      'more equivalent carbons than any signal stands for',
+      'Cc1ccc(C)cc1',
+      { carbonSignals: carbons([129, 1, 2], [130, 1, 2], [21, 3]) },
+      'signals:carbonEnvironments:1',
+      [2, 3, 6, 7],
+    ],
+    [
+      'equivalent carbons that the counts keep apart',
+      'CC(C)(C)CC(C)=O',
+      { carbonSignals: carbons([56, 2], [31, 3, 2], [30, 3, 2]) },
+      'signals:equivalentCarbons:3',
+      [0, 2, 3, 6],
+    ],
+    [
+      'fewer different hydrogens than ¹H signals',
+      'CCOCC',
+      { protonSignals: [{ shift: 3.5 }, { shift: 1.2 }, { shift: 2.0 }, { shift: 2.2 }] },
+      'signals:protonEnvironments:4',
+      [0, 1, 3, 4],
+    ],
+    [
+      'fewer exchangeable hydrogens than marked',
+      'CCOCC',
+      { protonSignals: [{ shift: 2.5, count: 1, exchangeable: true }] },
+      'signals:exchangeableProtons:4',
+      [],
+    ],
+    [
+      'fewer hydrogens on carbon than marked',
+      'CO',
+      { protonSignals: [{ shift: 3.4, count: 4, exchangeable: false }] },
+      'signals:boundProtons:4',
+      [0],
+    ],
   ])('rejects %s', (_, smiles, signals, reason, atoms) => {
     const { first, all } = judge(smiles, signals);
     expect(first).toBe(reason);
@@ -47,7 +111,12 @@ describe('SignalCensus', () => {
   });
 
   it('lets a structure pass that has what the signals show', () => {
-    expect(judge('CCC(=O)OC', { carbonSignals: carbons([27, 2], [9, 3], [51, 3], [174, 0]), protonSignals: [{ shift: 3.6, count: 3, exchangeable: false }] }).first).toBeNull();
+    expect(
+      judge('CCC(=O)OC', {
+        carbonSignals: carbons([27, 2], [9, 3], [51, 3], [174, 0]),
+        protonSignals: [{ shift: 3.6, count: 3, exchangeable: false }],
+      }).first,
+    ).toBeNull();
   });
 
   it('lets quaternary carbons be missing, and any carbon when the list is partial', () => {
@@ -76,8 +145,23 @@ describe('SignalCensus', () => {
 
 describe('SignalBounds', () => {
   const structures = [
-    'CC(C)C(O)C(C)C', 'CC(N)C(C)(C)C', 'CC1CCC(C)(C)CC1', 'CC(C)=CC', 'CC(C)=NO', 'Cc1ccccc1', 'CC(O)c1ccccc1', 'CC(C)CC(C)O',
-    'CCOC(=O)CC(=O)OCC', 'OCC(O)CO', 'C=CC', 'C=C(C)C', 'CC1CCCCC1', 'CS(=O)CC', 'CP(=O)(OCC)OCC', 'CC(C)N(C)C', 'CC(C)(C)OC',
+    'CC(C)C(O)C(C)C',
+    'CC(N)C(C)(C)C',
+    'CC1CCC(C)(C)CC1',
+    'CC(C)=CC',
+    'CC(C)=NO',
+    'Cc1ccccc1',
+    'CC(O)c1ccccc1',
+    'CC(C)CC(C)O',
+    'CCOC(=O)CC(=O)OCC',
+    'OCC(O)CO',
+    'C=CC',
+    'C=C(C)C',
+    'CC1CCCCC1',
+    'CS(=O)CC',
+    'CP(=O)(OCC)OCC',
+    'CC(C)N(C)C',
+    'CC(C)(C)OC',
   ];
 
   /** Most carbon and proton signals by the bounds and by the exact test. */
@@ -106,11 +190,14 @@ describe('SignalBounds', () => {
     expect(bound).toEqual(exact);
   });
 
-  it.each(['C1COC2(C1)CCCO2', 'C1CC2(C1)CO2', 'C1CC2CCC1C2', 'OC1CC(O)CC(O)C1', 'C1CC2CC12', 'CC1CN1C', 'NC(=O)N(C)C'])('%s: rather more signals than fewer', (smiles) => {
-    const { bound, exact } = compare(graphOf(smiles));
-    expect(bound[0]).toBeGreaterThanOrEqual(exact[0]);
-    expect(bound[1]).toBeGreaterThanOrEqual(exact[1]);
-  });
+  it.each(['C1COC2(C1)CCCO2', 'C1CC2(C1)CO2', 'C1CC2CCC1C2', 'OC1CC(O)CC(O)C1', 'C1CC2CC12', 'CC1CN1C', 'NC(=O)N(C)C'])(
+    '%s: rather more signals than fewer',
+    (smiles) => {
+      const { bound, exact } = compare(graphOf(smiles));
+      expect(bound[0]).toBeGreaterThanOrEqual(exact[0]);
+      expect(bound[1]).toBeGreaterThanOrEqual(exact[1]);
+    },
+  );
 });
 
 describe('hard filters on measured spectra', () => {

@@ -5,18 +5,49 @@ import type { StructureAnalysis } from '../../graph/analysis.js';
 import { findAntiaromaticRings } from './antiaromatic-rings.js';
 import type { OccurrenceReport } from './atom-queries.js';
 import {
-  findAlphaHaloHeteroatoms, findGeminalAminoAlcohols, findGeminalDiamines, findGeminalDiols, findHemiacetals, findOrthoacids,
+  findAlphaHaloHeteroatoms,
+  findGeminalAminoAlcohols,
+  findGeminalDiamines,
+  findGeminalDiols,
+  findHemiacetals,
+  findOrthoacids,
 } from './geminal-groups.js';
-import { findCumulatedDoubleBonds, findHeteroatomHalogens, findNitrogenChains, findNitrogenOxygenBonds, findPeroxides } from './heteroatom-bonds.js';
 import {
-  findAcylHalidesWithNucleophile, findAldehydesWithAmine, findBetaKetoAcids, findCarbamicAcids, findCarbonicHalfEsters, findIsocyanatesWithNucleophile,
+  findCumulatedDoubleBonds,
+  findHeteroatomHalogens,
+  findNitrogenChains,
+  findNitrogenOxygenBonds,
+  findPeroxides,
+} from './heteroatom-bonds.js';
+import {
+  findAcylHalidesWithNucleophile,
+  findAldehydesWithAmine,
+  findBetaKetoAcids,
+  findCarbamicAcids,
+  findCarbonicHalfEsters,
+  findIsocyanatesWithNucleophile,
 } from './incompatible-groups.js';
 import {
-  findAllenesInSmallRings, findAlkynesInMediumRings, findAlkynesInSmallRings, findBridgedArenes, findFourMemberedRings, findFusedSmallRings, findHeterocumulenesInSmallRings, findSmallRingAlkenes,
-  findThreeMemberedRings, findTwistedRingAlkenes,
+  findAllenesInSmallRings,
+  findAlkynesInMediumRings,
+  findAlkynesInSmallRings,
+  findBridgedArenes,
+  findFourMemberedRings,
+  findFusedSmallRings,
+  findHeterocumulenesInSmallRings,
+  findSmallRingAlkenes,
+  findThreeMemberedRings,
+  findTwistedRingAlkenes,
 } from './ring-geometry.js';
 import {
-  findEnamines, findEnethiols, findEnols, findImidicAcids, findNitrosoWithHydrogens, findThioaldehydes, findThioketones, findUnsubstitutedImines,
+  findEnamines,
+  findEnethiols,
+  findEnols,
+  findImidicAcids,
+  findNitrosoWithHydrogens,
+  findThioaldehydes,
+  findThioketones,
+  findUnsubstitutedImines,
 } from './unstable-tautomers.js';
 
 /** Counts the occurrences of a rule in a structure, and reports their atoms when asked. */
@@ -91,7 +122,10 @@ export function selectRules(evidence: EvidenceDocument): { readonly hard: readon
 function hasEnough(counts: FormulaCounts, needs: Needs): boolean {
   const halogens = countOf(counts, 'F') + countOf(counts, 'Cl') + countOf(counts, 'Br') + countOf(counts, 'I');
   return (
-    countOf(counts, 'C') >= (needs.C ?? 0) && countOf(counts, 'N') >= (needs.N ?? 0) && countOf(counts, 'O') >= (needs.O ?? 0) &&
-    countOf(counts, 'S') >= (needs.S ?? 0) && halogens >= (needs.X ?? 0)
+    countOf(counts, 'C') >= (needs.C ?? 0) &&
+    countOf(counts, 'N') >= (needs.N ?? 0) &&
+    countOf(counts, 'O') >= (needs.O ?? 0) &&
+    countOf(counts, 'S') >= (needs.S ?? 0) &&
+    halogens >= (needs.X ?? 0)
   );
 }

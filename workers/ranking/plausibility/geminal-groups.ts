@@ -1,6 +1,17 @@
 import type { StructureAnalysis } from '../../graph/analysis.js';
 import {
-  CARBON, findNeighbour, hasAcceptor, isAcylated, isHalogen, isHeavyHalogen, isHydroxyl, isSaturatedCarbon, neighbour, NITROGEN, orderOf, OXYGEN,
+  CARBON,
+  findNeighbour,
+  hasAcceptor,
+  isAcylated,
+  isHalogen,
+  isHeavyHalogen,
+  isHydroxyl,
+  isSaturatedCarbon,
+  neighbour,
+  NITROGEN,
+  orderOf,
+  OXYGEN,
   type OccurrenceReport,
 } from './atom-queries.js';
 

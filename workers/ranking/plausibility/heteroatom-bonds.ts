@@ -1,7 +1,5 @@
 import type { StructureAnalysis } from '../../graph/analysis.js';
-import {
-  CARBON, findNeighbour, isHalogen, neighbour, NITROGEN, orderOf, OXYGEN, SULFUR, type OccurrenceReport,
-} from './atom-queries.js';
+import { CARBON, findNeighbour, isHalogen, neighbour, NITROGEN, orderOf, OXYGEN, SULFUR, type OccurrenceReport } from './atom-queries.js';
 
 /** O–O single bonds outside aromatic rings. */
 export function findPeroxides(s: StructureAnalysis, report: OccurrenceReport): number {

@@ -1,6 +1,16 @@
 import type { StructureAnalysis } from '../../graph/analysis.js';
 import {
-  CARBON, countNeighbours, findNeighbour, isCarbonyl, isHalogen, isHydroxyl, neighbour, NITROGEN, orderOf, OXYGEN, type OccurrenceReport,
+  CARBON,
+  countNeighbours,
+  findNeighbour,
+  isCarbonyl,
+  isHalogen,
+  isHydroxyl,
+  neighbour,
+  NITROGEN,
+  orderOf,
+  OXYGEN,
+  type OccurrenceReport,
 } from './atom-queries.js';
 
 /** OH, or N–H that still is a nucleophile: an amine, not an amide and not an aromatic ring nitrogen. */
@@ -13,7 +23,14 @@ function findNucleophile(s: StructureAnalysis): number {
 
 function isAmineWithHydrogen(s: StructureAnalysis, atom: number, least: number): boolean {
   const { atomicNumbers, hydrogens, charges } = s.graph;
-  if (atomicNumbers[atom] !== NITROGEN || hydrogens[atom] < least || charges[atom] !== 0 || s.aromaticAtoms[atom] === 1 || s.hybridisation[atom] !== 3) return false;
+  if (
+    atomicNumbers[atom] !== NITROGEN ||
+    hydrogens[atom] < least ||
+    charges[atom] !== 0 ||
+    s.aromaticAtoms[atom] === 1 ||
+    s.hybridisation[atom] !== 3
+  )
+    return false;
   for (let k = 0; k < s.degrees[atom]; k++) {
     const b = neighbour(s, atom, k);
     if (atomicNumbers[b] !== CARBON || isCarbonyl(s, b) || findNeighbour(s, b, NITROGEN, 2) !== -1) return false;
@@ -21,7 +38,12 @@ function isAmineWithHydrogen(s: StructureAnalysis, atom: number, least: number):
   return s.degrees[atom] > 0;
 }
 
-function countPairs(s: StructureAnalysis, isElectrophile: (s: StructureAnalysis, atom: number) => boolean, nucleophile: number, report: OccurrenceReport): number {
+function countPairs(
+  s: StructureAnalysis,
+  isElectrophile: (s: StructureAnalysis, atom: number) => boolean,
+  nucleophile: number,
+  report: OccurrenceReport,
+): number {
   if (nucleophile === -1) return 0;
   for (let a = 0; a < s.graph.atomCount; a++) {
     if (!isElectrophile(s, a)) continue;
@@ -39,7 +61,8 @@ function isAcylHalideCarbon(s: StructureAnalysis, atom: number): boolean {
 }
 const isAldehydeCarbon = (s: StructureAnalysis, atom: number): boolean =>
   isCarbonyl(s, atom) && s.graph.hydrogens[atom] >= 1 && s.degrees[atom] === 1 + countNeighbours(s, atom, CARBON, 1);
-const isIsocyanateCarbon = (s: StructureAnalysis, atom: number): boolean => isCarbonyl(s, atom) && findNeighbour(s, atom, NITROGEN, 2) !== -1;
+const isIsocyanateCarbon = (s: StructureAnalysis, atom: number): boolean =>
+  isCarbonyl(s, atom) && findNeighbour(s, atom, NITROGEN, 2) !== -1;
 
 export const findAcylHalidesWithNucleophile = (s: StructureAnalysis, report: OccurrenceReport): number =>
   countPairs(s, isAcylHalideCarbon, findNucleophile(s), report);

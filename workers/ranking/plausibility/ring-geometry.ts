@@ -39,7 +39,8 @@ export function findAlkynesInMediumRings(s: StructureAnalysis, report: Occurrenc
   const n = s.graph.atomCount;
   let count = 0;
   for (let a = 0; a < n; a++) {
-    if (s.ringBondCounts[a] === 0 || s.smallestRingOfAtom[a] < SMALLEST_ALKYNE_RING || s.smallestRingOfAtom[a] >= UNSTRAINED_ALKYNE_RING) continue;
+    if (s.ringBondCounts[a] === 0 || s.smallestRingOfAtom[a] < SMALLEST_ALKYNE_RING || s.smallestRingOfAtom[a] >= UNSTRAINED_ALKYNE_RING)
+      continue;
     const b = findNeighbour(s, a, 0, 3);
     if (b < a) continue;
     count++;

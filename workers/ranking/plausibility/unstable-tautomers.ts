@@ -1,6 +1,15 @@
 import type { StructureAnalysis } from '../../graph/analysis.js';
 import {
-  CARBON, findNeighbour, hasAcceptor, isAcylated, neighbour, NITROGEN, orderOf, OXYGEN, SULFUR, type OccurrenceReport,
+  CARBON,
+  findNeighbour,
+  hasAcceptor,
+  isAcylated,
+  neighbour,
+  NITROGEN,
+  orderOf,
+  OXYGEN,
+  SULFUR,
+  type OccurrenceReport,
 } from './atom-queries.js';
 
 /**
