@@ -3,6 +3,7 @@ import { countOf, parseFormula } from '../../shared/chemistry/formula.js';
 import { parseSmiles } from '../../shared/chemistry/smiles.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { InputIssue } from '../../shared/schemas/problem.js';
+import { FILL_STRIDE } from './fill.js';
 import { createUnitKind, type UnitKind } from './units.js';
 
 /** Heavy atoms outside units, of one element. */
@@ -63,6 +64,9 @@ export function createProblem(evidence: EvidenceDocument): SearchProblem {
   if (!parsed.ok) throw new ProblemError([{ path: 'formula', message: parsed.message }]);
   const remaining = new Map(parsed.counts);
   const heavyAtomCount = [...remaining].reduce((sum, [symbol, count]) => sum + (symbol === 'H' ? 0 : count), 0);
+  if (heavyAtomCount > FILL_STRIDE) {
+    throw new ProblemError([{ path: 'formula', message: `${heavyAtomCount} heavy atoms; expected at most ${FILL_STRIDE}` }]);
+  }
   const units: UnitKind[] = [];
   const demands: AtomDemand[] = [];
   const issues: InputIssue[] = [];
