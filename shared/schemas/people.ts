@@ -8,7 +8,10 @@ export const teamRole = z.enum(TEAM_ROLES);
 export const installationResponse = z.object({
   demoAccounts: z.array(z.object({ email: z.string(), name: z.string(), role: z.enum([...TEAM_ROLES, 'admin']), password: z.string() })),
 });
-export const signInRequest = z.object({ email: emailAddress, password: z.string({ error: 'expected your password' }).min(1, { error: 'expected your password' }).max(200) });
+export const signInRequest = z.object({
+  email: emailAddress,
+  password: z.string({ error: 'expected your password' }).min(1, { error: 'expected your password' }).max(200),
+});
 export const meResponse = z.object({
   user: z.object({ id, name: z.string(), email: z.string(), isAdmin: z.boolean() }),
   memberships: z.array(
