@@ -101,10 +101,10 @@ export function SignalTable({ nucleus, rows, litKeys, onPoint }: SignalTableProp
             <Head className="text-right">
               <span className="text-indigo">Observed δ</span>
             </Head>
-            <Head>{isProton ? 'H, shape' : 'Type'}</Head>
             <Head className="text-right">Predicted δ</Head>
-            <Head>{isProton ? 'H, shape' : 'Type'}</Head>
             <Head className="text-right">Δ</Head>
+            <Head>{isProton ? 'Observed shape' : 'Observed type'}</Head>
+            <Head>{isProton ? 'Predicted shape' : 'Predicted type'}</Head>
             <Head>Atoms</Head>
             <Head className="hidden tablet:table-cell">Remark</Head>
             <Head className="hidden wide:table-cell">Basis</Head>
@@ -127,7 +127,6 @@ export function SignalTable({ nucleus, rows, litKeys, onPoint }: SignalTableProp
               <td className="h-7 px-2 text-right font-semibold text-indigo">
                 {row.observed === null ? <span className="font-normal text-faded">none</span> : shiftText(row.observed.shift, nucleus)}
               </td>
-              <td className="px-2 whitespace-nowrap">{row.observed === null ? null : <Count nucleus={nucleus} signal={row.observed} />}</td>
               <td className="px-2 text-right">
                 {row.predicted.length === 0 ? (
                   <span className="text-faded">none</span>
@@ -135,13 +134,14 @@ export function SignalTable({ nucleus, rows, litKeys, onPoint }: SignalTableProp
                   <PredictedShift signals={row.predicted} nucleus={nucleus} />
                 )}
               </td>
+              <td className="px-2 text-right">
+                <Deviation row={row} />
+              </td>
+              <td className="px-2 whitespace-nowrap">{row.observed === null ? null : <Count nucleus={nucleus} signal={row.observed} />}</td>
               <td className="px-2 text-faded">
                 {row.predicted.map((signal) => (
                   <Count key={signal.index} nucleus={nucleus} signal={signal} />
                 ))}
-              </td>
-              <td className="px-2 text-right">
-                <Deviation row={row} />
               </td>
               <td className="px-2 whitespace-nowrap">{atomNumbersText(row.atoms)}</td>
               <td className="hidden px-2 tablet:table-cell">{row.remark}</td>
