@@ -3,7 +3,6 @@ import { callEndpoint, type EndpointResponse } from '../../../lib/api-client';
 import { runSetupKeys } from './keys';
 
 export type OwnQuota = EndpointResponse<'readOwnQuota'>;
-export type Estimate = EndpointResponse<'estimateRun'>;
 
 /** Own quota and what is used of it; asked anew whenever the dialog opens. */
 export const ownQuotaQuery = (teamId: string) =>
