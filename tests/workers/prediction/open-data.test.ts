@@ -4,9 +4,10 @@ import { readNmrData } from '../../support/nmr-data.js';
 import { scorePredictor } from '../../support/prediction-errors.js';
 import { summarise } from '../../support/sorted-matching.js';
 
-// Open data of nmrshiftdb2 beside the checkout, not part of it. Fold 0 was never fitted on.
+// Open data of nmrshiftdb2 beside the checkout, not part of it. Fold 0 was never fitted on. All compounds, not the ranking cases:
+// those were chosen with the help of two quick predictors and are tamer than what the spreads are meant for.
 it('predicts compounds that were not fitted, with spreads that hold', ({ skip }) => {
-  const records = readNmrData('cases-train.jsonl.gz');
+  const records = readNmrData('train.jsonl.gz');
   if (records === null) skip('the open NMR data are not beside this checkout');
   const heldOut = records!.filter((record) => record.fold === 0);
   const fitted = scorePredictor(heldOut, createShiftPredictor());
