@@ -81,7 +81,7 @@ const FRAGMENT_PROBLEMS: ReadonlyArray<readonly [string, readonly { smiles: stri
   ['C8H10O2', [{ smiles: '*c1ccccc1*' }, { smiles: '*OC' }]],
   ['C8H8O2', [{ smiles: '*c1ccccc1' }, { smiles: '*C(=O)O*' }]],
   ['C9H10O', [{ smiles: '*c1ccccc1' }, { smiles: '*C(=O)*' }]],
-  ['C8H9NO', [{ smiles: '*c1ccc(*)cc1' }, { smiles: '*NC(=O)*' }]],
+  ['C8H9NO', [{ smiles: '*c1ccc(*)cc1' }, { smiles: '*C(N)=O' }]],
   ['C8H10O', [{ smiles: '*c1ccccc1' }, { smiles: '*C' }]],
   ['C6H5NO2', [{ smiles: '*c1ccncc1' }]],
   ['C8H7N', [{ smiles: '*c1ccccc1' }, { smiles: '*C#N' }]],
