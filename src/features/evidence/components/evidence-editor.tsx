@@ -129,16 +129,18 @@ export function EvidenceEditor({ unknown, revision }: { unknown: UnknownDetail; 
               <p>{errorMessage(save.error)} Your edit is kept in this browser.</p>
             </Notice>
           ) : null}
-          <div className="flex flex-wrap items-end gap-3">
-            <TextInput
-              label="Comment on this revision"
-              isLabelHidden
-              placeholder="What changed and why (optional)"
-              className="min-w-0 flex-1 basis-60"
-              maxLength={500}
-              value={edit.comment}
-              onChange={(event) => setEdit((current) => ({ ...current, comment: event.target.value }))}
-            />
+          <div className="flex flex-wrap items-end justify-end gap-3">
+            {isChanged ? (
+              <TextInput
+                label="Comment on this revision"
+                isLabelHidden
+                placeholder="What changed and why (optional)"
+                className="min-w-0 flex-1 basis-60"
+                maxLength={500}
+                value={edit.comment}
+                onChange={(event) => setEdit((current) => ({ ...current, comment: event.target.value }))}
+              />
+            ) : null}
             {isChanged ? (
               <Button
                 variant="quiet"
