@@ -47,6 +47,7 @@ export async function startServer({ config, shutdown, announce }: StartOptions):
 
   const compute = createComputePool({
     threads: config.computeThreads,
+    isYielding: true,
     onFault: (error) => logger.error({ err: error }, 'compute thread failed'),
   });
   shutdown.add('compute threads', () => compute.close());

@@ -15,6 +15,9 @@ import { evaluatorFor, searchFor } from './jobs/search-cache.js';
 import { runShard } from './jobs/shard.js';
 import { predictSpectra } from './prediction/predict-spectra.js';
 import { finishRanking } from './ranking/finish.js';
+import { yieldToServer } from './yield-to-server.js';
+
+if (process.env.ISOLOOM_YIELDING_THREADS === '1') yieldToServer();
 
 function handler<K extends JobName>(work: (input: JobContract[K]['input']) => JobContract[K]['output']) {
   return (input: JobContract[K]['input']): JobResult<JobContract[K]['output']> => {

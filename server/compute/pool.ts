@@ -6,6 +6,8 @@ import { ComputeBusy, type ComputeService, ComputeFailure, type JobOptions, Work
 export interface PoolOptions {
   /** Threads that work on shards. Default: one per core. */
   readonly threads?: number;
+  /** Threads give way to the rest of the machine: for a server that answers people meanwhile. */
+  readonly isYielding?: boolean;
   /** URL of the worker entry. Default: workers/main beside the server. */
   readonly workerUrl?: URL;
   /** Called for faults of a thread that belong to no job, so that they reach the log. */
@@ -25,12 +27,14 @@ export function createComputePool(options: PoolOptions = {}): ComputeService {
   const threadCount = Math.max(1, options.threads ?? availableParallelism());
   const onFault = options.onFault ?? (() => undefined);
   const shards = new JobThreads({
+    isYielding: options.isYielding ?? false,
     workerUrl: options.workerUrl ?? defaultWorkerUrl(),
     threads: threadCount,
     maxQueue: MAX_WAITING_JOBS,
     onFault,
   });
   const interactive = new JobThreads({
+    isYielding: false,
     workerUrl: options.workerUrl ?? defaultWorkerUrl(),
     threads: 1,
     maxQueue: MAX_WAITING_INTERACTIVE_JOBS,
@@ -56,7 +60,7 @@ class JobThreads {
   readonly #piscina: Piscina;
   readonly #pending = new Set<(error: Error) => void>();
 
-  constructor(options: { workerUrl: URL; threads: number; maxQueue: number; onFault: (error: Error) => void }) {
+  constructor(options: { workerUrl: URL; threads: number; maxQueue: number; isYielding: boolean; onFault: (error: Error) => void }) {
     this.#piscina = new Piscina({
       filename: options.workerUrl.href,
       minThreads: 0,
@@ -65,6 +69,7 @@ class JobThreads {
       idleTimeout: IDLE_THREAD_MS,
       resourceLimits: { maxOldGenerationSizeMb: WORKER_HEAP_MEGABYTES },
       // The built server needs no loader; from TypeScript sources every thread needs its own.
+      env: { ...process.env, ...(options.isYielding ? { ISOLOOM_YIELDING_THREADS: '1' } : {}) },
       execArgv: options.workerUrl.pathname.endsWith('.ts') ? ['--import', new URL('./typescript-loader.mjs', import.meta.url).href] : [],
     });
     this.#piscina.on('error', (error: Error) => {
