@@ -1,15 +1,12 @@
 import type { RunSettings } from '../../../shared/jobs/contract.js';
 import type { EvidenceDocument } from '../../../shared/schemas/evidence.js';
 import type { ComputeService } from '../../compute/compute-service.js';
-import { runBatch } from '../batch.js';
 import type { CliContext } from '../cli-context.js';
-import { EXIT, type ExitCode } from '../cli-error.js';
+import type { ExitCode } from '../cli-error.js';
+import { runEvidenceCommand } from '../evidence-command.js';
 import { runLocally, type LocalProgress, type LocalRun } from '../local-run.js';
 import { MAX_SECONDS, MAX_THREADS, OptionReader, type RawOptions } from '../options.js';
-import { createProgressLine } from '../progress-line.js';
-import { evidenceOfLine, kindOfInput, passedThrough, readEvidenceArgument } from '../read-input.js';
 import { countOf, describeFunnel, formatSeconds, groupDigits } from '../text-output.js';
-import { withWarmCompute } from '../with-compute.js';
 
 /** SMILES listed at most; every one is held in memory until the end. */
 const DEFAULT_LISTED = 100_000;
@@ -34,33 +31,15 @@ export async function enumerateCommand(argument: string, raw: RawOptions, contex
     };
     return runLocally(compute, evidence, settings, listed, context.interrupt, onProgress);
   };
-  if (kindOfInput(argument) === 'batch') {
-    return withWarmCompute(context, threads, (compute) =>
-      runBatch(
-        argument,
-        context,
-        async (line) => {
-          const result = await run(compute, evidenceOfLine(line).evidence);
-          return { document: { ...passedThrough(line), ...enumerationDocument(result) }, exitCode: exitCodeOf(result) };
-        },
-        passedThrough,
-        maxSeconds === undefined ? compute.threadCount : 1,
-      ),
-    );
-  }
-  const { evidence, notes } = await readEvidenceArgument(argument);
-  const line = createProgressLine(context);
-  const result = await withWarmCompute(context, threads, (compute) => run(compute, evidence, line.show));
-  line.clear();
-  if (options.has('json')) await context.write(`${JSON.stringify(enumerationDocument(result))}\n`);
-  else {
-    for (const note of notes) context.tell(`note: ${note}\n`);
-    await printEnumeration(result, evidence, { wantsSmiles, wantsCountOnly: options.has('count') }, context);
-  }
-  return exitCodeOf(result);
+  return runEvidenceCommand(argument, context, {
+    threads,
+    maxSeconds,
+    wantsJson: options.has('json'),
+    run,
+    toDocument: enumerationDocument,
+    print: (result, evidence) => printEnumeration(result, evidence, { wantsSmiles, wantsCountOnly: options.has('count') }, context),
+  });
 }
-
-const exitCodeOf = ({ isComplete }: LocalRun): ExitCode => (isComplete ? EXIT.done : EXIT.stopped);
 
 function enumerationDocument({ survivorCount, multigraphCount, isComplete, funnel, seconds, candidates }: LocalRun): object {
   return { count: survivorCount, multigraphCount, complete: isComplete, funnel, seconds, smiles: candidates.map(({ smiles }) => smiles) };

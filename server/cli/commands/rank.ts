@@ -1,15 +1,12 @@
 import type { RankedCandidate, RunSettings } from '../../../shared/jobs/contract.js';
 import type { EvidenceDocument } from '../../../shared/schemas/evidence.js';
 import type { ComputeService } from '../../compute/compute-service.js';
-import { runBatch } from '../batch.js';
 import type { CliContext } from '../cli-context.js';
-import { EXIT, type ExitCode } from '../cli-error.js';
+import type { ExitCode } from '../cli-error.js';
+import { runEvidenceCommand } from '../evidence-command.js';
 import { runLocally, type LocalProgress, type LocalRun } from '../local-run.js';
 import { MAX_SECONDS, MAX_THREADS, OptionReader, type RawOptions } from '../options.js';
-import { createProgressLine } from '../progress-line.js';
-import { evidenceOfLine, kindOfInput, passedThrough, readEvidenceArgument } from '../read-input.js';
 import { alignColumns, countOf, describeFunnel, formatSeconds } from '../text-output.js';
-import { withWarmCompute } from '../with-compute.js';
 
 const DEFAULT_TOP = 20;
 const MAX_TOP = 10_000;
@@ -27,36 +24,18 @@ export async function rankCommand(argument: string, raw: RawOptions, context: Cl
     const settings: RunSettings = { keep: top, maxSeconds: maxSeconds ?? evidence.options.maxSeconds, mode: 'rank' };
     return runLocally(compute, evidence, settings, top, context.interrupt, onProgress);
   };
-  if (kindOfInput(argument) === 'batch') {
-    return withWarmCompute(context, threads, (compute) =>
-      runBatch(
-        argument,
-        context,
-        async (line) => {
-          const result = await run(compute, evidenceOfLine(line).evidence);
-          return { document: { ...passedThrough(line), ...rankingDocument(result) }, exitCode: exitCodeOf(result) };
-        },
-        passedThrough,
-        // Documents side by side fill the gaps in which one of them has nothing for all threads; a time limit each has to
-        // be the document's own.
-        maxSeconds === undefined ? compute.threadCount : 1,
-      ),
-    );
-  }
-  const { evidence, notes } = await readEvidenceArgument(argument);
-  const line = createProgressLine(context);
-  const result = await withWarmCompute(context, threads, (compute) => run(compute, evidence, line.show));
-  line.clear();
-  if (options.has('json')) await context.write(`${JSON.stringify(rankingDocument(result))}\n`);
-  else {
-    for (const note of notes) context.tell(`note: ${note}\n`);
-    await context.write(describeRanking(result, evidence));
-    context.tell('Best of this list under this model, not an identification: confirm against an authentic standard.\n');
-  }
-  return exitCodeOf(result);
+  return runEvidenceCommand(argument, context, {
+    threads,
+    maxSeconds,
+    wantsJson: options.has('json'),
+    run,
+    toDocument: rankingDocument,
+    print: async (result, evidence) => {
+      await context.write(describeRanking(result, evidence));
+      context.tell('Best of this list under this model, not an identification: confirm against an authentic standard.\n');
+    },
+  });
 }
-
-const exitCodeOf = ({ isComplete }: LocalRun): ExitCode => (isComplete ? EXIT.done : EXIT.stopped);
 
 function rankingDocument({ survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun): object {
   return {
