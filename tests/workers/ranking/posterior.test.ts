@@ -28,7 +28,7 @@ describe('posterior', () => {
     expect(Math.exp(D) / 1.18e-17).toBeCloseTo(1, 2);
   });
 
-  it('gives the stated probabilities for a good list and for a bad one (SCIENCE.md 8.3, priors 0.45/0.45/0.10)', () => {
+  it('gives the stated probabilities for a list that fits and for one that does not (SCIENCE.md 8.3, priors 0.45/0.45/0.10)', () => {
     const uniform = 5 * Math.log(1 / 220);
     const regions = 5 * Math.log(1 / 40);
     const good = posterior(uniform, A, B);
