@@ -39,7 +39,7 @@ function handler<K extends JobName>(work: (input: JobContract[K]['input']) => Jo
 export const plan = handler<'plan'>(({ evidence, settings, targetShards }) => {
   // Made here although the shards use it, so that an unreadable pattern is bad input of the run, not a fault of a shard.
   evaluatorFor(evidence, settings);
-  return { shards: planShards(searchFor(evidence), targetShards), notes: [] };
+  return { shards: planShards(searchFor(evidence, settings.mode), targetShards), notes: [] };
 });
 
 export const shard = handler<'shard'>(runShard);
@@ -55,9 +55,9 @@ export const predict = handler<'predict'>(({ smiles, solvent }) => {
   return { ...predictSpectra(read.graph, solvent), smiles, notes: read.notes };
 });
 
-export const estimate = handler<'estimate'>(({ evidence, probes, seed, maxSeconds }) => {
+export const estimate = handler<'estimate'>(({ evidence, mode, probes, seed, maxSeconds }) => {
   const startedMs = performance.now();
-  const result = estimateSearch(searchFor(evidence), probes, seed, maxSeconds, () => performance.now());
+  const result = estimateSearch(searchFor(evidence, mode), probes, seed, maxSeconds, () => performance.now());
   return {
     estimate: result.estimate,
     low: result.low,

@@ -16,5 +16,5 @@ export async function estimateRun(
   input: z.output<typeof runStartRequest>,
 ): Promise<z.input<typeof estimateResponse>> {
   const { evidence } = await chooseRevision(unknown, input.revisionId);
-  return await ask(context, 'estimate', { evidence, probes: PROBES, seed: SEED, maxSeconds: MAX_SECONDS }, 'evidence.');
+  return await ask(context, 'estimate', { evidence, mode: 'rank', probes: PROBES, seed: SEED, maxSeconds: MAX_SECONDS }, 'evidence.');
 }

@@ -59,12 +59,23 @@ export interface ShardCandidate {
   readonly terms: ScoreTerms;
 }
 
+/** Branches of the search tree that a constraint cut while structures were being built. */
+export interface BranchCut {
+  readonly reason: string;
+  /** One sentence for people. */
+  readonly text: string;
+  /** Branches, not constitutions: nobody knows how many each would have held. */
+  readonly count: number;
+}
+
 export interface ShardResult {
   readonly index: number;
-  /** Constitutions before any filter, resonance forms merged when that is on. */
+  /** Constitutions that were built, before any filter, resonance forms merged when that is on. */
   readonly constitutionCount: number;
   /** The same without merging. */
   readonly multigraphCount: number;
+  /** Absent in results stored before branches were counted. */
+  readonly cuts?: readonly BranchCut[];
   readonly funnel: Funnel;
   readonly kept: readonly ShardCandidate[];
   /** log Σ exp(score) over all survivors of this shard, −Infinity written as null. */
@@ -214,7 +225,7 @@ export interface JobContract {
   explain: { input: { evidence: EvidenceDocument; settings: RunSettings; smiles: string }; output: Explanation };
   predict: { input: { smiles: string; solvent: string }; output: PredictedSpectra & { smiles: string; notes: readonly string[] } };
   estimate: {
-    input: { evidence: EvidenceDocument; probes: number; seed: number; maxSeconds: number };
+    input: { evidence: EvidenceDocument; mode: RunSettings['mode']; probes: number; seed: number; maxSeconds: number };
     output: { estimate: number; low: number; high: number; cpuSeconds: number; seconds: number };
   };
   /** Order of the answer = order of the question. */

@@ -41,11 +41,27 @@ export const requiredFragment = z.strictObject({
 });
 export const excludedFragment = z.strictObject({ smiles: smilesText, label: z.string().max(80).optional() });
 
+export const HYBRIDISATIONS = ['sp3', 'sp2', 'sp'] as const;
+/**
+ * What a 13C signal says of its carbon beside the attached hydrogens. sp3: single bonds only; sp2: one double bond,
+ * aromatic ones included; sp: a triple bond or two double bonds. heteroNeighbours: bonded atoms other than C and H.
+ */
+export const carbonWindow = z.strictObject({
+  hybridisations: z.array(z.enum(HYBRIDISATIONS)).min(1, { error: 'expected at least one of sp3, sp2, sp' }).max(3),
+  heteroNeighbours: z
+    .strictObject({ min: wholeBetween(0, 4).default(0), max: wholeBetween(0, 4).default(4) })
+    .refine(({ min, max }) => max >= min, { error: 'expected max to be at least min', path: ['max'] })
+    .prefault({}),
+});
+export type CarbonWindow = z.infer<typeof carbonWindow>;
+
 /** One 13C resonance. shift in ppm; hydrogens = attached H of each such carbon; count = carbons under it, absent = not known. */
 export const carbonSignal = z.strictObject({
   shift: between(-50, 300, ' ppm'),
   hydrogens: wholeBetween(0, 3).optional(),
   count: wholeBetween(1, 40).optional(),
+  /** Absent: follows from the shift where `options.shiftWindows` holds. null: no window for this signal. */
+  window: carbonWindow.nullable().optional(),
 });
 
 export const MULTIPLICITY_PATTERN = /^(br )?(s|m|br|([dtq]|quint|sext|sept|oct|non){1,4})$/;
@@ -89,6 +105,12 @@ export const correlations = z.strictObject({
     .array(z.tuple([protonShift, carbonShift]))
     .max(EVIDENCE_LIMITS.correlations)
     .default([]),
+  /** Most bonds between the proton and the carbon of an HMBC pair. */
+  hmbcBonds: wholeBetween(2, 5).default(3),
+  /** Most bonds between the protons of a COSY pair. */
+  cosyBonds: wholeBetween(2, 5).default(3),
+  /** How many COSY and HMBC pairs together may span more bonds than that. */
+  exceptions: wholeBetween(0, 50).default(0),
 });
 
 export const ringSizeLimits = z
@@ -97,6 +119,12 @@ export const ringSizeLimits = z
     max: wholeBetween(3, 40).nullable().default(null),
   })
   .refine((sizes) => sizes.max === null || sizes.max >= sizes.min, { error: 'expected max to be at least min', path: ['max'] });
+
+/**
+ * Groups with a higher or charge-separated valence that the search can form by itself; the atoms as in a fragment.
+ */
+export const VALENCE_GROUPS = ['nitro', 'nOxide', 'azide', 'diazo', 'isocyanide', 'sulfoxide', 'sulfone', 'phosphorusOxide'] as const;
+export type ValenceGroup = (typeof VALENCE_GROUPS)[number];
 
 export const evidenceOptions = z.strictObject({
   solvent: z.string().trim().max(60).default('CDCl3'),
@@ -111,6 +139,13 @@ export const evidenceOptions = z.strictObject({
    * from the molecule; quaternary carbons may be missing either way. `partial`: signals are only a lower bound.
    */
   carbonList: z.enum(['complete', 'partial']).default('complete'),
+  /**
+   * Groups of a higher or charge-separated valence that may be formed. Absent: all of them in a ranking, none when
+   * constitutions are only counted or listed. What fragments bring is always allowed.
+   */
+  valenceGroups: z.array(z.enum(VALENCE_GROUPS)).max(VALENCE_GROUPS.length).optional(),
+  /** Whether 13C shifts without a window of their own get one. Absent: yes in a ranking, no when counting or listing. */
+  shiftWindows: z.boolean().optional(),
   keep: wholeBetween(1, EVIDENCE_LIMITS.keep).default(1000),
   maxSeconds: between(0.1, EVIDENCE_LIMITS.seconds, ' s').nullable().default(null),
 });

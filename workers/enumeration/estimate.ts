@@ -1,7 +1,8 @@
 import { createLayout } from './distributions.js';
 import { fill } from './fill.js';
 import { createLeafJudge } from './leaf-judge.js';
-import type { Search } from './search.js';
+import { createPartialChecks } from './partial-checks.js';
+import { rowEvents, type Search } from './search.js';
 
 /** Size of a search with a 95 % interval from the spread of the probes. */
 export interface SearchEstimate {
@@ -75,6 +76,7 @@ export function estimateSearch(search: Search, maxProbes: number, seed: number, 
 function probe(search: Search, d: number, random: () => number): { weight: number; visited: number } {
   const layout = createLayout(search.problem, search.distributions[d]);
   const judge = createLeafJudge(search.problem, layout);
+  const events = rowEvents(createPartialChecks(search.problem, layout), {});
   let prefix: number[] = [];
   let factor = 1;
   let weight = 0;
@@ -84,6 +86,7 @@ function probe(search: Search, d: number, random: () => number): { weight: numbe
     let children = 0;
     let chosen: number[] | null = null;
     fill(layout, prefix, rows, {
+      ...events,
       onLeaf(filled) {
         visited++;
         weight += factor * judge(filled).graphs.length;

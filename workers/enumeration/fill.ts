@@ -6,6 +6,8 @@ export interface FillEvents {
   onLeaf(bondOrders: Uint8Array): boolean;
   /** Rows [0, row) are filled and `stopRow` was reached: entries in filling order, fresh array. */
   onPrefix?(prefix: number[]): void;
+  /** Rows [0, known) are complete; false cuts everything below. Asked before the canonicity test. */
+  onRow?(bondOrders: Uint8Array, known: number): boolean;
   /** Called every few thousand rows; true ends the search. */
   shouldStop(): boolean;
 }
@@ -340,6 +342,7 @@ function finishRow(i: number, tight: number): void {
     finishMatrix(i);
     return;
   }
+  if (events.onRow !== undefined && !events.onRow(a, i + 1)) return;
   if ((i >= tied || stabiliser.length > 1) && !isLargest(i, i + 1, i + 1)) return;
   startRow(i + 1);
 }

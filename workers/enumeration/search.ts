@@ -2,8 +2,9 @@ import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { SearchNode, ShardSpec } from '../../shared/jobs/contract.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { createLayout, listDistributions, type Distribution, type SearchLayout } from './distributions.js';
-import { fill } from './fill.js';
+import { fill, type FillEvents } from './fill.js';
 import { createLeafJudge } from './leaf-judge.js';
+import { createPartialChecks, type PartialCheck } from './partial-checks.js';
 import { createProblem, type SearchProblem } from './problem.js';
 
 /** A search that is set up: everything that all shards of a run share. Made anew, and equal, in each worker. */
@@ -20,6 +21,8 @@ export function createSearch(evidence: EvidenceDocument): Search {
 
 /** What a shard reports while it runs. Graph arrays are reused: copy what you keep. */
 export interface ConstitutionSink {
+  /** A branch was cut by a constraint while structures were being built. */
+  onCut?(check: PartialCheck): void;
   onConstitution(graph: MolecularGraph): void;
   onMultigraphs(count: number): void;
   /** Called every few thousand rows; true ends the shard early. */
@@ -42,6 +45,7 @@ function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink)
     const layout = createLayout(search.problem, search.distributions[d]);
     const judge = createLeafJudge(search.problem, layout);
     const complete = fill(layout, node.prefix, 0, {
+      ...rowEvents(createPartialChecks(search.problem, layout), sink),
       onLeaf(filled) {
         const verdict = judge(filled);
         if (verdict.multigraphs !== 0) sink.onMultigraphs(verdict.multigraphs);
@@ -53,6 +57,21 @@ function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink)
     if (!complete) return false;
   }
   return true;
+}
+
+/** The checks of a layout as an event of the fill; none at all without checks, so that plain searches pay nothing. */
+export function rowEvents(checks: readonly PartialCheck[], sink: Pick<ConstitutionSink, 'onCut'>): Pick<FillEvents, 'onRow'> {
+  if (checks.length === 0) return {};
+  return {
+    onRow(filled, known) {
+      for (const check of checks) {
+        if (check.test(filled, known)) continue;
+        sink.onCut?.(check);
+        return false;
+      }
+      return true;
+    },
+  };
 }
 
 /** Rows that a plan splits at most: deeper prefixes cost more to make than they spread. */
@@ -93,6 +112,7 @@ function expandNode(search: Search, node: SearchNode, rows: number): SearchNode[
   const prefixes: number[][] = [];
   let leaves = 0;
   fill(layout, node.prefix, rows, {
+    ...rowEvents(createPartialChecks(search.problem, layout), {}),
     onLeaf: () => {
       leaves++;
       return false;

@@ -1,5 +1,6 @@
 import { formatHill, formulaCounts, parseFormula } from '../../shared/chemistry/formula.js';
 import { elementOf } from '../../shared/chemistry/elements.js';
+import { resolveOptions } from '../../shared/chemistry/resolve-options.js';
 import { compositionOf, parseSmiles } from '../../shared/chemistry/smiles.js';
 import type { Explanation, JobContract } from '../../shared/jobs/contract.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
@@ -30,10 +31,10 @@ export function explainStructure({ evidence, settings, smiles }: JobContract['ex
     return { kind: 'otherFormula', formula, expected: formatHill(expected.counts), smiles };
   }
   const key = constitutionKey(graph, evidence.options.mergeResonanceForms);
-  const { problem } = searchFor(evidence);
+  const { problem } = searchFor(evidence, settings.mode);
   const missing = [...fragmentReasons(graph, problem), ...valenceReasons(graph, problem)];
   if (missing.length > 0) return { kind: 'rejected', stage: 'constitutions', reasons: missing, key, smiles };
-  const evaluation = explainEvaluation(evidence, settings, graph);
+  const evaluation = explainEvaluation(resolveOptions(evidence, settings.mode), settings, graph);
   if (evaluation.kind === 'rejected') return { ...evaluation, key, smiles };
   return { ...evaluation, key, smiles };
 }

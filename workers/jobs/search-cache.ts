@@ -1,3 +1,4 @@
+import { resolveOptions } from '../../shared/chemistry/resolve-options.js';
 import type { RunSettings } from '../../shared/jobs/contract.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import { createSearch, type Search } from '../enumeration/search.js';
@@ -9,9 +10,9 @@ let last: { readonly text: string; readonly search: Search } | null = null;
  * The search of an evidence document. A worker mostly gets shards of the same run in a row, so the last one is kept;
  * a search is never changed by running it.
  */
-export function searchFor(evidence: EvidenceDocument): Search {
-  const text = JSON.stringify(evidence);
-  if (last === null || last.text !== text) last = { text, search: createSearch(evidence) };
+export function searchFor(evidence: EvidenceDocument, mode: RunSettings['mode']): Search {
+  const text = JSON.stringify([evidence, mode]);
+  if (last === null || last.text !== text) last = { text, search: createSearch(resolveOptions(evidence, mode)) };
   return last.search;
 }
 
@@ -23,6 +24,7 @@ let lastEvaluator: { readonly text: string; readonly evaluator: Evaluator } | nu
  */
 export function evaluatorFor(evidence: EvidenceDocument, settings: RunSettings): Evaluator {
   const text = JSON.stringify([evidence, settings]);
-  if (lastEvaluator === null || lastEvaluator.text !== text) lastEvaluator = { text, evaluator: createEvaluator(evidence, settings) };
+  if (lastEvaluator === null || lastEvaluator.text !== text)
+    lastEvaluator = { text, evaluator: createEvaluator(resolveOptions(evidence, settings.mode), settings) };
   return lastEvaluator.evaluator;
 }

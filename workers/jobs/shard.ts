@@ -12,9 +12,10 @@ const CONSTITUTIONS_BETWEEN_CHECKS = 64;
 export function runShard(input: JobContract['shard']['input']): ShardResult {
   const { evidence, settings, shard, counters, deadlineEpochMs } = input;
   const startedMs = performance.now();
-  const search = searchFor(evidence);
+  const search = searchFor(evidence, settings.mode);
   const evaluator = evaluatorFor(evidence, settings);
   const funnel = new FunnelCounter();
+  const cuts = new Map<string, { reason: string; text: string; count: number }>();
   const best = settings.mode === 'count' ? null : new BestCandidates(settings.keep, evidence.options.mergeResonanceForms);
   let constitutionCount = 0;
   let multigraphCount = 0;
@@ -36,6 +37,11 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
     return mustStop;
   };
   const complete = enumerateShard(search, shard, {
+    onCut({ reason, text }) {
+      const cut = cuts.get(reason) ?? { reason, text, count: 0 };
+      cut.count++;
+      cuts.set(reason, cut);
+    },
     onMultigraphs(count) {
       multigraphCount += count;
     },
@@ -69,6 +75,7 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
     index: shard.index,
     constitutionCount,
     multigraphCount,
+    cuts: [...cuts.values()].sort((a, b) => b.count - a.count || (a.reason < b.reason ? -1 : 1)),
     funnel: funnel.funnel(),
     kept: best?.list() ?? [],
     logSumExp: survivors === 0 ? null : highest + Math.log(relativeSum),

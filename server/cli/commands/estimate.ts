@@ -20,7 +20,7 @@ export async function estimateCommand(argument: string, raw: RawOptions, context
   options.check();
   const { evidence, notes } = await readEvidenceArgument(argument);
   const result = await withCompute(context, 1, (compute) =>
-    abortable(context.interrupt, (signal) => compute.runJob('estimate', { evidence, probes, seed, maxSeconds }, { signal })),
+    abortable(context.interrupt, (signal) => compute.runJob('estimate', { evidence, mode: 'count', probes, seed, maxSeconds }, { signal })),
   );
   if (options.has('json')) await context.write(`${JSON.stringify(result)}\n`);
   else {

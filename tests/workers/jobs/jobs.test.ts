@@ -148,7 +148,7 @@ describe('the explain job', () => {
 describe('the estimate job', () => {
   it.each(['C6H10O', 'C8H14', 'C7H8O'])('covers the true count of %s, and equal seeds agree', (formula) => {
     const evidence = evidenceDocument.parse({ formula });
-    const input = { evidence, probes: 400, seed: 7, maxSeconds: 600 };
+    const input = { evidence, mode: 'count' as const, probes: 400, seed: 7, maxSeconds: 600 };
     const estimate = outputOf(jobs.estimate(input));
     const truth = shardsOf({ formula }, 1, { ...settings, mode: 'count' }).reduce((total, result) => total + result.constitutionCount, 0);
     expect(estimate.low).toBeLessThanOrEqual(truth);

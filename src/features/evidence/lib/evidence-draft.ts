@@ -1,5 +1,5 @@
 import { parseEvidence } from '../../../../shared/chemistry/check-evidence';
-import { evidenceOptions, type EvidenceDocument } from '../../../../shared/schemas/evidence';
+import { correlations, evidenceOptions, type EvidenceDocument } from '../../../../shared/schemas/evidence';
 import type { InputIssue } from '../../../../shared/schemas/problem';
 import { parseNumberText } from '../../../lib/numbers';
 
@@ -91,7 +91,7 @@ export function emptyDraft(): EvidenceDraft {
     protonSignals: [],
     infraredBands: [],
     massPeaks: [],
-    correlations: { cosy: [], hsqc: [], hmbc: [] },
+    correlations: correlations.parse({}),
     options,
   });
 }

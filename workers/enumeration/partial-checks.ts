@@ -1,0 +1,25 @@
+import type { SearchLayout } from './distributions.js';
+import type { SearchProblem } from './problem.js';
+
+/**
+ * A constraint tested while a matrix is being filled. It may cut a branch only when no completion can meet it, and it
+ * must not depend on how like vertices are numbered: then shards stay independent and no wanted constitution is lost.
+ */
+export interface PartialCheck {
+  /** Counted under this in the funnel. */
+  readonly reason: string;
+  /** One sentence for people. */
+  readonly text: string;
+  /**
+   * @param filled - bond orders between open vertices, row-major with FILL_STRIDE. Read only. Bonds inside units are in
+   *   the layout's `base` graph instead.
+   * @param known - rows [0, known) are complete: those vertices get no further bond.
+   * @returns false when no completion can be kept.
+   */
+  test(filled: Uint8Array, known: number): boolean;
+}
+
+/** The checks of a layout, cheapest first. */
+export function createPartialChecks(_problem: SearchProblem, _layout: SearchLayout): PartialCheck[] {
+  return [];
+}
