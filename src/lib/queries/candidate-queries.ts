@@ -17,18 +17,20 @@ export const candidateKeys = {
 };
 
 export const CANDIDATE_PAGE_SIZE = 200;
-/** Candidates of an ended run never change; whether one is on the shortlist is asked of the shortlist. */
+/**
+ * Candidates of an ended run never change; whether one is on the shortlist is asked of the shortlist. A request goes on
+ * when nobody waits for it any more: its answer is kept, and a page that comes back does not ask a second time.
+ */
 export const candidatePageQuery = (runId: string, order: CandidateOrder, page: number) =>
   queryOptions({
     queryKey: candidateKeys.page(runId, order, page),
-    queryFn: ({ signal }) =>
-      callEndpoint('listCandidates', { params: { runId }, query: { ...order, page, pageSize: CANDIDATE_PAGE_SIZE }, signal }),
+    queryFn: () => callEndpoint('listCandidates', { params: { runId }, query: { ...order, page, pageSize: CANDIDATE_PAGE_SIZE } }),
     staleTime: Infinity,
   });
 
 export const candidateQuery = (candidateId: string) =>
   queryOptions({
     queryKey: candidateKeys.detail(candidateId),
-    queryFn: ({ signal }) => callEndpoint('readCandidate', { params: { candidateId }, signal }),
+    queryFn: () => callEndpoint('readCandidate', { params: { candidateId } }),
     staleTime: Infinity,
   });
