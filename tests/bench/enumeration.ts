@@ -25,8 +25,8 @@ function searchOf(formula: string, required: { smiles: string; count?: number }[
 /** Counts on this thread; no sink but a counter. */
 function countPlain(search: Search): number {
   let count = 0;
-  for (const distribution of search.distributions) {
-    fill(createLayout(search.problem, distribution), [], 0, {
+  for (const { problem, distribution } of search.branches) {
+    fill(createLayout(problem, distribution), [], 0, {
       onLeaf() {
         count++;
         return false;
@@ -97,7 +97,7 @@ function benchFragments(): void {
       return count;
     });
     const everything = searchOf(formula);
-    const { units, demands } = search.problem;
+    const { units, demands } = search.required;
     let all = 0;
     const filtered = cpuSecondsOf(() => {
       let count = 0;

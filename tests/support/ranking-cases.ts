@@ -2,6 +2,7 @@ import { existsSync, readFileSync } from 'node:fs';
 import { resolve } from 'node:path';
 import { gunzipSync } from 'node:zlib';
 import type { ScoreTerms } from '../../shared/jobs/contract.js';
+import { resolveOptions } from '../../shared/chemistry/resolve-options.js';
 import { parseSmiles } from '../../shared/chemistry/smiles.js';
 import { evidenceDocument, type EvidenceDocument, type EvidenceInput } from '../../shared/schemas/evidence.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
@@ -86,7 +87,7 @@ export interface CaseResult {
  * @param sampleSize - best survivors kept, and as many of the others at random (seeded).
  */
 export function runCase({ truth, evidence: input, id }: RankingCase, maxSeconds: number, sampleSize = 0): CaseResult | null {
-  const evidence = evidenceDocument.parse(input);
+  const evidence = resolveOptions(evidenceDocument.parse(input), 'rank');
   const parsed = parseSmiles(truth);
   if (!parsed.ok) throw new Error(`${truth}: ${parsed.message}`);
   const started = process.cpuUsage().user;

@@ -32,6 +32,14 @@ export interface CarbonCensus {
   readonly most: readonly number[];
 }
 
+/** Groups that arise when an atom takes the double bond of an N-oxide unit (nitro: O) or of a diazo unit (azide: N, diazo: C). */
+export type PartnerGroup = 'nitro' | 'azide' | 'diazo' | 'otherDiazo';
+/** At most so many double bonds that units leave open may make this group. */
+export interface PartnerLimit {
+  readonly group: PartnerGroup;
+  readonly most: number;
+}
+
 /** What is to be enumerated: the molecule taken apart into units, free atoms and hydrogens to share out. */
 export interface SearchProblem {
   readonly units: readonly UnitKind[];
@@ -42,6 +50,13 @@ export interface SearchProblem {
   readonly heavyAtomCount: number;
   readonly census: CarbonCensus;
   readonly mergeResonanceForms: boolean;
+  /**
+   * True when the structure alone tells where each unit lies: no units, or only groups of higher valence that the search
+   * forms. Then no two placements have to be compared.
+   */
+  readonly hasForcedPlacements: boolean;
+  /** What may stand at the double bond of an N-oxide or diazo unit; empty = anything. */
+  readonly partnerLimits: readonly PartnerLimit[];
 }
 
 /** Bad input found while the problem was set up: every issue with its field. */
@@ -122,11 +137,13 @@ export function createProblem(evidence: EvidenceDocument): SearchProblem {
     heavyAtomCount,
     census: carbonCensus(evidence, countOf(parsed.counts, 'C')),
     mergeResonanceForms: evidence.options.mergeResonanceForms,
+    hasForcedPlacements: units.length === 0,
+    partnerLimits: [],
   };
 }
 
 /** The same fragment listed twice is one kind with both counts. */
-function mergeEqualKinds(units: readonly UnitKind[]): UnitKind[] {
+export function mergeEqualKinds(units: readonly UnitKind[]): UnitKind[] {
   const merged = new Map<string, UnitKind>();
   for (const unit of units) {
     const known = merged.get(unit.canonicalKey);

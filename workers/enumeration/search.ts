@@ -1,3 +1,4 @@
+import { elementOf } from '../../shared/chemistry/elements.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { SearchNode, ShardSpec } from '../../shared/jobs/contract.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
@@ -6,17 +7,89 @@ import { fill, type FillEvents } from './fill.js';
 import { createLeafJudge } from './leaf-judge.js';
 import { createPartialChecks, type PartialCheck } from './partial-checks.js';
 import { createProblem, type SearchProblem } from './problem.js';
+import { createPartnerTest, formableGroups, withFormedUnits, type FormableGroups, type FormedUnit } from './valence-groups.js';
+
+/** One hydrogen distribution of one sub-search. */
+export interface SearchBranch {
+  readonly problem: SearchProblem;
+  readonly distribution: Distribution;
+}
 
 /** A search that is set up: everything that all shards of a run share. Made anew, and equal, in each worker. */
 export interface Search {
-  readonly problem: SearchProblem;
-  readonly distributions: readonly Distribution[];
+  /** What formula and fragments ask for, without groups of higher valence that the search forms by itself. */
+  readonly required: SearchProblem;
+  readonly groups: FormableGroups;
+  /**
+   * Sub-searches, one for each combination of copies of the formed groups, and their distributions in a row. No
+   * constitution belongs to two of them.
+   */
+  readonly branches: readonly SearchBranch[];
+  /** True when combinations with many formed groups were left out because there were too many. */
+  readonly isCurtailed: boolean;
+  /** What was left out and why, for people. */
+  readonly notes: readonly string[];
 }
 
-/** @throws ProblemError on unreadable or exceeding fragments. */
+/** Branches that are held in memory; formulas with more are beyond any computer, but must not exhaust it. */
+const MAX_BRANCHES = 100_000;
+
+/**
+ * @param evidence - with options settled; without `options.valenceGroups` no group of higher valence is formed.
+ * @throws ProblemError on unreadable or exceeding fragments.
+ */
 export function createSearch(evidence: EvidenceDocument): Search {
-  const problem = createProblem(evidence);
-  return { problem, distributions: listDistributions(problem) };
+  const required = createProblem(evidence);
+  const available = new Map(required.free.map(({ atomicNumber, count }) => [elementOf(atomicNumber).symbol, count]));
+  available.set('H', required.hydrogens);
+  const groups = formableGroups(evidence, available);
+  const notes = [...groups.notes];
+  const branches: SearchBranch[] = [];
+  const add = (problem: SearchProblem): void => {
+    for (const distribution of listDistributions(problem)) branches.push({ problem, distribution });
+  };
+  add(required);
+  let isCurtailed = false;
+  for (let total = 1; !isCurtailed; total++) {
+    const problems = listCopies(groups.units, available, total).map((copies) => withFormedUnits(required, groups, copies));
+    if (problems.length === 0) break;
+    for (const problem of problems) {
+      isCurtailed ||= branches.length > MAX_BRANCHES;
+      if (!isCurtailed) add(problem);
+    }
+    if (isCurtailed)
+      notes.push(
+        `This formula has room for very many groups of higher valence; structures with ${total} or more of them are not all built. Allow fewer groups or add fragments.`,
+      );
+  }
+  return { required, groups, branches, isCurtailed, notes };
+}
+
+/** All ways to share `total` copies out among units for which the atoms suffice, in a fixed order. */
+function listCopies(units: readonly FormedUnit[], available: ReadonlyMap<string, number>, total: number): number[][] {
+  const atoms = new Map(available);
+  const copies: number[] = [];
+  const found: number[][] = [];
+  const take = ({ composition }: FormedUnit, times: number): void => {
+    for (const [symbol, count] of composition) atoms.set(symbol, (atoms.get(symbol) ?? 0) - times * count);
+  };
+  const choose = (left: number): void => {
+    const unit = units[copies.length];
+    if (unit === undefined) {
+      if (left === 0) found.push([...copies]);
+      return;
+    }
+    const room = Math.min(left, ...[...unit.composition].map(([symbol, count]) => Math.floor((atoms.get(symbol) ?? 0) / count)));
+    for (let times = room; times >= 0; times--) {
+      take(unit, times);
+      copies.push(times);
+      choose(left - times);
+      copies.pop();
+      take(unit, -times);
+    }
+  };
+  choose(total);
+  return found;
 }
 
 /** What a shard reports while it runs. Graph arrays are reused: copy what you keep. */
@@ -42,11 +115,14 @@ export function enumerateShard(search: Search, shard: ShardSpec, sink: Constitut
 
 function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink): boolean {
   for (let d = node.firstDistribution; d < node.endDistribution; d++) {
-    const layout = createLayout(search.problem, search.distributions[d]);
-    const judge = createLeafJudge(search.problem, layout);
+    const { problem, distribution } = search.branches[d];
+    const layout = createLayout(problem, distribution);
+    const judge = createLeafJudge(problem, layout);
+    const keepsPartners = createPartnerTest(problem, layout);
     const complete = fill(layout, node.prefix, 0, {
-      ...rowEvents(createPartialChecks(search.problem, layout), sink),
+      ...rowEvents(createPartialChecks(problem, layout), keepsPartners, sink),
       onLeaf(filled) {
+        if (keepsPartners !== null && !keepsPartners(filled)) return sink.stopRequested();
         const verdict = judge(filled);
         if (verdict.multigraphs !== 0) sink.onMultigraphs(verdict.multigraphs);
         for (const graph of verdict.graphs) sink.onConstitution(graph);
@@ -59,11 +135,20 @@ function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink)
   return true;
 }
 
-/** The checks of a layout as an event of the fill; none at all without checks, so that plain searches pay nothing. */
-export function rowEvents(checks: readonly PartialCheck[], sink: Pick<ConstitutionSink, 'onCut'>): Pick<FillEvents, 'onRow'> {
-  if (checks.length === 0) return {};
+/**
+ * The checks of a layout as an event of the fill; none at all without checks, so that plain searches pay nothing.
+ *
+ * @param keepsPartners - see createPartnerTest; what it cuts is built in another sub-search and not reported.
+ */
+export function rowEvents(
+  checks: readonly PartialCheck[],
+  keepsPartners: ((filled: Uint8Array) => boolean) | null,
+  sink: Pick<ConstitutionSink, 'onCut'>,
+): Pick<FillEvents, 'onRow'> {
+  if (checks.length === 0 && keepsPartners === null) return {};
   return {
     onRow(filled, known) {
+      if (keepsPartners !== null && !keepsPartners(filled)) return false;
       for (const check of checks) {
         if (check.test(filled, known)) continue;
         sink.onCut?.(check);
@@ -82,7 +167,7 @@ const MAX_PREFIX_ROWS = 4;
  * prefixes of growing depth; nodes are then dealt out in turn, so that neighbours of like size end in different shards.
  */
 export function planShards(search: Search, target: number): ShardSpec[] {
-  let nodes: SearchNode[] = search.distributions.map((_, d) => ({ firstDistribution: d, endDistribution: d + 1, prefix: [] }));
+  let nodes: SearchNode[] = search.branches.map((_, d) => ({ firstDistribution: d, endDistribution: d + 1, prefix: [] }));
   if (nodes.length >= target) {
     return Array.from({ length: target }, (_, index) => ({
       index,
@@ -108,11 +193,12 @@ export function planShards(search: Search, target: number): ShardSpec[] {
  * empty list when nothing is below.
  */
 function expandNode(search: Search, node: SearchNode, rows: number): SearchNode[] {
-  const layout: SearchLayout = createLayout(search.problem, search.distributions[node.firstDistribution]);
+  const { problem, distribution } = search.branches[node.firstDistribution];
+  const layout: SearchLayout = createLayout(problem, distribution);
   const prefixes: number[][] = [];
   let leaves = 0;
   fill(layout, node.prefix, rows, {
-    ...rowEvents(createPartialChecks(search.problem, layout), {}),
+    ...rowEvents(createPartialChecks(problem, layout), createPartnerTest(problem, layout), {}),
     onLeaf: () => {
       leaves++;
       return false;

@@ -3,12 +3,15 @@ import { elementOf } from '../../shared/chemistry/elements.js';
 import { resolveOptions } from '../../shared/chemistry/resolve-options.js';
 import { compositionOf, parseSmiles } from '../../shared/chemistry/smiles.js';
 import type { Explanation, JobContract } from '../../shared/jobs/contract.js';
+import { VALENCE_GROUP_NAMES } from '../../shared/chemistry/valence-group-names.js';
+import type { ValenceGroup } from '../../shared/schemas/evidence.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { perceiveAromaticity } from '../graph/aromaticity.js';
 import { constitutionKey } from '../graph/constitution-key.js';
 import { forEachKekuleForm } from '../enumeration/kekule.js';
 import { findPlacements, listPlacementSets, meetsDemands } from '../enumeration/placements.js';
 import { ProblemError, type SearchProblem } from '../enumeration/problem.js';
+import { findGroups, type FormableGroups } from '../enumeration/valence-groups.js';
 import { explainEvaluation } from '../ranking/evaluator.js';
 import { searchFor } from './search-cache.js';
 
@@ -31,8 +34,8 @@ export function explainStructure({ evidence, settings, smiles }: JobContract['ex
     return { kind: 'otherFormula', formula, expected: formatHill(expected.counts), smiles };
   }
   const key = constitutionKey(graph, evidence.options.mergeResonanceForms);
-  const { problem } = searchFor(evidence, settings.mode);
-  const missing = [...fragmentReasons(graph, problem), ...valenceReasons(graph, problem)];
+  const { required, groups } = searchFor(evidence, settings.mode);
+  const missing = [...fragmentReasons(graph, required), ...valenceReasons(graph, required, groups)];
   if (missing.length > 0) return { kind: 'rejected', stage: 'constitutions', reasons: missing, key, smiles };
   const evaluation = explainEvaluation(resolveOptions(evidence, settings.mode), settings, graph);
   if (evaluation.kind === 'rejected') return { ...evaluation, key, smiles };
@@ -78,26 +81,57 @@ function fragmentReasons(graph: MolecularGraph, problem: SearchProblem): Reason[
   return reasons;
 }
 
-/** Atoms in a valence state that the search forms only inside required fragments. */
-function valenceReasons(graph: MolecularGraph, problem: SearchProblem): Reason[] {
+/**
+ * Atoms in a higher or charge-separated valence state that neither a required fragment nor a group that the search may
+ * form accounts for.
+ */
+function valenceReasons(graph: MolecularGraph, problem: SearchProblem, groups: FormableGroups): Reason[] {
+  const special = specialAtoms(graph);
+  if (special.length === 0) return [];
+  let fewest: Reason[] | null = null;
+  forEachKekuleForm(graph, perceiveAromaticity(graph), (bondOrders) => {
+    for (const placed of listPlacementSets({ ...graph, bondOrders }, problem.units, problem.demands)) {
+      const inFragments = new Set(placed.flatMap(({ vertices }) => vertices));
+      const reasons = uncoveredReasons(
+        graph,
+        special.filter((atom) => !inFragments.has(atom)),
+        groups,
+      );
+      if (fewest === null || reasons.length < fewest.length) fewest = reasons;
+    }
+    return fewest !== null && fewest.length === 0;
+  });
+  return fewest ?? uncoveredReasons(graph, special, groups);
+}
+
+/** One reason for each kind of group that the search may not form, and one for what is no such group. */
+function uncoveredReasons(graph: MolecularGraph, atoms: readonly number[], groups: FormableGroups): Reason[] {
+  const byGroup = new Map<ValenceGroup | null, number[]>();
+  for (const { group, kind, atoms: own } of findGroups(graph, atoms)) {
+    if (kind !== null && groups.formable.has(kind)) continue;
+    byGroup.set(group, [...(byGroup.get(group) ?? []), ...own]);
+  }
+  return [...byGroup].map(([group, own]) => ({ reason: 'valenceState', text: describeValence(group, groups), atoms: own }));
+}
+
+function describeValence(group: ValenceGroup | null, groups: FormableGroups): string {
+  if (group === null)
+    return 'It has a higher or charge-separated valence state that the search forms only inside a required fragment. Add this part as a required fragment.';
+  const { name } = VALENCE_GROUP_NAMES[group];
+  const ruledOut = groups.notes.find((note) => note.startsWith(`${name} `));
+  return ruledOut === undefined
+    ? `It holds a group that this run does not form (${name}). Allow it under groups of higher valence, or add it as a required fragment.`
+    : `It holds a group that this run does not form. ${ruledOut}`;
+}
+
+/** Charged atoms and atoms with more bonds than their default valence. */
+function specialAtoms(graph: MolecularGraph): number[] {
   const n = graph.atomCount;
-  const unusual: number[] = [];
+  const special: number[] = [];
   for (let atom = 0; atom < n; atom++) {
     let orders = graph.hydrogens[atom];
     for (let other = 0; other < n; other++) orders += graph.bondOrders[atom * n + other];
-    if (graph.charges[atom] !== 0 || orders > elementOf(graph.atomicNumbers[atom]).defaultValence) unusual.push(atom);
+    if (graph.charges[atom] !== 0 || orders > elementOf(graph.atomicNumbers[atom]).defaultValence) special.push(atom);
   }
-  if (unusual.length === 0) return [];
-  const sets = listPlacementSets(graph, problem.units, problem.demands);
-  const uncovered = (placed: readonly { vertices: readonly number[] }[]): number[] =>
-    unusual.filter((atom) => !placed.some(({ vertices }) => vertices.includes(atom)));
-  const fewest = sets.map(uncovered).sort((a, b) => a.length - b.length)[0] ?? unusual;
-  if (fewest.length === 0) return [];
-  return [
-    {
-      reason: 'valenceState',
-      text: 'It has a higher or charge-separated valence state; the search forms these only inside a required fragment. Add the group as a required fragment.',
-      atoms: fewest,
-    },
-  ];
+  return special;
 }

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { resolveOptions } from '../../../shared/chemistry/resolve-options.js';
 import { createCounters } from '../../../shared/jobs/counters.js';
 import type { JobContract, RunSettings } from '../../../shared/jobs/contract.js';
 import { evidenceDocument, type EvidenceInput } from '../../../shared/schemas/evidence.js';
@@ -14,7 +15,7 @@ type Finished = JobContract['finish']['output'];
 function run(input: EvidenceInput, settings: Partial<RunSettings> = {}): Finished {
   const evidence = evidenceDocument.parse(input);
   const all: RunSettings = { keep: 200, maxSeconds: null, mode: 'rank', ...settings };
-  const [shard] = planShards(createSearch(evidence), 1);
+  const [shard] = planShards(createSearch(resolveOptions(evidence, all.mode)), 1);
   if (shard === undefined) return finishRanking({ evidence, settings: all, kept: [], logSumExp: null, funnel: [] });
   const result = runShard({ evidence, settings: all, shard, counters: createCounters(), deadlineEpochMs: null });
   return finishRanking({ evidence, settings: all, kept: result.kept, logSumExp: result.logSumExp, funnel: result.funnel });
