@@ -1,3 +1,5 @@
+import { runWeight, shardSpacing } from './share.js';
+
 /** Who asks for a slot. */
 export interface Lane {
   readonly teamId: string;
@@ -8,21 +10,27 @@ interface WaitingTask {
   readonly start: () => Promise<void>;
   readonly skip: () => void;
 }
-interface RunQueueOfTasks {
-  readonly runId: string;
+/** A run with something waiting. */
+interface RunInLine {
+  readonly lane: Lane;
   readonly tasks: WaitingTask[];
+  /** Where its next task stands. */
+  position: number;
 }
 
 /**
- * Shares a fixed number of slots among runs: teams take turns, and inside a team its runs take turns. No more
- * tasks are started than there are slots, so a run that has just been queued waits for one shard at most, however
- * many shards the others still have.
+ * Shares a fixed number of slots among runs as `share.ts` says: teams get the same, and inside a team small runs get more
+ * than large ones. No more tasks are started than there are slots, so a run that has just been queued waits for one shard
+ * at most, however many shards the others still have.
  */
 export class FairScheduler {
   readonly #slots: number;
   #busy = 0;
-  /** In turn order, without empty queues; whoever was served goes to the back. */
-  #teams: { readonly teamId: string; runs: RunQueueOfTasks[] }[] = [];
+  /** Without empty ones. Of those at the same position the first is next; whoever was served goes to the back. */
+  #line: RunInLine[] = [];
+  readonly #weights = new Map<string, number>();
+  /** Where the task stood that was started last: new runs begin there. */
+  #front = 0;
 
   constructor(slots: number) {
     this.#slots = slots;
@@ -39,20 +47,26 @@ export class FairScheduler {
     });
   }
 
+  /** Says how large a run is, in thread seconds; until then it counts as small. */
+  setSize(runId: string, expectedSeconds: number | null): void {
+    this.#weights.set(runId, runWeight(expectedSeconds));
+  }
+
   /** Skips whatever a run still has waiting. */
   drop(runId: string): void {
-    for (const team of this.#teams) {
-      for (const run of team.runs) if (run.runId === runId) run.tasks.splice(0).forEach(({ skip }) => skip());
-    }
+    for (const { lane, tasks } of this.#line) if (lane.runId === runId) tasks.splice(0).forEach(({ skip }) => skip());
     this.#removeEmpty();
   }
 
-  #tasksOf({ teamId, runId }: Lane): WaitingTask[] {
+  /** Forgets the size of a run that has ended. */
+  forget(runId: string): void {
+    this.#weights.delete(runId);
+  }
+
+  #tasksOf(lane: Lane): WaitingTask[] {
+    let run = this.#line.find((known) => known.lane.runId === lane.runId);
     // New ones go in front: whoever has had nothing yet is next.
-    let team = this.#teams.find((known) => known.teamId === teamId);
-    if (team === undefined) this.#teams.unshift((team = { teamId, runs: [] }));
-    let run = team.runs.find((known) => known.runId === runId);
-    if (run === undefined) team.runs.unshift((run = { runId, tasks: [] }));
+    if (run === undefined) this.#line.unshift((run = { lane, tasks: [], position: this.#front }));
     return run.tasks;
   }
 
@@ -69,18 +83,23 @@ export class FairScheduler {
   }
 
   #takeNext(): WaitingTask | undefined {
-    const team = this.#teams.shift();
-    const run = team?.runs.shift();
-    const task = run?.tasks.shift();
-    if (team === undefined || run === undefined) return undefined;
-    team.runs.push(run);
-    this.#teams.push(team);
+    const [first, ...others] = this.#line;
+    if (first === undefined) return undefined;
+    const next = others.reduce((best, run) => (run.position < best.position ? run : best), first);
+    const task = next.tasks.shift();
+    this.#front = next.position;
+    const team = this.#line.filter(({ lane }) => lane.teamId === next.lane.teamId).map((run) => this.#weightOf(run));
+    next.position += shardSpacing(this.#weightOf(next), team);
+    this.#line = [...this.#line.filter((run) => run !== next), next];
     this.#removeEmpty();
     return task;
   }
 
+  #weightOf({ lane }: RunInLine): number {
+    return this.#weights.get(lane.runId) ?? runWeight(0);
+  }
+
   #removeEmpty(): void {
-    for (const team of this.#teams) team.runs = team.runs.filter(({ tasks }) => tasks.length > 0);
-    this.#teams = this.#teams.filter(({ runs }) => runs.length > 0);
+    this.#line = this.#line.filter(({ tasks }) => tasks.length > 0);
   }
 }

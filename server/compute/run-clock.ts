@@ -1,6 +1,11 @@
 import type { RunProgress } from '../../shared/jobs/contract.js';
-import { readCounter } from '../../shared/jobs/counters.js';
-import type { ShardMerger } from './merge-shards.js';
+
+/** What a run has done so far. */
+export interface RunFigures {
+  readonly shardsDone: number;
+  readonly constitutionsSeen: number;
+  readonly survivors: number;
+}
 
 /** Time of a run: how long it has been under way, when it must stop, how long it may still take. */
 export class RunClock {
@@ -32,9 +37,10 @@ export class RunClock {
     return true;
   }
 
-  startEnumerating(shardCount: number, merger: ShardMerger): void {
+  /** @param done - in an earlier process */
+  startEnumerating(shardCount: number, done: RunFigures): void {
     this.#shardCount = shardCount;
-    this.#enumerating = { at: performance.now(), shards: merger.shardCount, seen: merger.constitutionCount };
+    this.#enumerating = { at: performance.now(), shards: done.shardsDone, seen: done.constitutionsSeen };
   }
 
   elapsedSeconds(): number {
@@ -49,21 +55,19 @@ export class RunClock {
     return this.#maxSeconds === null ? null : Date.now() + (this.#maxSeconds - this.elapsedSeconds()) * 1000;
   }
 
-  /** @param counters - of the shards under way; each attempt has its own, so one that crashed leaves no trace in the figures */
-  progress(stage: RunProgress['stage'], merger: ShardMerger, counters: readonly SharedArrayBuffer[]): RunProgress {
-    const sum = (slot: 'constitutionsSeen' | 'survivors') => counters.reduce((total, buffer) => total + readCounter(buffer, slot), 0);
-    const constitutionsSeen = merger.constitutionCount + sum('constitutionsSeen');
+  progress(stage: RunProgress['stage'], figures: RunFigures): RunProgress {
+    const { shardsDone, constitutionsSeen, survivors } = figures;
     const since = stage === 'enumerating' ? this.#enumerating : null;
     const seconds = since === null ? 0 : (performance.now() - since.at) / 1000;
     return {
       stage,
-      shardsDone: merger.shardCount,
+      shardsDone,
       shardCount: this.#shardCount ?? 0,
       constitutionsSeen,
-      survivors: merger.survivorCount + sum('survivors'),
+      survivors,
       ratePerSecond: since === null || seconds === 0 ? 0 : (constitutionsSeen - since.seen) / seconds,
       elapsedSeconds: this.elapsedSeconds(),
-      secondsLeft: since === null ? null : this.#secondsLeft(merger.shardCount - since.shards, merger.shardCount, seconds),
+      secondsLeft: since === null ? null : this.#secondsLeft(shardsDone - since.shards, shardsDone, seconds),
     };
   }
 

@@ -1,29 +1,18 @@
 import type { Logger } from 'pino';
-import type { RankedCandidate, RunProgress, RunSettings, ShardResult, ShardSpec } from '../../shared/jobs/contract.js';
-import { cancelRun, createCounters } from '../../shared/jobs/counters.js';
-import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
-import { ComputeBusy, ComputeFailure, type ComputeService, WorkerCrash } from './compute-service.js';
+import type { RunProgress, ShardSpec } from '../../shared/jobs/contract.js';
+import { cancelRun, createCounters, readCounter } from '../../shared/jobs/counters.js';
+import { ComputeBusy, type ComputeService, WorkerCrash } from './compute-service.js';
 import { untilDatabaseAnswers } from './database-retry.js';
 import type { FairScheduler } from './fair-scheduler.js';
 import { ShardMerger } from './merge-shards.js';
 import type { RunEvent } from './queue.js';
-import { RunClock } from './run-clock.js';
+import { RunClock, type RunFigures } from './run-clock.js';
+import { describeEnd } from './run-end.js';
+import { crashedTooOften, describeFailure, isCancellation, MAX_CRASHES } from './run-failure.js';
+import { guessSeconds } from './run-size.js';
+import { QUOTA_STOP, type Stop, timeLimitStop } from './run-stop.js';
 import type { RunEnd, RunStore } from './run-store.js';
-
-/** A run as the queue takes it over, fresh or from an earlier process. */
-export interface RunTask {
-  readonly id: string;
-  readonly teamId: string;
-  readonly evidence: EvidenceDocument;
-  readonly settings: RunSettings;
-  /** Shards as planned; null = still to be planned. */
-  readonly shards: readonly ShardSpec[] | null;
-  /** Results that an earlier process left behind. */
-  readonly results: readonly ShardResult[];
-  /** Seconds the run was under way before. */
-  readonly elapsedSeconds: number;
-  readonly reservedCpuSeconds: number;
-}
+import type { RunTask } from './run-task.js';
 
 export interface DriverOptions {
   readonly compute: ComputeService;
@@ -31,19 +20,14 @@ export interface DriverOptions {
   readonly store: RunStore;
   readonly logger: Logger;
   readonly targetShards: number;
+  /** CPU seconds set aside for the run. */
+  readonly reservedCpuSeconds: number;
   /** How long a job may ignore that it is to stop before its thread is ended. */
   readonly hardStopMs: number;
   readonly emit: (event: RunEvent) => void;
 }
 
-/** Why a run does not go to its regular end. After a limit what was found is still ranked; the others end it at once. */
-type Stop =
-  | { readonly kind: 'limit'; readonly code: 'timeLimit' | 'quotaUsedUp'; readonly message: string }
-  | { readonly kind: 'failed'; readonly code: string; readonly message: string }
-  | { readonly kind: 'cancelled' };
-
 const TICK_MS = 500;
-const MAX_CRASHES = 3;
 const BUSY_PAUSE_MS = 250;
 /** Results on their way to the database; with more of them a shard keeps its slot until one is written. */
 const MAX_PENDING_WRITES = 8;
@@ -73,7 +57,7 @@ export class RunDriver {
   constructor(task: RunTask, options: DriverOptions) {
     this.#task = task;
     this.#options = options;
-    this.#reservedCpuSeconds = task.reservedCpuSeconds;
+    this.#reservedCpuSeconds = options.reservedCpuSeconds;
     this.#merger = new ShardMerger(task.settings.keep);
     for (const result of task.results) this.#merger.add(result);
     this.#clock = new RunClock(task.elapsedSeconds, task.settings.maxSeconds);
@@ -89,6 +73,7 @@ export class RunDriver {
     const end = await Promise.race([work, this.#halt]);
     if (this.#isHalted) await this.#comeToRest();
     this.#stage = 'done';
+    this.#options.scheduler.forget(this.#task.id);
     clearInterval(ticker);
     this.#emitProgress();
     if (this.#isClosing) await this.#giveBack();
@@ -107,13 +92,25 @@ export class RunDriver {
   }
 
   progress(): RunProgress {
-    return this.#clock.progress(this.#stage, this.#merger, [...this.#underWay.keys()]);
+    return this.#clock.progress(this.#stage, this.#figures());
+  }
+
+  /** Each attempt at a shard has its own counters, so one that crashed leaves no trace in the figures. */
+  #figures(): RunFigures {
+    const counters = [...this.#underWay.keys()];
+    const sum = (slot: 'constitutionsSeen' | 'survivors') => counters.reduce((total, buffer) => total + readCounter(buffer, slot), 0);
+    return {
+      shardsDone: this.#merger.shardCount,
+      constitutionsSeen: this.#merger.constitutionCount + sum('constitutionsSeen'),
+      survivors: this.#merger.survivorCount + sum('survivors'),
+    };
   }
 
   async #work(): Promise<RunEnd | null> {
+    void this.#guessSize().catch((error: unknown) => this.#stopWith(this.#asStop(error)));
     const shards = this.#task.shards ?? (await this.#plan());
     if (shards === null) return null;
-    this.#clock.startEnumerating(shards.length, this.#merger);
+    this.#clock.startEnumerating(shards.length, this.#figures());
     this.#stage = 'enumerating';
     this.#emitProgress();
     const open = shards.filter(({ index }) => !this.#merger.has(index)).map((shard) => this.#runShard(shard));
@@ -135,6 +132,13 @@ export class RunDriver {
     if (planned === null || this.#isHalted) return null;
     await this.#onDatabase(() => store.savePlan(this.#task, planned.shards));
     return planned.shards;
+  }
+
+  /** Nothing waits for it: until it is known the run counts as small. */
+  async #guessSize(): Promise<void> {
+    const { compute, scheduler } = this.#options;
+    const expectedSeconds = await guessSeconds(compute, this.#task);
+    if (this.#stage !== 'done') scheduler.setSize(this.#task.id, expectedSeconds);
   }
 
   async #runShard(shard: ShardSpec): Promise<void> {
@@ -211,8 +215,7 @@ export class RunDriver {
         if (abort.signal.aborted) return null;
         crashes += 1;
         this.#options.logger.warn({ runId: this.#task.id, what, crashes, err: error }, 'a compute thread ended under its job');
-        if (crashes >= MAX_CRASHES)
-          throw new WorkerCrash(`A compute thread ended ${MAX_CRASHES} times at the same place (${what}): ${error.message}`);
+        if (crashes >= MAX_CRASHES) throw crashedTooOften(what, error.message);
       } finally {
         this.#aborts.delete(abort);
       }
@@ -272,16 +275,15 @@ export class RunDriver {
       await this.#onDatabase(() => store.end(this.#task, end, new Date()));
     } catch (error) {
       if (this.#isClosing) return;
-      const { code, message } = this.#describeFault(error);
       const failed: RunEnd = {
         ...end,
         status: 'failed',
         complete: false,
         candidates: [],
         noneOfTheseProbability: null,
-        failure: { code, message },
+        failure: describeFailure(error, this.#task.id, this.#options.logger),
       };
-      await this.#onDatabase(() => store.end(this.#task, failed, new Date())).catch((again: unknown) => this.#describeFault(again));
+      await this.#onDatabase(() => store.end(this.#task, failed, new Date())).catch((again: unknown) => this.#asStop(again));
     }
   }
 
@@ -292,24 +294,15 @@ export class RunDriver {
     });
   }
 
-  #describeEnd(candidates: readonly RankedCandidate[], noneOfTheseProbability: number | null): RunEnd {
-    const merged = this.#merger.merged();
-    const stop = this.#stop;
-    const isPlanned = this.#clock.shardCount !== null;
-    const isCut = stop !== null || !merged.complete;
-    return {
-      status: stop === null || stop.kind === 'limit' ? (isCut ? 'stopped' : 'finished') : stop.kind,
-      complete: !isCut,
-      constitutionCount: isPlanned ? merged.constitutionCount : null,
-      multigraphCount: isPlanned ? merged.multigraphCount : null,
-      survivorCount: isPlanned ? merged.survivorCount : null,
-      funnel: isPlanned ? merged.funnel : null,
-      logSumExp: merged.logSumExp,
-      noneOfTheseProbability,
+  #describeEnd(candidates: RunEnd['candidates'], noneOfTheseProbability: number | null): RunEnd {
+    return describeEnd({
+      merged: this.#merger.merged(),
+      isPlanned: this.#clock.shardCount !== null,
+      stop: this.#stop,
       candidates,
-      cpuSeconds: merged.cpuSeconds + this.#otherCpuSeconds,
-      failure: stop !== null && 'code' in stop ? { code: stop.code, message: stop.message } : null,
-    };
+      noneOfTheseProbability,
+      otherCpuSeconds: this.#otherCpuSeconds,
+    });
   }
 
   async #tick(): Promise<void> {
@@ -320,12 +313,8 @@ export class RunDriver {
   }
 
   #watchTime(): void {
-    if (!this.#clock.isOver()) return;
-    this.#stopWith({
-      kind: 'limit',
-      code: 'timeLimit',
-      message: `Stopped at the time limit of ${this.#task.settings.maxSeconds} s; what was found by then is ranked.`,
-    });
+    const { maxSeconds } = this.#task.settings;
+    if (maxSeconds !== null && this.#clock.isOver()) this.#stopWith(timeLimitStop(maxSeconds));
   }
 
   /** Reserves more CPU seconds as they are needed; stops the run when the month has no more. */
@@ -340,13 +329,7 @@ export class RunDriver {
     } finally {
       this.#isExtending = false;
     }
-    if (usedSeconds >= this.#reservedCpuSeconds) {
-      this.#stopWith({
-        kind: 'limit',
-        code: 'quotaUsedUp',
-        message: 'Stopped because the CPU seconds of this month are used up; what was found by then is ranked.',
-      });
-    }
+    if (usedSeconds >= this.#reservedCpuSeconds) this.#stopWith(QUOTA_STOP);
   }
 
   #emitProgress(): void {
@@ -357,27 +340,7 @@ export class RunDriver {
     return untilDatabaseAnswers(action, () => this.#isClosing);
   }
 
-  /** Turns whatever went wrong into a reason that people can read. */
   #asStop(error: unknown): Stop {
-    if (error instanceof ComputeFailure && error.failure.code !== 'internal') {
-      const issues = (error.failure.issues ?? []).map(({ path, message }) => `${path}: ${message}`);
-      const message = issues.length === 0 ? error.message : `${error.message} (${issues.join('; ')})`;
-      return { kind: 'failed', code: error.failure.code, message };
-    }
-    if (error instanceof WorkerCrash) {
-      return {
-        kind: 'failed',
-        code: 'workerCrashed',
-        message: `${error.message}. Narrow the evidence, or ask whoever runs the server to look into its log.`,
-      };
-    }
-    return { kind: 'failed', ...this.#describeFault(error) };
-  }
-
-  #describeFault(error: unknown): { code: string; message: string } {
-    this.#options.logger.error({ runId: this.#task.id, err: error }, 'a run failed by a fault of the server');
-    return { code: 'internal', message: 'The run failed by a fault of the server; its log has the details.' };
+    return { kind: 'failed', ...describeFailure(error, this.#task.id, this.#options.logger) };
   }
 }
-
-const isCancellation = (error: unknown): error is ComputeFailure => error instanceof ComputeFailure && error.failure.code === 'cancelled';

@@ -7,6 +7,7 @@ import { Candidate } from '../models/candidate.js';
 import { Run } from '../models/run.js';
 import { RunShard } from '../models/run-shard.js';
 import { extendReservation, settleUsage } from '../quotas/reservations.js';
+import type { RunFailure } from './run-stop.js';
 
 /**
  * Version of the search plan that shard rows hold. To be raised whenever the engine would read an old plan in
@@ -32,7 +33,7 @@ export interface RunEnd {
   readonly noneOfTheseProbability: number | null;
   readonly candidates: readonly RankedCandidate[];
   readonly cpuSeconds: number;
-  readonly failure: { readonly code: string; readonly message: string } | null;
+  readonly failure: RunFailure | null;
 }
 
 /** A shard as an earlier process left it. */
@@ -43,6 +44,13 @@ export interface StoredShard {
   readonly result: ShardResult | null;
   readonly finishedAt: Date | null;
 }
+
+const UNDER_WAY = { status: ['queued', 'running'] satisfies RunStatus[] };
+
+const toStoredShard = (row: RunShard): StoredShard | null =>
+  writtenByThisVersion.safeParse(row.spec).success
+    ? { spec: row.spec, interruptions: row.attempt, result: row.status === 'done' ? row.result : null, finishedAt: row.finishedAt }
+    : null;
 
 export const sha256 = (text: string): string => createHash('sha256').update(text).digest('hex');
 
@@ -74,11 +82,11 @@ export class RunStore {
     await Run.update({ status: 'queued' }, { where: { id: runId, status: 'running' } });
   }
 
-  /** Keeps the plan of a run that is under way; a run that has ended meanwhile gets none. */
+  /** Keeps the plan of a run that is under way; a run that has ended or was planned meanwhile gets none. */
   async savePlan(run: { id: string; teamId: string }, shards: readonly ShardSpec[]): Promise<void> {
     await this.#sequelize.transaction(async (transaction) => {
-      const row = await Run.findByPk(run.id, { attributes: ['id', 'status'], transaction, lock: transaction.LOCK.UPDATE });
-      if (row?.status !== 'running') return;
+      const row = await Run.findByPk(run.id, { attributes: ['id', 'status', 'shardCount'], transaction, lock: transaction.LOCK.UPDATE });
+      if (row?.status !== 'running' || row.shardCount > 0) return;
       await RunShard.destroy({ where: { runId: run.id }, transaction });
       for (let start = 0; start < shards.length; start += SHARDS_PER_STATEMENT) {
         const rows = shards.slice(start, start + SHARDS_PER_STATEMENT).map((shard) => ({
@@ -112,19 +120,51 @@ export class RunStore {
    */
   async loadShards(runId: string): Promise<StoredShard[] | null> {
     const shards: StoredShard[] = [];
+    for await (const shard of this.readShards(runId)) {
+      if (shard === null) return null;
+      shards.push(shard);
+    }
+    return shards;
+  }
+
+  /** Reads the same shards a few at a time; null stands for one that was planned by another version of the engine. */
+  async *readShards(runId: string): AsyncGenerator<StoredShard | null> {
     for (let offset = 0; ; offset += SHARD_RESULTS_PER_QUERY) {
       const rows = await RunShard.findAll({ where: { runId }, order: [['index', 'ASC']], offset, limit: SHARD_RESULTS_PER_QUERY });
-      for (const row of rows) {
-        if (!writtenByThisVersion.safeParse(row.spec).success) return null;
-        shards.push({
-          spec: row.spec,
-          interruptions: row.attempt,
-          result: row.status === 'done' ? row.result : null,
-          finishedAt: row.finishedAt,
-        });
-      }
-      if (rows.length < SHARD_RESULTS_PER_QUERY) return shards;
+      for (const row of rows) yield toStoredShard(row);
+      if (rows.length < SHARD_RESULTS_PER_QUERY) return;
     }
+  }
+
+  /** One shard of a run that is planned; null when it is not there, or was planned by another version. */
+  async readShard(runId: string, index: number): Promise<StoredShard | null> {
+    const row = await RunShard.findOne({ where: { runId, index } });
+    return row === null ? null : toStoredShard(row);
+  }
+
+  /** Notes that a run is to be cancelled, if that is not known yet. */
+  async requestCancel(runId: string, now: Date): Promise<void> {
+    await Run.update({ cancelRequestedAt: now }, { where: { id: runId, ...UNDER_WAY, cancelRequestedAt: null } });
+  }
+
+  /** Notes why a run is to stop, so that every process that works on it sees it; the first reason stays. */
+  async noteStop(runId: string, { code, message }: RunFailure): Promise<void> {
+    await Run.update({ failure: { code, message } }, { where: { id: runId, ...UNDER_WAY, failure: null } });
+  }
+
+  /** Adds CPU seconds that belong to no finished shard; in the row of a run under way, `cpuSeconds` counts these alone. */
+  async addCpuSeconds(runId: string, cpuSeconds: number): Promise<void> {
+    await Run.increment({ cpuSeconds }, { where: { id: runId, ...UNDER_WAY } });
+  }
+
+  /** Those of the runs that are to stop, or have ended. */
+  async findStopped(runIds: readonly string[]): Promise<Set<string>> {
+    const going = await Run.findAll({
+      where: { id: [...runIds], ...UNDER_WAY, cancelRequestedAt: null, failure: null },
+      attributes: ['id'],
+    });
+    const ids = new Set(going.map(({ id }) => id));
+    return new Set(runIds.filter((id) => !ids.has(id)));
   }
 
   /** CPU seconds of the shards that are done. */

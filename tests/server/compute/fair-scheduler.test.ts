@@ -34,14 +34,33 @@ describe('FairScheduler', () => {
     expect(await Promise.all(results)).toEqual(['a', 'a', 'a', 'a', 'a']);
   });
 
-  it('lets teams take turns, and runs inside a team', async () => {
+  it('gives every team the same, however many runs it has, and the runs of a team the same', async () => {
     const { started, schedule, releaseAll } = createBench(1);
-    void schedule('t1', 'a1', 4);
-    void schedule('t1', 'a2', 4);
-    void schedule('t2', 'b1', 4);
+    void schedule('t1', 'a1', 20);
+    void schedule('t1', 'a2', 20);
+    void schedule('t2', 'b1', 20);
     await releaseAll();
-    expect(started.slice(0, 8)).toEqual(['a1', 'b1', 'a2', 'b1', 'a1', 'b1', 'a2', 'b1']);
-    expect(started).toHaveLength(12);
+    const count = (runId: string) => started.slice(0, 24).filter((id) => id === runId).length;
+    expect(count('b1')).toBeGreaterThanOrEqual(11);
+    expect(count('b1')).toBeLessThanOrEqual(13);
+    expect(Math.abs(count('a1') - count('a2'))).toBeLessThanOrEqual(1);
+    expect(started).toHaveLength(60);
+  });
+
+  it('gives a small run more than a large one of its team, without stopping the large one or taking from other teams', async () => {
+    const { scheduler, started, schedule, releaseAll } = createBench(1);
+    scheduler.setSize('large', 3_600);
+    scheduler.setSize('small', 0.5);
+    void schedule('t1', 'large', 60);
+    void schedule('t2', 'other', 60);
+    void schedule('t1', 'small', 20);
+    await releaseAll();
+    const untilSmallIsDone = started.slice(0, started.lastIndexOf('small') + 1);
+    const count = (runId: string) => untilSmallIsDone.filter((id) => id === runId).length;
+    expect(count('large')).toBeGreaterThanOrEqual(1);
+    // An hour weighs 1/12.
+    expect(count('large')).toBeLessThanOrEqual(3);
+    expect(Math.abs(count('other') - count('small') - count('large'))).toBeLessThanOrEqual(2);
   });
 
   it('makes a run that comes late wait for one task at most', async () => {

@@ -47,7 +47,9 @@ describe('the compute pool', () => {
   });
 
   it('survives a job that eats all memory of its thread', async () => {
-    await expect(pool.runJob('estimate', { evidence, mode: 'count', probes: 1, seed: 1, maxSeconds: 1 })).rejects.toBeInstanceOf(WorkerCrash);
+    await expect(pool.runJob('estimate', { evidence, mode: 'count', probes: 1, seed: 1, maxSeconds: 1 })).rejects.toBeInstanceOf(
+      WorkerCrash,
+    );
     expect(await pool.runJob('predict', { smiles: 'C', solvent: 'CDCl3' })).toMatchObject({ smiles: 'C' });
   }, 30_000);
 
