@@ -32,7 +32,7 @@ const zones = [
 ];
 
 export default defineConfig(
-  { ignores: ['dist/', '.data/', '.test-data/', 'test-artefacts/', 'coverage/'] },
+  { ignores: ['dist/', '.data/', '.test-data/', 'test-artefacts/', 'coverage/', 'workers/enumeration/assembly/'] },
   js.configs.recommended,
   tseslint.configs.recommended,
   {

@@ -201,6 +201,8 @@ export function createLayout(problem: SearchProblem, distribution: Distribution)
     bondQuota,
     classOf,
     unitOf,
+    allowedOrders: null,
+    smallestRing: 3,
     tiedPermutations: listTiedPermutations(units, tiedRows.length),
     base,
     isPlain: instances.length === 0,

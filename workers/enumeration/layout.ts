@@ -22,6 +22,13 @@ export interface FillLayout {
   readonly classOf: Uint16Array;
   /** Unit instance of each open vertex; every single atom is its own. Vertices of one unit never bond outside the unit. */
   readonly unitOf: Uint16Array;
+  /**
+   * Bit o of entry `FILL_STRIDE i + j`: vertices i and j may share a bond of order o; the same for like vertices, symmetric.
+   * null = every order is allowed.
+   */
+  readonly allowedOrders: Uint8Array | null;
+  /** No bond may close a ring of fewer atoms; 3 = no limit. */
+  readonly smallestRing: number;
   /** All permutations of the tied vertices that keep units whole and respect their automorphisms; identity first. */
   readonly tiedPermutations: readonly Uint8Array[];
   /** Graph with the bonds inside units and all hydrogens; a fill adds its bonds to a copy of the bond orders. */
