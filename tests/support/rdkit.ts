@@ -10,6 +10,12 @@ export function loadRdkit(): Promise<MainModule> {
   return loading;
 }
 
+/** Valence of an atom whose hydrogens do not follow from the default one (P–H of phosphorus 5); 0 = they do. */
+function writtenValence({ atomCount: n, atomicNumbers, hydrogens, bondOrders }: MolecularGraph, atom: number): number {
+  if (atomicNumbers[atom] !== 15 || hydrogens[atom] === 0) return 0;
+  return bondOrders.subarray(atom * n, (atom + 1) * n).reduce((sum, order) => sum + order, hydrogens[atom]);
+}
+
 /** V2000 molfile without coordinates. */
 export function molfileOf(graph: MolecularGraph): string {
   const n = graph.atomCount;
@@ -25,7 +31,8 @@ export function molfileOf(graph: MolecularGraph): string {
   }
   const atoms = Array.from(
     graph.atomicNumbers,
-    (z) => `    0.0000    0.0000    0.0000 ${elementOf(z).symbol.padEnd(3)} 0  0  0  0  0  0  0  0  0  0  0  0`,
+    (z, i) =>
+      `    0.0000    0.0000    0.0000 ${elementOf(z).symbol.padEnd(3)} 0  0  0  0  0${column(writtenValence(graph, i))}  0  0  0  0  0  0`,
   );
   const charged = charges.length === 0 ? [] : [`M  CHG${column(charges.length)}${charges.join('')}`];
   return [
