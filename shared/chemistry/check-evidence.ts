@@ -1,5 +1,6 @@
 import { evidenceDocument, type EvidenceDocument } from '../schemas/evidence.js';
 import { formatIssuePath, type InputIssue } from '../schemas/problem.js';
+import { readCorrelations } from './correlations.js';
 import { parseExcludedPattern } from './excluded-pattern.js';
 import { checkFormulaCounts, countOf, formatHill, parseFormula, type FormulaCounts } from './formula.js';
 import { parseFragment, type Fragment } from './fragment.js';
@@ -143,6 +144,9 @@ export function checkEvidence(document: EvidenceDocument): EvidenceCheck {
   const formulaIssues = checkFormulaCounts(parsed.counts, extraUnsaturationOf(copies));
   if (formulaIssues.length === 0 && areAllReadable) issues.push(...budgetOf(parsed.counts, copies).issues);
   issues.push(...checkSignals(document, parsed.counts));
+  const correlations = readCorrelations(document);
+  issues.push(...correlations.issues);
+  notes.push(...correlations.notes);
   return { issues: [...formulaIssues, ...issues], notes };
 }
 

@@ -1,7 +1,8 @@
 import type { RunSettings } from '../jobs/contract.js';
 import { type EvidenceDocument, VALENCE_GROUPS } from '../schemas/evidence.js';
+import { attachedHydrogensFrom2D } from './correlations.js';
 
-/** A document in which the options that depend on what is asked for are settled. */
+/** A document in which the options that depend on what is asked for are settled, and attached hydrogens that HSQC tells are filled in. */
 export type ResolvedEvidence = EvidenceDocument & {
   readonly options: EvidenceDocument['options'] & Required<Pick<EvidenceDocument['options'], 'valenceGroups' | 'shiftWindows'>>;
 };
@@ -15,6 +16,7 @@ export function resolveOptions(evidence: EvidenceDocument, mode: RunSettings['mo
   const { options } = evidence;
   return {
     ...evidence,
+    carbonSignals: attachedHydrogensFrom2D(evidence),
     options: {
       ...options,
       valenceGroups: options.valenceGroups ?? (isRanking ? [...VALENCE_GROUPS] : []),

@@ -1,4 +1,5 @@
 import type { SearchLayout } from './distributions.js';
+import { createPartialCorrelationCheck } from './partial-correlation-check.js';
 import type { SearchProblem } from './problem.js';
 
 /**
@@ -20,6 +21,6 @@ export interface PartialCheck {
 }
 
 /** The checks of a layout, cheapest first. */
-export function createPartialChecks(_problem: SearchProblem, _layout: SearchLayout): PartialCheck[] {
-  return [];
+export function createPartialChecks({ correlations }: SearchProblem, layout: SearchLayout): PartialCheck[] {
+  return correlations === null ? [] : [createPartialCorrelationCheck(correlations, layout)];
 }

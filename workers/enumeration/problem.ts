@@ -1,8 +1,10 @@
+import { readCorrelations } from '../../shared/chemistry/correlations.js';
 import { elementOf, findElement } from '../../shared/chemistry/elements.js';
 import { countOf, parseFormula } from '../../shared/chemistry/formula.js';
 import { parseSmiles } from '../../shared/chemistry/smiles.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { InputIssue } from '../../shared/schemas/problem.js';
+import { createCorrelationModel, type CorrelationModel } from '../correlations/correlation-model.js';
 import { FILL_STRIDE } from './fill.js';
 import { createUnitKind, type UnitKind } from './units.js';
 
@@ -50,6 +52,8 @@ export interface SearchProblem {
   readonly heavyAtomCount: number;
   readonly census: CarbonCensus;
   readonly mergeResonanceForms: boolean;
+  /** COSY and HMBC pairs to meet; null = none. */
+  readonly correlations: CorrelationModel | null;
   /**
    * True when the structure alone tells where each unit lies: no units, or only groups of higher valence that the search
    * forms. Then no two placements have to be compared.
@@ -137,6 +141,7 @@ export function createProblem(evidence: EvidenceDocument): SearchProblem {
     heavyAtomCount,
     census: carbonCensus(evidence, countOf(parsed.counts, 'C')),
     mergeResonanceForms: evidence.options.mergeResonanceForms,
+    correlations: createCorrelationModel(evidence),
     hasForcedPlacements: units.length === 0,
     partnerLimits: [],
   };
@@ -171,6 +176,10 @@ function carbonCensus(evidence: EvidenceDocument, carbonCount: number): CarbonCe
   const most = [carbonCount, carbonCount, carbonCount, carbonCount, carbonCount];
   const signals = evidence.carbonSignals;
   for (const signal of signals) if (signal.hydrogens !== undefined) least[signal.hydrogens] += signal.count ?? 1;
+  // Carbons with an HSQC pair are not quaternary, however many hydrogens they have.
+  readCorrelations(evidence).attached.forEach((attached, index) => {
+    if (signals[index].hydrogens === undefined && attached.least > 0) most[0] = Math.max(0, most[0] - (signals[index].count ?? 1));
+  });
   const allKnown = signals.length > 0 && signals.every((signal) => signal.hydrogens !== undefined);
   if (allKnown && evidence.options.carbonList === 'complete') {
     for (let h = 1; h <= 4; h++) if (!signals.some((signal) => signal.hydrogens === h)) most[h] = 0;

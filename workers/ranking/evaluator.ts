@@ -2,6 +2,7 @@ import type { Explanation, FunnelStage, RunSettings, ScoreTerms } from '../../sh
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { AnalysisScratch, analyseStructure } from '../graph/analysis.js';
+import { CorrelationCheck } from './correlation-check.js';
 import { Environments } from './environments.js';
 import { compileExcludedFragments } from './excluded-fragments.js';
 import { selectRules } from './plausibility/active-rules.js';
@@ -37,6 +38,7 @@ export function createEvaluator(evidence: EvidenceDocument, settings: RunSetting
   const excluded = compileExcludedFragments(evidence);
   const { hard, soft } = selectRules(evidence);
   const census = new SignalCensus(evidence);
+  const correlations = CorrelationCheck.of(evidence);
   const hasSignals = evidence.carbonSignals.length > 0 || evidence.protonSignals.length > 0;
   const { ringSizes } = evidence.options;
   const limitsRings = ringSizes.min > 3 || ringSizes.max !== null;
@@ -64,7 +66,7 @@ export function createEvaluator(evidence: EvidenceDocument, settings: RunSetting
       if (hasSignals) {
         environments.find(structure);
         bounds.find(structure, environments);
-        const reason = census.check(structure, environments, bounds);
+        const reason = census.check(structure, environments, bounds) ?? correlations?.check(structure, environments, bounds) ?? null;
         if (reason !== null) return reject('signals', reason);
       }
       if (scorer === null) return unscored;
@@ -112,6 +114,9 @@ export function explainEvaluation(evidence: EvidenceDocument, settings: RunSetti
     if (atoms.size > 0) add('plausibility', reason, [...atoms]);
   }
   for (const { reason, atoms } of new SignalCensus(evidence).checkAll(structure, environments, bounds)) add('signals', reason, atoms);
+  for (const { reason, text, atoms } of CorrelationCheck.of(evidence)?.explain(structure, environments, bounds) ?? []) {
+    reasons.push({ stage: 'signals', reason, text, atoms });
+  }
   if (reasons.length > 0) {
     return { kind: 'rejected', stage: reasons[0].stage, reasons: reasons.map(({ reason, text, atoms }) => ({ reason, text, atoms })) };
   }

@@ -1,3 +1,4 @@
+import { resolveOptions } from '../../shared/chemistry/resolve-options.js';
 import type { JobContract, RankedCandidate, ShardCandidate, SignalMatch } from '../../shared/jobs/contract.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import { analyseStructure } from '../graph/analysis.js';
@@ -24,7 +25,8 @@ import { listCarbonMatches, listProtonMatches } from './signal-matches.js';
  * @returns candidates by falling score, equal scores by key.
  */
 export function finishRanking(input: JobContract['finish']['input']): JobContract['finish']['output'] {
-  const { evidence, settings, kept, logSumExp, funnel } = input;
+  const { settings, kept, logSumExp, funnel } = input;
+  const evidence = resolveOptions(input.evidence, settings.mode);
   const survivorCount = funnel.find(({ stage }) => stage === 'ranked')?.entered ?? kept.length;
   const posterior = createPosterior({
     logSumExp,

@@ -32,6 +32,7 @@ export const SIGNAL_REASONS: Readonly<Record<SignalReasonKind, readonly string[]
 export function describeSignalReason(reason: string): string | null {
   const [stage, kind, typeText] = reason.split(':');
   if (stage !== 'signals') return null;
+  if (kind === 'correlations') return 'No assignment of the signals to its atoms meets the COSY and HMBC pairs.';
   const type = Number(typeText);
   const signals = type === ALL_TYPES ? '¹³C signals' : `${TYPES[type]} signals in the ¹³C list`;
   const carbons = type === ALL_TYPES ? 'carbons' : NAMES[type];
