@@ -120,7 +120,7 @@ export class ShardMerger {
 }
 
 /** Survivors are what the last stage of a funnel let through. */
-function countSurvivors(funnel: Funnel, constitutionCount: number): number {
+export function countSurvivors(funnel: Funnel, constitutionCount: number): number {
   return funnel.at(-1)?.passed ?? constitutionCount;
 }
 

@@ -7,7 +7,7 @@ import { Candidate } from '../models/candidate.js';
 import { Run } from '../models/run.js';
 import { RunShard } from '../models/run-shard.js';
 import { extendReservation, settleUsage } from '../quotas/reservations.js';
-import type { RunFailure } from './run-stop.js';
+import { readStop, type RunFailure, type Stop } from './run-stop.js';
 
 /**
  * Version of the search plan that shard rows hold. To be raised whenever the engine would read an old plan in
@@ -157,14 +157,17 @@ export class RunStore {
     await Run.increment({ cpuSeconds }, { where: { id: runId, ...UNDER_WAY } });
   }
 
-  /** Those of the runs that are to stop, or have ended. */
-  async findStopped(runIds: readonly string[]): Promise<Set<string>> {
-    const going = await Run.findAll({
-      where: { id: [...runIds], ...UNDER_WAY, cancelRequestedAt: null, failure: null },
-      attributes: ['id'],
-    });
-    const ids = new Set(going.map(({ id }) => id));
-    return new Set(runIds.filter((id) => !ids.has(id)));
+  /** Those of the runs that are to stop, and why, or that have ended. */
+  async findStops(runIds: readonly string[]): Promise<Map<string, Stop | 'ended'>> {
+    const rows = await Run.findAll({ where: { id: [...runIds] }, attributes: ['id', 'status', 'cancelRequestedAt', 'failure'] });
+    const stops = new Map<string, Stop | 'ended'>(runIds.map((id) => [id, 'ended']));
+    for (const row of rows) {
+      if (row.status !== 'queued' && row.status !== 'running') continue;
+      const stop = readStop(row);
+      if (stop === null) stops.delete(row.id);
+      else stops.set(row.id, stop);
+    }
+    return stops;
   }
 
   /** CPU seconds of the shards that are done. */
