@@ -5,10 +5,10 @@
  */
 import { parseSmiles } from '../shared/chemistry/smiles.js';
 import type { JobContract, JobName, JobResult } from '../shared/jobs/contract.js';
-import { estimateSearch } from './enumeration/estimate.js';
 import { TooSymmetricError } from './enumeration/distributions.js';
 import { ProblemError } from './enumeration/problem.js';
 import { planShards } from './enumeration/search.js';
+import { estimateRun } from './jobs/estimate.js';
 import { explainStructure } from './jobs/explain.js';
 import { layOut } from './jobs/layout.js';
 import { evaluatorFor, searchFor } from './jobs/search-cache.js';
@@ -55,16 +55,6 @@ export const predict = handler<'predict'>(({ smiles, solvent }) => {
   return { ...predictSpectra(read.graph, solvent), smiles, notes: read.notes };
 });
 
-export const estimate = handler<'estimate'>(({ evidence, mode, probes, seed, maxSeconds }) => {
-  const startedMs = performance.now();
-  const result = estimateSearch(searchFor(evidence, mode), probes, seed, maxSeconds, () => performance.now());
-  return {
-    estimate: result.estimate,
-    low: result.low,
-    high: result.high,
-    cpuSeconds: result.cpuSeconds,
-    seconds: (performance.now() - startedMs) / 1000,
-  };
-});
+export const estimate = handler<'estimate'>(estimateRun);
 
 export const layout = handler<'layout'>(({ smiles }) => ({ structures: smiles.map(layOut) }));

@@ -7,6 +7,8 @@ export interface RunSettings {
   readonly keep: number;
   /** Wall-clock limit of the whole run in seconds; null = none. */
   readonly maxSeconds: number | null;
+  /** Constitutions after which the run ends; absent or null = none. */
+  readonly maxConstitutions?: number | null;
   /** `count` only counts constitutions, `list` keeps the first `keep` unranked, `rank` predicts and scores. */
   readonly mode: 'count' | 'list' | 'rank';
 }
@@ -83,7 +85,12 @@ export interface ShardResult {
   readonly cpuSeconds: number;
   /** False when a limit or a cancellation cut the shard short. */
   readonly complete: boolean;
+  /** The limit that cut it short; absent when it is complete or was cancelled. */
+  readonly stoppedBy?: ShardLimit;
 }
+
+/** Limits that a shard watches itself. */
+export type ShardLimit = 'time' | 'count' | 'memory';
 
 /** Live counters of a run, written by shards into a SharedArrayBuffer (see shared/jobs/counters). */
 export interface RunProgress {
@@ -166,6 +173,7 @@ export interface RunResult {
   readonly multigraphCount: number;
   readonly complete: boolean;
   readonly funnel: Funnel;
+  readonly cuts: readonly BranchCut[];
   readonly candidates: readonly RankedCandidate[];
   /** Probability that the right structure is not among the survivors. */
   readonly noneOfTheseProbability: number;
@@ -202,6 +210,36 @@ export interface LaidOutStructure {
   readonly bonds: ReadonlyArray<{ readonly from: number; readonly to: number; readonly order: number }>;
 }
 
+/** Knowledge that would make a search smaller. */
+export interface EstimateHint {
+  readonly kind: 'attachedHydrogens' | 'carbonShifts' | 'shiftWindows' | 'heteroBonds' | 'ringSizes' | 'valenceGroups';
+  /** One sentence for people. */
+  readonly text: string;
+  /** By how much the number of constitutions is expected to fall. */
+  readonly factor: number;
+}
+
+/** Size and cost of a run before it starts; low and high are the ends of 95 % intervals. */
+export interface RunEstimate {
+  /** Constitutions that will be built. */
+  readonly estimate: number;
+  readonly low: number;
+  readonly high: number;
+  /** All were counted: low, estimate and high are the same. */
+  readonly isExact: boolean;
+  /** Constitutions that pass every filter. */
+  readonly survivors: { readonly estimate: number; readonly low: number; readonly high: number };
+  /** Thread seconds of the whole run. */
+  readonly cpuSeconds: number;
+  readonly cpuSecondsLow: number;
+  readonly cpuSecondsHigh: number;
+  /** Most helpful first. */
+  readonly hints: readonly EstimateHint[];
+  readonly probes: number;
+  /** Wall-clock seconds that the estimate took. */
+  readonly seconds: number;
+}
+
 /** Every message that crosses the thread boundary. Input is structured-cloneable; counters are shared memory. */
 export interface JobContract {
   plan: {
@@ -215,6 +253,8 @@ export interface JobContract {
       shard: ShardSpec;
       counters: SharedArrayBuffer;
       deadlineEpochMs: number | null;
+      /** Constitutions that the run may still build when the shard starts; absent or null = no limit. */
+      maxConstitutions?: number | null;
     };
     output: ShardResult;
   };
@@ -225,8 +265,18 @@ export interface JobContract {
   explain: { input: { evidence: EvidenceDocument; settings: RunSettings; smiles: string }; output: Explanation };
   predict: { input: { smiles: string; solvent: string }; output: PredictedSpectra & { smiles: string; notes: readonly string[] } };
   estimate: {
-    input: { evidence: EvidenceDocument; mode: RunSettings['mode']; probes: number; seed: number; maxSeconds: number };
-    output: { estimate: number; low: number; high: number; cpuSeconds: number; seconds: number };
+    input: {
+      evidence: EvidenceDocument;
+      mode: RunSettings['mode'];
+      probes: number;
+      seed: number;
+      maxSeconds: number;
+      /** When somebody wants the answer, whatever the job waited for before it began. */
+      deadlineEpochMs?: number;
+      /** Candidates that the run will keep; absent: as the evidence says. */
+      keep?: number;
+    };
+    output: RunEstimate;
   };
   /** Order of the answer = order of the question. */
   layout: { input: { smiles: readonly string[] }; output: { structures: readonly LaidOutStructure[] } };

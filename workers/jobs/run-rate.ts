@@ -1,0 +1,147 @@
+import type { RunSettings, ShardCandidate } from '../../shared/jobs/contract.js';
+import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
+import type { ProbeSample } from '../enumeration/estimate.js';
+import { fill } from '../enumeration/fill.js';
+import { createRandom, openBranch, type OpenBranch } from '../enumeration/random-descent.js';
+import type { Search } from '../enumeration/search.js';
+import { constitutionKey } from '../graph/constitution-key.js';
+import { packGraph, unpackGraph } from '../graph/pack.js';
+import type { Evaluator } from '../ranking/evaluator.js';
+import { finishRanking } from '../ranking/finish.js';
+
+/** What a run costs on one thread. */
+export interface RunRate {
+  /** Building, filtering and scoring. */
+  readonly secondsPerConstitution: number;
+  readonly relativeDeviation: number;
+  /** A survivor that enters the list of a shard's best: its key and packed form. */
+  readonly secondsPerEntry: number;
+  /** A candidate that is kept in the end: its spectra, assignment and remarks. */
+  readonly secondsPerDescribed: number;
+}
+
+/** A slice of the search is run for so long at most. */
+const SLICE_MS = 12;
+/** A slice that is over sooner is taken larger: its own setting up would weigh too much. */
+const SHORTEST_SLICE_MS = 2;
+const ROWS_ABOVE_LEAF = 3;
+/** The first slices warm the compiled code up. */
+const WARM_UP_SHARE = 1 / 3;
+const KEYING_MS = 15;
+const DESCRIBING_MS = 90;
+const MOST_SLICES = 400;
+
+interface Task {
+  readonly evidence: EvidenceDocument;
+  readonly settings: RunSettings;
+  /** Some constitutions that pass the filters. */
+  readonly survivors: readonly ShardCandidate[];
+  readonly seed: number;
+}
+
+/**
+ * Measures the rate of a run by really running slices of it: pieces of the tree around constitutions drawn in proportion to
+ * what they stand for, built, filtered and scored as a shard does it.
+ */
+export function measureRate(
+  search: Search,
+  evaluator: Evaluator,
+  samples: ReadonlyArray<ProbeSample<unknown>>,
+  task: Task,
+  shouldStop: () => boolean,
+): RunRate {
+  const keeping = measureKeeping(task);
+  const random = createRandom(task.seed + 1);
+  const reached = new Float64Array(samples.length);
+  let total = 0;
+  samples.forEach(({ weight }, k) => (reached[k] = total += weight));
+  const open = new Map<number, OpenBranch>();
+  const slices: Slice[] = [];
+  while (total > 0 && slices.length < MOST_SLICES && (slices.length === 0 || !shouldStop())) {
+    const sample = samples[firstAtLeast(reached, random() * total)];
+    let branch = open.get(sample.branch);
+    if (branch === undefined) open.set(sample.branch, (branch = openBranch(search, sample.branch)));
+    slices.push(runSlice(branch, evaluator, sample.path));
+  }
+  const warm = slices.slice(Math.floor(slices.length * WARM_UP_SHARE));
+  const built = warm.reduce((sum, { count }) => sum + count, 0);
+  const seconds = warm.reduce((sum, slice) => sum + slice.seconds, 0);
+  if (warm.length === 0) return { secondsPerConstitution: 0, relativeDeviation: 0, ...keeping };
+  // Of the whole, not the mean of the slices' rates: one slice held up by another process would count for all.
+  const rate = seconds / Math.max(1, built);
+  const squares = warm.reduce((sum, slice) => sum + (slice.seconds - rate * slice.count) ** 2, 0);
+  const relativeDeviation = warm.length < 2 ? 1 : Math.sqrt((squares * warm.length) / (warm.length - 1)) / seconds;
+  return { secondsPerConstitution: rate, relativeDeviation, ...keeping };
+}
+
+/** A piece of the search that was really run. */
+interface Slice {
+  readonly count: number;
+  readonly seconds: number;
+}
+
+/** Runs the piece of the tree around one constitution. */
+function runSlice({ layout, events, judge }: OpenBranch, evaluator: Evaluator, path: ReadonlyArray<readonly number[]>): Slice {
+  for (let level = Math.max(0, path.length - ROWS_ABOVE_LEAF); ; level = Math.max(0, level - 2)) {
+    const startedMs = performance.now();
+    const isOver = (): boolean => performance.now() - startedMs >= SLICE_MS;
+    let count = 0;
+    fill(layout, level === 0 ? [] : path[level - 1], 0, {
+      ...events,
+      onLeaf(filled, molecule, mayHaveOtherForms) {
+        for (const graph of judge(filled, molecule, mayHaveOtherForms).graphs) {
+          count++;
+          evaluator.evaluate(graph);
+        }
+        return (count & 15) === 0 && isOver();
+      },
+      shouldStop: isOver,
+    });
+    const elapsedMs = performance.now() - startedMs;
+    if (level === 0 || elapsedMs >= SHORTEST_SLICE_MS) return { count, seconds: elapsedMs / 1000 };
+  }
+}
+
+/** What survivors cost beside being scored. */
+function measureKeeping({ evidence, settings, survivors }: Task): Pick<RunRate, 'secondsPerEntry' | 'secondsPerDescribed'> {
+  if (survivors.length === 0 || settings.mode === 'count') return { secondsPerEntry: 0, secondsPerDescribed: 0 };
+  const graphs = survivors.map(({ packed }) => unpackGraph(packed));
+  const key = (): void => {
+    for (const graph of graphs) {
+      constitutionKey(graph, evidence.options.mergeResonanceForms);
+      packGraph(graph);
+    }
+  };
+  const describe = (): void => {
+    finishRanking({ evidence, settings, kept: survivors, logSumExp: 0, funnel: [] });
+  };
+  return {
+    secondsPerEntry: shortestOf(key, KEYING_MS) / graphs.length,
+    secondsPerDescribed: shortestOf(describe, DESCRIBING_MS) / graphs.length,
+  };
+}
+
+/** Seconds of the quickest of several times: the first ones warm the compiled code up. */
+function shortestOf(work: () => void, forMs: number): number {
+  const startedMs = performance.now();
+  let shortestMs = Infinity;
+  for (let nowMs = startedMs; nowMs - startedMs < forMs;) {
+    work();
+    const thenMs = performance.now();
+    shortestMs = Math.min(shortestMs, thenMs - nowMs);
+    nowMs = thenMs;
+  }
+  return shortestMs / 1000;
+}
+
+/** Index of the first entry of an ascending list that is not below a value. */
+function firstAtLeast(ascending: Float64Array, value: number): number {
+  let low = 0;
+  let high = ascending.length - 1;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (ascending[middle] < value) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
