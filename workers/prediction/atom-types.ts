@@ -36,6 +36,7 @@ export const ATOM_TYPES = [
   'C=N:H',
   'C=N:C',
   'C=N:X',
+  'C=N:N2',
   'C=S',
   'ar6:CH',
   'ar6:C',
@@ -147,7 +148,7 @@ function groupOf(type: AtomType): AtomGroup {
   if (/^(#CH|#C|nitrile|isonitrile)$/.test(type)) return 'linear';
   if (/^(=CH2|=CH|=C|=C=|cumulated|C:other)$/.test(type)) return 'vinyl';
   if (/^ar/.test(type)) return 'aryl';
-  if (/^(CHO|CO|COar|COOH|COOR|CON|COX|HCOX|carbonic|COS|C=N:.|C=S)$/.test(type)) return 'acyl';
+  if (/^(CHO|CO|COar|COOH|COOR|CON|COX|HCOX|carbonic|COS|C=N:.+|C=S)$/.test(type)) return 'acyl';
   if (/^(=O:|O:minus|=S)/.test(type)) return '=O';
   if (type === 'o:ar' || type === 's:ar') return 'arX';
   if (/^O/.test(type)) return 'O';
@@ -287,8 +288,19 @@ function carbonType(analysis: StructureAnalysis, a: number): number {
     return hydroxyl > 0 ? INDEX.COOH : INDEX.COOR;
   }
   if (thio > 0) return INDEX['C=S'];
+  if (imino > 0 && isDiazoCarbon(analysis, a)) return INDEX['C=N:N2'];
   if (imino > 0) return heteroCount > 0 ? INDEX['C=N:X'] : hydrogens[a] > 0 ? INDEX['C=N:H'] : INDEX['C=N:C'];
   return doubleOther > 0 ? INDEX['C:other'] : INDEX.cumulated;
+}
+
+/** C=N⁺=N⁻: far upfield of every other C=N. */
+function isDiazoCarbon(analysis: StructureAnalysis, a: number): boolean {
+  const { graph, neighbours, degrees, hybridisation } = analysis;
+  for (let k = 0; k < degrees[a]; k++) {
+    const b = neighbours[a * NEIGHBOUR_STRIDE + k];
+    if (graph.charges[b] === 1 && hybridisation[b] === 1 && graph.bondOrders[a * graph.atomCount + b] === 2) return true;
+  }
+  return false;
 }
 
 /** What a heteroatom's carbon neighbour is to it: 0 saturated, 1 aryl, vinyl or imine, 2 acyl. */

@@ -36,6 +36,7 @@ export function ruleOfCarbonClass(name: string): number {
     if (name.startsWith('#C')) return 'alkyne increments';
     if (/^(nitrile|isonitrile)$/.test(name)) return 'nitrile rule';
     if (/^(=C=|cumulated)$/.test(name)) return 'cumulated double bonds';
+    if (name === 'C=N:N2') return 'range';
     if (name.startsWith('C=')) return 'imine rule';
     if (name.startsWith('ar6')) return 'benzene increments';
     if (name.startsWith('ar5')) return 'five-ring heteroarene increments';

@@ -45,6 +45,7 @@ export const PROTON_CLASSES = [
   'N=H',
   'SH',
   'PH',
+  'PH=O',
   'SiH',
   'XH',
 ] as const;
@@ -107,6 +108,7 @@ function protonClassName(type: AtomType): ProtonClass {
   if (/^(=CH2|=CH|=C|=C=)$/.test(type)) return type === '=CH2' ? '=CH2' : '=CH';
   if (type === '#CH' || type === '#C') return '#CH';
   if (type === 'CHO' || type === 'HCOX') return type;
+  if (type === 'C=N:N2') return 'CH:other';
   if (/^C=(N|S)/.test(type)) return 'HC=N';
   if (type === 'ar6:CH' || type === 'ar5:CH') return type;
   if (ATOM_TYPES.indexOf(type) < AZOLE_START) return 'CH:other';
@@ -118,6 +120,7 @@ function protonClassName(type: AtomType): ProtonClass {
   if (amine !== null) return `NH:${amine[1] as 'alkyl' | 'sp2' | 'acyl'}`;
   if (/^N/.test(type)) return 'NH:other';
   if (/^S[^i]|^SH/.test(type)) return 'SH';
+  if (type === 'P5') return 'PH=O';
   if (/^P/.test(type)) return 'PH';
   return type === 'Si' ? 'SiH' : 'XH';
 }

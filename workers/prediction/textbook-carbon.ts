@@ -11,7 +11,7 @@ export interface TextbookEntry {
 
 const named = (pattern: RegExp): AtomType[] => ATOM_TYPES.filter((type) => pattern.test(type));
 const SATURATED = named(/^(sp3|ring3)/);
-const ALKENYL = named(/^(=CH2|=CH|=C|=C=|cumulated|C=N:.|C=S|C:other)$/);
+const ALKENYL = named(/^(=CH2|=CH|=C|=C=|cumulated|C=N:.+|C=S|C:other)$/);
 const ALKYNYL = named(/^#C/);
 const ARYL = named(/^ar/);
 const ETHER_O = named(/^O:(alkyl2|alkyl-sp2|ring3|N|other|sp2-sp2)$/);
@@ -219,6 +219,8 @@ const CARBONYL: ReadonlyArray<readonly [CarbonClass, number, number, number]> = 
   ['C=N:H', 148, 0, 2],
   ['C=N:C', 150, 4, 2],
   ['C=N:X', 156, 3, 1],
+  // Diazo carbon, from memory: ethyl diazoacetate 46, diazoacetone 55, diphenyldiazomethane 63, diazomethane 23.
+  ['C=N:N2', 50, 0, 0],
   ['C=S', 210, 10, 2],
   ['nitrile', 116.4, 0, 2.5],
   ['isonitrile', 157, 0, 0],

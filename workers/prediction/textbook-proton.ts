@@ -4,7 +4,7 @@ import type { TextbookEntry } from './textbook-carbon.js';
 
 const named = (pattern: RegExp): AtomType[] => ATOM_TYPES.filter((type) => pattern.test(type));
 const SATURATED = named(/^(sp3|ring3)/);
-const ALKENYL = named(/^(=CH2|=CH|=C|=C=|cumulated|C=N:.|C=S|C:other)$/);
+const ALKENYL = named(/^(=CH2|=CH|=C|=C=|cumulated|C=N:.+|C=S|C:other)$/);
 const ALKYNYL = named(/^#C/);
 const ARYL = named(/^ar/);
 const AMINE_N = named(/^(NH2|NH|N):(alkyl|sp2|N|O|oxide|plus|cumulated)$|^N=/);
@@ -198,6 +198,8 @@ const MIDDLES: ReadonlyArray<readonly [ProtonClass, number]> = [
   ['N=H', 9],
   ['SH', 2],
   ['PH', 5],
+  // Dialkyl phosphonates 6.8, secondary phosphine oxides 6.5 to 8, from memory.
+  ['PH=O', 7],
   ['SiH', 4],
   ['XH', 3],
 ];

@@ -13,6 +13,8 @@ import { ALL_TYPES, SIGNAL_REASONS, type SignalReasonKind } from './signal-reaso
 
 const CARBON = 6;
 const TYPE_COUNT = 4;
+/** Elements whose hydrogens do not exchange. */
+const BINDS_FIRMLY: ReadonlySet<number> = new Set([CARBON, 14, 15]);
 
 /** A contradiction between signals and structure, and the atoms it is about. */
 export interface SignalContradiction {
@@ -179,11 +181,11 @@ function countHydrogens(s: StructureAnalysis): number {
   return count;
 }
 
-/** Hydrogens that do not exchange: those on carbon and silicon. */
+/** Hydrogens that do not exchange: those on carbon, silicon and phosphorus. */
 function countBoundHydrogens(s: StructureAnalysis): number {
   const { atomCount: n, atomicNumbers, hydrogens } = s.graph;
   let count = 0;
-  for (let a = 0; a < n; a++) if (atomicNumbers[a] === CARBON || atomicNumbers[a] === 14) count += hydrogens[a];
+  for (let a = 0; a < n; a++) if (BINDS_FIRMLY.has(atomicNumbers[a])) count += hydrogens[a];
   return count;
 }
 
@@ -196,9 +198,9 @@ function atomsConcerned(kind: SignalReasonKind, type: number, s: StructureAnalys
       kind === 'protonEnvironments'
         ? hydrogens[a] > 0
         : kind === 'exchangeableProtons'
-          ? !isCarbon && hydrogens[a] > 0
+          ? !BINDS_FIRMLY.has(atomicNumbers[a]) && hydrogens[a] > 0
           : kind === 'boundProtons'
-            ? isCarbon && hydrogens[a] > 0
+            ? BINDS_FIRMLY.has(atomicNumbers[a]) && hydrogens[a] > 0
             : isCarbon && (type === ALL_TYPES || carbonType(hydrogens[a]) === type);
     if (concerns) atoms.push(a);
   }
