@@ -1,8 +1,9 @@
 /*
  * How often the true structure comes first, on real compounds:
- * npm run bench -- ranking [--cases FILE] [--variant spectra|fragments] [--limit N] [--seconds S] [--from A] [--to B] [--folds 0|all] [--failures]
+ * npm run bench -- ranking [--cases FILE] [--variant spectra|fragments] [--limit N] [--seconds S] [--from A] [--to B] [--folds 0|all] [--failures] [--without-groups]
  * FILE: evidence documents as JSON lines, plain or gzipped (default: the open NMR data beside the checkout). Cases are
  * taken evenly over the file, each on one thread with S seconds (default 60) of CPU time; unfinished counts as failed.
+ * --without-groups: groups of higher valence come only with fragments.
  * By default only compounds that the predictor and the score were not fitted on (fold 0).
  */
 import { parseArgs } from 'node:util';
@@ -23,6 +24,7 @@ const { values } = parseArgs({
     to: { type: 'string', default: '12' },
     folds: { type: 'string', default: '0' },
     failures: { type: 'boolean', default: false },
+    'without-groups': { type: 'boolean', default: false },
   },
 });
 const all = readRankingCases(values.cases);
@@ -54,7 +56,9 @@ const stated: { probability: number; isRight: boolean }[] = [];
 const none: number[] = [];
 
 for (const entry of chosen) {
-  const result = runCase(entry, Number(values.seconds), 1);
+  const { evidence } = entry;
+  const input = values['without-groups'] ? { ...evidence, options: { ...evidence.options, valenceGroups: [] } } : evidence;
+  const result = runCase({ ...entry, evidence: input }, Number(values.seconds), 1);
   const size = bySize.get(entry.heavyAtoms) ?? emptyTally();
   bySize.set(entry.heavyAtoms, size);
   for (const tally of [total, size]) countInto(tally, result);
