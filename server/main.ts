@@ -1,4 +1,6 @@
-import { ConfigError, loadConfig } from './config/config.js';
+import { loadConfig } from './config/config.js';
+import { ConfigError } from './config/environment-values.js';
+import { RedisUnreachable } from './compute/redis/redis-connection.js';
 import { DataFolderInUse } from './database/data-folder-lock.js';
 import { MariadbError } from './database/mariadb-process.js';
 import { runUntilSignal } from './run-until-signal.js';
@@ -28,7 +30,7 @@ function printWelcome({ context, firstAdmin }: StartedServer): void {
 /** What the person who started the server can act on is said in one line; anything else is a fault and shown in full. */
 function explain(error: unknown): unknown {
   if (error instanceof ConfigError) return `The environment has a value that does not fit:\n${error.message}`;
-  if (error instanceof MariadbError || error instanceof DataFolderInUse) return error.message;
+  if (error instanceof MariadbError || error instanceof DataFolderInUse || error instanceof RedisUnreachable) return error.message;
   const code = error instanceof Error ? (error as NodeJS.ErrnoException).code : undefined;
   if (code === 'EADDRINUSE') return `Port ${process.env.PORT ?? '3210'} is taken by another program. Choose another one with PORT.`;
   if (code === 'EACCES') return `Not allowed to listen on port ${process.env.PORT ?? '3210'}. Choose one above 1023 with PORT.`;

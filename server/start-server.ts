@@ -5,7 +5,7 @@ import type { AppContext } from './app-context.js';
 import { createApp } from './app.js';
 import { ensureFirstAdmin } from './commands/create-first-admin.js';
 import { purgeExpired } from './commands/purge-expired.js';
-import { createEmbeddedQueue } from './compute/embedded-queue.js';
+import { openQueue } from './compute/open-queue.js';
 import { createComputePool } from './compute/pool.js';
 import type { Config } from './config/config.js';
 import { connectDatabase } from './database/connect.js';
@@ -51,9 +51,7 @@ export async function startServer({ config, shutdown, announce }: StartOptions):
     onFault: (error) => logger.error({ err: error }, 'compute thread failed'),
   });
   shutdown.add('compute threads', () => compute.close());
-  const queue = createEmbeddedQueue({ compute, sequelize, logger });
-  shutdown.add('run queue', () => queue.close());
-  await queue.start();
+  const queue = await openQueue({ config, compute, sequelize, logger, shutdown });
 
   const mailer = createMailer(config);
   shutdown.add('mail connection', () => mailer.close());

@@ -14,6 +14,7 @@ const needs = {
     programs: [['mariadbd'], ['mariadb-install-db'], ['my_print_defaults']],
   },
   Chromium: { packages: ['chromium'], programs: [['chromium']] },
+  Redis: { packages: ['redis-server'], programs: [['redis-server']] },
   nauty: { packages: ['nauty'], programs: [['geng', 'nauty-geng']] },
 };
 
