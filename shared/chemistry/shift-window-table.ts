@@ -12,7 +12,7 @@ export interface ShiftRange {
 
 /**
  * Fitted by tests/bench/fit-shift-windows.ts on nmrshiftdb2 in 2026-12 (fold 0 left out): 180196 carbons of
- * 22208 compounds. Each range spans all but 2.9999999999999996 in 10 000 of the shifts at either end, widened by 3 ppm and by
+ * 22208 compounds. Each range spans all but 30 in 100 000 of the shifts at either end, widened by 3 ppm and by
  * 20 ppm over the square root of the number of carbons seen (the last column). Shifts of one kind
  * that lie more than 8 ppm apart have ranges of their own; what was seen less than 5 times is left out.
  */

@@ -216,7 +216,7 @@ export interface ShiftRange {
 
 /**
  * Fitted by tests/bench/fit-shift-windows.ts on nmrshiftdb2 in ${new Date().toISOString().slice(0, 7)} (fold 0 left out): ${seen} carbons of
- * ${fitting.length} compounds. Each range spans all but ${TAIL * 1e4} in 10 000 of the shifts at either end, widened by ${MARGIN} ppm and by
+ * ${fitting.length} compounds. Each range spans all but ${Math.round(TAIL * 1e5)} in 100 000 of the shifts at either end, widened by ${MARGIN} ppm and by
  * ${FEW_MARGIN} ppm over the square root of the number of carbons seen (the last column). Shifts of one kind
  * that lie more than ${GAP} ppm apart have ranges of their own; what was seen less than ${LEAST} times is left out.
  */
