@@ -2,7 +2,7 @@ import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { createGraph } from '../graph/pack.js';
 import type { FillLayout } from './layout.js';
 import type { SearchProblem } from './problem.js';
-import type { UnitKind } from './units.js';
+import { RESONANT_BOND, type UnitKind } from './units.js';
 
 /** Free atoms of one element with the same number of hydrogens. */
 export interface AtomClass {
@@ -194,6 +194,7 @@ export function createLayout(problem: SearchProblem, distribution: Distribution)
     unitOf[v] = row.unit >= 0 ? row.unit : instances.length + v;
   });
   instances.forEach(({ unit }, instance) => placeForm(base, unit, unit.forms[0], vertices[instance]));
+  const placedUnits = instances.map(({ kind }, instance) => ({ kind, vertices: vertices[instance] }));
   return {
     open,
     tied: tiedRows.length,
@@ -205,10 +206,31 @@ export function createLayout(problem: SearchProblem, distribution: Distribution)
     smallestRing: 3,
     tiedPermutations: listTiedPermutations(units, tiedRows.length),
     base,
-    isPlain: instances.length === 0,
-    placedUnits: instances.map(({ kind }, instance) => ({ kind, vertices: vertices[instance] })),
+    resonantBonds: findResonantBonds(n, placedUnits, units),
+    // Three double bonds and a ring are the least that has a second Kekulé form.
+    tellsForms: problem.mergeResonanceForms && unsaturationOf(base, freeValence) >= 4,
+    placedUnits,
     freeVertices,
   };
+}
+
+/** Rings plus double bonds of every molecule of a layout. */
+function unsaturationOf(base: MolecularGraph, freeValence: Uint8Array): number {
+  const inside = base.bondOrders.reduce((sum, order) => sum + order, 0);
+  const outside = freeValence.reduce((sum, valence) => sum + valence, 0);
+  return (inside + outside) / 2 - base.atomCount + 1;
+}
+
+function findResonantBonds(n: number, placedUnits: readonly PlacedUnit[], units: readonly UnitKind[]): Uint8Array | null {
+  if (placedUnits.every(({ kind }) => units[kind].forms.length === 1 && !units[kind].labels.includes(RESONANT_BOND))) return null;
+  const flags = new Uint8Array(n * n);
+  for (const { kind, vertices } of placedUnits) {
+    const { labels, graph } = units[kind];
+    const size = graph.atomCount;
+    for (let i = 0; i < size; i++)
+      for (let j = 0; j < size; j++) if (labels[i * size + j] === RESONANT_BOND) flags[vertices[i] * n + vertices[j]] = 1;
+  }
+  return flags;
 }
 
 /** Writes the bonds of one Kekulé form of a unit into a graph. */

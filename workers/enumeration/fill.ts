@@ -3,8 +3,13 @@ import type { FillLayout } from './layout.js';
 
 /** What a search asks of its caller. Return true to stop the search. */
 export interface FillEvents {
-  /** A complete canonical matrix: `open` rows and columns, row-major with {@link FILL_STRIDE}, reused buffer. */
-  onLeaf(bondOrders: Uint8Array): boolean;
+  /**
+   * A complete canonical matrix.
+   * @param bondOrders - `open` rows and columns, row-major with {@link FILL_STRIDE}, reused buffer.
+   * @param molecule - the same with the bonds inside units, n × n in the order of the layout's graph, reused buffer.
+   * @param mayHaveOtherForms - false: certainly no other Kekulé form, bonds inside units aside, or not asked for by the layout.
+   */
+  onLeaf(bondOrders: Uint8Array, molecule: Uint8Array, mayHaveOtherForms: boolean): boolean;
   /** Rows [0, row) are filled and `stopRow` was reached: entries in filling order, fresh array. */
   onPrefix?(prefix: number[]): void;
   /** Rows [0, known) are complete; false cuts everything below. Asked before the canonicity test. */
@@ -26,6 +31,10 @@ interface FillCore {
   units(): number;
   allowedOrders(): number;
   adjacency(): number;
+  molecule(): number;
+  insideBonds(): number;
+  resonantBonds(): number;
+  describe(atoms: number, tellsForms: boolean, donors: bigint): void;
   tiedPairs(): number;
   prefix(): number;
   reserve(permutations: number, tied: number): number;
@@ -56,10 +65,11 @@ let events: FillEvents | null = null;
 let layout: FillLayout;
 let tiedPairs: number[] = [];
 let matrix: Uint8Array;
+let molecule: Uint8Array;
 
 const core = new Instance(new Module(readFileSync(new URL('./fill.wasm', import.meta.url))), {
   host: {
-    onLeaf: () => events!.onLeaf(matrix),
+    onLeaf: (mayHaveOtherForms: number) => events!.onLeaf(matrix, molecule, mayHaveOtherForms === 1),
     onPrefix: (row: number) => events!.onPrefix!(currentPrefix(row)),
     onRow: (known: number) => events!.onRow!(matrix, known),
     shouldStop: () => events!.shouldStop(),
@@ -112,27 +122,48 @@ function bytes(address: number, length: number): Uint8Array {
 }
 
 /** Writes a layout into the memory of the core. */
-function load({ open, tied, freeValence, bondQuota, classOf, unitOf, tiedPermutations, allowedOrders, base }: FillLayout): void {
+function load(of: FillLayout): void {
+  const { open, tied, unitOf, tiedPermutations, allowedOrders, base, resonantBonds } = of;
   const permutations = core.reserve(tiedPermutations.length, tied);
+  const n = base.atomCount;
   // Growing the memory detaches views of it.
   matrix = bytes(core.matrix(), FILL_STRIDE * FILL_STRIDE);
+  molecule = bytes(core.molecule(), n * n);
+  molecule.set(base.bondOrders);
   tiedPermutations.forEach((permutation, k) => bytes(permutations + k * tied, tied).set(permutation));
-  bytes(core.freeValence(), open).set(freeValence);
-  bytes(core.bondQuota(), 4 * open).set(bondQuota);
-  // Only equality matters; unit instances and classes are numbered from 0 and at most as many as vertices.
-  bytes(core.classes(), open).set(classOf);
+  bytes(core.freeValence(), open).set(of.freeValence);
+  bytes(core.bondQuota(), 4 * open).set(of.bondQuota);
+  // Only equality matters; unit instances and classes are numbered from 0 and fit into a byte.
+  bytes(core.classes(), open).set(of.classOf);
   bytes(core.units(), open).set(unitOf);
   if (allowedOrders !== null) bytes(core.allowedOrders(), FILL_STRIDE * FILL_STRIDE).set(allowedOrders);
   tiedPairs = [];
   for (let i = 0; i < tied; i++) for (let j = i + 1; j < tied; j++) if (unitOf[i] !== unitOf[j]) tiedPairs.push(i, j);
   bytes(core.tiedPairs(), tiedPairs.length).set(tiedPairs);
-  const n = base.atomCount;
-  const adjacency = new BigUint64Array(core.memory.buffer, core.adjacency(), FILL_STRIDE);
+
+  const adjacency = masks(core.adjacency(), FILL_STRIDE);
+  const inside = masks(core.insideBonds(), 3 * FILL_STRIDE).fill(0n);
+  const resonant = masks(core.resonantBonds(), FILL_STRIDE);
+  let donors = 0n;
   for (let i = 0; i < n; i++) {
-    let mask = 0n;
-    for (let j = 0; j < n; j++) if (base.bondOrders[i * n + j] !== 0) mask |= 1n << BigInt(j);
-    adjacency[i] = mask;
+    adjacency[i] = resonant[i] = 0n;
+    for (let j = 0; j < n; j++) {
+      const order = base.bondOrders[i * n + j];
+      if (order === 0) continue;
+      const bit = 1n << BigInt(j);
+      adjacency[i] |= bit;
+      inside[3 * i + order - 1] |= bit;
+      if (resonantBonds !== null && resonantBonds[i * n + j] === 1) resonant[i] |= bit;
+    }
+    // Carbon and silicon without a charge take part in an aromatic ring by a double bond only.
+    const element = base.atomicNumbers[i];
+    if ((element !== 6 && element !== 14) || base.charges[i] !== 0) donors |= 1n << BigInt(i);
   }
+  core.describe(n, of.tellsForms, donors);
+}
+
+function masks(address: number, length: number): BigUint64Array {
+  return new BigUint64Array(core.memory.buffer, address, length);
 }
 
 /** Rows [0, rows) as they stand: their number, the tied pairs, then the entries to the right in filling order. */

@@ -33,6 +33,8 @@ export interface FillLayout {
   readonly tiedPermutations: readonly Uint8Array[];
   /** Graph with the bonds inside units and all hydrogens; a fill adds its bonds to a copy of the bond orders. */
   readonly base: MolecularGraph;
-  /** True when `base` holds no bond, so that the filled matrix is the molecule. */
-  readonly isPlain: boolean;
+  /** n × n flags of the bonds inside units whose order differs between Kekulé forms of the unit; null = none. */
+  readonly resonantBonds: Uint8Array | null;
+  /** Whether leaves are looked at for other Kekulé forms. */
+  readonly tellsForms: boolean;
 }

@@ -121,9 +121,9 @@ function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink)
     const keepsPartners = createPartnerTest(problem, layout);
     const complete = fill(layout, node.prefix, 0, {
       ...rowEvents(createPartialChecks(problem, layout), keepsPartners, sink),
-      onLeaf(filled) {
+      onLeaf(filled, molecule, mayHaveOtherForms) {
         if (keepsPartners !== null && !keepsPartners(filled)) return sink.stopRequested();
-        const verdict = judge(filled);
+        const verdict = judge(molecule, mayHaveOtherForms);
         if (verdict.multigraphs !== 0) sink.onMultigraphs(verdict.multigraphs);
         for (const graph of verdict.graphs) sink.onConstitution(graph);
         return sink.stopRequested();

@@ -7,9 +7,9 @@
  * population counts, and refining a partition is three intersections; no order inside a cell is ever kept.
  */
 
-/** A complete matrix stands at {@link matrix}. True ends the search. */
+/** A complete matrix stands at {@link matrix}, the molecule at {@link molecule}. True ends the search. */
 @external('host', 'onLeaf')
-declare function onLeaf(): bool;
+declare function onLeaf(mayHaveOtherForms: bool): bool;
 /** Rows [0, row) are filled and the stop row is reached. */
 @external('host', 'onPrefix')
 declare function onPrefix(row: i32): void;
@@ -33,6 +33,12 @@ const UNIT: usize = memory.data(64);
 const ALLOWED: usize = memory.data(1600);
 /** Neighbours of each vertex, closed ones and bonds inside units included. */
 const ADJACENT: usize = memory.data(320, 8);
+/** The whole molecule, row-major with its number of atoms as the stride; the host writes the bonds inside units. */
+const MOLECULE: usize = memory.data(1600);
+/** Masks of the neighbours inside units by single, double and triple bond: 3 × 8 bytes each. */
+const INSIDE: usize = memory.data(960, 8);
+/** Neighbours over bonds that resonate inside a unit. */
+const RESONANT: usize = memory.data(320, 8);
 /** Pairs of tied vertices in different units: two bytes each. */
 const TIED_PAIRS: usize = memory.data(3200);
 /** Entries of a prefix in filling order, without its number of rows. */
@@ -69,12 +75,16 @@ const TWIN_SET: usize = memory.data(320, 8);
 
 let n: i32 = 0;
 let tied: i32 = 0;
-let total: i32 = 0;
+/** Atoms of the molecule, closed ones included. */
+let atomCount: i32 = 0;
 let pairCount: i32 = 0;
 let hasPrescribed: bool = false;
 let hasForbidden: bool = false;
 let asksRows: bool = false;
+let asksForms: bool = false;
 let smallestRing: i32 = 3;
+/** Atoms that can take part in an aromatic ring without a double bond. */
+let donors: u64 = 0;
 let stopRow: i32 = 0;
 let stopped: bool = false;
 let untilCheck: i32 = ROWS_BETWEEN_CHECKS;
@@ -100,6 +110,9 @@ export function classes(): usize { return CLASS; }
 export function units(): usize { return UNIT; }
 export function allowedOrders(): usize { return ALLOWED; }
 export function adjacency(): usize { return ADJACENT; }
+export function molecule(): usize { return MOLECULE; }
+export function insideBonds(): usize { return INSIDE; }
+export function resonantBonds(): usize { return RESONANT; }
 export function tiedPairs(): usize { return TIED_PAIRS; }
 export function prefix(): usize { return PREFIX; }
 
@@ -113,6 +126,13 @@ export function reserve(count: i32, tiedCount: i32): usize {
   const pages = <i32>((end + 0xffff) >> 16);
   if (pages > memory.size()) memory.grow(pages - memory.size());
   return permutations;
+}
+
+/** Describes the molecule as a whole. @param forms true: leaves tell whether they may have other Kekulé forms. */
+export function describe(atoms: i32, forms: bool, donorMask: u64): void {
+  atomCount = atoms;
+  asksForms = forms;
+  donors = donorMask;
 }
 
 /**
@@ -230,6 +250,8 @@ function closesSmallRing(i: i32, j: i32): bool {
 function addBond(i: i32, j: i32, order: i32): bool {
   store<u8>(MATRIX + i * N + j, <u8>order);
   store<u8>(MATRIX + j * N + i, <u8>order);
+  store<u8>(MOLECULE + i * atomCount + j, <u8>order);
+  store<u8>(MOLECULE + j * atomCount + i, <u8>order);
   const mi = BONDED + 24 * i + 8 * (order - 1);
   const mj = BONDED + 24 * j + 8 * (order - 1);
   store<u64>(mi, load<u64>(mi) | bit(j));
@@ -274,6 +296,8 @@ function addBond(i: i32, j: i32, order: i32): bool {
 function removeBond(i: i32, j: i32, order: i32): void {
   store<u8>(MATRIX + i * N + j, 0);
   store<u8>(MATRIX + j * N + i, 0);
+  store<u8>(MOLECULE + i * atomCount + j, 0);
+  store<u8>(MOLECULE + j * atomCount + i, 0);
   const mi = BONDED + 24 * i + 8 * (order - 1);
   const mj = BONDED + 24 * j + 8 * (order - 1);
   store<u64>(mi, load<u64>(mi) & ~bit(j));
@@ -507,7 +531,7 @@ function finishMatrix(row: i32): void {
     twins = saved;
     return;
   }
-  if (isLargest(row, filled, n) && onLeaf()) stopped = true;
+  if (isLargest(row, filled, n) && onLeaf(asksForms && mayHaveOtherForms())) stopped = true;
   twins = saved;
 }
 
@@ -741,6 +765,134 @@ function joinAutomorphism(k: i32, filled: i32, known: i32): void {
       image &= image - 1;
     }
   }
+}
+
+// ---- Kekulé forms ----
+
+/** Scratch of the search for alternating cycles. */
+let core: u64 = 0;
+
+@inline
+function singleTo(v: i32): u64 {
+  return load<u64>(BONDED + 24 * v) | load<u64>(INSIDE + 24 * v);
+}
+@inline
+function doubleTo(v: i32): u64 {
+  return load<u64>(BONDED + 24 * v, 8) | load<u64>(INSIDE + 24 * v, 8);
+}
+@inline
+function bondedTo(v: i32): u64 {
+  return singleTo(v) | doubleTo(v) | tripleTo(v);
+}
+
+/**
+ * Can the complete molecule have another Kekulé form? Two forms differ by disjoint cycles of alternating bonds (Berge,
+ * Proc. Natl. Acad. Sci. 1957, 43, 842), and the bonds of an aromatic ring join atoms with a double bond or a lone pair.
+ * False is certain; true means that aromaticity has to be looked at.
+ */
+function mayHaveOtherForms(): bool {
+  let doubles: u64 = 0;
+  for (let v = 0; v < atomCount; v++) if (doubleTo(v) != 0) doubles |= bit(v);
+  if (popcnt(doubles) < 4) return false;
+  // A double bond lies in such a cycle only when from both its ends a single bond leads to another one that does.
+  core = doubles;
+  for (let changed = true; changed; ) {
+    changed = false;
+    let rest = core;
+    while (rest != 0) {
+      const v = <i32>ctz(rest);
+      rest &= rest - 1;
+      if ((singleTo(v) & core) != 0 && (doubleTo(v) & core) != 0) continue;
+      core &= ~bit(v);
+      changed = true;
+    }
+  }
+  return core != 0 && mayBeAromatic(doubles) && hasAlternatingCycle();
+}
+
+@inline
+function tripleTo(v: i32): u64 {
+  return load<u64>(BONDED + 24 * v, 16) | load<u64>(INSIDE + 24 * v, 16);
+}
+
+/** Is there a ring of atoms that can be aromatic, other than one of 4 or 8 atoms that stands alone? */
+function mayBeAromatic(doubles: u64): bool {
+  let ring = doubles | donors;
+  for (let v = 0; v < atomCount; v++) if (tripleTo(v) != 0) ring |= bit(v);
+  for (let changed = true; changed; ) {
+    changed = false;
+    let rest = ring;
+    while (rest != 0) {
+      const v = <i32>ctz(rest);
+      rest &= rest - 1;
+      if (popcnt(bondedTo(v) & ring) >= 2) continue;
+      ring &= ~bit(v);
+      changed = true;
+    }
+  }
+  while (ring != 0) {
+    // One connected part of what is left.
+    let part: u64 = ring & (0 - ring);
+    let frontier = part;
+    while (frontier != 0) {
+      const v = <i32>ctz(frontier);
+      frontier &= frontier - 1;
+      const next = bondedTo(v) & ring;
+      if (popcnt(next) != 2) return true;
+      frontier |= next & ~part;
+      part |= next;
+    }
+    const size = popcnt(part);
+    // A lone ring of four or eight atoms with one double bond each, in the ring, has 4 or 8 π electrons.
+    if ((size != 4 && size != 8) || (part & donors) != 0) return true;
+    let rest = part;
+    while (rest != 0) {
+      const v = <i32>ctz(rest);
+      rest &= rest - 1;
+      const twofold = doubleTo(v);
+      if (popcnt(twofold) != 1 || (twofold & part) == 0 || tripleTo(v) != 0) return true;
+    }
+    ring &= ~part;
+  }
+  return false;
+}
+
+/** Looks in {@link core} for a cycle of alternating bonds that is not made of resonant bonds of units alone. */
+function hasAlternatingCycle(): bool {
+  let rest = core;
+  while (rest != 0) {
+    const i = <i32>ctz(rest);
+    rest &= rest - 1;
+    let partners = doubleTo(i) & core & ~(bit(i + 1) - 1);
+    while (partners != 0) {
+      const j = <i32>ctz(partners);
+      partners &= partners - 1;
+      const leavesUnit = (load<u64>(RESONANT + 8 * i) & bit(j)) == 0;
+      if (walk(j, i, bit(i) | bit(j), leavesUnit)) return true;
+    }
+  }
+  return false;
+}
+
+/** Continues over a single bond from `atom`; `target` closes the cycle. */
+function walk(atom: i32, target: i32, visited: u64, leavesUnit: bool): bool {
+  let nexts = singleTo(atom) & core;
+  const resonant = load<u64>(RESONANT + 8 * atom);
+  if ((nexts & bit(target)) != 0 && (leavesUnit || (resonant & bit(target)) == 0)) return true;
+  nexts &= ~visited;
+  while (nexts != 0) {
+    const next = <i32>ctz(nexts);
+    nexts &= nexts - 1;
+    const leaves = leavesUnit || (resonant & bit(next)) == 0;
+    let partners = doubleTo(next) & core & ~visited;
+    while (partners != 0) {
+      const partner = <i32>ctz(partners);
+      partners &= partners - 1;
+      const leavesNow = leaves || (load<u64>(RESONANT + 8 * next) & bit(partner)) == 0;
+      if (walk(partner, target, visited | bit(next) | bit(partner), leavesNow)) return true;
+    }
+  }
+  return false;
 }
 
 // ---- prefixes ----
