@@ -37,7 +37,7 @@ export interface ProbeOptions<T> {
 /** Descents are this many walkers wide where branches are few; with many branches each gets narrow ones, but gets one. */
 const MOST_WALKERS = 16;
 const WALKERS_FOR_ALL_BRANCHES = 1_500;
-/** Probes of a round per branch beside the one that each branch gets. */
+/** Descents of a round beside the one that each branch gets. */
 const CHOSEN_PER_BRANCH = 2;
 const LEAST_CHOSEN = 24;
 /** A branch in which nothing was found so far may still hold this share of an average one. */
@@ -83,11 +83,13 @@ export function estimateSearch<T>(search: Search, options: ProbeOptions<T>): Sea
   let probes = 0;
   let roundWeights = 0;
 
+  // One descent is made however late it is: without any there is nothing to say.
+  const isOver = (): boolean => probes > 0 && shouldStop();
   const probe = (d: number): Descent | null => {
-    if (probes >= maxProbes || shouldStop()) return null;
+    if (probes >= maxProbes || isOver()) return null;
     let branch = open.get(d);
     if (branch === undefined) open.set(d, (branch = openBranch(search, d)));
-    const found = descend(branch, walkers, random, shouldStop);
+    const found = descend(branch, walkers, random, isOver);
     if (found === null) return null;
     probes++;
     const known = branches[d];
@@ -109,6 +111,7 @@ export function estimateSearch<T>(search: Search, options: ProbeOptions<T>): Sea
     }
     const isFinished = found.length === chosen.length;
     if (!isFinished && roundWeights > 0) return false;
+    // Known before the round begins, so that it cannot favour rounds that turned out large or small.
     const weight = chosen.length;
     roundWeights += weight;
     const countOf = new Map<number, number>();

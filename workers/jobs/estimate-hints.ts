@@ -26,7 +26,7 @@ const OXYGEN = 8;
 /** A hint that promises less is not worth reading. */
 const LEAST_FACTOR = 1.5;
 /** Equally heavy samples below which nothing is said, and below which only bounds are given. */
-const LEAST_SAMPLES = 3;
+const LEAST_SAMPLES = 2;
 const ENOUGH_SAMPLES = 20;
 /** So many samples, or pairs of them, must carry a share before it is taken for more than a bound. */
 const LEAST_MET = 4;

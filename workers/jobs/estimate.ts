@@ -12,7 +12,7 @@ import { measureRate, type RunRate } from './run-rate.js';
 const COUNTING_SHARE = 0.2;
 const PROBING_SHARE = 0.65;
 const RATE_SHARE = 0.95;
-/** Even late on a busy machine an answer gets so long. */
+/** Even late on a busy machine, and after a long setting up, the probing gets so long. */
 const LEAST_MS = 300;
 /** Where everything was counted, probes only serve to meet constitutions. */
 const PROBES_AFTER_COUNTING = 2_000;
@@ -33,12 +33,13 @@ export function estimateRun(input: JobContract['estimate']['input']): JobContrac
   const startedMs = performance.now();
   const { evidence, mode, probes, seed, maxSeconds, deadlineEpochMs = null, keep = evidence.options.keep } = input;
   const untilDeadlineMs = deadlineEpochMs === null ? Infinity : deadlineEpochMs - Date.now();
-  const timeMs = Math.max(LEAST_MS, Math.min(1000 * maxSeconds, untilDeadlineMs));
-  const until = (share: number) => () => performance.now() - startedMs >= share * timeMs;
 
   const settings = { keep, maxSeconds: null, mode };
   const search = searchFor(evidence, mode);
   const evaluator = evaluatorFor(evidence, settings);
+  const readyMs = performance.now();
+  const timeMs = Math.max(LEAST_MS, Math.min(1000 * maxSeconds, untilDeadlineMs) - (readyMs - startedMs));
+  const until = (share: number) => () => performance.now() - readyMs >= share * timeMs;
   const observer = new Observer();
   const someSurvivors: ShardCandidate[] = [];
   const observe = (graph: MolecularGraph): Observation => {
