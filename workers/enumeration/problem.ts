@@ -1,10 +1,10 @@
-import { readCorrelations } from '../../shared/chemistry/correlations.js';
 import { elementOf, findElement } from '../../shared/chemistry/elements.js';
-import { countOf, parseFormula } from '../../shared/chemistry/formula.js';
+import { parseFormula } from '../../shared/chemistry/formula.js';
 import { parseSmiles } from '../../shared/chemistry/smiles.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { InputIssue } from '../../shared/schemas/problem.js';
 import { createCorrelationModel, type CorrelationModel } from '../correlations/correlation-model.js';
+import { carbonCensus, type CarbonCensus } from './carbon-census.js';
 import { FILL_STRIDE } from './fill.js';
 import { createUnitKind, type UnitKind } from './units.js';
 
@@ -26,12 +26,6 @@ export interface AtomDemand {
   /** Orders of its bonds, falling. */
   readonly orders: readonly number[];
   readonly count: number;
-}
-
-/** Bounds on how many carbons of the whole molecule carry h hydrogens, h = 0–4. */
-export interface CarbonCensus {
-  readonly least: readonly number[];
-  readonly most: readonly number[];
 }
 
 /** Groups that arise when an atom takes the double bond of an N-oxide unit (nitro: O) or of a diazo unit (azide: N, diazo: C). */
@@ -139,7 +133,7 @@ export function createProblem(evidence: EvidenceDocument): SearchProblem {
     free,
     hydrogens: remaining.get('H') ?? 0,
     heavyAtomCount,
-    census: carbonCensus(evidence, countOf(parsed.counts, 'C')),
+    census: carbonCensus(evidence, parsed.counts),
     mergeResonanceForms: evidence.options.mergeResonanceForms,
     correlations: createCorrelationModel(evidence),
     hasForcedPlacements: units.length === 0,
@@ -165,29 +159,4 @@ function mergeEqualDemands(demands: readonly AtomDemand[]): AtomDemand[] {
     merged.set(key, known === undefined ? demand : { ...known, count: known.count + demand.count });
   }
   return [...merged.values()];
-}
-
-/**
- * Bounds from 13C signals with known attached hydrogens: every signal needs a carbon of its kind, and where the list
- * is complete a protonated kind without any signal is absent.
- */
-function carbonCensus(evidence: EvidenceDocument, carbonCount: number): CarbonCensus {
-  const least = [0, 0, 0, 0, 0];
-  const most = [carbonCount, carbonCount, carbonCount, carbonCount, carbonCount];
-  const signals = evidence.carbonSignals;
-  for (const signal of signals) if (signal.hydrogens !== undefined) least[signal.hydrogens] += signal.count ?? 1;
-  // Carbons with an HSQC pair are not quaternary, however many hydrogens they have.
-  readCorrelations(evidence).attached.forEach((attached, index) => {
-    if (signals[index].hydrogens === undefined && attached.least > 0) most[0] = Math.max(0, most[0] - (signals[index].count ?? 1));
-  });
-  const allKnown = signals.length > 0 && signals.every((signal) => signal.hydrogens !== undefined);
-  if (allKnown && evidence.options.carbonList === 'complete') {
-    for (let h = 1; h <= 4; h++) if (!signals.some((signal) => signal.hydrogens === h)) most[h] = 0;
-    // When every signal says for how many carbons it stands, the protonated kinds are settled.
-    for (let h = 1; h <= 3; h++) {
-      const ofKind = signals.filter((signal) => signal.hydrogens === h);
-      if (ofKind.length > 0 && ofKind.every((signal) => signal.count !== undefined)) most[h] = least[h];
-    }
-  }
-  return { least, most };
 }
