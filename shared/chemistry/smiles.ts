@@ -10,7 +10,10 @@ export interface Attachment {
 }
 export interface ParsedSmiles {
   readonly ok: true;
-  /** Heavy atoms in the order of the text; `*` and `[H]` are not atoms. One Kekulé form. */
+  /**
+   * Heavy atoms in the order of the text; `*` and `[H]` are not atoms. One Kekulé form. Oxygens that a lone N⁺ beside `*`
+   * needs follow at the end.
+   */
   readonly graph: MolecularGraph;
   /** Length n, 1 = written in lower case. */
   readonly aromaticAtoms: Uint8Array;
@@ -252,6 +255,32 @@ function unifyChargeDrawings(draft: Draft, notes: Set<string>): void {
   }
 }
 
+/**
+ * Closes N⁺ that a cut has parted from its O⁻: an attachment point with a single bond on it can only be that oxygen,
+ * because nothing else brings the opposite charge (with hydrogen on the N⁺ the text is a salt). The oxygen is added behind the written atoms.
+ */
+function completeOxides(draft: Draft, notes: Set<string>): void {
+  for (let atom = draft.symbols.length - 1; atom >= 0; atom--) {
+    if (draft.symbols[atom] !== 'N' || draft.charges[atom] !== 1 || draft.hydrogens[atom]! > 0 || hasOppositeCharge(draft, atom)) continue;
+    const attachment = draft.attachments.findIndex((candidate) => candidate.atom === atom && candidate.order === 1);
+    if (attachment === -1) continue;
+    const [{ position }] = draft.attachments.splice(attachment, 1) as [Draft['attachments'][number]];
+    const oxygen = draft.symbols.push('O') - 1;
+    draft.positions.push(position);
+    draft.isAromatic.push(false);
+    draft.isBracketed.push(true);
+    draft.hydrogens.push(0);
+    draft.charges.push(-1);
+    draft.bondsOf.push([draft.bonds.length]);
+    draft.bondsOf[atom]!.push(draft.bonds.length);
+    draft.bonds.push({ a: atom, b: oxygen, order: 1, position: -1 });
+    notes.add('the * on N+ read as O−, which its charge needs');
+  }
+}
+
+const hasOppositeCharge = (draft: Draft, atom: number): boolean =>
+  draft.bondsOf[atom]!.some((bond) => draft.charges[otherEnd(draft.bonds[bond]!, atom)]! * draft.charges[atom]! < 0);
+
 /** Refuses every charge that is not part of a charge-separated neutral group. */
 function checkCharges(draft: Draft): void {
   let total = 0;
@@ -265,8 +294,7 @@ function checkCharges(draft: Draft): void {
         position,
       );
     }
-    const isPaired = draft.bondsOf[atom]!.some((bond) => draft.charges[otherEnd(draft.bonds[bond]!, atom)]! * charge < 0);
-    if (!isPaired) {
+    if (!hasOppositeCharge(draft, atom)) {
       throw new SmilesError(
         'a charge needs the opposite charge on a neighbouring atom (nitro, N-oxide, azide, isocyanide, diazo); draw the neutral form of salts and ions',
         position,
@@ -374,6 +402,7 @@ function buildParsed(text: string): ParsedSmiles {
   const draft = draftFrom(written);
   const ringBonds = findAromaticRingBonds(draft);
   unifyChargeDrawings(draft, notes);
+  completeOxides(draft, notes);
   checkCharges(draft);
   const needsDoubleBond = settleHydrogens(draft);
 

@@ -10,6 +10,7 @@ import { constitutionKey } from '../../../workers/graph/constitution-key.js';
 import { canonicalStructure } from '../../../workers/graph/openchemlib.js';
 import { writeExplicitSmiles } from '../../support/explicit-smiles.js';
 import { randomMolecule } from '../../support/random-molecules.js';
+import { createUnitKind } from '../../../workers/enumeration/units.js';
 
 function parsed(smiles: string): ParsedSmiles {
   const result = parseSmiles(smiles);
@@ -152,6 +153,16 @@ describe('parseSmiles', () => {
     expect(parsed(drawn).notes).toHaveLength(1);
     expect(canonicalStructure(parsed(drawn).graph).idcode).toBe(canonicalStructure(parsed(usual).graph).idcode);
     expect([...parsed(drawn).graph.charges].reduce((sum, charge) => sum + charge, 0)).toBe(0);
+  });
+
+  it.each([
+    ['*c1ccc[n+](*)c1', '*c1ccc[n+]([O-])c1'],
+    ['*[N+](=O)*', '*[N+](=O)[O-]'],
+    ['*[N+](*)(C)*', '*[N+](*)(C)[O-]'],
+  ])('closes the N⁺ of %s, cut from its O⁻, like %s, with a note', (cut, whole) => {
+    expect(parsed(cut).notes).toEqual(['the * on N+ read as O−, which its charge needs']);
+    const keyOf = (text: string): string => createUnitKind(text, 1, parsed(text).graph, parsed(text).attachments).canonicalKey;
+    expect(keyOf(cut)).toBe(keyOf(whole));
   });
 
   it.each([
