@@ -25,7 +25,7 @@ export async function addToShortlist(
     const unknown = await Unknown.findByPk(unknownId, { transaction, lock: transaction.LOCK.UPDATE, rejectOnEmpty: true });
     const candidate = await Candidate.findOne({
       where: { id: input.candidateId, teamId: unknown.teamId },
-      include: [{ model: Run, as: 'run', attributes: ['id', 'number'], required: true, where: { unknownId } }],
+      include: [{ model: Run, as: 'run', attributes: ['id', 'number', 'complete'], required: true, where: { unknownId } }],
       transaction,
     });
     if (candidate === null || candidate.run === undefined) {
@@ -50,7 +50,14 @@ export async function addToShortlist(
         idcode,
         idcodeHash,
         note: input.note,
-        snapshot: { runNumber: candidate.run.number, rank, probability, carbonDeviation, protonDeviation },
+        snapshot: {
+          runNumber: candidate.run.number,
+          runComplete: candidate.run.complete,
+          rank,
+          probability,
+          carbonDeviation,
+          protonDeviation,
+        },
         addedById: actor.userId,
       },
       { transaction },

@@ -1,5 +1,6 @@
 import { Transaction } from 'sequelize';
 import type { z } from 'zod';
+import type { EvidenceOptions } from '../../shared/schemas/evidence.js';
 import type { runStartRequest } from '../../shared/schemas/runs.js';
 import type { AppContext } from '../app-context.js';
 import { recordAudit } from '../audit/record-audit.js';
@@ -39,6 +40,7 @@ export async function startRun(
     // The figure in the evidence is a default that nobody may have looked at: it gives way to the quota, a request does not.
     const keep = input.keep ?? Math.min(options.keep, figures.candidatesPerRun);
     const maxSeconds = input.maxSeconds === undefined ? options.maxSeconds : input.maxSeconds;
+    const maxConstitutions = input.maxConstitutions === undefined ? (options.maxConstitutions ?? null) : input.maxConstitutions;
     const maxCpuSeconds = maxSeconds === null ? null : maxSeconds * compute.threadCount;
     const reserved = await checkQuota(transaction, figures, { teamId: unknown.teamId, userId: actor.userId, keep, maxCpuSeconds }, now);
 
@@ -49,8 +51,8 @@ export async function startRun(
         unknownId,
         number: (last ?? 0) + 1,
         revisionId: revision.id,
-        settings: { keep, maxSeconds },
-        evidence: { ...revision.evidence, options: { ...options, keep, maxSeconds } },
+        settings: { keep, maxSeconds, maxConstitutions },
+        evidence: { ...revision.evidence, options: withSettings(options, { keep, maxSeconds, maxConstitutions }) },
         startedById: actor.userId,
       },
       { transaction },
@@ -63,10 +65,16 @@ export async function startRun(
       actor,
       'unknown.startRun',
       { kind: 'run', id: created.id, label: `${created.number} of ${unknown.code}`, teamId: unknown.teamId },
-      { revision: revision.number, keep, maxSeconds },
+      { revision: revision.number, keep, maxSeconds, maxConstitutions },
     );
     return created;
   });
   queue.submit(run.id);
   return run;
+}
+
+/** Writes the settings of a run into the options of its evidence; in a document no limit is no key. */
+function withSettings(options: EvidenceOptions, { keep, maxSeconds, maxConstitutions }: Run['settings']): EvidenceOptions {
+  const { maxConstitutions: _replaced, ...others } = options;
+  return { ...others, keep, maxSeconds, ...(typeof maxConstitutions === 'number' ? { maxConstitutions } : {}) };
 }

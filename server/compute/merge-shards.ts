@@ -1,10 +1,20 @@
-import { FUNNEL_STAGES, type Funnel, type FunnelStage, type ShardCandidate, type ShardResult } from '../../shared/jobs/contract.js';
+import {
+  type BranchCut,
+  FUNNEL_STAGES,
+  type Funnel,
+  type FunnelStage,
+  type ShardCandidate,
+  type ShardLimit,
+  type ShardResult,
+} from '../../shared/jobs/contract.js';
 
 /** What the shards of a run say together. */
 export interface MergedShards {
   readonly constitutionCount: number;
   readonly multigraphCount: number;
   readonly funnel: Funnel;
+  /** Branches cut while building, most frequent reason first. */
+  readonly cuts: readonly BranchCut[];
   /** Best first; ties by key. */
   readonly kept: readonly ShardCandidate[];
   readonly logSumExp: number | null;
@@ -12,6 +22,8 @@ export interface MergedShards {
   readonly survivorCount: number;
   /** False as soon as one shard was cut short. */
   readonly complete: boolean;
+  /** A limit that cut a shard short; null when none did, or a cancellation. */
+  readonly stoppedBy: ShardLimit | null;
 }
 
 /** Total order of candidates: higher score first, then by key, so that no order of arrival shows in a ranking. */
@@ -36,6 +48,8 @@ export class ShardMerger {
   #survivorCount = 0;
   #cpuByShard = new Map<number, number>();
   #complete = true;
+  #stoppedBy: ShardLimit | null = null;
+  readonly #cuts = new Map<string, { text: string; count: number }>();
 
   /** @param keep - how many candidates stay, at least 1 */
   constructor(keep: number) {
@@ -74,6 +88,12 @@ export class ShardMerger {
     this.#survivorCount += countSurvivors(result.funnel, result.constitutionCount);
     this.#cpuByShard.set(result.index, result.cpuSeconds);
     this.#complete &&= result.complete;
+    this.#stoppedBy ??= result.stoppedBy ?? null;
+    for (const { reason, text, count } of result.cuts ?? []) {
+      const cut = this.#cuts.get(reason);
+      if (cut) cut.count += count;
+      else this.#cuts.set(reason, { text, count });
+    }
     if (result.logSumExp !== null) this.#logSumExpByShard.set(result.index, result.logSumExp);
     this.#addFunnel(result.funnel);
     this.#kept = mergeSorted(this.#kept, [...this.contenders(result.kept)].sort(compareCandidates), this.#keep);
@@ -85,11 +105,13 @@ export class ShardMerger {
       constitutionCount: this.#constitutionCount,
       multigraphCount: this.#multigraphCount,
       funnel: this.#funnel(),
+      cuts: listByCount(this.#cuts),
       kept: this.#kept,
       logSumExp: logSumExpInOrder(this.#logSumExpByShard),
       cpuSeconds: this.cpuSeconds,
       survivorCount: this.#survivorCount,
       complete: this.#complete,
+      stoppedBy: this.#stoppedBy,
     };
   }
 
@@ -111,12 +133,16 @@ export class ShardMerger {
     return FUNNEL_STAGES.flatMap((stage) => {
       const step = this.#steps.get(stage);
       if (!step) return [];
-      const rejections = [...step.rejections]
-        .map(([reason, { text, count }]) => ({ reason, text, count }))
-        .sort((a, b) => b.count - a.count || (a.reason < b.reason ? -1 : 1));
-      return [{ stage, entered: step.entered, passed: step.passed, rejections }];
+      return [{ stage, entered: step.entered, passed: step.passed, rejections: listByCount(step.rejections) }];
     });
   }
+}
+
+/** Counts by reason as a list, most frequent first. */
+function listByCount(countByReason: ReadonlyMap<string, { text: string; count: number }>): BranchCut[] {
+  return [...countByReason]
+    .map(([reason, { text, count }]) => ({ reason, text, count }))
+    .sort((a, b) => b.count - a.count || (a.reason < b.reason ? -1 : 1));
 }
 
 /** Survivors are what the last stage of a funnel let through. */

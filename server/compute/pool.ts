@@ -10,14 +10,18 @@ export interface PoolOptions {
   readonly isYielding?: boolean;
   /** URL of the worker entry. Default: workers/main beside the server. */
   readonly workerUrl?: URL;
+  /** Heap in which a shard ends itself, incomplete; MB. */
+  readonly shardHeapMegabytes?: number;
   /** Called for faults of a thread that belong to no job, so that they reach the log. */
   readonly onFault?: (error: Error) => void;
 }
 
 /** Jobs that people wait for while looking at the screen. They have a thread of their own, so that a long run never holds them up. */
 const INTERACTIVE_JOBS: ReadonlySet<JobName> = new Set(['explain', 'predict', 'estimate', 'layout']);
-/** A shard keeps its memory flat; a thread that needs more than this has gone astray and must not take the server with it. */
-const WORKER_HEAP_MEGABYTES = 768;
+/** A shard keeps its memory flat; one that needs more than this has gone astray and ends itself with what it has found. */
+const SHARD_HEAP_MEGABYTES = 512;
+/** A thread that goes on past that is ended: it must not take the server with it. */
+const THREAD_HEAP_RATIO = 1.5;
 const MAX_WAITING_JOBS = 256;
 const MAX_WAITING_INTERACTIVE_JOBS = 64;
 const IDLE_THREAD_MS = 60_000;
@@ -26,11 +30,13 @@ const IDLE_THREAD_MS = 60_000;
 export function createComputePool(options: PoolOptions = {}): ComputeService {
   const threadCount = Math.max(1, options.threads ?? availableParallelism());
   const onFault = options.onFault ?? (() => undefined);
+  const shardHeapMegabytes = options.shardHeapMegabytes ?? SHARD_HEAP_MEGABYTES;
   const shards = new JobThreads({
     isYielding: options.isYielding ?? false,
     workerUrl: options.workerUrl ?? defaultWorkerUrl(),
     threads: threadCount,
     maxQueue: MAX_WAITING_JOBS,
+    shardHeapMegabytes,
     onFault,
   });
   const interactive = new JobThreads({
@@ -38,6 +44,7 @@ export function createComputePool(options: PoolOptions = {}): ComputeService {
     workerUrl: options.workerUrl ?? defaultWorkerUrl(),
     threads: 1,
     maxQueue: MAX_WAITING_INTERACTIVE_JOBS,
+    shardHeapMegabytes,
     onFault,
   });
 
@@ -60,16 +67,27 @@ class JobThreads {
   readonly #piscina: Piscina;
   readonly #pending = new Set<(error: Error) => void>();
 
-  constructor(options: { workerUrl: URL; threads: number; maxQueue: number; isYielding: boolean; onFault: (error: Error) => void }) {
+  constructor(options: {
+    workerUrl: URL;
+    threads: number;
+    maxQueue: number;
+    isYielding: boolean;
+    shardHeapMegabytes: number;
+    onFault: (error: Error) => void;
+  }) {
     this.#piscina = new Piscina({
       filename: options.workerUrl.href,
       minThreads: 0,
       maxThreads: options.threads,
       maxQueue: options.maxQueue,
       idleTimeout: IDLE_THREAD_MS,
-      resourceLimits: { maxOldGenerationSizeMb: WORKER_HEAP_MEGABYTES },
+      resourceLimits: { maxOldGenerationSizeMb: Math.max(64, Math.ceil(options.shardHeapMegabytes * THREAD_HEAP_RATIO)) },
       // The built server needs no loader; from TypeScript sources every thread needs its own.
-      env: { ...process.env, ...(options.isYielding ? { ISOLOOM_YIELDING_THREADS: '1' } : {}) },
+      env: {
+        ...process.env,
+        ISOLOOM_SHARD_HEAP_MB: String(options.shardHeapMegabytes),
+        ...(options.isYielding ? { ISOLOOM_YIELDING_THREADS: '1' } : {}),
+      },
       execArgv: options.workerUrl.pathname.endsWith('.ts') ? ['--import', new URL('./typescript-loader.mjs', import.meta.url).href] : [],
     });
     this.#piscina.on('error', (error: Error) => {

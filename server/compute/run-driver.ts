@@ -10,7 +10,7 @@ import { RunClock, type RunFigures } from './run-clock.js';
 import { describeEnd } from './run-end.js';
 import { crashedTooOften, describeFailure, isCancellation, MAX_CRASHES } from './run-failure.js';
 import { guessSeconds } from './run-size.js';
-import { QUOTA_STOP, type Stop, timeLimitStop } from './run-stop.js';
+import { countLimitStop, QUOTA_STOP, type Stop, stopOfShards, timeLimitStop } from './run-stop.js';
 import type { RunEnd, RunStore } from './run-store.js';
 import type { RunTask } from './run-task.js';
 
@@ -146,6 +146,7 @@ export class RunDriver {
     const { evidence, settings } = this.#task;
     const result = await this.#perform(`shard ${shard.index}`, async (signal) => {
       this.#watchTime();
+      this.#watchCount();
       if (this.#stop !== null) return null;
       await this.#begin();
       const counters = createCounters();
@@ -154,7 +155,14 @@ export class RunDriver {
       try {
         const answer = await compute.runJob(
           'shard',
-          { evidence, settings, shard, counters, deadlineEpochMs: this.#clock.deadlineEpochMs() },
+          {
+            evidence,
+            settings,
+            shard,
+            counters,
+            deadlineEpochMs: this.#clock.deadlineEpochMs(),
+            maxConstitutions: this.#constitutionsLeft(),
+          },
           { signal },
         );
         while (this.#writes.size >= MAX_PENDING_WRITES) await Promise.race(this.#writes);
@@ -170,6 +178,8 @@ export class RunDriver {
     if (!result.complete) {
       // What a limit cut short counts for this run but is not stored: after a restart the shard is done again.
       this.#merger.add(result);
+      // The shards still to come would only find out that there is something left.
+      if (result.stoppedBy === 'count') this.#stopWith(countLimitStop(this.#task.settings.maxConstitutions ?? 0));
       return;
     }
     const stored = { ...result, kept: this.#merger.contenders(result.kept) };
@@ -295,10 +305,11 @@ export class RunDriver {
   }
 
   #describeEnd(candidates: RunEnd['candidates'], noneOfTheseProbability: number | null): RunEnd {
+    const merged = this.#merger.merged();
     return describeEnd({
-      merged: this.#merger.merged(),
+      merged,
       isPlanned: this.#clock.shardCount !== null,
-      stop: this.#stop,
+      stop: this.#stop ?? stopOfShards(merged.stoppedBy, this.#task.settings),
       candidates,
       noneOfTheseProbability,
       otherCpuSeconds: this.#otherCpuSeconds,
@@ -309,12 +320,25 @@ export class RunDriver {
     this.#emitProgress();
     if (this.#stage !== 'enumerating') return;
     this.#watchTime();
+    this.#watchCount();
     if (this.#stop === null) await this.#watchQuota();
   }
 
   #watchTime(): void {
     const { maxSeconds } = this.#task.settings;
     if (maxSeconds !== null && this.#clock.isOver()) this.#stopWith(timeLimitStop(maxSeconds));
+  }
+
+  /** What a shard that starts now may still build; null = no limit. */
+  #constitutionsLeft(): number | null {
+    const { maxConstitutions = null } = this.#task.settings;
+    return maxConstitutions === null ? null : Math.max(0, maxConstitutions - this.#figures().constitutionsSeen);
+  }
+
+  /** A run of exactly so many is complete: only what lies beyond shows that there is more. */
+  #watchCount(): void {
+    const { maxConstitutions = null } = this.#task.settings;
+    if (maxConstitutions !== null && this.#figures().constitutionsSeen > maxConstitutions) this.#stopWith(countLimitStop(maxConstitutions));
   }
 
   /** Reserves more CPU seconds as they are needed; stops the run when the month has no more. */

@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import { Op, type Sequelize, Transaction } from 'sequelize';
 import { z } from 'zod';
-import type { Funnel, RankedCandidate, ShardResult, ShardSpec } from '../../shared/jobs/contract.js';
+import type { BranchCut, Funnel, RankedCandidate, ShardResult, ShardSpec } from '../../shared/jobs/contract.js';
 import type { RunStatus } from '../../shared/types/states.js';
 import { Candidate } from '../models/candidate.js';
 import { Run } from '../models/run.js';
@@ -29,6 +29,7 @@ export interface RunEnd {
   readonly multigraphCount: number | null;
   readonly survivorCount: number | null;
   readonly funnel: Funnel | null;
+  readonly cuts: readonly BranchCut[] | null;
   readonly logSumExp: number | null;
   readonly noneOfTheseProbability: number | null;
   readonly candidates: readonly RankedCandidate[];
@@ -190,6 +191,7 @@ export class RunStore {
           survivorCount: end.survivorCount,
           keptCount: end.candidates.length,
           funnel: end.funnel,
+          cuts: end.cuts,
           logSumExp: end.logSumExp,
           noneOfTheseProbability: end.noneOfTheseProbability,
           cpuSeconds: end.cpuSeconds,

@@ -1,4 +1,5 @@
 import type { Candidate } from '../models/candidate.js';
+import type { ExportOrigin } from './export-candidates.js';
 
 type CsvCandidate = Pick<
   Candidate,
@@ -20,10 +21,13 @@ const COLUMNS: ReadonlyArray<readonly [name: string, value: (candidate: CsvCandi
   ['remarks', ({ remarks }) => remarks.map(({ text }) => text).join('; ')],
   ['idcode', ({ idcode }) => idcode],
 ];
+/** The last column is that of the run: a row copied out of the file still says so. */
+const RUN_COMPLETE = 'run_complete';
 
-export const csvHeader = (): string => line(COLUMNS.map(([name]) => name));
+export const csvHeader = (): string => line([...COLUMNS.map(([name]) => name), RUN_COMPLETE]);
 
-export const csvRow = (candidate: CsvCandidate): string => line(COLUMNS.map(([, value]) => value(candidate)));
+export const csvRow = (candidate: CsvCandidate, { complete }: Pick<ExportOrigin, 'complete'>): string =>
+  line([...COLUMNS.map(([, value]) => value(candidate)), complete ? 'yes' : 'no']);
 
 /** RFC 4180: fields with separators, quotes or line breaks are quoted, lines end with CRLF. */
 function line(fields: readonly (string | number | null | undefined)[]): string {

@@ -41,7 +41,7 @@ export async function* exportCandidates(source: ExportSource, format: ExportForm
     const candidates = await source.read(start, Math.min(BATCH, limit - start));
     if (candidates.length === 0) return;
     if (format === 'smiles') yield candidates.map((candidate) => smilesLine(candidate, source.origin)).join('');
-    else if (format === 'csv') yield candidates.map(csvRow).join('');
+    else if (format === 'csv') yield candidates.map((candidate) => csvRow(candidate, source.origin)).join('');
     else yield await layOutRecords(candidates, source);
   }
 }

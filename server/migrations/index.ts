@@ -20,6 +20,8 @@ import { createShortlistItems } from './20261201121700-create-shortlist-items.js
 import { createComments } from './20261201121800-create-comments.js';
 import { createUsageEntries } from './20261201121900-create-usage-entries.js';
 import { createSignInAttempts } from './20261201122000-create-sign-in-attempts.js';
+import { addCutsToRuns } from './20261201122100-add-cuts-to-runs.js';
+import { noteCompletenessOnShortlistItems } from './20261201122200-note-completeness-on-shortlist-items.js';
 import type { Migration } from './migration.js';
 
 export const migrations: readonly Migration[] = [
@@ -44,4 +46,6 @@ export const migrations: readonly Migration[] = [
   createComments,
   createUsageEntries,
   createSignInAttempts,
+  addCutsToRuns,
+  noteCompletenessOnShortlistItems,
 ];

@@ -1,6 +1,6 @@
 import { DataTypes, Model } from 'sequelize';
 import type { CreationOptional, InferAttributes, InferCreationAttributes, NonAttribute, Sequelize } from 'sequelize';
-import type { Funnel } from '../../shared/jobs/contract.js';
+import type { BranchCut, Funnel, RunSettings } from '../../shared/jobs/contract.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { RunStatus } from '../../shared/types/states.js';
 import { idAttribute, optionalTimeAttribute, referenceAttribute, timeAttribute } from './columns.js';
@@ -19,7 +19,7 @@ export class Run extends Model<InferAttributes<Run>, InferCreationAttributes<Run
   /** Every constitution was looked at. */
   declare complete: CreationOptional<boolean>;
   declare revisionId: string;
-  declare settings: { keep: number; maxSeconds: number | null };
+  declare settings: Omit<RunSettings, 'mode'>;
   /** Frozen copy of the revision, with the settings written into its options. */
   declare evidence: EvidenceDocument;
   declare startedById: string;
@@ -37,6 +37,8 @@ export class Run extends Model<InferAttributes<Run>, InferCreationAttributes<Run
   declare logSumExp: CreationOptional<number | null>;
   declare noneOfTheseProbability: CreationOptional<number | null>;
   declare funnel: CreationOptional<Funnel | null>;
+  /** Null for runs from before branches were counted. */
+  declare cuts: CreationOptional<readonly BranchCut[] | null>;
   declare failure: CreationOptional<{ code: string; message: string } | null>;
   declare unknown?: NonAttribute<Unknown>;
   declare revision?: NonAttribute<EvidenceRevision>;
@@ -69,6 +71,7 @@ export function initRun(sequelize: Sequelize): void {
       logSumExp: { type: DataTypes.DOUBLE, allowNull: true },
       noneOfTheseProbability: { type: DataTypes.DOUBLE, allowNull: true },
       funnel: { type: DataTypes.JSON, allowNull: true },
+      cuts: { type: DataTypes.JSON, allowNull: true },
       failure: { type: DataTypes.JSON, allowNull: true },
     },
     { sequelize, tableName: 'runs', underscored: true, updatedAt: false },

@@ -7,6 +7,8 @@ import type { User } from './user.js';
 /** Figures of the candidate when it was kept; they outlive its run. */
 export interface CandidateSnapshot {
   readonly runNumber: number;
+  /** False: a limit had cut its search, better candidates may be missing. Absent in items from before it was noted. */
+  readonly runComplete?: boolean;
   readonly rank: number;
   readonly probability: number;
   readonly carbonDeviation: number | null;

@@ -27,6 +27,7 @@ export function presentCandidate(
   candidate: Candidate,
   around: {
     readonly unknownId: string;
+    readonly runComplete: boolean;
     readonly shortlistItemId: string | null;
     readonly previousId: string | null;
     readonly nextId: string | null;
@@ -36,6 +37,7 @@ export function presentCandidate(
   return {
     ...presentCandidateRow(candidate, around.shortlistItemId),
     unknownId: around.unknownId,
+    runComplete: around.runComplete,
     spectra: {
       carbons: carbons.map((carbon) => ({ ...carbon, atoms: [...carbon.atoms] })),
       protons: protons.map((proton) => ({ ...proton, atoms: [...proton.atoms], couplings: [...proton.couplings] })),

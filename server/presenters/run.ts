@@ -35,6 +35,7 @@ export function presentRun(actor: Actor, run: Run, progress: RunProgress | null)
     cpuSeconds: run.cpuSeconds,
     noneOfTheseProbability: run.noneOfTheseProbability,
     funnel: presentFunnel(run.funnel),
+    cuts: [...(run.cuts ?? [])],
     failure: run.failure,
     progress,
     abilities: abilitiesOn(actor, 'run', ['cancel', 'export', 'editShortlist'], run),

@@ -14,14 +14,14 @@ const DETAILS = ['spectra', 'matches'];
 export async function findCandidate(actor: Actor, candidateId: string): Promise<Candidate | null> {
   return await Candidate.findOne({
     where: { id: candidateId, teamId: teamIdsOf(actor) },
-    include: [{ model: Run, as: 'run', attributes: ['id', 'unknownId', 'number'], required: true }],
+    include: [{ model: Run, as: 'run', attributes: ['id', 'unknownId', 'number', 'complete'], required: true }],
   });
 }
 
-/** The unknown a candidate was found for. Its run must have been loaded with it. */
-export function unknownOf({ run }: Candidate): string {
+/** The run that a candidate was loaded with. */
+export function runOf({ run }: Candidate): Run {
   if (run === undefined) throw new Error('The run was not loaded with the candidate.');
-  return run.unknownId;
+  return run;
 }
 
 /** One page of a run's candidates, sorted by the database. */

@@ -13,6 +13,7 @@ export const EVIDENCE_LIMITS = {
   correlations: 400,
   keep: 10_000,
   seconds: 86_400,
+  constitutions: 1_000_000_000_000,
 } as const;
 
 const between = (low: number, high: number, unit = '') =>
@@ -148,6 +149,8 @@ export const evidenceOptions = z.strictObject({
   shiftWindows: z.boolean().optional(),
   keep: wholeBetween(1, EVIDENCE_LIMITS.keep).default(1000),
   maxSeconds: between(0.1, EVIDENCE_LIMITS.seconds, ' s').nullable().default(null),
+  /** Constitutions after which a run ends, incomplete. Absent: no limit. */
+  maxConstitutions: wholeBetween(1, EVIDENCE_LIMITS.constitutions).optional(),
 });
 export type EvidenceOptions = z.infer<typeof evidenceOptions>;
 

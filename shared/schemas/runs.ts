@@ -12,12 +12,15 @@ export const funnelSchema = z.array(
     rejections: z.array(z.object({ reason: z.string(), text: z.string(), count: z.number() })),
   }),
 );
+/** Branches of the search that a constraint cut while structures were being built, most frequent first. */
+export const cutsSchema = z.array(z.object({ reason: z.string(), text: z.string(), count: z.number() }));
 export const runParams = z.object({ runId: id });
 export const runStartRequest = z.object({
   /** Absent = the current revision. */
   revisionId: id.optional(),
   keep: z.number().int().min(1).max(EVIDENCE_LIMITS.keep).optional(),
   maxSeconds: z.number().min(1).max(EVIDENCE_LIMITS.seconds).nullable().optional(),
+  maxConstitutions: z.number().int().min(1).max(EVIDENCE_LIMITS.constitutions).nullable().optional(),
 });
 export const runProgressSchema = z.object({
   stage: z.enum(RUN_STAGES),
@@ -41,7 +44,7 @@ export const runResponse = z.object({
   revisionId: id,
   revisionNumber: z.number().int(),
   formula: z.string(),
-  settings: z.object({ keep: z.number(), maxSeconds: z.number().nullable() }),
+  settings: z.object({ keep: z.number(), maxSeconds: z.number().nullable(), maxConstitutions: z.number().nullable().default(null) }),
   startedBy: personName,
   createdAt: timestamp,
   startedAt: timestamp.nullable(),
@@ -53,6 +56,7 @@ export const runResponse = z.object({
   cpuSeconds: z.number(),
   noneOfTheseProbability: z.number().nullable(),
   funnel: funnelSchema.nullable(),
+  cuts: cutsSchema.default([]),
   failure: z.object({ code: z.string(), message: z.string() }).nullable(),
   progress: runProgressSchema.nullable(),
   abilities: abilities(['cancel', 'export', 'editShortlist']),
@@ -94,7 +98,8 @@ export const candidateListQuery = pageQuery.extend({
   sort: z.enum(['rank', 'carbonDeviation', 'protonDeviation', 'smiles']).default('rank'),
   direction: z.enum(['ascending', 'descending']).default('ascending'),
 });
-export const candidatePage = pageOf(candidateRow);
+/** `runComplete` false: a limit cut the search, better candidates may be missing. */
+export const candidatePage = pageOf(candidateRow).extend({ runComplete: z.boolean() });
 export const predictedCarbon = z.object({
   atoms: z.array(z.number()),
   shift: z.number(),
@@ -125,6 +130,8 @@ export const candidateParams = z.object({ candidateId: id });
 /** Atom numbers follow `smiles`, from 0. `previousId`/`nextId` by rank. */
 export const candidateResponse = candidateRow.extend({
   unknownId: id,
+  /** False: a limit cut the search, better candidates may be missing. */
+  runComplete: z.boolean(),
   spectra: predictedSpectra,
   matches: z.array(signalMatch),
   previousId: id.nullable(),
@@ -164,6 +171,8 @@ export const shortlistItem = z.object({
     candidateId: id.nullable(),
     runId: id.nullable(),
     runNumber: z.number(),
+    /** False: a limit had cut its search; null: was not noted at the time. */
+    runComplete: z.boolean().nullable().default(null),
     rank: z.number(),
     probability: z.number(),
     carbonDeviation: z.number().nullable(),
@@ -181,11 +190,41 @@ export const predictRequest = z.object({
   solvent: z.string().trim().max(60).default('CDCl3'),
 });
 export const predictResponse = predictedSpectra.extend({ smiles: z.string(), notes: z.array(z.string()) });
-/** Before a run: what the figures of the caller's quota allow, and the size of the search by random probing. */
+const interval = z.object({ estimate: z.number(), low: z.number(), high: z.number() });
+/**
+ * Size and cost of a run before it starts, by random probing; low and high are the ends of 95 % intervals. Shares are of what
+ * is left of the caller's quota: 1 = all of it; null where nothing is left.
+ */
 export const estimateResponse = z.object({
+  /** Constitutions that will be built. */
   estimate: z.number(),
   low: z.number(),
   high: z.number(),
+  isExact: z.boolean(),
+  /** Constitutions that pass every filter. */
+  survivors: interval,
+  /** Thread seconds of the whole run: building, filtering, scoring, describing what is kept. */
   cpuSeconds: z.number(),
+  cpuSecondsLow: z.number(),
+  cpuSecondsHigh: z.number(),
+  /** Threads that will share the work. */
+  threadCount: z.number().int(),
+  cpuSecondsLeft: z.number(),
+  quotaShare: interval.nullable(),
+  /** Of the candidates that the caller may keep in a run. */
+  candidateShare: interval.nullable(),
+  /** True when even the low end of the interval does not fit into quota, time limit or count limit. */
+  isHopeless: z.boolean(),
+  /** The limit that will probably, or may, end the run. */
+  limit: z.enum(['quota', 'timeLimit', 'countLimit']).nullable(),
+  /** Knowledge that would make the search smaller, most helpful first. */
+  hints: z.array(
+    z.object({
+      kind: z.enum(['attachedHydrogens', 'carbonShifts', 'shiftWindows', 'heteroBonds', 'ringSizes', 'valenceGroups']),
+      text: z.string(),
+      factor: z.number(),
+    }),
+  ),
+  /** Seconds that the estimate took. */
   seconds: z.number(),
 });

@@ -1,8 +1,9 @@
 import { addToCounter, isCancelled } from '../../shared/jobs/counters.js';
-import type { JobContract, ShardResult } from '../../shared/jobs/contract.js';
+import type { JobContract, ShardLimit, ShardResult } from '../../shared/jobs/contract.js';
 import { enumerateShard } from '../enumeration/search.js';
 import { BestCandidates } from './best-candidates.js';
 import { FunnelCounter } from './funnel-counter.js';
+import { createMemoryGuard } from './memory-guard.js';
 import { evaluatorFor, searchFor } from './search-cache.js';
 
 /** Constitutions between two looks at the clock; each can cost up to a millisecond with many fragments. */
@@ -12,6 +13,8 @@ const CONSTITUTIONS_BETWEEN_CHECKS = 64;
 export function runShard(input: JobContract['shard']['input']): ShardResult {
   const { evidence, settings, shard, counters, deadlineEpochMs } = input;
   const startedMs = performance.now();
+  const mostConstitutions = input.maxConstitutions ?? settings.maxConstitutions ?? Infinity;
+  const isOutOfMemory = createMemoryGuard();
   const search = searchFor(evidence, settings.mode);
   const evaluator = evaluatorFor(evidence, settings);
   const funnel = new FunnelCounter();
@@ -26,6 +29,7 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
   let highest = -Infinity;
   let relativeSum = 0;
   let mustStop = false;
+  let stoppedBy: ShardLimit | null = null;
   let untilCheck = CONSTITUTIONS_BETWEEN_CHECKS;
 
   const look = (): boolean => {
@@ -33,19 +37,29 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
     addToCounter(counters, 'survivors', survivors - reportedSurvivors);
     reportedConstitutions = constitutionCount;
     reportedSurvivors = survivors;
-    mustStop ||= isCancelled(counters) || (deadlineEpochMs !== null && Date.now() >= deadlineEpochMs);
+    if (mustStop) return true;
+    if (deadlineEpochMs !== null && Date.now() >= deadlineEpochMs) stoppedBy = 'time';
+    else if (isOutOfMemory()) stoppedBy = 'memory';
+    mustStop = stoppedBy !== null || isCancelled(counters);
     return mustStop;
   };
   const complete = enumerateShard(search, shard, {
-    onCut({ reason, text }) {
+    onCut({ reason, text }, branches) {
+      if (branches === 0) return;
       const cut = cuts.get(reason) ?? { reason, text, count: 0 };
-      cut.count++;
+      cut.count += branches;
       cuts.set(reason, cut);
     },
     onMultigraphs(count) {
       multigraphCount += count;
     },
     onConstitution(graph) {
+      // One more than allowed shows that the search goes on: it is not counted, and the shard is incomplete.
+      if (mustStop || constitutionCount >= mostConstitutions) {
+        stoppedBy ??= 'count';
+        mustStop = true;
+        return;
+      }
       constitutionCount++;
       funnel.arrive();
       if (--untilCheck === 0) {
@@ -81,5 +95,6 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
     logSumExp: survivors === 0 ? null : highest + Math.log(relativeSum),
     cpuSeconds: (performance.now() - startedMs) / 1000,
     complete,
+    ...(complete || stoppedBy === null ? {} : { stoppedBy }),
   };
 }

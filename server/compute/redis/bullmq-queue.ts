@@ -147,7 +147,7 @@ class BullmqQueue implements RunQueue {
     monitor ??= new RunMonitor(run.startedAt, run.settings.maxSeconds);
     // Events from here on find the monitor; what happened before is read below.
     this.#monitors.set(runId, monitor);
-    if (isNew) this.#limits.set(runId, new LimitWatch(runId, run.settings.maxSeconds, this.#store));
+    if (isNew) this.#limits.set(runId, new LimitWatch(runId, run.settings, this.#store));
     const finish = await this.#queue.getJob(finishId(runId));
     if (finish !== undefined && isNew) {
       const done = Object.entries(await finish.getChildrenValues<ShardFigures | null>());

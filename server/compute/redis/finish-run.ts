@@ -3,7 +3,7 @@ import { Run } from '../../models/run.js';
 import { ShardMerger } from '../merge-shards.js';
 import { describeEnd } from '../run-end.js';
 import { MAX_CRASHES } from '../run-failure.js';
-import { readStop, type Stop, timeLimitStop } from '../run-stop.js';
+import { readStop, type Stop, stopOfShards, timeLimitStop } from '../run-stop.js';
 import type { RunStore } from '../run-store.js';
 import { readRunInput } from '../run-task.js';
 import { attempt } from './attempt.js';
@@ -17,7 +17,7 @@ export async function finishRun(context: RunJobsContext, job: FinishJob, token: 
   const run = await onDatabase(context, () => Run.findByPk(runId));
   if (run === null || (run.status !== 'queued' && run.status !== 'running')) return null;
   const gathered = await onDatabase(context, () => gatherShards(run, store));
-  const stop = readStop(run) ?? (await findReason(job, run, gathered));
+  const stop = readStop(run) ?? stopOfShards(gathered.merged.stoppedBy, run.settings) ?? (await findReason(job, run, gathered));
   const end = async (given: Stop | null, finished?: Pick<RunEnd, 'candidates' | 'noneOfTheseProbability'>, seconds = 0) => {
     const description = describeEnd({
       merged: gathered.merged,

@@ -1,20 +1,21 @@
 import { readReservation } from '../../quotas/reservations.js';
-import { QUOTA_STOP, timeLimitStop } from '../run-stop.js';
+import type { RunSettings } from '../../../shared/jobs/contract.js';
+import { countLimitStop, QUOTA_STOP, type RunFailure, timeLimitStop } from '../run-stop.js';
 import type { RunStore } from '../run-store.js';
 import type { RunMonitor } from './run-monitor.js';
 
-/** Watches the time and the quota of one run, and notes in its row when one of them is used up. */
+/** Watches time, count and quota of one run, and notes in its row when one of them is used up. */
 export class LimitWatch {
   readonly #runId: string;
-  readonly #maxSeconds: number | null;
+  readonly #limits: Pick<RunSettings, 'maxSeconds' | 'maxConstitutions'>;
   readonly #store: RunStore;
   #reservedSeconds: number | null = null;
   #isLooking = false;
   #isStopped = false;
 
-  constructor(runId: string, maxSeconds: number | null, store: RunStore) {
+  constructor(runId: string, limits: Pick<RunSettings, 'maxSeconds' | 'maxConstitutions'>, store: RunStore) {
     this.#runId = runId;
-    this.#maxSeconds = maxSeconds;
+    this.#limits = limits;
     this.#store = store;
   }
 
@@ -23,14 +24,21 @@ export class LimitWatch {
     if (this.#isStopped || this.#isLooking || !monitor.isEnumerating) return false;
     this.#isLooking = true;
     try {
-      const isTimeOver = this.#maxSeconds !== null && monitor.elapsedSeconds() >= this.#maxSeconds;
-      if (!isTimeOver && !(await this.#isQuotaUsedUp(monitor.usedSeconds()))) return false;
-      await this.#store.noteStop(this.#runId, isTimeOver ? timeLimitStop(this.#maxSeconds) : QUOTA_STOP);
+      const stop = this.#limitReached(monitor) ?? ((await this.#isQuotaUsedUp(monitor.usedSeconds())) ? QUOTA_STOP : null);
+      if (stop === null) return false;
+      await this.#store.noteStop(this.#runId, stop);
       this.#isStopped = true;
       return true;
     } finally {
       this.#isLooking = false;
     }
+  }
+
+  #limitReached(monitor: RunMonitor): RunFailure | null {
+    const { maxSeconds, maxConstitutions = null } = this.#limits;
+    if (maxSeconds !== null && monitor.elapsedSeconds() >= maxSeconds) return timeLimitStop(maxSeconds);
+    // A run of exactly so many is complete: only what lies beyond shows that there is more.
+    return maxConstitutions !== null && monitor.constitutionsSeen() > maxConstitutions ? countLimitStop(maxConstitutions) : null;
   }
 
   /** Reserves more CPU seconds as they are needed. */

@@ -31,6 +31,10 @@ export class RunMonitor {
   elapsedSeconds(): number {
     return this.#clock.elapsedSeconds();
   }
+  /** Constitutions that the shards have built, those under way included. */
+  constitutionsSeen(): number {
+    return this.#figures().constitutionsSeen;
+  }
   /** CPU seconds of the shards, those under way included. */
   usedSeconds(): number {
     const done = [...this.#done.values()].reduce((sum, { cpuSeconds }) => sum + cpuSeconds, this.#doneBefore.cpuSeconds);

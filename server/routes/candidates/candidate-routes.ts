@@ -1,6 +1,6 @@
 import { authorize } from '../../policies/authorize.js';
 import { presentCandidate, presentCandidateRow } from '../../presenters/candidate.js';
-import { findCandidate, findNeighbours, findShortlisted, listCandidates, unknownOf } from '../../queries/candidates.js';
+import { findCandidate, findNeighbours, findShortlisted, listCandidates, runOf } from '../../queries/candidates.js';
 import { findRun } from '../../queries/runs.js';
 import { route, type Route } from '../route.js';
 
@@ -18,14 +18,16 @@ export function candidateRoutes(): Route[] {
         total,
         page: query.page,
         pageSize: query.pageSize,
+        runComplete: run.complete,
       };
     }),
     route('readCandidate', async ({ actor, params }) => {
       const candidate = authorize(actor, 'candidate.read', await findCandidate(actor, params.candidateId));
-      const unknownId = unknownOf(candidate);
+      const { unknownId, complete } = runOf(candidate);
       const [neighbours, shortlisted] = await Promise.all([findNeighbours(candidate), findShortlisted(unknownId, [candidate.idcodeHash])]);
       return presentCandidate(actor, candidate, {
         unknownId,
+        runComplete: complete,
         shortlistItemId: shortlisted.get(candidate.idcodeHash) ?? null,
         ...neighbours,
       });

@@ -40,7 +40,7 @@ export function runRoutes(context: AppContext): Route[] {
     }),
     route('estimateRun', async ({ actor, params, body }) => {
       const unknown = authorize(actor, 'unknown.startRun', await findUnknown(actor, params.unknownId));
-      return await estimateRun(context, unknown, body);
+      return await estimateRun(context, actor, unknown, body);
     }),
     route('readRun', async ({ actor, params }) => await presentOne(actor, params.runId)),
     route('cancelRun', async ({ actor, params }) => {
