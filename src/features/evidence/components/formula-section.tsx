@@ -1,4 +1,11 @@
-import { degreeOfUnsaturation, formatHill, monoisotopicMass, nitrogenRuleHint, parseFormula } from '../../../../shared/chemistry/formula';
+import {
+  countOf,
+  degreeOfUnsaturation,
+  formatHill,
+  monoisotopicMass,
+  nitrogenRuleHint,
+  parseFormula,
+} from '../../../../shared/chemistry/formula';
 import { Formula } from '../../../components/chemistry-text';
 import { TextInput } from '../../../components/field';
 import { Panel } from '../../../components/panel';
@@ -43,7 +50,12 @@ export function FormulaSection({
             <Figure term="Monoisotopic mass">
               <span className="text-lead tabular">{monoisotopicMass(counts).toFixed(5)} u</span>
             </Figure>
-            <p className="col-span-full text-faded">{nitrogenRuleHint(counts)}.</p>
+            <p className="col-span-full text-faded">
+              {nitrogenRuleHint(counts)}.
+              {countOf(counts, 'O') > 0 && countOf(counts, 'S') + countOf(counts, 'P') > 0
+                ? ' The double bonds of S=O and P=O are not among the rings plus double bonds.'
+                : null}
+            </p>
           </dl>
         )}
       </div>

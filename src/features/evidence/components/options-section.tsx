@@ -1,4 +1,6 @@
+import { VALENCE_GROUP_NAMES } from '../../../../shared/chemistry/valence-group-names';
 import { PLAUSIBILITY_RULES } from '../../../../shared/plausibility/rules';
+import { VALENCE_GROUPS, type ValenceGroup } from '../../../../shared/schemas/evidence';
 import type { InputIssue } from '../../../../shared/schemas/problem';
 import { Checkbox, Select, TextInput } from '../../../components/field';
 import { Panel } from '../../../components/panel';
@@ -26,6 +28,8 @@ export function OptionsSection({
         ? options.disabledRules.filter((rule) => rule !== id)
         : [...options.disabledRules, id],
     });
+  const toggleGroup = (chosen: readonly ValenceGroup[], group: ValenceGroup) =>
+    set({ valenceGroups: VALENCE_GROUPS.filter((entry) => (entry === group ? !chosen.includes(entry) : chosen.includes(entry))) });
   return (
     <Panel title="Options of the search">
       <fieldset disabled={isReadOnly} className="space-y-5">
@@ -90,6 +94,12 @@ export function OptionsSection({
           checked={options.mergeResonanceForms}
           onChange={(event) => set({ mergeResonanceForms: event.target.checked })}
         />
+        <ValenceGroupChoice
+          chosen={options.valenceGroups ?? null}
+          onChoose={(valenceGroups) => set({ valenceGroups })}
+          onToggle={toggleGroup}
+          error={issueAt(issues, 'options.valenceGroups')}
+        />
         <div>
           <Checkbox
             label="Apply the plausibility rules"
@@ -126,5 +136,49 @@ export function OptionsSection({
         </div>
       </fieldset>
     </Panel>
+  );
+}
+
+/** Which groups the search may form without a fragment that brings them. */
+function ValenceGroupChoice({
+  chosen,
+  onChoose,
+  onToggle,
+  error,
+}: {
+  chosen: EvidenceDraft['options']['valenceGroups'];
+  onChoose: (groups: ValenceGroup[] | null) => void;
+  onToggle: (chosen: readonly ValenceGroup[], group: ValenceGroup) => void;
+  error: string | undefined;
+}) {
+  return (
+    <div>
+      <Select
+        label="Groups of higher valence"
+        className="max-w-80"
+        value={chosen === null ? 'rankings' : 'chosen'}
+        options={[
+          { value: 'rankings', label: 'all in rankings' },
+          { value: 'chosen', label: 'only the ticked ones' },
+        ]}
+        hint="Nitro, SO₂, P=O and their like, formed without a fragment. Evidence that rules a group out leaves it out."
+        error={error}
+        onValueChange={(value) => onChoose(value === 'rankings' ? null : [...VALENCE_GROUPS])}
+      />
+      {chosen === null ? null : (
+        <ul className="mt-3 grid gap-x-8 gap-y-2 tablet:grid-cols-2">
+          {VALENCE_GROUPS.map((group) => (
+            <li key={group}>
+              <Checkbox
+                label={VALENCE_GROUP_NAMES[group].name}
+                hint={VALENCE_GROUP_NAMES[group].covers}
+                checked={chosen.includes(group)}
+                onChange={() => onToggle(chosen, group)}
+              />
+            </li>
+          ))}
+        </ul>
+      )}
+    </div>
   );
 }

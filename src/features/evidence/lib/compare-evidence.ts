@@ -1,3 +1,4 @@
+import { VALENCE_GROUP_NAMES } from '../../../../shared/chemistry/valence-group-names';
 import type { EvidenceDocument } from '../../../../shared/schemas/evidence';
 
 /** One difference between two evidence documents, for people. */
@@ -63,6 +64,12 @@ function optionsOf({ options }: EvidenceDocument): Record<string, string> {
       : 'off',
     'Ring sizes': `${options.ringSizes.min} to ${options.ringSizes.max ?? 'any'}`,
     '¹³C list': options.carbonList === 'complete' ? 'every CH, CH₂ and CH₃ shows' : 'signals may be missing',
+    'Groups of higher valence':
+      options.valenceGroups === undefined
+        ? 'all in rankings'
+        : options.valenceGroups.length === 0
+          ? 'none'
+          : options.valenceGroups.map((group) => VALENCE_GROUP_NAMES[group].name).join(', '),
     'Candidates kept': String(options.keep),
     'Time limit': options.maxSeconds === null ? 'none' : `${options.maxSeconds} s`,
   };

@@ -1,5 +1,5 @@
 import { parseEvidence } from '../../../../shared/chemistry/check-evidence';
-import { correlations, evidenceOptions, type EvidenceDocument } from '../../../../shared/schemas/evidence';
+import { correlations, evidenceOptions, type EvidenceDocument, type ValenceGroup } from '../../../../shared/schemas/evidence';
 import type { InputIssue } from '../../../../shared/schemas/problem';
 import { parseNumberText } from '../../../lib/numbers';
 
@@ -42,6 +42,8 @@ export interface EvidenceDraft {
     smallestRing: string;
     largestRing: string;
     carbonList: 'complete' | 'partial';
+    /** null: all in a ranking, none when counting or listing. */
+    valenceGroups: ValenceGroup[] | null;
     keep: string;
     maxSeconds: string;
   };
@@ -75,6 +77,7 @@ export function draftOf(document: EvidenceDocument): EvidenceDraft {
       smallestRing: String(options.ringSizes.min),
       largestRing: text(options.ringSizes.max),
       carbonList: options.carbonList,
+      valenceGroups: options.valenceGroups ?? null,
       keep: String(options.keep),
       maxSeconds: text(options.maxSeconds),
     },
@@ -146,16 +149,18 @@ export function readDraft(draft: EvidenceDraft): DraftResult {
       });
     }),
     ...draft.carried,
-    options: {
+    options: defined({
       solvent: options.solvent,
       mergeResonanceForms: options.mergeResonanceForms,
       plausibility: options.plausibility,
       disabledRules: options.disabledRules,
       ringSizes: { min: numberOrText(options.smallestRing) ?? '', max: numberOrText(options.largestRing) ?? null },
       carbonList: options.carbonList,
+      // Edits that were kept in the browser before this option existed lack it.
+      valenceGroups: options.valenceGroups ?? undefined,
       keep: numberOrText(options.keep) ?? '',
       maxSeconds: numberOrText(options.maxSeconds) ?? null,
-    },
+    }),
   });
   if (result.ok) return { ok: true, document: result.document, notes: result.notes, issues: [] };
   const rowsBack = (path: string): string =>

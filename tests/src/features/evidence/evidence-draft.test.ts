@@ -20,6 +20,14 @@ describe('evidence being typed', () => {
     expect(read.ok && read.document).toEqual(document);
   });
 
+  it('keeps a choice of groups of higher valence, none too, and leaves it open when there is none', () => {
+    const groupsOf = (valenceGroups: readonly ('nitro' | 'sulfone')[] | undefined) => {
+      const read = readDraft(draftOf(evidenceDocument.parse({ formula: 'C9H10O2', options: { valenceGroups } })));
+      return read.ok ? read.document.options.valenceGroups : read.issues;
+    };
+    expect([groupsOf(['nitro', 'sulfone']), groupsOf([]), groupsOf(undefined)]).toEqual([['nitro', 'sulfone'], [], undefined]);
+  });
+
   it('reads decimal commas and real minus signs', () => {
     const draft = {
       ...draftOf(document),
