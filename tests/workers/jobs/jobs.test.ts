@@ -2,11 +2,13 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { cancelRun, createCounters, readCounter } from '../../../shared/jobs/counters.js';
 import type { JobContract, RunSettings, ShardResult } from '../../../shared/jobs/contract.js';
-import { evidenceDocument, type EvidenceInput } from '../../../shared/schemas/evidence.js';
+import { evidenceDocument, VALENCE_GROUPS, type EvidenceInput } from '../../../shared/schemas/evidence.js';
 import { parseSmiles } from '../../../shared/chemistry/smiles.js';
 import { BestCandidates } from '../../../workers/jobs/best-candidates.js';
 import { unpackGraph } from '../../../workers/graph/pack.js';
 import { constitutionKey } from '../../../workers/graph/constitution-key.js';
+import { enumerateAll } from '../../support/enumerate.js';
+import { writeExplicitSmiles } from '../../support/explicit-smiles.js';
 import * as jobs from '../../../workers/main.js';
 
 const settings: RunSettings = { keep: 20, maxSeconds: null, mode: 'rank' };
@@ -133,11 +135,42 @@ describe('the explain job', () => {
     expect(explanationOf('Cc1ccc(cc1)C(=O)OC').kind).toBe('survives');
   });
 
-  it('says that a nitro group needs a fragment that brings it', () => {
+  it('finds a nitro group without a fragment that brings it, unless groups were chosen without it', () => {
     const nitro: EvidenceInput = { formula: 'C7H7NO2' };
-    expect(explanationOf('Cc1ccc(cc1)[N+](=O)[O-]', nitro)).toMatchObject({ kind: 'rejected', reasons: [{ reason: 'valenceState' }] });
-    const withGroup: EvidenceInput = { ...nitro, fragments: { required: [{ smiles: '*[N+](=O)[O-]', count: 1 }] } };
-    expect(explanationOf('Cc1ccc(cc1)[N+](=O)[O-]', withGroup).kind).toBe('survives');
+    const smiles = 'Cc1ccc(cc1)[N+](=O)[O-]';
+    expect(explanationOf(smiles, nitro).kind).toBe('survives');
+    const without: EvidenceInput = { ...nitro, options: { valenceGroups: ['sulfone', 'nOxide'] } };
+    const explained = explanationOf(smiles, without);
+    expect(explained).toMatchObject({ kind: 'rejected', stage: 'constitutions', reasons: [{ reason: 'valenceState' }] });
+    expect(explained.kind === 'rejected' && explained.reasons[0].text).toMatch(/\(Nitro\)\. Allow it/);
+    expect(explained.kind === 'rejected' && [...explained.reasons[0].atoms].sort()).toEqual([7, 9]);
+    const withFragment: EvidenceInput = { ...without, fragments: { required: [{ smiles: '*[N+](=O)[O-]', count: 1 }] } };
+    expect(explanationOf(smiles, withFragment).kind).toBe('survives');
+  });
+
+  it('says which evidence rules a group out', () => {
+    const excluded: EvidenceInput = { formula: 'C2H6OS', fragments: { excluded: [{ smiles: 'S=O' }] } };
+    const explained = explanationOf('CS(C)=O', excluded);
+    expect(explained.kind === 'rejected' && explained.reasons.map(({ text }) => text)).toEqual([
+      'It holds a group that this run does not form. Sulfoxide groups were left out: the excluded fragment S=O is part of them.',
+    ]);
+  });
+
+  it('says that a valence state of no such group needs a fragment that brings it', () => {
+    const explained = explanationOf('CS(C)(=O)=N', { formula: 'C2H7NOS' });
+    expect(explained.kind === 'rejected' && explained.reasons).toMatchObject([{ reason: 'valenceState', atoms: [1] }]);
+    expect(explained.kind === 'rejected' && explained.reasons[0].text).toContain('only inside a required fragment');
+  });
+
+  it('agrees with the search on every structure with such groups (CH3NO2S, all and some groups)', () => {
+    const all = enumerateAll({ formula: 'CH3NO2S', options: { valenceGroups: [...VALENCE_GROUPS] } }, { keep: true });
+    for (const valenceGroups of [[...VALENCE_GROUPS], ['sulfone', 'nitro'] as const, ['nOxide'] as const]) {
+      const from: EvidenceInput = { formula: 'CH3NO2S', options: { valenceGroups: [...valenceGroups], plausibility: false } };
+      const found = new Set(enumerateAll(from, { keep: true }).keys);
+      all.graphs.forEach((graph, k) =>
+        expect(explanationOf(writeExplicitSmiles(graph), from).kind).toBe(found.has(all.keys[k]) ? 'survives' : 'rejected'),
+      );
+    }
   });
 
   it('refuses what is no whole structure, naming the field', () => {
