@@ -292,10 +292,11 @@ export class CorrelationMatcher {
         y &= ~taken[1];
       }
       if (s > firstSlot[k]) {
-        // Slots of one site take rising atoms.
+        // Slots of one site take rising atoms; those of a lone proton may fall together.
         const previous = atomOfSlot[s - 1];
-        x &= previous >= 31 ? 0 : -2 << previous;
-        y &= previous < 32 ? -1 : -2 << (previous - 32);
+        const first = isCarbon[k] === 1 ? previous + 1 : previous;
+        x &= first > 31 ? 0 : -1 << first;
+        y &= first < 32 ? -1 : -1 << (first - 32);
       }
       const size = countBits(x) + countBits(y);
       if (size >= fewest) continue;
