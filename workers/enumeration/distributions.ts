@@ -1,17 +1,22 @@
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { createGraph } from '../graph/pack.js';
+import { type BondPattern, createRefinement } from './bond-patterns.js';
+import { FILL_STRIDE } from './fill.js';
 import type { FillLayout } from './layout.js';
+import { listAllowedOrders } from './partial-pattern-check.js';
 import type { SearchProblem } from './problem.js';
 import { RESONANT_BOND, type UnitKind } from './units.js';
 
-/** Free atoms of one element with the same number of hydrogens. */
+/** Free atoms of one element with the same number of hydrogens, and the same bonds where these are prescribed. */
 export interface AtomClass {
   readonly atomicNumber: number;
   readonly hydrogens: number;
   readonly valence: number;
+  /** Bonds to other heavy atoms; null = any that make up the valence. */
+  readonly bonds: BondPattern | null;
   readonly count: number;
 }
-/** One way to share the hydrogens out among the free atoms. */
+/** One way to share the hydrogens, and where shifts tell them the multiple bonds of carbons, out among the free atoms. */
 export type Distribution = readonly AtomClass[];
 
 /** More symmetric sets of units than this are refused: the group is held as a list. */
@@ -22,7 +27,7 @@ export class TooSymmetricError extends Error {}
 
 /**
  * Lists every hydrogen distribution that can belong to a connected molecule and meets the carbon census and the
- * one-atom fragments, in a fixed order.
+ * one-atom fragments, in a fixed order; where windows of signals restrict carbons, refined by their bonds.
  *
  * A necessary condition only: valence sum even, enough bonds to connect, no atom with more valence than the others
  * together can take (Senior, Am. J. Math. 1951, 73, 663).
@@ -45,6 +50,7 @@ export function listDistributions(problem: SearchProblem): Distribution[] {
   }
   for (const element of free) partCount += element.count;
 
+  const refine = createRefinement(problem);
   const result: Distribution[] = [];
   const chosen: AtomClass[] = [];
   /** Largest number of hydrogens that elements [k, end) can carry. */
@@ -66,7 +72,7 @@ export function listDistributions(problem: SearchProblem): Distribution[] {
   const chooseElement = (k: number, hydrogens: number): void => {
     if (hydrogens > roomFrom[k]) return;
     if (k === free.length) {
-      if (hydrogens === 0 && isConnectable()) result.push(chosen.filter((atomClass) => atomClass.count > 0));
+      if (hydrogens === 0 && isConnectable()) for (const refined of refine(chosen.filter(({ count }) => count > 0))) result.push(refined);
       return;
     }
     const { atomicNumber, valence, count } = free[k];
@@ -88,7 +94,7 @@ export function listDistributions(problem: SearchProblem): Distribution[] {
       if (h === 0) least = Math.max(least, atoms);
       for (let number = most; number >= least; number--) {
         if (number * h > left) continue;
-        chosen.push({ atomicNumber, hydrogens: h, valence, count: number });
+        chosen.push({ atomicNumber, hydrogens: h, valence, bonds: null, count: number });
         chooseClass(h - 1, atoms - number, left - number * h);
         chosen.pop();
       }
@@ -154,16 +160,17 @@ export function createLayout(problem: SearchProblem, distribution: Distribution)
     closedRows.push(...unit.closedAtoms.map((atom) => rowOf(unit, instance, kind, atom)));
   });
   for (const atomClass of distribution) {
+    const { bonds } = atomClass;
     for (let copy = 0; copy < atomClass.count; copy++) {
       freeRows.push({
         atomicNumber: atomClass.atomicNumber,
         hydrogens: atomClass.hydrogens,
         charge: 0,
         valence: atomClass.valence - atomClass.hydrogens,
-        quota: null,
+        quota: bonds === null ? null : [0, bonds.singles, bonds.doubles, bonds.triples],
         unit: -1,
         atom: -1,
-        classKey: `atom ${atomClass.atomicNumber}/${atomClass.hydrogens}`,
+        classKey: `atom ${atomClass.atomicNumber}/${atomClass.hydrogens}${bonds === null ? '' : `/${bonds.singles}${bonds.doubles}${bonds.triples}`}`,
       });
     }
   }
@@ -195,7 +202,7 @@ export function createLayout(problem: SearchProblem, distribution: Distribution)
   });
   instances.forEach(({ unit }, instance) => placeForm(base, unit, unit.forms[0], vertices[instance]));
   const placedUnits = instances.map(({ kind }, instance) => ({ kind, vertices: vertices[instance] }));
-  return {
+  const layout: SearchLayout = {
     open,
     tied: tiedRows.length,
     freeValence,
@@ -203,7 +210,7 @@ export function createLayout(problem: SearchProblem, distribution: Distribution)
     classOf,
     unitOf,
     allowedOrders: null,
-    smallestRing: 3,
+    ringLimits: problem.structure.rings,
     tiedPermutations: listTiedPermutations(units, tiedRows.length),
     base,
     resonantBonds: findResonantBonds(n, placedUnits, units),
@@ -212,6 +219,7 @@ export function createLayout(problem: SearchProblem, distribution: Distribution)
     placedUnits,
     freeVertices,
   };
+  return { ...layout, allowedOrders: listAllowedOrders(problem.structure.patterns, layout, FILL_STRIDE) };
 }
 
 /** Rings plus double bonds of every molecule of a layout. */

@@ -1,5 +1,5 @@
 import { readFileSync } from 'node:fs';
-import type { FillLayout } from './layout.js';
+import type { FillLayout, RingLimits } from './layout.js';
 
 /** What a search asks of its caller. Return true to stop the search. */
 export interface FillEvents {
@@ -13,7 +13,7 @@ export interface FillEvents {
   /** Rows [0, row) are filled and `stopRow` was reached: entries in filling order, fresh array. */
   onPrefix?(prefix: number[]): void;
   /** Rows [0, known) are complete; false cuts everything below. Asked before the canonicity test. */
-  onRow?(bondOrders: Uint8Array, known: number): boolean;
+  onRow?(bondOrders: Uint8Array, known: number, molecule: Uint8Array): boolean;
   /** Called every few thousand rows; true ends the search. */
   shouldStop(): boolean;
 }
@@ -34,20 +34,13 @@ interface FillCore {
   molecule(): number;
   insideBonds(): number;
   resonantBonds(): number;
+  cuts(): number;
+  limitRings(smallest: number, largest: number, alkyne: number, allene: number, carbons: bigint): void;
   describe(atoms: number, tellsForms: boolean, donors: bigint): void;
   tiedPairs(): number;
   prefix(): number;
   reserve(permutations: number, tied: number): number;
-  run(
-    open: number,
-    tied: number,
-    pairs: number,
-    forbids: boolean,
-    asksRows: boolean,
-    smallestRing: number,
-    stopRow: number,
-    prefixRows: number,
-  ): number;
+  run(open: number, tied: number, pairs: number, forbids: boolean, asksRows: boolean, stopRow: number, prefixRows: number): number;
 }
 
 /** The part of the WebAssembly interface that is used; its types are otherwise declared for browsers only. */
@@ -71,7 +64,7 @@ const core = new Instance(new Module(readFileSync(new URL('./fill.wasm', import.
   host: {
     onLeaf: (mayHaveOtherForms: number) => events!.onLeaf(matrix, molecule, mayHaveOtherForms === 1),
     onPrefix: (row: number) => events!.onPrefix!(currentPrefix(row)),
-    onRow: (known: number) => events!.onRow!(matrix, known),
+    onRow: (known: number) => events!.onRow!(matrix, known, molecule),
     shouldStop: () => events!.shouldStop(),
   },
 }).exports as FillCore;
@@ -107,7 +100,6 @@ export function fill(of: FillLayout, prefix: readonly number[], stopRow: number,
         tiedPairs.length / 2,
         of.allowedOrders !== null,
         handler.onRow !== undefined,
-        of.smallestRing,
         stopRow,
         prefix.length > 0 ? prefix[0] : -1,
       ) === 1
@@ -115,6 +107,12 @@ export function fill(of: FillLayout, prefix: readonly number[], stopRow: number,
   } finally {
     events = null;
   }
+}
+
+/** Branches that the last search cut by each limit on rings. */
+export function ringCuts(): Readonly<Record<keyof RingLimits, number>> {
+  const [smallest, largest, alkyne, allene] = new Uint32Array(core.memory.buffer, core.cuts(), 4);
+  return { smallest, largest, alkyne, allene };
 }
 
 function bytes(address: number, length: number): Uint8Array {
@@ -145,6 +143,7 @@ function load(of: FillLayout): void {
   const inside = masks(core.insideBonds(), 3 * FILL_STRIDE).fill(0n);
   const resonant = masks(core.resonantBonds(), FILL_STRIDE);
   let donors = 0n;
+  let carbons = 0n;
   for (let i = 0; i < n; i++) {
     adjacency[i] = resonant[i] = 0n;
     for (let j = 0; j < n; j++) {
@@ -157,8 +156,11 @@ function load(of: FillLayout): void {
     }
     // Carbon and silicon without a charge take part in an aromatic ring by a double bond only.
     const element = base.atomicNumbers[i];
+    if (element === 6) carbons |= 1n << BigInt(i);
     if ((element !== 6 && element !== 14) || base.charges[i] !== 0) donors |= 1n << BigInt(i);
   }
+  const { smallest, largest, alkyne, allene } = of.ringLimits;
+  core.limitRings(smallest, largest ?? 0, alkyne, allene, carbons);
   core.describe(n, of.tellsForms, donors);
 }
 

@@ -1,5 +1,17 @@
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 
+/** Limits on rings, in atoms, that are kept while a matrix is filled. */
+export interface RingLimits {
+  /** No smaller ring; 3 = no limit. */
+  readonly smallest: number;
+  /** No bond whose smallest ring is larger; null = no limit. Necessary for the limit on all rings, not sufficient. */
+  readonly largest: number | null;
+  /** No triple bond in a smaller ring; 0 = no limit. */
+  readonly alkyne: number;
+  /** No C=C=C in a smaller ring; 0 = no limit. */
+  readonly allene: number;
+}
+
 /**
  * One vertex list to fill: unit choices and a hydrogen distribution laid out as rows.
  *
@@ -27,8 +39,7 @@ export interface FillLayout {
    * null = every order is allowed.
    */
   readonly allowedOrders: Uint8Array | null;
-  /** No bond may close a ring of fewer atoms; 3 = no limit. */
-  readonly smallestRing: number;
+  readonly ringLimits: RingLimits;
   /** All permutations of the tied vertices that keep units whole and respect their automorphisms; identity first. */
   readonly tiedPermutations: readonly Uint8Array[];
   /** Graph with the bonds inside units and all hydrogens; a fill adds its bonds to a copy of the bond orders. */

@@ -1,5 +1,7 @@
 import type { SearchLayout } from './distributions.js';
 import { createPartialCorrelationCheck } from './partial-correlation-check.js';
+import { createPartialPatternChecks } from './partial-pattern-check.js';
+import { createPartialWindowCheck } from './partial-window-check.js';
 import type { SearchProblem } from './problem.js';
 
 /**
@@ -14,13 +16,19 @@ export interface PartialCheck {
   /**
    * @param filled - bond orders between open vertices, row-major with FILL_STRIDE. Read only. Bonds inside units are in
    *   the layout's `base` graph instead.
+   * @param molecule - the same with the bonds inside units, n × n in the order of the layout's graph. Read only.
    * @param known - rows [0, known) are complete: those vertices get no further bond.
    * @returns false when no completion can be kept.
    */
-  test(filled: Uint8Array, known: number): boolean;
+  test(filled: Uint8Array, known: number, molecule: Uint8Array): boolean;
 }
 
 /** The checks of a layout, cheapest first. */
-export function createPartialChecks({ correlations }: SearchProblem, layout: SearchLayout): PartialCheck[] {
-  return correlations === null ? [] : [createPartialCorrelationCheck(correlations, layout)];
+export function createPartialChecks(problem: SearchProblem, layout: SearchLayout): PartialCheck[] {
+  const { correlations, structure } = problem;
+  const checks = createPartialPatternChecks(structure.patterns, layout);
+  const windows = createPartialWindowCheck(problem, layout);
+  if (windows !== null) checks.push(windows);
+  if (correlations !== null) checks.push(createPartialCorrelationCheck(correlations, layout));
+  return checks;
 }

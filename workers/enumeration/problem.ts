@@ -6,6 +6,7 @@ import type { InputIssue } from '../../shared/schemas/problem.js';
 import { createCorrelationModel, type CorrelationModel } from '../correlations/correlation-model.js';
 import { carbonCensus, type CarbonCensus } from './carbon-census.js';
 import { FILL_STRIDE } from './fill.js';
+import { structureLimits, type StructureLimits } from './structure-limits.js';
 import { createUnitKind, type UnitKind } from './units.js';
 
 /** Heavy atoms outside units, of one element. */
@@ -46,6 +47,7 @@ export interface SearchProblem {
   readonly heavyAtomCount: number;
   readonly census: CarbonCensus;
   readonly mergeResonanceForms: boolean;
+  readonly structure: StructureLimits;
   /** COSY and HMBC pairs to meet; null = none. */
   readonly correlations: CorrelationModel | null;
   /**
@@ -135,6 +137,7 @@ export function createProblem(evidence: EvidenceDocument): SearchProblem {
     heavyAtomCount,
     census: carbonCensus(evidence, parsed.counts),
     mergeResonanceForms: evidence.options.mergeResonanceForms,
+    structure: structureLimits(evidence),
     correlations: createCorrelationModel(evidence),
     hasForcedPlacements: units.length === 0,
     partnerLimits: [],

@@ -3,7 +3,7 @@ import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { SearchNode, ShardSpec } from '../../shared/jobs/contract.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { createLayout, listDistributions, type Distribution, type SearchLayout } from './distributions.js';
-import { fill, type FillEvents } from './fill.js';
+import { fill, ringCuts, type FillEvents } from './fill.js';
 import { createLeafJudge } from './leaf-judge.js';
 import { createPartialChecks, type PartialCheck } from './partial-checks.js';
 import { createProblem, type SearchProblem } from './problem.js';
@@ -94,8 +94,8 @@ function listCopies(units: readonly FormedUnit[], available: ReadonlyMap<string,
 
 /** What a shard reports while it runs. Graph arrays are reused: copy what you keep. */
 export interface ConstitutionSink {
-  /** A branch was cut by a constraint while structures were being built. */
-  onCut?(check: PartialCheck): void;
+  /** Branches were cut by a constraint while structures were being built. */
+  onCut?(constraint: Pick<PartialCheck, 'reason' | 'text'>, branches: number): void;
   onConstitution(graph: MolecularGraph): void;
   onMultigraphs(count: number): void;
   /** Called every few thousand rows; true ends the shard early. */
@@ -112,6 +112,14 @@ export interface ConstitutionSink {
 export function enumerateShard(search: Search, shard: ShardSpec, sink: ConstitutionSink): boolean {
   return shard.nodes.every((node) => enumerateNode(search, node, sink));
 }
+
+/** Limits on rings that the fill keeps by itself. */
+const RING_CONSTRAINTS = [
+  { limit: 'smallest', reason: 'ringTooSmall', text: 'A ring smaller than allowed would have closed.' },
+  { limit: 'largest', reason: 'ringTooLarge', text: 'A bond lay in no ring as small as allowed, and no bond to come could close one.' },
+  { limit: 'alkyne', reason: 'plausibility:alkyneInSmallRing', text: 'A triple bond lay in a ring of fewer than 8 atoms.' },
+  { limit: 'allene', reason: 'plausibility:alleneInSmallRing', text: 'Cumulated double bonds C=C=C lay in a ring of fewer than 9 atoms.' },
+] as const;
 
 function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink): boolean {
   for (let d = node.firstDistribution; d < node.endDistribution; d++) {
@@ -130,6 +138,7 @@ function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink)
       },
       shouldStop: () => sink.shouldStop(),
     });
+    if (sink.onCut !== undefined) for (const { limit, ...constraint } of RING_CONSTRAINTS) sink.onCut(constraint, ringCuts()[limit]);
     if (!complete) return false;
   }
   return true;
@@ -147,11 +156,11 @@ export function rowEvents(
 ): Pick<FillEvents, 'onRow'> {
   if (checks.length === 0 && keepsPartners === null) return {};
   return {
-    onRow(filled, known) {
+    onRow(filled, known, molecule) {
       if (keepsPartners !== null && !keepsPartners(filled)) return false;
       for (const check of checks) {
-        if (check.test(filled, known)) continue;
-        sink.onCut?.(check);
+        if (check.test(filled, known, molecule)) continue;
+        sink.onCut?.(check, 1);
         return false;
       }
       return true;

@@ -4,7 +4,7 @@ import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import { ProblemError } from '../enumeration/problem.js';
 import type { StructureAnalysis } from '../graph/analysis.js';
 import { moleculeFromGraph } from '../graph/openchemlib.js';
-import { SubstructureMatcher } from './substructure.js';
+import { SubstructureMatcher } from '../graph/substructure.js';
 
 export const EXCLUDED_FRAGMENT_REASON_PREFIX = 'excludedFragment:';
 

@@ -79,7 +79,7 @@ describe('the compiled inner loop of the fill', () => {
           .map(([symbol, count]) => (count === 0 ? '' : `${symbol}${count}`))
           .join('');
         if (text === '' || formula.C + formula.N + formula.O > 11) return;
-        const search = createSearch(evidenceDocument.parse({ formula: text, fragments: { required } }));
+        const search = createSearch(evidenceDocument.parse({ formula: text, fragments: { required }, options: { plausibility: false } }));
         for (const { problem, distribution } of search.branches) {
           const layout = createLayout(problem, distribution);
           const reference = filledBy(referenceFill, layout);

@@ -65,6 +65,8 @@ const OWN_WEIGHT: usize = memory.data(6560, 4);
 /** Ordered partition of the remaining vertices under the permutation being tried, per depth. */
 const IMAGE: usize = memory.data(13448, 8);
 const IMAGE_COUNT: usize = memory.data(64);
+/** Branches cut by each limit on rings, in the order of limitRings; u32. */
+const CUTS: usize = memory.data(16, 4);
 const CHOSEN: usize = memory.data(64);
 /** Per row and position k: vertices that, put at k, are not known to give something smaller whatever follows. */
 const ALIVE: usize = memory.data(13448, 8);
@@ -82,7 +84,14 @@ let hasPrescribed: bool = false;
 let hasForbidden: bool = false;
 let asksRows: bool = false;
 let asksForms: bool = false;
-let smallestRing: i32 = 3;
+/** Limits on rings, 0 = none: see limitRings. */
+let smallestRing: i32 = 0;
+let largestRing: i32 = 0;
+let smallestAlkyneRing: i32 = 0;
+let smallestAlleneRing: i32 = 0;
+let tracksRings: bool = false;
+let looksAtRings: bool = false;
+let carbons: u64 = 0;
 /** Atoms that can take part in an aromatic ring without a double bond. */
 let donors: u64 = 0;
 let stopRow: i32 = 0;
@@ -135,17 +144,33 @@ export function describe(atoms: i32, forms: bool, donorMask: u64): void {
   donors = donorMask;
 }
 
+export function cuts(): usize { return CUTS; }
+
+/**
+ * Limits on rings, in atoms; 0 = none. @param smallest no smaller ring. @param largest no bond whose smallest ring is
+ * larger. @param alkyne no triple bond in a smaller ring. @param allene no C=C=C in a smaller ring.
+ */
+export function limitRings(smallest: i32, largest: i32, alkyne: i32, allene: i32, carbonMask: u64): void {
+  smallestRing = smallest;
+  largestRing = largest;
+  smallestAlkyneRing = alkyne;
+  smallestAlleneRing = allene;
+  carbons = carbonMask;
+  looksAtRings = largest > 0 || alkyne > 0 || allene > 0;
+  tracksRings = looksAtRings || smallest > 3;
+  memory.fill(CUTS, 0, 16);
+}
+
 /**
  * Searches. @param prefixRows −1: from the root; else the rows that {@link prefix} holds.
  * @returns false when the host ended it.
  */
-export function run(open: i32, tiedCount: i32, pairs: i32, forbids: bool, rows: bool, ring: i32, stopAt: i32, prefixRows: i32): bool {
+export function run(open: i32, tiedCount: i32, pairs: i32, forbids: bool, rows: bool, stopAt: i32, prefixRows: i32): bool {
   n = open;
   tied = tiedCount;
   pairCount = pairs;
   hasForbidden = forbids;
   asksRows = rows;
-  smallestRing = ring;
   stopRow = stopAt;
   stopped = false;
   reset();
@@ -227,23 +252,78 @@ function rootOf(v: i32): i32 {
   return v;
 }
 
-/** Would a bond close a ring smaller than allowed? Breadth first, at most `smallestRing − 2` bonds deep. */
-function closesSmallRing(i: i32, j: i32): bool {
-  const target = bit(j);
-  let reached = bit(i);
-  let frontier = reached;
-  for (let depth = 1; depth <= smallestRing - 2; depth++) {
-    let next: u64 = 0;
-    while (frontier != 0) {
-      next |= load<u64>(ADJACENT + 8 * <usize>ctz(frontier));
-      frontier &= frontier - 1;
-    }
-    if ((next & target) != 0) return true;
-    frontier = next & ~reached;
-    if (frontier == 0) return false;
-    reached |= next;
+/**
+ * Number of bonds on the shortest way from one vertex to another over other vertices, at most `most`; 0 when there is none.
+ * @param avoided vertices not to pass. @param open vertices that may still be bonded to one another in any way.
+ */
+function wayRound(from: i32, to: i32, avoided: u64, open: u64, most: i32): i32 {
+  const target = bit(to);
+  let reached = bit(from) | avoided;
+  let frontier = load<u64>(ADJACENT + 8 * from) & ~target & ~avoided;
+  if ((open & bit(from)) != 0) {
+    // Two more bonds to a common neighbour that is still open, too, are the least beside the direct one.
+    frontier |= open & ~target & ~avoided;
   }
-  return false;
+  for (let depth = 2; depth <= most && frontier != 0; depth++) {
+    reached |= frontier;
+    let next: u64 = (frontier & open) != 0 ? open : 0;
+    let rest = frontier;
+    while (rest != 0) {
+      next |= load<u64>(ADJACENT + 8 * <usize>ctz(rest));
+      rest &= rest - 1;
+    }
+    if ((next & target) != 0) return depth;
+    frontier = next & ~reached;
+  }
+  return 0;
+}
+
+@inline
+function countCut(kind: i32): void {
+  store<u32>(CUTS + 4 * kind, load<u32>(CUTS + 4 * kind) + 1);
+}
+
+/** Tests the limits on rings that a bond alone does not settle; rows [0, known) are complete. */
+function ringsFit(known: i32): bool {
+  if (smallestAlkyneRing > 0) {
+    for (let v = 0; v < atomCount; v++) {
+      const ends = tripleTo(v) & ~(bit(v) - 1);
+      if (ends == 0) continue;
+      if (wayRound(v, <i32>ctz(ends), 0, 0, smallestAlkyneRing - 2) == 0) continue;
+      countCut(2);
+      return false;
+    }
+  }
+  if (smallestAlleneRing > 0) {
+    let rest = carbons;
+    while (rest != 0) {
+      const v = <i32>ctz(rest);
+      rest &= rest - 1;
+      const ends = doubleTo(v) & carbons;
+      if (popcnt(ends) != 2) continue;
+      // The middle carbon has no third bond: a ring through it holds both double bonds. The ends may be bonded directly.
+      const a = <i32>ctz(ends);
+      const b = <i32>ctz(ends & (ends - 1));
+      if ((load<u64>(ADJACENT + 8 * a) & bit(b)) == 0 && wayRound(a, b, bit(v), 0, smallestAlleneRing - 3) == 0) continue;
+      countCut(3);
+      return false;
+    }
+  }
+  if (largestRing > 0) {
+    let open: u64 = 0;
+    for (let v = known; v < n; v++) if (leftOf(v) > 0) open |= bit(v);
+    for (let v = 0; v < known; v++) {
+      let ends = load<u64>(ADJACENT + 8 * v) & ~(bit(v) - 1);
+      while (ends != 0) {
+        const u = <i32>ctz(ends);
+        ends &= ends - 1;
+        if (wayRound(v, u, 0, open, largestRing - 1) != 0 || wayRound(v, u, 0, 0, N) == 0) continue;
+        countCut(1);
+        return false;
+      }
+    }
+  }
+  return true;
 }
 
 /** Takes the bond; false when no completion of it can hang together, or a ring gets too small. */
@@ -269,7 +349,10 @@ function addBond(i: i32, j: i32, order: i32): bool {
   if (root == other) {
     store<u8>(ATTACHED + i * N + j, 0);
     store<u16>(COMPONENT_LEFT + 2 * root, <u16>(<i32>load<u16>(COMPONENT_LEFT + 2 * root) - 2 * order));
-    if (smallestRing > 3) fits = !closesSmallRing(i, j);
+    if (smallestRing > 3 && wayRound(i, j, 0, 0, smallestRing - 2) != 0) {
+      countCut(0);
+      fits = false;
+    }
   } else {
     if (load<u8>(SIZE + root) < load<u8>(SIZE + other)) {
       const swap = root;
@@ -285,7 +368,7 @@ function addBond(i: i32, j: i32, order: i32): bool {
     componentCount--;
     store<u8>(ATTACHED + i * N + j, <u8>(other + 1));
   }
-  if (smallestRing > 3) {
+  if (tracksRings) {
     store<u64>(ADJACENT + 8 * i, load<u64>(ADJACENT + 8 * i) | bit(j));
     store<u64>(ADJACENT + 8 * j, load<u64>(ADJACENT + 8 * j) | bit(i));
   }
@@ -309,7 +392,7 @@ function removeBond(i: i32, j: i32, order: i32): void {
     if (load<u8>(PRESCRIBED + j) == 1) store<u8>(QUOTA + 4 * j + order, load<u8>(QUOTA + 4 * j + order) + 1);
   }
   totalLeft += 2 * order;
-  if (smallestRing > 3) {
+  if (tracksRings) {
     store<u64>(ADJACENT + 8 * i, load<u64>(ADJACENT + 8 * i) & ~bit(j));
     store<u64>(ADJACENT + 8 * j, load<u64>(ADJACENT + 8 * j) & ~bit(i));
   }
@@ -499,6 +582,7 @@ function splitCells(i: i32): void {
 }
 
 function finishRow(i: i32, tight: bool): void {
+  if (looksAtRings && !ringsFit(i + 1)) return;
   splitCells(i);
   twins = tight ? twins | bit(i) : twins & ~bit(i);
   if (totalLeft == 0) {

@@ -5,7 +5,7 @@ import { evidenceDocument } from '../../../shared/schemas/evidence.js';
 import { analyseStructure } from '../../../workers/graph/analysis.js';
 import { moleculeFromGraph } from '../../../workers/graph/openchemlib.js';
 import { compileExcludedFragments } from '../../../workers/ranking/excluded-fragments.js';
-import { SubstructureMatcher } from '../../../workers/ranking/substructure.js';
+import { SubstructureMatcher } from '../../../workers/graph/substructure.js';
 import { graphOf } from '../../support/graph-of.js';
 import { randomMolecule } from '../../support/random-molecules.js';
 

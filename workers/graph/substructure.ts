@@ -1,6 +1,8 @@
 import type { QueryBondKind, QueryGraph } from '../../shared/chemistry/excluded-pattern.js';
-import type { StructureAnalysis } from '../graph/analysis.js';
-import { NEIGHBOUR_STRIDE } from '../graph/analysis.js';
+import { NEIGHBOUR_STRIDE, type StructureAnalysis } from './analysis.js';
+
+/** What the matcher looks at: a whole structure, or what is known of a part of one. */
+export type MatchedStructure = Pick<StructureAnalysis, 'graph' | 'neighbours' | 'degrees' | 'aromaticAtoms' | 'aromaticBonds'>;
 
 const ANY = -1;
 const BOND_CODES: Readonly<Record<QueryBondKind, number>> = { single: 1, double: 2, triple: 3, aromatic: 4, singleOrAromatic: 5, any: 6 };
@@ -53,13 +55,13 @@ export class SubstructureMatcher {
   }
 
   /** @param structure - read only. */
-  occursIn(structure: StructureAnalysis): boolean {
+  occursIn(structure: MatchedStructure): boolean {
     this.used.fill(0, 0, structure.graph.atomCount);
     return this.place(0, structure);
   }
 
   /** Atoms of the first occurrence in the order of the query, null if there is none. */
-  findIn(structure: StructureAnalysis): number[] | null {
+  findIn(structure: MatchedStructure): number[] | null {
     if (!this.occursIn(structure)) return null;
     const atoms = new Array<number>(this.image.length);
     this.order.forEach((queryAtom, p) => (atoms[queryAtom] = this.image[p]));
@@ -67,7 +69,7 @@ export class SubstructureMatcher {
   }
 
   /** Invariant: positions [0, p) have images that fit one another. Recursion is as deep as the query has atoms. */
-  private place(p: number, s: StructureAnalysis): boolean {
+  private place(p: number, s: MatchedStructure): boolean {
     if (p === this.image.length) return true;
     const parent = this.parent[p];
     const base = parent === -1 ? 0 : this.image[parent] * NEIGHBOUR_STRIDE;
@@ -83,7 +85,7 @@ export class SubstructureMatcher {
     return false;
   }
 
-  private fits(p: number, atom: number, s: StructureAnalysis): boolean {
+  private fits(p: number, atom: number, s: MatchedStructure): boolean {
     const { atomicNumbers, hydrogens, charges } = s.graph;
     if (this.atomicNumber[p] !== 0 && this.atomicNumber[p] !== atomicNumbers[atom]) return false;
     if (this.aromatic[p] !== ANY && this.aromatic[p] !== s.aromaticAtoms[atom]) return false;
@@ -97,7 +99,7 @@ export class SubstructureMatcher {
   }
 }
 
-function isBondOfKind(s: StructureAnalysis, a: number, b: number, kind: number): boolean {
+function isBondOfKind(s: MatchedStructure, a: number, b: number, kind: number): boolean {
   const k = a * s.graph.atomCount + b;
   const order = s.graph.bondOrders[k];
   if (order === 0) return false;
