@@ -1,4 +1,4 @@
-import type { Funnel, RankedCandidate, RunSettings, ShardSpec } from '../../shared/jobs/contract.js';
+import type { BranchCut, Funnel, RankedCandidate, RunSettings, ShardSpec } from '../../shared/jobs/contract.js';
 import { cancelRun, createCounters, readCounter } from '../../shared/jobs/counters.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { ComputeService } from '../compute/compute-service.js';
@@ -13,10 +13,12 @@ export interface LocalRun {
   /** Valence multigraphs before resonance forms are merged and before any filter. */
   readonly multigraphCount: number;
   readonly funnel: Funnel;
+  /** Branches cut while building, most frequent reason first. */
+  readonly cuts: readonly BranchCut[];
   readonly candidates: readonly RankedCandidate[];
   /** Null when nothing was ranked. */
   readonly noneOfTheseProbability: number | null;
-  /** False when the time limit or Ctrl-C cut the enumeration short. */
+  /** False when a limit or Ctrl-C cut the enumeration short. */
   readonly isComplete: boolean;
   readonly seconds: number;
 }
@@ -74,11 +76,24 @@ export async function runLocally(
             }),
           PROGRESS_MS,
         );
-  const isOver = (): boolean => interrupt.isRequested || (deadlineEpochMs !== null && Date.now() >= deadlineEpochMs);
+  const { maxConstitutions = null } = settings;
+  let hasPassedCount = false;
+  const constitutionsLeft = (): number | null =>
+    maxConstitutions === null ? null : Math.max(0, maxConstitutions - readCounter(counters, 'constitutionsSeen'));
+  const isOver = (): boolean => interrupt.isRequested || hasPassedCount || (deadlineEpochMs !== null && Date.now() >= deadlineEpochMs);
   const open: Iterator<ShardSpec> = shards[Symbol.iterator]();
   const work = async (): Promise<void> => {
     for (let next = open.next(); next.done !== true && !isOver(); next = open.next()) {
-      merger.add(await compute.runJob('shard', { evidence, settings, shard: next.value, counters, deadlineEpochMs }));
+      const result = await compute.runJob('shard', {
+        evidence,
+        settings,
+        shard: next.value,
+        counters,
+        deadlineEpochMs,
+        maxConstitutions: constitutionsLeft(),
+      });
+      hasPassedCount ||= result.stoppedBy === 'count';
+      merger.add(result);
     }
   };
   try {
@@ -94,6 +109,7 @@ export async function runLocally(
     survivorCount: merged.survivorCount,
     multigraphCount: merged.multigraphCount,
     funnel: merged.funnel,
+    cuts: merged.cuts,
     candidates: described.candidates,
     noneOfTheseProbability: described.noneOfTheseProbability,
     isComplete: merged.complete && merger.shardCount === shards.length,

@@ -1,3 +1,4 @@
+import { EVIDENCE_LIMITS } from '../../shared/schemas/evidence.js';
 import type { InputIssue } from '../../shared/schemas/problem.js';
 import { BadInputError } from './cli-error.js';
 
@@ -5,7 +6,8 @@ import { BadInputError } from './cli-error.js';
 export type RawOptions = Readonly<Record<string, string | boolean | undefined>>;
 
 export const MAX_THREADS = 256;
-export const MAX_SECONDS = 86_400;
+export const MAX_SECONDS = EVIDENCE_LIMITS.seconds;
+export const MAX_COUNT = EVIDENCE_LIMITS.constitutions;
 
 /** Reads the options of one command and gathers what is wrong with them. */
 export class OptionReader {

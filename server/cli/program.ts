@@ -11,6 +11,7 @@ import type { RawOptions } from './options.js';
 const JSON_FLAG = ['--json', 'print one JSON document on standard output and nothing else'] as const;
 const THREADS_FLAG = ['--threads <number>', 'threads that work side by side; default: one per core'] as const;
 const SECONDS_FLAG = ['--max-seconds <number>', 'stop after so many seconds with what was found (exit code 3)'] as const;
+const COUNT_FLAG = ['--max-count <number>', 'stop after so many constitutions with what was found (exit code 3)'] as const;
 
 function buildProgram(context: CliContext, finish: (code: ExitCode) => void): Command {
   const program = new Command('isoloom')
@@ -49,12 +50,14 @@ function buildProgram(context: CliContext, finish: (code: ExitCode) => void): Co
     )
     .option(...THREADS_FLAG)
     .option(...SECONDS_FLAG)
+    .option(...COUNT_FLAG)
     .action(withArgument(enumerateCommand));
-  add('estimate', 'estimate the number of constitutions and the time by random probing')
+  add('estimate', 'estimate the number of constitutions and the time by random probing, and what would make it smaller')
     .argument('<input>', 'evidence document (.json) or formula')
-    .option('--probes <number>', 'random descents (default 20000)')
+    .option('--mode <count|rank>', 'what the run will do: count as enumerate does (default), or rank')
+    .option('--probes <number>', 'random descents at most (default 1000000)')
     .option('--seed <number>', 'start of the random sequence (default 1)')
-    .option('--max-seconds <number>', 'stop probing after so many seconds (default 10)')
+    .option('--max-seconds <number>', 'estimate for so many seconds at most (default 2)')
     .action(withArgument(estimateCommand));
   add('predict', 'predict 13C and 1H signals')
     .argument('<smiles>', 'structure as SMILES, or - for one SMILES a line on standard input')
@@ -65,6 +68,7 @@ function buildProgram(context: CliContext, finish: (code: ExitCode) => void): Co
     .option('--top <number>', 'candidates to print (default 20)')
     .option(...THREADS_FLAG)
     .option(...SECONDS_FLAG)
+    .option(...COUNT_FLAG)
     .action(withArgument(rankCommand));
   return program;
 }

@@ -1,4 +1,4 @@
-import type { Funnel, FunnelStage } from '../../shared/jobs/contract.js';
+import type { BranchCut, Funnel, FunnelStage } from '../../shared/jobs/contract.js';
 
 const STAGE_NAMES: Readonly<Record<FunnelStage, string>> = {
   constitutions: 'constitutions',
@@ -17,7 +17,7 @@ export function groupDigits(value: number): string {
 }
 
 /** A number with its noun: 1 candidate, 24 938 candidates. */
-export const countOf = (value: number, noun: string): string => `${groupDigits(value)} ${noun}${value === 1 ? '' : 's'}`;
+export const countOf = (value: number, noun: string, plural = `${noun}s`): string => `${groupDigits(value)} ${value === 1 ? noun : plural}`;
 
 /** Columns padded to equal width; numbers (by column) to the right. Trailing blanks are cut. */
 export function alignColumns(rows: ReadonlyArray<readonly string[]>, rightAligned: readonly number[] = []): string {
@@ -41,6 +41,13 @@ export function describeFunnel(funnel: Funnel): string {
     ...rejections.slice(0, REASONS_SHOWN).map(({ text, count }) => ['', `−${groupDigits(count)}`, text]),
   ]);
   return alignColumns(rows, [1]);
+}
+
+/** Branches that were cut while structures were being built; nothing where none was. */
+export function describeCuts(cuts: readonly BranchCut[]): string {
+  if (cuts.length === 0) return '';
+  const rows = cuts.map(({ text, count }) => ['', countOf(count, 'branch', 'branches'), text]);
+  return `cut while building\n${alignColumns(rows, [1])}`;
 }
 
 export const formatSeconds = (seconds: number): string => `${seconds < 10 ? seconds.toFixed(2) : seconds.toFixed(1)} s`;

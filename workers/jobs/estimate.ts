@@ -8,10 +8,10 @@ import { listHints, type Observation, Observer } from './estimate-hints.js';
 import { evaluatorFor, searchFor } from './search-cache.js';
 import { measureRate, type RunRate } from './run-rate.js';
 
-/** Shares of the time: counting everything, in case it is little; probing; measuring the rate of a run. */
+/** Ends of the parts as shares of the time: counting everything, in case it is little; probing; running slices; the rest. */
 const COUNTING_SHARE = 0.2;
 const PROBING_SHARE = 0.65;
-const RATE_SHARE = 0.95;
+const SLICING_SHARE = 0.88;
 /** Even late on a busy machine, and after a long setting up, the probing gets so long. */
 const LEAST_MS = 300;
 /** Where everything was counted, probes only serve to meet constitutions. */
@@ -59,7 +59,14 @@ export function estimateRun(input: JobContract['estimate']['input']): JobContrac
     observe,
   });
   const size = counted === null ? probed : withCounts(probed, counted);
-  const rate = measureRate(search, evaluator, size.samples, { evidence, settings, survivors: someSurvivors, seed }, until(RATE_SHARE));
+  const rate = measureRate(
+    search,
+    evaluator,
+    size.samples,
+    { evidence, settings, survivors: someSurvivors, seed },
+    until(SLICING_SHARE),
+    until(1),
+  );
   const survivors = estimateSurvivors(size);
   const cost = costOf(size, survivors.estimate, keep, mode, rate);
   return {

@@ -5,8 +5,8 @@ import type { CliContext } from '../cli-context.js';
 import type { ExitCode } from '../cli-error.js';
 import { runEvidenceCommand } from '../evidence-command.js';
 import { runLocally, type LocalProgress, type LocalRun } from '../local-run.js';
-import { MAX_SECONDS, MAX_THREADS, OptionReader, type RawOptions } from '../options.js';
-import { countOf, describeFunnel, formatSeconds, groupDigits } from '../text-output.js';
+import { MAX_COUNT, MAX_SECONDS, MAX_THREADS, OptionReader, type RawOptions } from '../options.js';
+import { countOf, describeCuts, describeFunnel, formatSeconds, groupDigits } from '../text-output.js';
 
 /** SMILES listed at most; every one is held in memory until the end. */
 const DEFAULT_LISTED = 100_000;
@@ -17,6 +17,7 @@ export async function enumerateCommand(argument: string, raw: RawOptions, contex
   const options = new OptionReader(raw);
   const threads = options.number('threads', 'threads', 1, MAX_THREADS, 'whole number');
   const maxSeconds = options.number('maxSeconds', 'max-seconds', 0.1, MAX_SECONDS);
+  const maxCount = options.number('maxCount', 'max-count', 1, MAX_COUNT, 'whole number');
   const listed = options.number('keep', 'keep', 1, MAX_LISTED, 'whole number') ?? DEFAULT_LISTED;
   const mergeResonanceForms = options.boolean('mergeResonance', 'merge-resonance');
   options.check();
@@ -27,6 +28,7 @@ export async function enumerateCommand(argument: string, raw: RawOptions, contex
     const settings: RunSettings = {
       keep: wantsSmiles ? listed : 1,
       maxSeconds: maxSeconds ?? given.options.maxSeconds,
+      maxConstitutions: maxCount ?? given.options.maxConstitutions ?? null,
       mode: wantsSmiles ? 'list' : 'count',
     };
     return runLocally(compute, evidence, settings, listed, context.interrupt, onProgress);
@@ -41,18 +43,26 @@ export async function enumerateCommand(argument: string, raw: RawOptions, contex
   });
 }
 
-function enumerationDocument({ survivorCount, multigraphCount, isComplete, funnel, seconds, candidates }: LocalRun): object {
-  return { count: survivorCount, multigraphCount, complete: isComplete, funnel, seconds, smiles: candidates.map(({ smiles }) => smiles) };
+function enumerationDocument({ survivorCount, multigraphCount, isComplete, funnel, cuts, seconds, candidates }: LocalRun): object {
+  return {
+    count: survivorCount,
+    multigraphCount,
+    complete: isComplete,
+    funnel,
+    cuts,
+    seconds,
+    smiles: candidates.map(({ smiles }) => smiles),
+  };
 }
 
 /** SMILES or the bare count go to standard output alone, so that they can be piped; the rest is for people. */
 async function printEnumeration(
-  { survivorCount, multigraphCount, isComplete, funnel, seconds, candidates }: LocalRun,
+  { survivorCount, multigraphCount, isComplete, funnel, cuts, seconds, candidates }: LocalRun,
   { formula }: EvidenceDocument,
   { wantsSmiles, wantsCountOnly }: { wantsSmiles: boolean; wantsCountOnly: boolean },
   context: CliContext,
 ): Promise<void> {
-  const stopped = isComplete ? '' : ', stopped before the end';
+  const stopped = isComplete ? '' : ', stopped before the end: incomplete';
   const summary = `${formula}: ${countOf(survivorCount, 'constitution')} (${countOf(multigraphCount, 'valence multigraph')} before filters), ${formatSeconds(seconds)}${stopped}\n`;
   if (wantsSmiles) {
     await context.write(candidates.map(({ smiles }) => `${smiles}\n`).join(''));
@@ -61,5 +71,5 @@ async function printEnumeration(
   } else if (wantsCountOnly) {
     await context.write(`${survivorCount}\n`);
     if (!isComplete) context.tell(summary);
-  } else await context.write(`${summary}${describeFunnel(funnel)}`);
+  } else await context.write(`${summary}${describeFunnel(funnel)}${describeCuts(cuts)}`);
 }

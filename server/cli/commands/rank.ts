@@ -5,8 +5,8 @@ import type { CliContext } from '../cli-context.js';
 import type { ExitCode } from '../cli-error.js';
 import { runEvidenceCommand } from '../evidence-command.js';
 import { runLocally, type LocalProgress, type LocalRun } from '../local-run.js';
-import { MAX_SECONDS, MAX_THREADS, OptionReader, type RawOptions } from '../options.js';
-import { alignColumns, countOf, describeFunnel, formatSeconds } from '../text-output.js';
+import { MAX_COUNT, MAX_SECONDS, MAX_THREADS, OptionReader, type RawOptions } from '../options.js';
+import { alignColumns, countOf, describeCuts, describeFunnel, formatSeconds } from '../text-output.js';
 
 const DEFAULT_TOP = 20;
 const MAX_TOP = 10_000;
@@ -16,12 +16,18 @@ export async function rankCommand(argument: string, raw: RawOptions, context: Cl
   const options = new OptionReader(raw);
   const threads = options.number('threads', 'threads', 1, MAX_THREADS, 'whole number');
   const maxSeconds = options.number('maxSeconds', 'max-seconds', 0.1, MAX_SECONDS);
+  const maxCount = options.number('maxCount', 'max-count', 1, MAX_COUNT, 'whole number');
   const top = options.number('top', 'top', 1, MAX_TOP, 'whole number') ?? DEFAULT_TOP;
   options.check();
 
   const run = (compute: ComputeService, evidence: EvidenceDocument, onProgress?: (progress: LocalProgress) => void): Promise<LocalRun> => {
     // Only what is printed has to be kept: the order does not depend on how many are.
-    const settings: RunSettings = { keep: top, maxSeconds: maxSeconds ?? evidence.options.maxSeconds, mode: 'rank' };
+    const settings: RunSettings = {
+      keep: top,
+      maxSeconds: maxSeconds ?? evidence.options.maxSeconds,
+      maxConstitutions: maxCount ?? evidence.options.maxConstitutions ?? null,
+      mode: 'rank',
+    };
     return runLocally(compute, evidence, settings, top, context.interrupt, onProgress);
   };
   return runEvidenceCommand(argument, context, {
@@ -37,11 +43,12 @@ export async function rankCommand(argument: string, raw: RawOptions, context: Cl
   });
 }
 
-function rankingDocument({ survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun): object {
+function rankingDocument({ survivorCount, isComplete, funnel, cuts, seconds, noneOfTheseProbability, candidates }: LocalRun): object {
   return {
     count: survivorCount,
     complete: isComplete,
     funnel,
+    cuts,
     seconds,
     noneOfTheseProbability,
     candidates: candidates.map(candidateDocument),
@@ -53,7 +60,7 @@ function candidateDocument({ rank, smiles, idcode, probability, score, terms }: 
 }
 
 function describeRanking(
-  { survivorCount, isComplete, funnel, seconds, noneOfTheseProbability, candidates }: LocalRun,
+  { survivorCount, isComplete, funnel, cuts, seconds, noneOfTheseProbability, candidates }: LocalRun,
   { formula }: EvidenceDocument,
 ): string {
   const percent = (probability: number): string => `${(100 * probability).toFixed(1)} %`;
@@ -71,5 +78,5 @@ function describeRanking(
     rows.length === 0
       ? ''
       : `${alignColumns([['rank', 'probability', 'score', '13C / ppm', '1H / ppm', 'structure'], ...rows], [0, 1, 2, 3, 4])}${none}\n`;
-  return `${formula}: ${countOf(survivorCount, 'candidate')}, ${formatSeconds(seconds)}${stopped}\n\n${table}${describeFunnel(funnel)}`;
+  return `${formula}: ${countOf(survivorCount, 'candidate')}, ${formatSeconds(seconds)}${stopped}\n\n${table}${describeFunnel(funnel)}${describeCuts(cuts)}`;
 }
