@@ -1,5 +1,6 @@
 import { readCorrelations } from '../../shared/chemistry/correlations.js';
 import { countOf, type FormulaCounts } from '../../shared/chemistry/formula.js';
+import { SHIFT_RANGES, type ShiftRange } from '../../shared/chemistry/shift-window-table.js';
 import { windowOf } from '../../shared/chemistry/shift-windows.js';
 import { type CarbonWindow, type EvidenceDocument, HYBRIDISATIONS } from '../../shared/schemas/evidence.js';
 import { solventOfCarbonSignal } from '../ranking/solvent-peaks.js';
@@ -44,8 +45,13 @@ export const MOST_HETERO = 4;
  * solvent's do not count.
  *
  * @param evidence - parsed document with its options settled. @param counts - its formula.
+ * @param ranges - of the shifts at which kinds of carbon are found, where the fitted ones are not enough.
  */
-export function carbonCensus(evidence: EvidenceDocument, counts: FormulaCounts): CarbonCensus {
+export function carbonCensus(
+  evidence: EvidenceDocument,
+  counts: FormulaCounts,
+  ranges: readonly ShiftRange[] = SHIFT_RANGES,
+): CarbonCensus {
   const { carbonSignals: all, options } = evidence;
   const carbonCount = countOf(counts, 'C');
   const least = [0, 0, 0, 0, 0];
@@ -56,8 +62,7 @@ export function carbonCensus(evidence: EvidenceDocument, counts: FormulaCounts):
   readCorrelations(evidence).attached.forEach((attached, index) => {
     if (all[index].hydrogens === undefined && attached.least > 0) most[0] = Math.max(0, most[0] - (all[index].count ?? 1));
   });
-  const isComplete =
-    signals.length > 0 && signals.every((signal) => signal.hydrogens !== undefined) && options.carbonList === 'complete';
+  const isComplete = signals.length > 0 && signals.every((signal) => signal.hydrogens !== undefined) && options.carbonList === 'complete';
   if (isComplete) {
     for (let h = 1; h <= 4; h++) if (!signals.some((signal) => signal.hydrogens === h)) most[h] = 0;
     // When every signal says for how many carbons it stands, the protonated kinds are settled.
@@ -68,7 +73,7 @@ export function carbonCensus(evidence: EvidenceDocument, counts: FormulaCounts):
   }
   const demands = new Map<string, CarbonDemand>();
   for (const signal of signals) {
-    const demand = demandOf(signal.hydrogens, signal.count, windowOf(signal, options, counts));
+    const demand = demandOf(signal.hydrogens, signal.count, windowOf(signal, options, counts, ranges));
     const key = Object.values(demand).join();
     const known = demands.get(key);
     demands.set(key, { ...demand, signals: (known?.signals ?? 0) + 1 });
@@ -97,17 +102,18 @@ export function hybridisationOf(piBonds: number): number {
   return Math.min(piBonds, HYBRIDISATIONS.length - 1);
 }
 
-/** Can a carbon with these hydrogens and this hybridisation lie under the signals of a demand, its neighbours left open? */
-export function isOfType(demand: CarbonDemand, hydrogens: number, hybridisation: number): boolean {
+/** Can a carbon with these hydrogens and one of these hybridisations (bits) lie under the signals of a demand, its neighbours left open? */
+export function isOfType(demand: CarbonDemand, hydrogens: number, hybridisations: number): boolean {
   return (
-    (demand.hydrogens === ANY_HYDROGENS || demand.hydrogens === Math.min(hydrogens, 3)) && (demand.hybridisations & (1 << hybridisation)) !== 0
+    (demand.hydrogens === ANY_HYDROGENS || demand.hydrogens === Math.min(hydrogens, 3)) && (demand.hybridisations & hybridisations) !== 0
   );
 }
 
 /** Carbons alike in all that is known of them while nothing is bonded yet. */
 export interface CarbonGroup {
   readonly hydrogens: number;
-  readonly hybridisation: number;
+  /** Those still possible, bits as in {@link CarbonDemand}. */
+  readonly hybridisations: number;
   /** Bonded heteroatoms at least and at most. */
   readonly leastHetero: number;
   readonly mostHetero: number;
@@ -117,7 +123,7 @@ export interface CarbonGroup {
 /** Can carbons of the group lie under signals of the demand? */
 export function fitsGroup(demand: CarbonDemand, group: CarbonGroup): boolean {
   return (
-    isOfType(demand, group.hydrogens, group.hybridisation) &&
+    isOfType(demand, group.hydrogens, group.hybridisations) &&
     demand.leastHetero <= group.mostHetero &&
     demand.mostHetero >= group.leastHetero
   );

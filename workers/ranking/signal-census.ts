@@ -10,6 +10,7 @@ import {
 } from './observations.js';
 import type { SignalBounds } from './signal-bounds.js';
 import { ALL_TYPES, SIGNAL_REASONS, type SignalReasonKind } from './signal-reasons.js';
+import { WindowCensus } from './window-census.js';
 
 const CARBON = 6;
 const TYPE_COUNT = 4;
@@ -26,7 +27,7 @@ export interface SignalContradiction {
  * Hard tests of the number of signals against a structure: what the observation really excludes, whatever the shifts
  * are (SCIENCE.md 2.5). Signals may coincide, so there are upper bounds only; the one lower bound, "no signal of a type,
  * no carbon of that type", holds when the list says it is complete, and never for quaternary carbons. Signals that may
- * be the solvent's do not count.
+ * be the solvent's do not count. What shifts say of their carbons comes in by the windows of the signals.
  *
  * Scratch is reused from structure to structure: not re-entrant.
  */
@@ -44,6 +45,8 @@ export class SignalCensus {
   private readonly exchangeableUnder: number;
   private readonly boundUnder: number;
 
+  private readonly windows: WindowCensus | null;
+
   private readonly atoms = new Int32Array(TYPE_COUNT);
   /** Most signals the structure can show of a type, and the most carbons that one of them must stand for. */
   private readonly most = new Int32Array(TYPE_COUNT);
@@ -52,6 +55,7 @@ export class SignalCensus {
   constructor(evidence: EvidenceDocument) {
     this.carbons = readCarbonObservations(evidence);
     this.protons = readProtonObservations(evidence);
+    this.windows = WindowCensus.of(evidence, this.carbons);
     let total = 0;
     let carbonSignals = 0;
     for (let i = 0; i < this.carbons.size; i++) {
@@ -129,6 +133,13 @@ export class SignalCensus {
       this.meet('carbonEnvironments', ALL_TYPES, s, all)
     ) {
       return SIGNAL_REASONS.carbonEnvironments[ALL_TYPES];
+    }
+    if (this.windows !== null) {
+      if (all !== null) all.push(...this.windows.checkAll(s, environments, bounds));
+      else {
+        const reason = this.windows.check(s, environments, bounds);
+        if (reason !== null) return reason;
+      }
     }
     if (this.exchangeableUnder > 0 || this.boundUnder > 0) {
       const bound = countBoundHydrogens(s);
