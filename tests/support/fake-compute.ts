@@ -15,6 +15,8 @@ export interface FakeComputeOptions {
   readonly onShard?: (index: number, attempt: number) => ShardBehaviour;
   /** Fails `finish` so often before it succeeds. */
   readonly finishCrashes?: number;
+  /** Thread seconds a search is said to take, by its formula; without it nobody can tell. */
+  readonly expectedSeconds?: (formula: string) => number;
 }
 
 export interface FakeCompute extends ComputeService {
@@ -146,7 +148,10 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
     },
     explain: async () => answer('explain'),
     predict: async () => answer('predict'),
-    estimate: async () => answer('estimate'),
+    estimate: async ({ evidence }) => {
+      const cpuSeconds = options.expectedSeconds?.(evidence.formula);
+      return cpuSeconds === undefined ? answer('estimate') : { estimate: 1, low: 1, high: 1, cpuSeconds, seconds: 0 };
+    },
     layout: async ({ smiles }) => ({
       structures: smiles.map((text) => ({
         idcode: `id-${text}`,

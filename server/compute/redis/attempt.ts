@@ -1,5 +1,5 @@
 import { UnrecoverableError, WaitingError, Worker } from 'bullmq';
-import { ComputeBusy, WorkerCrash } from '../compute-service.js';
+import { ComputeBusy, type JobOptions, WorkerCrash } from '../compute-service.js';
 import { crashedTooOften, describeFailure, isCancellation, MAX_CRASHES } from '../run-failure.js';
 import type { RunFailure } from '../run-stop.js';
 import type { JobUnderWay } from './jobs-under-way.js';
@@ -7,6 +7,8 @@ import type { RunJob } from './run-jobs.js';
 import { onDatabase, type RunJobsContext } from './run-jobs-context.js';
 
 const BUSY_PAUSE_MS = 250;
+
+export const withSignal = (signal: AbortSignal | undefined): JobOptions => (signal === undefined ? {} : { signal });
 
 export interface Attempt<T> {
   readonly job: RunJob;

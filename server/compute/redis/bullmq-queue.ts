@@ -148,6 +148,8 @@ class BullmqQueue implements RunQueue {
     // Events from here on find the monitor; what happened before is read below.
     this.#monitors.set(runId, monitor);
     if (isNew) this.#limits.set(runId, new LimitWatch(runId, run.settings, this.#store));
+    // The plan is asked for first: it adds the flow before it ends, so that a run that goes on is found as one or the other.
+    const isPlanning = (await this.#queue.getJob(planId(runId))) !== undefined;
     const finish = await this.#queue.getJob(finishId(runId));
     if (finish !== undefined && isNew) {
       const done = Object.entries(await finish.getChildrenValues<ShardFigures | null>());
@@ -161,7 +163,7 @@ class BullmqQueue implements RunQueue {
         if (active?.runId === runId && active.name === 'shard') monitor.shardActive(active.index);
       }
     }
-    if (finish === undefined && (await this.#queue.getJob(planId(runId))) === undefined) {
+    if (finish === undefined && !isPlanning) {
       await this.#queue.add('plan', { runId }, { jobId: planId(runId) });
     }
   }

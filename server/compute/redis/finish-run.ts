@@ -6,13 +6,19 @@ import { MAX_CRASHES } from '../run-failure.js';
 import { readStop, type Stop, stopOfShards, timeLimitStop } from '../run-stop.js';
 import type { RunStore } from '../run-store.js';
 import { readRunInput } from '../run-task.js';
-import { attempt } from './attempt.js';
+import { attempt, withSignal } from './attempt.js';
+import { respaceTeam } from './line.js';
 import type { FinishJob } from './run-jobs.js';
 import { onDatabase, type RunJobsContext } from './run-jobs-context.js';
 
 /** Puts together what the shards of a run have found, ranks it and ends the run. */
-export async function finishRun(context: RunJobsContext, job: FinishJob, token: string | undefined, signal: AbortSignal): Promise<null> {
-  const { compute, store } = context;
+export async function finishRun(
+  context: RunJobsContext,
+  job: FinishJob,
+  token: string | undefined,
+  signal: AbortSignal | undefined,
+): Promise<null> {
+  const { compute, queue, store } = context;
   const { runId } = job.data;
   const run = await onDatabase(context, () => Run.findByPk(runId));
   if (run === null || (run.status !== 'queued' && run.status !== 'running')) return null;
@@ -28,6 +34,7 @@ export async function finishRun(context: RunJobsContext, job: FinishJob, token: 
       otherCpuSeconds: run.cpuSeconds + seconds,
     });
     await onDatabase(context, () => store.end(run, description, new Date()));
+    await respaceTeam(queue, run.teamId);
   };
   if (stop !== null && stop.kind !== 'limit') {
     await end(stop);
@@ -41,7 +48,7 @@ export async function finishRun(context: RunJobsContext, job: FinishJob, token: 
     work: async () => {
       const { kept, logSumExp, funnel } = gathered.merged;
       const started = performance.now();
-      const finished = await compute.runJob('finish', { ...readRunInput(run), kept, logSumExp, funnel }, { signal });
+      const finished = await compute.runJob('finish', { ...readRunInput(run), kept, logSumExp, funnel }, withSignal(signal));
       await end(stop, finished, (performance.now() - started) / 1000);
       return null;
     },
@@ -57,7 +64,8 @@ interface GatheredShards {
 export async function gatherShards(run: Run, store: RunStore): Promise<GatheredShards> {
   const merger = new ShardMerger(run.settings.keep);
   for await (const shard of store.readShards(run.id)) if (shard !== null && shard.result !== null) merger.add(shard.result);
-  return { merged: merger.merged(), isWhole: merger.shardCount === run.shardCount };
+  const merged = merger.merged();
+  return { merged, isWhole: merged.complete && merger.shardCount === run.shardCount };
 }
 
 /** Why shards are missing although nobody has said so. */

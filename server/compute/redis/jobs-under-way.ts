@@ -35,6 +35,7 @@ export class JobsUnderWay {
   readonly #jobs = new Set<Entry>();
   #timers: readonly NodeJS.Timeout[] = [];
   #isLooking = false;
+  #isClosing = false;
 
   constructor(options: JobsUnderWayOptions) {
     this.#options = options;
@@ -48,6 +49,8 @@ export class JobsUnderWay {
       const { lookMs, progressMs } = this.#options.timing;
       this.#timers = [setInterval(() => void this.#look(), lookMs), setInterval(() => this.#report(), progressMs)];
     }
+    // BullMQ may have fetched it just before the worker was told to close.
+    if (this.#isClosing) this.#bringToRest(entry, 'abandoned');
     return entry;
   }
 
@@ -58,11 +61,15 @@ export class JobsUnderWay {
     this.#timers = [];
   }
 
-  /** The jobs with these ids, or all: somebody else will do them. */
-  abandon(jobIds?: readonly string[]): void {
-    for (const entry of this.#jobs) {
-      if (jobIds === undefined || jobIds.includes(entry.job.id ?? '')) this.#bringToRest(entry, 'abandoned');
-    }
+  /** Somebody else will do these jobs. */
+  abandon(jobIds: readonly string[]): void {
+    for (const entry of this.#jobs) if (jobIds.includes(entry.job.id ?? '')) this.#bringToRest(entry, 'abandoned');
+  }
+
+  /** Gives up all jobs, and those that still come. */
+  close(): void {
+    this.#isClosing = true;
+    for (const entry of this.#jobs) this.#bringToRest(entry, 'abandoned');
   }
 
   async #look(): Promise<void> {

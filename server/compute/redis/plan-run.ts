@@ -5,8 +5,9 @@ import { guessSeconds } from '../run-size.js';
 import { readStop, type RunFailure } from '../run-stop.js';
 import { CannotResume, readRunTask, type RunTask } from '../run-task.js';
 import { runWeight, shardSpacing } from '../share.js';
-import { attempt } from './attempt.js';
-import { type FinishData, finishId, jobOptions, type PlanJob, RUN_QUEUE, shardId, shardPriorities } from './run-jobs.js';
+import { attempt, withSignal } from './attempt.js';
+import { frontOfLine, respaceTeam, shardPriorities } from './line.js';
+import { type FinishData, finishId, jobOptions, type PlanJob, RUN_QUEUE, shardId } from './run-jobs.js';
 import { onDatabase, type RunJobsContext } from './run-jobs-context.js';
 
 /**
@@ -17,7 +18,7 @@ export async function planRun(
   context: RunJobsContext,
   job: PlanJob,
   token: string | undefined,
-  signal: AbortSignal,
+  signal: AbortSignal | undefined,
 ): Promise<FinishData | null> {
   const { store } = context;
   const { runId } = job.data;
@@ -64,11 +65,11 @@ const endBeforeWork = (run: Run, stop: NonNullable<ReturnType<typeof readStop>>)
     otherCpuSeconds: run.cpuSeconds,
   });
 
-async function addFlow(context: RunJobsContext, task: RunTask, signal: AbortSignal): Promise<FinishData> {
+async function addFlow(context: RunJobsContext, task: RunTask, signal: AbortSignal | undefined): Promise<FinishData> {
   const { compute, store, queue, flows, timing, targetShards } = context;
   const started = performance.now();
   const plan = async () =>
-    (await compute.runJob('plan', { evidence: task.evidence, settings: task.settings, targetShards }, { signal })).shards;
+    (await compute.runJob('plan', { evidence: task.evidence, settings: task.settings, targetShards }, withSignal(signal))).shards;
   const [shards, expectedSeconds] = await Promise.all([task.shards ?? plan(), guessSeconds(compute, task)]);
   if (task.shards === null) await onDatabase(context, () => store.savePlan(task, shards));
   await onDatabase(context, () => store.addCpuSeconds(task.id, (performance.now() - started) / 1000));
@@ -85,13 +86,7 @@ async function addFlow(context: RunJobsContext, task: RunTask, signal: AbortSign
     doneBefore: { constitutionCount, survivorCount, cpuSeconds, shardCount },
   };
   const open = shards.filter(({ index }) => !merger.has(index));
-  const [next] = await queue.getPrioritized(0, 0);
-  const others = await queue.getWaitingChildren();
-  const teamWeights = others
-    .map(({ data: other }) => other as FinishData)
-    .filter(({ teamId, runId }) => teamId === task.teamId && runId !== task.id);
-  const spacing = shardSpacing(weight, [weight, ...teamWeights.map((other) => other.weight)]);
-  const priorities = shardPriorities(next?.priority ?? 1, spacing, open.length);
+  const priorities = shardPriorities(await frontOfLine(queue), shardSpacing(weight, [weight]), open.length);
   const options = jobOptions(timing);
   // Jobs that are there already, from an attempt that was cut off here, stay as they are.
   await flows.add({
@@ -107,5 +102,6 @@ async function addFlow(context: RunJobsContext, task: RunTask, signal: AbortSign
       opts: { ...options, jobId: shardId(task.id, index), priority: priorities[position] ?? 1, ignoreDependencyOnFailure: true },
     })),
   });
+  await respaceTeam(queue, task.teamId);
   return data;
 }

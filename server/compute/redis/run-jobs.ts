@@ -80,17 +80,3 @@ export const jobOptions = ({ backoffMs }: QueueTiming): DefaultJobOptions => ({
   removeOnComplete: true,
   removeOnFail: true,
 });
-
-/** Of BullMQ: 1 is first, and jobs without a priority come before all others. */
-const LAST_PRIORITY = 2 ** 21 - 1;
-/** Steps of one spacing, so that fractions of it can be told apart. */
-const STEPS = 8;
-
-/**
- * Places the shards of a run on the line (share.ts).
- * @param front - priority of the waiting shard that is next; 1 when nothing waits
- * @returns as many priorities as there are shards. A line that never empties ends at the last one, first come, first served.
- */
-export function shardPriorities(front: number, spacing: number, count: number): number[] {
-  return Array.from({ length: count }, (_, position) => Math.min(LAST_PRIORITY, Math.round(front + position * spacing * STEPS)));
-}

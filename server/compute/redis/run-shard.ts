@@ -1,6 +1,7 @@
 import { countSurvivors } from '../merge-shards.js';
+import { type RunFailure, timeLimitStop } from '../run-stop.js';
 import type { ShardResult } from '../../../shared/jobs/contract.js';
-import { attempt } from './attempt.js';
+import { attempt, withSignal } from './attempt.js';
 import { dropWaitingShards, onDatabase, type RunJobsContext } from './run-jobs-context.js';
 import type { ShardFigures, ShardJob } from './run-jobs.js';
 
@@ -12,7 +13,7 @@ export async function runShard(
   context: RunJobsContext,
   job: ShardJob,
   token: string | undefined,
-  signal: AbortSignal,
+  signal: AbortSignal | undefined,
 ): Promise<ShardFigures | null> {
   const { compute, inputs, queue, store } = context;
   const { runId, index } = job.data;
@@ -25,22 +26,33 @@ export async function runShard(
   const { maxSeconds } = settings;
   const limit =
     maxSeconds === null || startedAt === null ? null : { seconds: maxSeconds, epochMs: startedAt.getTime() + maxSeconds * 1000 };
+  const stopRun = async (failure: RunFailure) => {
+    await onDatabase(context, () => store.noteStop(runId, failure));
+    await dropWaitingShards(queue, runId);
+  };
+  const isOver = () => limit !== null && Date.now() >= limit.epochMs;
+  if (limit !== null && isOver()) {
+    await stopRun(timeLimitStop(limit.seconds));
+    return null;
+  }
   return await attempt(context, {
     job,
     token,
     what: `shard ${index}`,
     limit,
-    giveUp: async (failure) => {
-      await onDatabase(context, () => store.noteStop(runId, failure));
-      await dropWaitingShards(queue, runId);
-    },
+    giveUp: stopRun,
     work: async (underWay) => {
       const { counters } = underWay;
       const deadlineEpochMs = limit?.epochMs ?? null;
-      const result = await compute.runJob('shard', { evidence, settings, shard: stored.spec, counters, deadlineEpochMs }, { signal });
+      const result = await compute.runJob(
+        'shard',
+        { evidence, settings, shard: stored.spec, counters, deadlineEpochMs },
+        withSignal(signal),
+      );
       if (!result.complete && underWay.state === 'abandoned') return null;
       // A result that a limit cut short is kept as well: a run that was stopped is not gone on with.
       await onDatabase(context, () => store.saveShard(runId, result, new Date()));
+      if (limit !== null && !result.complete && isOver()) await stopRun(timeLimitStop(limit.seconds));
       return figuresOf(result);
     },
   });

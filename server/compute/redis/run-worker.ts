@@ -59,7 +59,7 @@ export async function startRunWorker(options: RunWorkerOptions): Promise<RunWork
   };
   const worker: Worker = new Worker(
     RUN_QUEUE,
-    async (job: Job, token: string | undefined, signal: AbortSignal = new AbortController().signal) => {
+    async (job: Job, token?: string, signal?: AbortSignal) => {
       if (job.name === 'plan') return await planRun(context, job as PlanJob, token, signal);
       if (job.name === 'shard') return await runShard(context, job as ShardJob, token, signal);
       return await finishRun(context, job as FinishJob, token, signal);
@@ -85,7 +85,7 @@ export async function startRunWorker(options: RunWorkerOptions): Promise<RunWork
     close: async () => {
       isClosing = true;
       const closed = worker.close();
-      underWay.abandon();
+      underWay.close();
       await closed;
       await Promise.all([queue.close(), flows.close()]);
     },

@@ -54,6 +54,36 @@ const mergeAll = (results: readonly ShardResult[], keep: number) => {
 };
 
 describe('ShardMerger', () => {
+  const plain = { constitutionCount: 0, multigraphCount: 0, funnel: [], kept: [], logSumExp: null, cpuSeconds: 0, complete: true };
+
+  it('adds the branches that were cut while building up by reason, most frequent first', () => {
+    const { cuts } = mergeAll(
+      [
+        { ...plain, index: 0, cuts: [{ reason: 'ringSize', text: 'a ring too small', count: 5 }] },
+        { ...plain, index: 1 },
+        {
+          ...plain,
+          index: 2,
+          cuts: [
+            { reason: 'window', text: 'no carbon for δ 170', count: 7 },
+            { reason: 'ringSize', text: 'a ring too small', count: 4 },
+          ],
+        },
+      ],
+      10,
+    );
+    expect(cuts).toEqual([
+      { reason: 'ringSize', text: 'a ring too small', count: 9 },
+      { reason: 'window', text: 'no carbon for δ 170', count: 7 },
+    ]);
+  });
+
+  it('remembers the limit that cut a shard short', () => {
+    expect(mergeAll([{ ...plain, index: 0 }], 1)).toMatchObject({ complete: true, stoppedBy: null });
+    const cut = { ...plain, index: 1, complete: false, stoppedBy: 'memory' as const };
+    expect(mergeAll([{ ...plain, index: 0 }, cut], 1)).toMatchObject({ complete: false, stoppedBy: 'memory' });
+  });
+
   it('gives the same counts, funnel and ranking in any order of arrival', () => {
     fc.assert(
       fc.property(
