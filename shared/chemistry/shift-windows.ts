@@ -67,14 +67,15 @@ function isAvailable({ neighbours }: ShiftRange, available: Readonly<Record<Neig
  * The window that holds for a signal: its own, or the derived one where the options ask for it.
  *
  * @param options - `shiftWindows` absent counts as off: resolve the options first.
- * @param counts - of the document's formula.
+ * @param counts - of the document's formula. @param ranges - another table than the fitted one.
  * @returns null when the signal has no window.
  */
 export function windowOf(
   signal: CarbonSignal,
   { shiftWindows }: Pick<EvidenceOptions, 'shiftWindows'>,
   counts: FormulaCounts,
+  ranges: readonly ShiftRange[] = SHIFT_RANGES,
 ): CarbonWindow | null {
   if (signal.window !== undefined) return signal.window;
-  return shiftWindows === true ? deriveWindow(signal.shift, signal.hydrogens, counts) : null;
+  return shiftWindows === true ? deriveWindow(signal.shift, signal.hydrogens, counts, ranges) : null;
 }

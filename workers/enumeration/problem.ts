@@ -4,9 +4,11 @@ import { parseSmiles } from '../../shared/chemistry/smiles.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { InputIssue } from '../../shared/schemas/problem.js';
 import { createCorrelationModel, type CorrelationModel } from '../correlations/correlation-model.js';
+import { SHIFT_RANGES } from '../../shared/chemistry/shift-window-table.js';
 import { carbonCensus, type CarbonCensus } from './carbon-census.js';
 import { FILL_STRIDE } from './fill.js';
 import { structureLimits, type StructureLimits } from './structure-limits.js';
+import { groupShiftRanges } from './group-shift-ranges.js';
 import { createUnitKind, type UnitKind } from './units.js';
 
 /** Heavy atoms outside units, of one element. */
@@ -135,7 +137,7 @@ export function createProblem(evidence: EvidenceDocument): SearchProblem {
     free,
     hydrogens: remaining.get('H') ?? 0,
     heavyAtomCount,
-    census: carbonCensus(evidence, parsed.counts),
+    census: carbonCensus(evidence, parsed.counts, [...SHIFT_RANGES, ...units.flatMap(groupShiftRanges)]),
     mergeResonanceForms: evidence.options.mergeResonanceForms,
     structure: structureLimits(evidence),
     correlations: createCorrelationModel(evidence),

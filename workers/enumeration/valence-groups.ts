@@ -1,12 +1,16 @@
 import { elementOf } from '../../shared/chemistry/elements.js';
 import { parseExcludedPattern } from '../../shared/chemistry/excluded-pattern.js';
+import { parseFormula } from '../../shared/chemistry/formula.js';
 import { parseFragment, type Fragment } from '../../shared/chemistry/fragment.js';
+import { SHIFT_RANGES, type ShiftRange } from '../../shared/chemistry/shift-window-table.js';
 import { VALENCE_GROUP_NAMES } from '../../shared/chemistry/valence-group-names.js';
 import { doesPatternOccurIn } from '../../shared/chemistry/pattern-in-fragment.js';
 import type { EvidenceDocument, ValenceGroup } from '../../shared/schemas/evidence.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
+import { carbonCensus, type CarbonCensus } from './carbon-census.js';
 import type { SearchLayout } from './distributions.js';
 import { FILL_STRIDE } from './fill.js';
+import { groupShiftRanges } from './group-shift-ranges.js';
 import { missingBandsOf } from './infrared-absence.js';
 import { findPlacements } from './placements.js';
 import { mergeEqualKinds, type FreeElement, type PartnerGroup, type PartnerLimit, type SearchProblem } from './problem.js';
@@ -58,6 +62,8 @@ export interface FormableGroups {
   readonly units: readonly FormedUnit[];
   /** Groups that must not arise at the open double bond of a formed unit. */
   readonly forbiddenPartners: readonly PartnerGroup[];
+  /** Bounds from the 13C list with more shift ranges than the fitted ones. */
+  censusWith(ranges: readonly ShiftRange[]): CarbonCensus;
   /** Groups that were asked for and that the formula has atoms for, but that the evidence rules out: one sentence each. */
   readonly notes: readonly string[];
 }
@@ -115,7 +121,7 @@ export function formableGroups(evidence: EvidenceDocument, available: ReadonlyMa
     if (!allowed.has('azide')) forbiddenPartners.push('azide');
     if (!allowed.has('diazo')) forbiddenPartners.push('diazo');
   }
-  return { formable: allowed, units: smiles.map(createFormedUnit), forbiddenPartners, notes };
+  return { formable: allowed, units: smiles.map(createFormedUnit), forbiddenPartners, notes, censusWith: censuses(evidence) };
 }
 
 function fits(fragment: Fragment, available: ReadonlyMap<string, number>): boolean {
@@ -129,7 +135,24 @@ function createFormedUnit(smiles: string): FormedUnit {
     const bonds = graph.bondOrders.subarray(atom * graph.atomCount, (atom + 1) * graph.atomCount);
     if (graph.atomicNumbers[atom] === 8 && graph.charges[atom] === 0 && bonds.includes(2)) doubleBondedOxygens++;
   }
-  return { kind: createUnitKind(smiles, 1, graph, attachments), composition, doubleBondedOxygens };
+  return {
+    kind: createUnitKind(smiles, 1, graph, attachments),
+    composition,
+    doubleBondedOxygens,
+  };
+}
+
+/** Censuses of a document by what is added to the fitted shift ranges, each made once. */
+function censuses(evidence: EvidenceDocument): FormableGroups['censusWith'] {
+  const made = new Map<string, CarbonCensus>();
+  return (ranges) => {
+    const key = JSON.stringify(ranges);
+    const formula = parseFormula(evidence.formula);
+    if (!formula.ok) throw new Error(`formula checked before: ${formula.message}`);
+    const census = made.get(key) ?? carbonCensus(evidence, formula.counts, [...SHIFT_RANGES, ...ranges]);
+    made.set(key, census);
+    return census;
+  };
 }
 
 /**
@@ -157,12 +180,14 @@ export function withFormedUnits(base: SearchProblem, groups: FormableGroups, cop
     const count = isDoubleBondedOxygen ? demand.count - oxygens : demand.count;
     return count > 0 ? [{ ...demand, count }] : [];
   });
+  const ranges = formed.flatMap(groupShiftRanges);
   return {
     ...base,
     units: mergeEqualKinds([...base.units, ...formed]),
     demands,
     free: free.filter(({ count }) => count > 0),
     hydrogens: base.hydrogens - (needed.get('H') ?? 0),
+    census: ranges.length === 0 ? base.census : groups.censusWith([...base.units.flatMap(groupShiftRanges), ...ranges]),
     partnerLimits: partnerLimits(base, groups, formed),
   };
 }

@@ -1,7 +1,9 @@
 import { countOf, parseFormula } from '../../shared/chemistry/formula.js';
 import { windowOf } from '../../shared/chemistry/shift-windows.js';
 import { type CarbonWindow, type EvidenceDocument, HYBRIDISATIONS } from '../../shared/schemas/evidence.js';
+import { SHIFT_RANGES } from '../../shared/chemistry/shift-window-table.js';
 import { hybridisationBits, hybridisationOf } from '../enumeration/carbon-census.js';
+import { GROUP_SHIFT_RANGES, isGroupCarbon } from '../enumeration/group-shift-ranges.js';
 import { SlotMatching } from '../enumeration/slot-matching.js';
 import { MAX_ATOMS, NEIGHBOUR_STRIDE, type StructureAnalysis } from '../graph/analysis.js';
 import type { Environments } from './environments.js';
@@ -36,16 +38,19 @@ export class WindowCensus {
       window !== null &&
       (window.hybridisations.length < HYBRIDISATIONS.length || window.heteroNeighbours.min > 0 || window.heteroNeighbours.max < 4);
     if (!windows.some((window, i) => carbons.maybeSolvent[i] === 0 && isRestricting(window))) return null;
-    return new WindowCensus(evidence, carbons, windows, formula.ok ? countOf(counts, 'C') : MAX_ATOMS);
+    const ofGroups = evidence.carbonSignals.map((signal) =>
+      windowOf(signal, evidence.options, counts, [...SHIFT_RANGES, ...GROUP_SHIFT_RANGES]),
+    );
+    return new WindowCensus(evidence, carbons, windows, ofGroups, formula.ok ? countOf(counts, 'C') : MAX_ATOMS);
   }
 
   private readonly size: number;
   private readonly isComplete: boolean;
   private readonly hydrogens: Int8Array;
   private readonly count: Uint8Array;
-  private readonly bits: Uint8Array;
-  private readonly leastHetero: Uint8Array;
-  private readonly mostHetero: Uint8Array;
+  private readonly limits: WindowLimits;
+  /** The same with the shifts of isocyanides, diazo groups and nitrile oxides let in: for their carbons only. */
+  private readonly groupLimits: WindowLimits;
   /** Reason when no, or too few, carbons fit a signal. */
   private readonly reasons: readonly string[];
   private readonly environments: SlotMatching;
@@ -57,6 +62,7 @@ export class WindowCensus {
     evidence: EvidenceDocument,
     carbons: CarbonObservations,
     windows: readonly (CarbonWindow | null)[],
+    windowsOfGroups: readonly (CarbonWindow | null)[],
     private readonly carbonCount: number,
   ) {
     const own = windows.map((_, i) => i).filter((i) => carbons.maybeSolvent[i] === 0);
@@ -64,9 +70,8 @@ export class WindowCensus {
     this.isComplete = carbons.isComplete;
     this.hydrogens = Int8Array.from(own, (i) => carbons.hydrogens[i]);
     this.count = Uint8Array.from(own, (i) => Math.max(carbons.count[i], 1));
-    this.bits = Uint8Array.from(own, (i) => (windows[i] === null ? 255 : hybridisationBits(windows[i])));
-    this.leastHetero = Uint8Array.from(own, (i) => windows[i]?.heteroNeighbours.min ?? 0);
-    this.mostHetero = Uint8Array.from(own, (i) => windows[i]?.heteroNeighbours.max ?? 4);
+    this.limits = limitsOf(own.map((i) => windows[i]));
+    this.groupLimits = limitsOf(own.map((i) => windowsOfGroups[i]));
     this.reasons = own.map((i) => windowReason(evidence.carbonSignals[i], windows[i]));
     const counts = Array.from(this.count);
     this.environments = new SlotMatching(new Array<number>(own.length).fill(1), carbonCount);
@@ -106,14 +111,15 @@ export class WindowCensus {
         if (graph.atomicNumbers[other] !== CARBON) hetero++;
       }
       const bit = 1 << hybridisationOf(piBonds);
+      const { bits, leastHetero, mostHetero } = isGroupCarbon(graph, atom) ? this.groupLimits : this.limits;
       const signals = bounds.carbonSignals[c];
       let isShown = false;
       for (let i = 0; i < size; i++) {
         const fits =
           (hydrogens[i] === UNKNOWN_HYDROGENS || hydrogens[i] === type) &&
-          (this.bits[i] & bit) !== 0 &&
-          hetero >= this.leastHetero[i] &&
-          hetero <= this.mostHetero[i];
+          (bits[i] & bit) !== 0 &&
+          hetero >= leastHetero[i] &&
+          hetero <= mostHetero[i];
         if (fits) {
           isShown = true;
           fitting[i] += sizeOf[c];
@@ -144,6 +150,21 @@ export class WindowCensus {
     if (all.length === 0) all.push({ reason, atoms: carbonsOfType(s, UNKNOWN_HYDROGENS) });
     return null;
   }
+}
+
+/** Windows as columns, one entry a signal. */
+interface WindowLimits {
+  readonly bits: Uint8Array;
+  readonly leastHetero: Uint8Array;
+  readonly mostHetero: Uint8Array;
+}
+
+function limitsOf(windows: readonly (CarbonWindow | null)[]): WindowLimits {
+  return {
+    bits: Uint8Array.from(windows, (window) => (window === null ? 255 : hybridisationBits(window))),
+    leastHetero: Uint8Array.from(windows, (window) => window?.heteroNeighbours.min ?? 0),
+    mostHetero: Uint8Array.from(windows, (window) => window?.heteroNeighbours.max ?? 4),
+  };
 }
 
 function membersOf({ classOf }: Environments, wanted: number, n: number): number[] {
