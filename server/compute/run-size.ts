@@ -4,7 +4,7 @@ import type { RunInput } from './run-task.js';
 const PROBES = 400;
 const SEED = 1;
 /** Nobody waits longer for a guess that only decides who goes first. */
-const MAX_SECONDS = 0.2;
+const MAX_SECONDS = 0.3;
 
 /** Thread seconds the whole search of a run may take, roughly; null when it cannot be told. */
 export async function guessSeconds(compute: ComputeService, { evidence, settings }: RunInput): Promise<number | null> {

@@ -1,4 +1,12 @@
-import type { Funnel, JobContract, JobName, RankedCandidate, ShardCandidate, ShardResult } from '../../shared/jobs/contract.js';
+import type {
+  Funnel,
+  JobContract,
+  JobName,
+  RankedCandidate,
+  RunEstimate,
+  ShardCandidate,
+  ShardResult,
+} from '../../shared/jobs/contract.js';
 import { addToCounter, isCancelled } from '../../shared/jobs/counters.js';
 import { ComputeFailure, type ComputeService, type JobOptions, WorkerCrash } from '../../server/compute/compute-service.js';
 
@@ -27,6 +35,21 @@ export interface FakeCompute extends ComputeService {
   /** Answers of the jobs that are not part of a run. */
   readonly answers: { [K in 'explain' | 'predict' | 'estimate']?: JobContract[K]['output'] };
 }
+
+/** Size of a run that is over at once. */
+export const fakeEstimate: RunEstimate = {
+  estimate: 4,
+  low: 4,
+  high: 4,
+  isExact: true,
+  survivors: { estimate: 2, low: 1, high: 3 },
+  cpuSeconds: 0.1,
+  cpuSecondsLow: 0.05,
+  cpuSecondsHigh: 0.2,
+  hints: [],
+  probes: 20,
+  seconds: 0.1,
+};
 
 const CANDIDATES_PER_SHARD = 3;
 const SEEN_PER_SHARD = 1_000;
@@ -150,7 +173,7 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
     predict: async () => answer('predict'),
     estimate: async ({ evidence }) => {
       const cpuSeconds = options.expectedSeconds?.(evidence.formula);
-      return cpuSeconds === undefined ? answer('estimate') : { estimate: 1, low: 1, high: 1, cpuSeconds, seconds: 0 };
+      return cpuSeconds === undefined ? answer('estimate') : { ...fakeEstimate, cpuSeconds };
     },
     layout: async ({ smiles }) => ({
       structures: smiles.map((text) => ({

@@ -13,6 +13,9 @@ import { DEFAULT_TIMING, type FinishJob, KEY_PREFIX, type PlanJob, type QueueTim
 import { RunInputs, type RunJobsContext } from './run-jobs-context.js';
 import { runShard } from './run-shard.js';
 
+/** Pause before work is asked for again after the connection was lost. */
+const RECONNECT_MS = 1_000;
+
 export interface RunWorkerOptions {
   /** Its connection is shared; closing the worker leaves it open. */
   readonly redis: Redis;
@@ -70,6 +73,7 @@ export async function startRunWorker(options: RunWorkerOptions): Promise<RunWork
       lockDuration: timing.lockMs,
       stalledInterval: Math.ceil(timing.lockMs / 2),
       maxStalledCount: MAX_CRASHES - 1,
+      runRetryDelay: RECONNECT_MS,
     },
   );
   const onError = (error: Error) => logger.warn({ err: error }, 'the queue on Redis has a fault');
