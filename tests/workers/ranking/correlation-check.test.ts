@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { evidenceDocument, type EvidenceInput } from '../../../shared/schemas/evidence.js';
+import type { z } from 'zod';
+import { type carbonWindow, evidenceDocument, type EvidenceInput } from '../../../shared/schemas/evidence.js';
 import { createEvaluator, explainEvaluation } from '../../../workers/ranking/evaluator.js';
 import { describeReason } from '../../../workers/ranking/reasons.js';
 import { correlationEvidenceOf } from '../../support/correlation-evidence.js';
@@ -60,7 +61,7 @@ describe('2D pairs on a finished structure', () => {
   });
 
   it('lay signals only on carbons within their windows', () => {
-    const input = (window: object): EvidenceInput => ({
+    const input = (window: z.input<typeof carbonWindow>): EvidenceInput => ({
       formula: 'C4H8O2',
       carbonSignals: [
         { shift: 51.5, window },
