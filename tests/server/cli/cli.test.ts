@@ -313,6 +313,34 @@ describe('isoloom predict and estimate', () => {
     expect(outcome.stderr).toMatch(/^smiles: position 6: .*\[nH\]/);
   });
 
+  it('stops at a number of constitutions with exit code 3 and what was found', async () => {
+    const stopped = await cli.run(['enumerate', 'C8H16O', '--max-count', '100', '--threads', '1', '--json']);
+    expect(stopped.exitCode).toBe(3);
+    expect(stopped.json()).toMatchObject({ count: 100, complete: false, cuts: [] });
+    // Reference counts (oracles): 1684.
+    const whole = await cli.run(['enumerate', 'C8H16O', '--max-count', '1684', '--json']);
+    expect(whole.exitCode).toBe(0);
+    expect(whole.json()).toMatchObject({ count: 1684, complete: true });
+    const told = await cli.run(['rank', 'C8H16O', '--max-count', '100', '--top', '3']);
+    expect(told.exitCode).toBe(3);
+    expect(told.stdout).toContain('the list is incomplete');
+  });
+
+  it('estimates the whole cost of a ranking, and what would make it smaller', async () => {
+    const outcome = await cli.run(['estimate', 'C9H10O2', '--mode', 'rank', '--json']);
+    expect(outcome.exitCode).toBe(0);
+    const { cpuSeconds, cpuSecondsLow, cpuSecondsHigh, hints, seconds } = outcome.json() as Record<string, number> & {
+      hints: { kind: string; factor: number }[];
+    };
+    expect(cpuSecondsLow).toBeLessThan(cpuSeconds);
+    expect(cpuSecondsHigh).toBeGreaterThan(cpuSeconds);
+    expect(seconds).toBeLessThan(2.5);
+    expect(hints.map(({ kind }) => kind)).toContain('attachedHydrogens');
+    const told = await cli.run(['estimate', 'C20H30O5N2']);
+    expect(told.stdout).toMatch(/constitutions .*\n.* on one core .*\nhopeless as it is/);
+    expect((await cli.run(['estimate', 'C5H8', '--mode', 'list'])).exitCode).toBe(2);
+  });
+
   it('estimates within its own interval of the truth', async () => {
     const outcome = await cli.run(['estimate', 'C7H14O', '--json']);
     const { estimate, low, high } = outcome.json() as Record<string, number>;

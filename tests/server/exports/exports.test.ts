@@ -84,20 +84,23 @@ describe('SDF records', () => {
 describe('CSV rows', () => {
   it('have a field for each column and quote what needs it (RFC 4180)', () => {
     expect(csvHeader()).toBe(
-      'rank,smiles,probability,score,score_carbon13,score_proton1,score_multiplicity,score_integral,score_plausibility,carbon13_mean_absolute_deviation_ppm,proton1_mean_absolute_deviation_ppm,remarks,idcode\r\n',
+      'rank,smiles,probability,score,score_carbon13,score_proton1,score_multiplicity,score_integral,score_plausibility,carbon13_mean_absolute_deviation_ppm,proton1_mean_absolute_deviation_ppm,remarks,idcode,run_complete\r\n',
     );
-    expect(csvRow(candidate)).toBe(
-      '2,CC(=O)OCC=C,0.125,-3.5,-2.5,,,,-1,1.25,,"carbonyl, 4 ppm off; a ""double"" bond\nof two forms",gNp@`\r\n',
+    expect(csvRow(candidate, origin)).toBe(
+      '2,CC(=O)OCC=C,0.125,-3.5,-2.5,,,,-1,1.25,,"carbonyl, 4 ppm off; a ""double"" bond\nof two forms",gNp@`,no\r\n',
     );
   });
 
   it('keep spreadsheets from running a text as a formula', () => {
-    expect(csvRow({ ...candidate, idcode: '@SUM(A1)', remarks: [] } as unknown as Candidate)).toContain(",'@SUM(A1)\r\n");
+    expect(csvRow({ ...candidate, idcode: '@SUM(A1)', remarks: [] } as unknown as Candidate, { complete: true })).toContain(
+      ",'@SUM(A1),yes\r\n",
+    );
   });
 });
 
 describe('SMILES lines', () => {
-  it('name unknown, run and rank', () => {
-    expect(smilesLine(candidate, origin)).toBe('CC(=O)OCC=C\tU-0042-run-3-rank-2\n');
+  it('name unknown, run and rank, and say where a search was cut short', () => {
+    expect(smilesLine(candidate, origin)).toBe('CC(=O)OCC=C\tU-0042-run-3-rank-2-incomplete\n');
+    expect(smilesLine(candidate, { ...origin, complete: true })).toBe('CC(=O)OCC=C\tU-0042-run-3-rank-2\n');
   });
 });

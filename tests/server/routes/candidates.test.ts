@@ -262,9 +262,40 @@ describe('GET /runs/:runId/export', () => {
 });
 
 describe('POST /unknowns/:unknownId/estimate and /predictions', () => {
+  const estimate = {
+    estimate: 1_200,
+    low: 900,
+    high: 1_500,
+    isExact: false,
+    survivors: { estimate: 400, low: 300, high: 500 },
+    cpuSeconds: 360,
+    cpuSecondsLow: 180,
+    cpuSecondsHigh: 720,
+    hints: [{ kind: 'attachedHydrogens' as const, text: 'Attached-hydrogen counts would cut this about 30-fold.', factor: 30 }],
+    probes: 800,
+    seconds: 0.1,
+  };
+
+  it('weigh the estimate of the engine against the quota of the caller', async () => {
+    compute.answers.estimate = estimate;
+    // A chemist has 7200 s a month and 1000 candidates a run.
+    const { body } = await chemist.post(`/unknowns/${unknown.id}/estimate`, {});
+    expect(body).toMatchObject({ estimate: 1_200, isHopeless: false, limit: null, hints: estimate.hints });
+    expect(body.quotaShare.estimate).toBeCloseTo(360 / body.cpuSecondsLeft);
+    expect(body.quotaShare.high).toBeCloseTo(720 / body.cpuSecondsLeft);
+    expect(body.candidateShare).toEqual({ estimate: 0.4, low: 0.3, high: 0.5 });
+  });
+
+  it('say that a run is hopeless, or may not end, and by which limit', async () => {
+    compute.answers.estimate = { ...estimate, cpuSeconds: 90_000, cpuSecondsLow: 50_000, cpuSecondsHigh: 1e6 };
+    expect((await chemist.post(`/unknowns/${unknown.id}/estimate`, {})).body).toMatchObject({ isHopeless: true, limit: 'quota' });
+    compute.answers.estimate = estimate;
+    const limited = async (limits: object) => (await chemist.post(`/unknowns/${unknown.id}/estimate`, limits)).body;
+    expect(await limited({ maxSeconds: 10 })).toMatchObject({ isHopeless: true, limit: 'timeLimit' });
+    expect(await limited({ maxConstitutions: 1_000 })).toMatchObject({ isHopeless: false, limit: 'countLimit' });
+  });
+
   it('pass the answer of the engine on', async () => {
-    compute.answers.estimate = { estimate: 1_200, low: 900, high: 1_500, cpuSeconds: 0.4, seconds: 0.1 };
-    expect((await chemist.post(`/unknowns/${unknown.id}/estimate`, {})).body).toEqual(compute.answers.estimate);
     expect((await reader.post(`/unknowns/${unknown.id}/estimate`, {})).status).toBe(403);
     compute.answers.predict = {
       smiles: 'CCO',

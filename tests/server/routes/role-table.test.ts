@@ -29,7 +29,7 @@ import {
   createUser,
   PASSWORD,
 } from '../../support/factories.js';
-import { createFakeCompute } from '../../support/fake-compute.js';
+import { createFakeCompute, fakeEstimate } from '../../support/fake-compute.js';
 import { createTestApp, type TestApp } from '../../support/test-app.js';
 
 /** `foreignLead` leads another team; `admin` runs the installation and is a member of no team. */
@@ -223,7 +223,7 @@ const idleQueue: RunQueue = {
 let server: TestApp;
 beforeAll(async () => {
   const compute = createFakeCompute();
-  compute.answers.estimate = { estimate: 4, low: 4, high: 4, cpuSeconds: 0.1, seconds: 0.1 };
+  compute.answers.estimate = fakeEstimate;
   compute.answers.explain = { kind: 'otherFormula', formula: 'C5H12', expected: 'C4H8O2', smiles: 'CCCCC' };
   compute.answers.predict = { smiles: 'CCOC(C)=O', carbons: [], protons: [], notes: [] };
   server = await createTestApp({ compute, queue: idleQueue });

@@ -1,5 +1,12 @@
 import type { z } from 'zod';
-import type { candidateResponse, candidateRow, funnelSchema, runResponse, shortlistItem } from '../../../shared/schemas/runs';
+import type {
+  candidateResponse,
+  candidateRow,
+  funnelSchema,
+  runResponse,
+  shortlistItem,
+  estimateResponse,
+} from '../../../shared/schemas/runs';
 import { FakeProblem, type FakeHandlers } from './fake-api';
 import { evidence, ids } from './fixtures';
 
@@ -148,6 +155,7 @@ export const candidateDetail = (rank: number): z.input<typeof candidateResponse>
   ...candidates[rank - 1],
   smiles: 'Cc1ccc(cc1)C(C)C',
   unknownId: ids.unknown,
+  runComplete: true,
   spectra,
   matches: [
     ...evidence.carbonSignals.map((signal, index) => ({
@@ -203,6 +211,25 @@ const sortKey = (row: Row, sort: string) =>
         ? row.protonDeviation
         : row.rank;
 
+export const estimate: z.input<typeof estimateResponse> = {
+  estimate: 24_512,
+  low: 18_023,
+  high: 34_201,
+  isExact: false,
+  survivors: { estimate: 3_100, low: 2_400, high: 4_000 },
+  cpuSeconds: 12,
+  cpuSecondsLow: 8,
+  cpuSecondsHigh: 18,
+  threadCount: 2,
+  cpuSecondsLeft: 6_000,
+  quotaShare: { estimate: 0.002, low: 0.0013, high: 0.003 },
+  candidateShare: { estimate: 0.1, low: 0.1, high: 0.1 },
+  isHopeless: false,
+  limit: null,
+  hints: [],
+  seconds: 0.4,
+};
+
 /** What the pages of runs, candidates and shortlists ask for; the shortlist remembers what was kept. */
 export function runHandlers(overrides: FakeHandlers = {}): FakeHandlers {
   const kept = [itemOf(2, { note: 'Band at 815 cm-1 agrees.', verdict: 'supported' })];
@@ -210,7 +237,7 @@ export function runHandlers(overrides: FakeHandlers = {}): FakeHandlers {
     listRuns: () => ({ runs: [liveRun, finishedRun] }),
     listTeamRuns: () => ({ rows: [liveRun, finishedRun], total: 2, page: 1, pageSize: 50 }),
     readRun: ({ params }) => (params['runId'] === liveRunId ? liveRun : finishedRun),
-    estimateRun: () => ({ estimate: 24512, low: 18023, high: 34201, cpuSeconds: 0.8, seconds: 0.4 }),
+    estimateRun: () => estimate,
     listCandidates: ({ query }) => {
       const sign = query.get('direction') === 'descending' ? -1 : 1;
       const sort = query.get('sort') ?? 'rank';
@@ -220,7 +247,7 @@ export function runHandlers(overrides: FakeHandlers = {}): FakeHandlers {
         const [left, right] = [sortKey(a, sort) ?? 0, sortKey(b, sort) ?? 0];
         return (left < right ? -1 : left > right ? 1 : a.rank - b.rank) * sign;
       });
-      return { rows: sorted.slice((page - 1) * pageSize, page * pageSize), total: sorted.length, page, pageSize };
+      return { rows: sorted.slice((page - 1) * pageSize, page * pageSize), total: sorted.length, page, pageSize, runComplete: true };
     },
     readCandidate: ({ params }) => {
       const row = candidates.find((candidate) => candidate.id === params['candidateId']);

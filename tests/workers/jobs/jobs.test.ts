@@ -69,6 +69,33 @@ describe('the shard job', () => {
     expect(readCounter(counters, 'constitutionsSeen')).toBe(result.constitutionCount);
   });
 
+  it('stops at a number of constitutions and says so; a search of exactly so many is complete', () => {
+    const evidence = evidenceDocument.parse({ formula: 'C5H8' });
+    const counting: RunSettings = { ...settings, mode: 'count' };
+    const [shard] = outputOf(jobs.plan({ evidence, settings: counting, targetShards: 1 })).shards;
+    const run = (maxConstitutions: number) =>
+      outputOf(
+        jobs.shard({ evidence, settings: counting, shard: shard!, counters: createCounters(), deadlineEpochMs: null, maxConstitutions }),
+      );
+    expect(run(10)).toMatchObject({ complete: false, stoppedBy: 'count', constitutionCount: 10 });
+    // SCIENCE.md 2.6: 26.
+    expect(run(26)).toMatchObject({ complete: true, constitutionCount: 26 });
+    expect(run(26)).not.toHaveProperty('stoppedBy');
+  });
+
+  it('stops when its thread uses more memory than it may, and keeps what it has', () => {
+    const evidence = evidenceDocument.parse({ formula: 'C10H16O2' });
+    const shard = outputOf(jobs.plan({ evidence, settings, targetShards: 1 })).shards[0]!;
+    process.env.ISOLOOM_SHARD_HEAP_MB = '1';
+    try {
+      const result = outputOf(jobs.shard({ evidence, settings, shard, counters: createCounters(), deadlineEpochMs: null }));
+      expect(result).toMatchObject({ complete: false, stoppedBy: 'memory' });
+      expect(result.funnel[0]!.entered).toBe(result.constitutionCount);
+    } finally {
+      delete process.env.ISOLOOM_SHARD_HEAP_MB;
+    }
+  });
+
   it('answers bad input as data with its field', () => {
     const evidence = {
       ...evidenceDocument.parse({ formula: 'C6H6' }),
