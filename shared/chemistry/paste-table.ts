@@ -44,7 +44,7 @@ const RANGE = new RegExp(`^(-?\\d+(?:\\.\\d+)?)\\s*${DASH}\\s*(-?\\d+(?:\\.\\d+)
  * Splits pasted text into lines and cells. One separator for the whole text: tabs if there are any, else semicolons,
  * else commas where numbers have decimal points, else blanks. Decimal commas become points.
  */
-function splitLines(text: string): TextLine[] {
+export function splitLines(text: string): TextLine[] {
   const clean = text.replace(/\u2212/g, '-').replace(/[\u00a0\u202f]/g, ' ');
   const hasDecimalPoints = /\d\.\d/.test(clean);
   const isCommaSeparated = hasDecimalPoints && clean.includes(',');
@@ -62,14 +62,14 @@ function splitLines(text: string): TextLine[] {
   });
 }
 
-const withoutUnit = (cell: string): string =>
+export const withoutUnit = (cell: string): string =>
   cell
     .replace(/^(δ|delta)\s*=?\s*/i, '')
     .replace(/\s*(ppm|hz)\.?$/i, '')
     .trim();
 
 /** A line before the first data line whose cells hold no number is a heading. */
-const isHeading = (cells: readonly string[]): boolean =>
+export const isHeading = (cells: readonly string[]): boolean =>
   cells.every((cell) => !NUMBER.test(withoutUnit(cell)) && !RANGE.test(withoutUnit(cell)));
 
 /** Shift as typed; a range becomes its middle. */

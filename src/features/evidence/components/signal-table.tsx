@@ -13,6 +13,12 @@ export interface SignalColumn<K extends string> {
   inputMode?: 'decimal' | 'numeric' | 'text';
 }
 
+export interface CellMark {
+  text: string;
+  /** It can be saved, but says nothing as it stands. */
+  isDoubtful: boolean;
+}
+
 interface SignalTableProps<K extends string> {
   caption: string;
   columns: ReadonlyArray<SignalColumn<K>>;
@@ -20,6 +26,8 @@ interface SignalTableProps<K extends string> {
   emptyRow: Record<K, string>;
   onRowsChange: (rows: Array<Record<K, string>>) => void;
   issueFor: (row: number, column: K) => string | undefined;
+  /** What a cell was understood as, shown beside it. */
+  markFor?: (row: number, column: K) => CellMark | undefined;
   /** Reads text pasted from a spreadsheet. */
   parsePaste: (text: string) => { cells: ReadonlyArray<Record<K, string>>; notes: readonly string[] };
   isReadOnly: boolean;
@@ -36,6 +44,7 @@ export function SignalTable<K extends string>({
   emptyRow,
   onRowsChange,
   issueFor,
+  markFor,
   parsePaste,
   isReadOnly,
 }: SignalTableProps<K>) {
@@ -108,17 +117,19 @@ export function SignalTable<K extends string>({
             return (
               <Fragment key={row}>
                 <tr className="group/row">
-                  <td className="pr-2 text-right text-small text-faded tabular">{row === rows.length ? '' : row + 1}</td>
+                  <td className="pt-1.5 pr-2 text-right align-top text-small text-faded tabular">{row === rows.length ? '' : row + 1}</td>
                   {columns.map((column, at) => {
                     const isWrong = issues.some((issue) => issue.key === column.key);
+                    const mark = row === rows.length ? undefined : markFor?.(row, column.key);
+                    const markId = `${id}-${row}-${at}`;
                     return (
-                      <td key={column.key} className="px-0.5 py-0.5">
+                      <td key={column.key} className="px-0.5 py-0.5 align-top">
                         <input
                           type="text"
                           data-cell={`${row}:${at}`}
                           aria-label={`${column.name}, row ${row + 1}`}
                           aria-invalid={isWrong || undefined}
-                          aria-describedby={isWrong ? `${id}-${row}` : undefined}
+                          aria-describedby={isWrong ? `${id}-${row}` : mark === undefined ? undefined : markId}
                           inputMode={column.inputMode ?? 'decimal'}
                           autoComplete="off"
                           spellCheck={false}
@@ -130,10 +141,15 @@ export function SignalTable<K extends string>({
                           onKeyDown={(event) => onKeyDown(event, row, at)}
                           onPaste={(event) => onPaste(event, row)}
                         />
+                        {mark === undefined ? null : (
+                          <p id={markId} className={classNames('px-1.5 text-small tabular', mark.isDoubtful ? 'text-weld' : 'text-faded')}>
+                            {mark.text}
+                          </p>
+                        )}
                       </td>
                     );
                   })}
-                  <td className="pl-0.5">
+                  <td className="pt-0.5 pl-0.5 align-top">
                     {isReadOnly || row === rows.length ? null : (
                       <IconButton
                         label={`Remove row ${row + 1}`}

@@ -53,7 +53,7 @@ function partsOf(document: EvidenceDocument): Record<string, string[]> {
   };
 }
 
-function optionsOf({ options }: EvidenceDocument): Record<string, string> {
+function optionsOf({ options, correlations }: EvidenceDocument): Record<string, string> {
   return {
     Solvent: options.solvent === '' ? 'not given' : options.solvent,
     'Resonance forms': options.mergeResonanceForms ? 'merged' : 'counted apart',
@@ -70,6 +70,7 @@ function optionsOf({ options }: EvidenceDocument): Record<string, string> {
         : options.valenceGroups.length === 0
           ? 'none'
           : options.valenceGroups.map((group) => VALENCE_GROUP_NAMES[group].name).join(', '),
+    'Limits of 2D pairs': `COSY ${correlations.cosyBonds} bonds, HMBC ${correlations.hmbcBonds} bonds, ${correlations.exceptions} exceptions`,
     'Candidates kept': String(options.keep),
     'Time limit': options.maxSeconds === null ? 'none' : `${options.maxSeconds} s`,
   };

@@ -1,4 +1,5 @@
 import { parseEvidence } from '../../../../shared/chemistry/check-evidence';
+import { CARBON_TOLERANCE, PROTON_TOLERANCE, signalsNear, type CorrelationKind } from '../../../../shared/chemistry/correlations';
 import { correlations, evidenceOptions, type EvidenceDocument, type ValenceGroup } from '../../../../shared/schemas/evidence';
 import type { InputIssue } from '../../../../shared/schemas/problem';
 import { parseNumberText } from '../../../lib/numbers';
@@ -14,6 +15,10 @@ export interface ProtonRow {
   multiplicity: string;
   couplings: string;
 }
+export interface PairRow {
+  first: string;
+  second: string;
+}
 export interface RequiredRow {
   smiles: string;
   count: string;
@@ -26,7 +31,7 @@ export interface ExcludedRow {
 
 /**
  * Evidence while it is being typed: numbers stay text, so that half-typed and wrong input stays on the page. JSON-safe,
- * because unsaved edits are kept in the browser. What the form does not show (IR, MS, 2D) is carried along untouched.
+ * because unsaved edits are kept in the browser. What the form does not show (IR, MS) is carried along untouched.
  */
 export interface EvidenceDraft {
   formula: string;
@@ -34,6 +39,8 @@ export interface EvidenceDraft {
   excluded: ExcludedRow[];
   carbons: CarbonRow[];
   protons: ProtonRow[];
+  pairs: Record<CorrelationKind, PairRow[]>;
+  pairLimits: { cosyBonds: string; hmbcBonds: string; exceptions: string };
   options: {
     solvent: string;
     mergeResonanceForms: boolean;
@@ -47,10 +54,13 @@ export interface EvidenceDraft {
     keep: string;
     maxSeconds: string;
   };
-  carried: Pick<EvidenceDocument, 'infraredBands' | 'massPeaks' | 'correlations'>;
+  carried: Pick<EvidenceDocument, 'infraredBands' | 'massPeaks'>;
 }
 
 const text = (value: number | null | undefined): string => (value === undefined || value === null ? '' : String(value));
+
+const pairRows = (pairs: readonly (readonly [number, number])[]): PairRow[] =>
+  pairs.map(([first, second]) => ({ first: String(first), second: String(second) }));
 
 export function draftOf(document: EvidenceDocument): EvidenceDraft {
   const { options } = document;
@@ -69,6 +79,16 @@ export function draftOf(document: EvidenceDocument): EvidenceDraft {
       multiplicity: multiplicity ?? '',
       couplings: (couplings ?? []).join(', '),
     })),
+    pairs: {
+      cosy: pairRows(document.correlations.cosy),
+      hsqc: pairRows(document.correlations.hsqc),
+      hmbc: pairRows(document.correlations.hmbc),
+    },
+    pairLimits: {
+      cosyBonds: String(document.correlations.cosyBonds),
+      hmbcBonds: String(document.correlations.hmbcBonds),
+      exceptions: String(document.correlations.exceptions),
+    },
     options: {
       solvent: options.solvent,
       mergeResonanceForms: options.mergeResonanceForms,
@@ -81,7 +101,7 @@ export function draftOf(document: EvidenceDocument): EvidenceDraft {
       keep: String(options.keep),
       maxSeconds: text(options.maxSeconds),
     },
-    carried: { infraredBands: document.infraredBands, massPeaks: document.massPeaks, correlations: document.correlations },
+    carried: { infraredBands: document.infraredBands, massPeaks: document.massPeaks },
   };
 }
 
@@ -101,7 +121,8 @@ export function emptyDraft(): EvidenceDraft {
 
 export const EMPTY_CARBON: CarbonRow = { shift: '', hydrogens: '', count: '' };
 export const EMPTY_PROTON: ProtonRow = { shift: '', count: '', multiplicity: '', couplings: '' };
-const isBlank = (row: CarbonRow | ProtonRow): boolean => Object.values(row).every((cell: string) => cell.trim() === '');
+export const EMPTY_PAIR: PairRow = { first: '', second: '' };
+const isBlank = (row: CarbonRow | ProtonRow | PairRow): boolean => Object.values(row).every((cell: string) => cell.trim() === '');
 
 /** A number, nothing for an empty cell, or the text itself, which the schema then refuses by name. */
 function numberOrText(cell: string): number | string | undefined {
@@ -126,7 +147,14 @@ export type DraftResult =
 export function readDraft(draft: EvidenceDraft): DraftResult {
   const carbonRows = draft.carbons.flatMap((row, index) => (isBlank(row) ? [] : [index]));
   const protonRows = draft.protons.flatMap((row, index) => (isBlank(row) ? [] : [index]));
-  const { options } = draft;
+  const pairIndexes = (kind: CorrelationKind): number[] => draft.pairs[kind].flatMap((row, index) => (isBlank(row) ? [] : [index]));
+  const pairsAt = { cosy: pairIndexes('cosy'), hsqc: pairIndexes('hsqc'), hmbc: pairIndexes('hmbc') };
+  const pairsOf = (kind: CorrelationKind): (number | string)[][] =>
+    pairsAt[kind].map((index) => {
+      const { first, second } = draft.pairs[kind][index]!;
+      return [numberOrText(first) ?? '', numberOrText(second) ?? ''];
+    });
+  const { options, pairLimits } = draft;
   const result = parseEvidence({
     formula: draft.formula,
     fragments: {
@@ -149,6 +177,14 @@ export function readDraft(draft: EvidenceDraft): DraftResult {
       });
     }),
     ...draft.carried,
+    correlations: {
+      cosy: pairsOf('cosy'),
+      hsqc: pairsOf('hsqc'),
+      hmbc: pairsOf('hmbc'),
+      cosyBonds: numberOrText(pairLimits.cosyBonds) ?? '',
+      hmbcBonds: numberOrText(pairLimits.hmbcBonds) ?? '',
+      exceptions: numberOrText(pairLimits.exceptions) ?? '',
+    },
     options: defined({
       solvent: options.solvent,
       mergeResonanceForms: options.mergeResonanceForms,
@@ -166,8 +202,26 @@ export function readDraft(draft: EvidenceDraft): DraftResult {
   const rowsBack = (path: string): string =>
     path
       .replace(/^carbonSignals\[(\d+)\]/, (_, at: string) => `carbonSignals[${carbonRows[Number(at)] ?? at}]`)
-      .replace(/^protonSignals\[(\d+)\]/, (_, at: string) => `protonSignals[${protonRows[Number(at)] ?? at}]`);
+      .replace(/^protonSignals\[(\d+)\]/, (_, at: string) => `protonSignals[${protonRows[Number(at)] ?? at}]`)
+      .replace(
+        /^correlations\.(cosy|hsqc|hmbc)\[(\d+)\]/,
+        (_, kind: CorrelationKind, at: string) => `correlations.${kind}[${pairsAt[kind][Number(at)] ?? at}]`,
+      );
   return { ok: false, issues: result.issues.map((issue) => ({ ...issue, path: rowsBack(issue.path) })) };
+}
+
+/**
+ * Shifts of the listed signals that a shift of a 2D pair can mean, nearest first; null while the cell holds no number.
+ * Rows whose shift is no number yet are passed over.
+ */
+export function signalsMeant(draft: EvidenceDraft, nucleus: '1H' | '13C', cell: string): readonly string[] | null {
+  const read = parseNumberText(cell);
+  if (read.kind !== 'number') return null;
+  const listed = (nucleus === '13C' ? draft.carbons : draft.protons).flatMap(({ shift }) => {
+    const own = parseNumberText(shift);
+    return own.kind === 'number' ? [{ shift: own.value, text: shift.trim() }] : [];
+  });
+  return signalsNear(listed, read.value, nucleus === '13C' ? CARBON_TOLERANCE : PROTON_TOLERANCE).map((index) => listed[index]!.text);
 }
 
 /** First message for a field or anything below it. */
