@@ -99,10 +99,10 @@ function CandidateView({ candidate }: { candidate: CandidateDetail }) {
             <span className="text-lead font-normal">
               <ProbabilityThread probability={candidate.probability} label="Probability" />
             </span>
-            {run.complete ? null : <Badge tone="weld">Incomplete run</Badge>}
+            {candidate.runComplete ? null : <Badge tone="weld">Incomplete run</Badge>}
           </span>
         }
-        lead={`Of ${formatCount(run.survivorCount ?? run.keptCount)} under this model; not an identification.`}
+        lead={`Of ${formatCount(run.survivorCount ?? run.keptCount)} under this model; not an identification.${candidate.runComplete ? '' : ' The run did not see every constitution: better ones may be missing.'}`}
         actions={
           <>
             <Select

@@ -16,7 +16,8 @@ export function RunFootnotes({ run }: { run: Run }) {
       </li>
       <li>
         {formatSeconds(run.cpuSeconds)} of CPU time,{' '}
-        {settings.maxSeconds === null ? 'no limit' : `limit ${formatSeconds(settings.maxSeconds)}`}
+        {settings.maxSeconds === null ? 'no time limit' : `time limit ${formatSeconds(settings.maxSeconds)}`}
+        {settings.maxConstitutions === null ? '' : `, at most ${formatCount(settings.maxConstitutions)} constitutions`}
       </li>
       <li>
         {run.startedBy.name}, <Time iso={run.finishedAt ?? run.createdAt} />

@@ -4,7 +4,7 @@ import { paths } from '../../../app/paths';
 import type { Run } from '../../../lib/queries/run-queries';
 
 const INCOMPLETE_TEXT: Readonly<Partial<Record<Run['status'], string>>> = {
-  stopped: 'The run was stopped by its time limit or your quota',
+  stopped: 'The run was stopped by a limit',
   cancelled: 'The run was cancelled',
   interrupted: 'The server stopped while this run was going on',
   finished: 'Not every part of the search was done',

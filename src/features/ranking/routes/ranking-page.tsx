@@ -4,6 +4,7 @@ import { Link, useParams, useSearchParams, type LoaderFunctionArgs } from 'react
 import { paths } from '../../../app/paths';
 import { Button } from '../../../components/button';
 import { Formula } from '../../../components/chemistry-text';
+import { BuildingCuts } from '../../../components/funnel/building-cuts';
 import { FunnelPicture } from '../../../components/funnel/funnel-picture';
 import { bandFromFunnel } from '../../../components/funnel/funnel-stages';
 import { PageHeader, Panel } from '../../../components/panel';
@@ -99,7 +100,10 @@ function EndedRun({ run }: { run: Run }) {
             {run.funnel === null ? (
               <p className="text-faded">This run ended before anything was counted.</p>
             ) : (
-              <FunnelPicture band={bandFromFunnel(run.funnel, run.keptCount)} isIncomplete={!run.complete} />
+              <>
+                <FunnelPicture band={bandFromFunnel(run.funnel, run.keptCount)} isIncomplete={!run.complete} />
+                <BuildingCuts cuts={run.cuts} />
+              </>
             )}
           </div>
         </div>

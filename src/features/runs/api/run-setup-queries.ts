@@ -4,6 +4,8 @@ import { runSetupKeys } from './keys';
 
 export type OwnQuota = EndpointResponse<'readOwnQuota'>;
 
+export type RunEstimate = EndpointResponse<'estimateRun'>;
+
 /** Own quota and what is used of it; asked anew whenever the dialog opens. */
 export const ownQuotaQuery = (teamId: string) =>
   queryOptions({
@@ -12,7 +14,7 @@ export const ownQuotaQuery = (teamId: string) =>
     staleTime: 0,
   });
 
-/** Size of the search over one revision. Costs a second or so of probing, hence kept; a failure is not repeated by itself. */
+/** Size of the search over one revision. Costs some two seconds of probing, hence kept; a failure is not repeated by itself. */
 export const estimateQuery = (unknownId: string, revisionId: string) =>
   queryOptions({
     queryKey: runSetupKeys.estimate(unknownId, revisionId),

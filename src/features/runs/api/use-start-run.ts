@@ -8,6 +8,7 @@ export interface StartRunInput {
   readonly revisionId: string;
   readonly keep: number;
   readonly maxSeconds: number | null;
+  readonly maxConstitutions: number | null;
 }
 
 export function useStartRun(unknownId: string) {

@@ -5,10 +5,12 @@ export interface RunSettingsDraft {
   /** null = empty field, NaN = no number. */
   readonly keep: number | null;
   readonly maxSeconds: number | null;
+  readonly maxConstitutions: number | null;
 }
 export interface RunSettingsCheck {
   readonly keep: string | undefined;
   readonly maxSeconds: string | undefined;
+  readonly maxConstitutions: string | undefined;
 }
 
 /**
@@ -20,9 +22,14 @@ export function checkRunSettings(draft: RunSettingsDraft, candidatesPerRun: numb
   const most = Math.min(EVIDENCE_LIMITS.keep, candidatesPerRun);
   const isKeepGood = draft.keep !== null && Number.isInteger(draft.keep) && draft.keep >= 1 && draft.keep <= most;
   const isTimeGood = draft.maxSeconds === null || (draft.maxSeconds >= 1 && draft.maxSeconds <= EVIDENCE_LIMITS.seconds);
+  const { maxConstitutions } = draft;
+  const isCountGood =
+    maxConstitutions === null ||
+    (Number.isInteger(maxConstitutions) && maxConstitutions >= 1 && maxConstitutions <= EVIDENCE_LIMITS.constitutions);
   return {
     keep: isKeepGood ? undefined : `expected a whole number between 1 and ${formatCount(most)}, the most your quota allows`,
     maxSeconds: isTimeGood ? undefined : `expected 1 to ${formatCount(EVIDENCE_LIMITS.seconds)} seconds, or nothing for no limit`,
+    maxConstitutions: isCountGood ? undefined : 'expected a whole number from 1 on, or nothing for no limit',
   };
 }
 

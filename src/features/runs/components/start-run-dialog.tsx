@@ -12,8 +12,8 @@ import { ApiError, errorMessage } from '../../../lib/api-error';
 import { revisionQuery } from '../../../lib/unknown-queries';
 import { ownQuotaQuery, type OwnQuota } from '../api/run-setup-queries';
 import { useStartRun } from '../api/use-start-run';
-import { EstimateLine } from './estimate-line';
 import { QuotaStanding } from './quota-standing';
+import { RunEstimatePanel } from './run-estimate';
 import { checkRunSettings, describeFigure, type RunSettingsDraft } from './run-settings';
 
 interface StartRunDialogProps {
@@ -51,7 +51,11 @@ export function StartRunDialog({ unknownId, teamId, revisionId, onClose }: Start
       unknownId={unknownId}
       revision={{ id: revisionId, number: revision.data.number, formula }}
       standing={quota.data}
-      initial={{ keep: Math.min(options.keep, quota.data.quota.candidatesPerRun), maxSeconds: options.maxSeconds }}
+      initial={{
+        keep: Math.min(options.keep, quota.data.quota.candidatesPerRun),
+        maxSeconds: options.maxSeconds,
+        maxConstitutions: options.maxConstitutions ?? null,
+      }}
       onClose={onClose}
     />
   );
@@ -69,15 +73,15 @@ function SettingsForm({ unknownId, revision, standing, initial, onClose }: Setti
   const navigate = useNavigate();
   const [draft, setDraft] = useState(initial);
   const start = useStartRun(unknownId);
-  const { quota, usedCpuSeconds, reservedCpuSeconds } = standing;
+  const { quota } = standing;
   const check = checkRunSettings(draft, quota.candidatesPerRun);
-  const isGood = check.keep === undefined && check.maxSeconds === undefined;
+  const isGood = check.keep === undefined && check.maxSeconds === undefined && check.maxConstitutions === undefined;
 
   const onSubmit = (event: FormEvent) => {
     event.preventDefault();
     if (!isGood || draft.keep === null) return;
     start.mutate(
-      { revisionId: revision.id, keep: draft.keep, maxSeconds: draft.maxSeconds },
+      { revisionId: revision.id, keep: draft.keep, maxSeconds: draft.maxSeconds, maxConstitutions: draft.maxConstitutions },
       { onSuccess: (run) => void navigate(paths.run(run.id)) },
     );
   };
@@ -99,13 +103,9 @@ function SettingsForm({ unknownId, revision, standing, initial, onClose }: Setti
           <p className="mb-1 text-faded">
             <Formula formula={revision.formula} className="text-ink" />, evidence revision {revision.number}
           </p>
-          <EstimateLine
-            unknownId={unknownId}
-            revisionId={revision.id}
-            cpuSecondsLeft={quota.cpuSecondsPerMonth - usedCpuSeconds - reservedCpuSeconds}
-          />
+          <RunEstimatePanel unknownId={unknownId} revisionId={revision.id} settings={draft} candidatesPerRun={quota.candidatesPerRun} />
         </div>
-        <div className="grid gap-4 tablet:grid-cols-2">
+        <div className="grid gap-4 tablet:grid-cols-3">
           <NumberInput
             label="Candidates to keep"
             hint="The best ones; every constitution is counted and weighed all the same."
@@ -120,6 +120,13 @@ function SettingsForm({ unknownId, revision, standing, initial, onClose }: Setti
             value={draft.maxSeconds}
             error={check.maxSeconds}
             onValueChange={(maxSeconds) => setDraft({ ...draft, maxSeconds })}
+          />
+          <NumberInput
+            label="Most constitutions"
+            hint="Empty: no limit. Beyond it the run stops, incomplete."
+            value={draft.maxConstitutions}
+            error={check.maxConstitutions}
+            onValueChange={(maxConstitutions) => setDraft({ ...draft, maxConstitutions })}
           />
         </div>
         <section aria-label="Your quota" className="border-t border-seam pt-4">

@@ -8,6 +8,7 @@ import { ConfirmDialog } from '../../../components/confirm-dialog';
 import { InlineError } from '../../../components/field';
 import { ProbabilityThread } from '../../../components/plots/probability-thread';
 import { StructureDrawing } from '../../../components/structure/structure-drawing';
+import { Badge } from '../../../components/status-word';
 import { Time } from '../../../components/time';
 import { errorMessage } from '../../../lib/api-error';
 import { classNames } from '../../../lib/class-names';
@@ -53,6 +54,7 @@ export function ShortlistCard({ unknownId, item }: { unknownId: string; item: Sh
             </h3>
             <p className="tabular flex flex-wrap items-center gap-x-4 text-table text-faded">
               <ProbabilityThread probability={snapshot.probability} label="Probability when it was kept" />
+              {snapshot.runComplete === false ? <Badge tone="weld">Incomplete run</Badge> : null}
               {misfitText(snapshot) === '' ? null : <span>misfit {misfitText(snapshot)}</span>}
               {snapshot.candidateId === null ? <span>its run is gone; these are the figures of the day it was kept</span> : null}
             </p>
