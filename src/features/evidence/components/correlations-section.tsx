@@ -111,7 +111,11 @@ function PairTable({ kind, draft, issues, isReadOnly, onChange }: SectionProps &
   const markFor = (row: number, column: keyof PairRow): CellMark | undefined => {
     const meant = signalsMeant(draft, PAIR_NUCLEI[kind][ends.indexOf(column)]!, rows[row]![column]);
     if (meant === null) return undefined;
-    return meant.length === 0 ? { text: 'no such signal', isDoubtful: true } : { text: `→ ${meant.join(' or ')}`, isDoubtful: false };
+    if (meant.length === 0) return { text: 'no such signal', isDoubtful: true };
+    const other = kind === 'cosy' && column === 'second' ? signalsMeant(draft, '1H', rows[row]!.first) : null;
+    // A signal has no cross peak with itself.
+    if (meant.length === 1 && other?.length === 1 && other[0] === meant[0]) return { text: 'same signal', isDoubtful: true };
+    return { text: `→ ${meant.join(' or ')}`, isDoubtful: false };
   };
   return (
     <div className="min-w-0">
