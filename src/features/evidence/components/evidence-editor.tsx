@@ -11,6 +11,7 @@ import type { UnknownDetail } from '../../../lib/unknown-queries';
 import { useDraft } from '../../../lib/use-draft';
 import { useSaveRevision, type Revision } from '../api/revisions';
 import { draftOf, emptyDraft, issueAt, readDraft, type EvidenceDraft } from '../lib/evidence-draft';
+import { BandsSection } from './bands-section';
 import { CorrelationsSection } from './correlations-section';
 import { FormulaSection } from './formula-section';
 import { FragmentSection } from './fragment-section';
@@ -32,7 +33,7 @@ export function EvidenceEditor({ unknown, revision }: { unknown: UnknownDetail; 
   const isReadOnly = !unknown.abilities.saveEvidence;
   const isChanged = JSON.stringify(edit.draft) !== JSON.stringify(saved);
   const base = String(revision?.number ?? 0);
-  const kept = useDraft<Edit>(`evidence.2.${unknown.id}`, isChanged ? edit : null, base);
+  const kept = useDraft<Edit>(`evidence.3.${unknown.id}`, isChanged ? edit : null, base);
 
   const result = readDraft(edit.draft);
   // An empty formula is no mistake before the first attempt to save.
@@ -105,6 +106,7 @@ export function EvidenceEditor({ unknown, revision }: { unknown: UnknownDetail; 
       />
       <FragmentSection draft={edit.draft} issues={issues} isReadOnly={isReadOnly} teamId={unknown.teamId} onChange={change} />
       <SignalsSection draft={edit.draft} issues={issues} isReadOnly={isReadOnly} onChange={change} />
+      <BandsSection draft={edit.draft} issues={issues} isReadOnly={isReadOnly} onChange={change} />
       <CorrelationsSection draft={edit.draft} issues={issues} isReadOnly={isReadOnly} onChange={change} />
       <OptionsSection draft={edit.draft} issues={issues} isReadOnly={isReadOnly} onChange={(options) => change({ options })} />
       {isReadOnly ? null : (
@@ -173,7 +175,7 @@ export function EvidenceEditor({ unknown, revision }: { unknown: UnknownDetail; 
 }
 
 const FIELD_PATHS =
-  /^(formula|fragments(\.(required|excluded))?(\[\d+\].*)?|carbonSignals(\[\d+\].*)?|protonSignals(\[\d+\].*)?|correlations\.(((cosy|hsqc|hmbc)(\[\d+\].*)?)|cosyBonds|hmbcBonds|exceptions)|options\.(solvent|ringSizes\.(min|max)|keep|maxSeconds))$/;
+  /^(formula|fragments(\.(required|excluded))?(\[\d+\].*)?|carbonSignals(\[\d+\].*)?|protonSignals(\[\d+\].*)?|correlations\.(((cosy|hsqc|hmbc)(\[\d+\].*)?)|cosyBonds|hmbcBonds|exceptions)|infraredBands(\[\d+\].*)?|massPeaks(\[\d+\].*)?|options\.(solvent|ringSizes\.(min|max)|keep|maxSeconds|maxConstitutions))$/;
 /** Messages with a field of their own stand beside it; the rest stand above the button. */
 function isShownByAField(path: string): boolean {
   return FIELD_PATHS.test(path);

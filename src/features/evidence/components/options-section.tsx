@@ -88,7 +88,22 @@ export function OptionsSection({
             error={issueAt(issues, 'options.maxSeconds')}
             onChange={(event) => set({ maxSeconds: event.target.value })}
           />
+          <TextInput
+            label="Most constitutions"
+            inputMode="numeric"
+            placeholder="no limit"
+            value={options.maxConstitutions}
+            hint="Beyond it a run stops, incomplete."
+            error={issueAt(issues, 'options.maxConstitutions')}
+            onChange={(event) => set({ maxConstitutions: event.target.value })}
+          />
         </div>
+        <Checkbox
+          label="Let ¹³C shifts narrow what their carbons can be"
+          hint="Each signal without a window of its own gets one from its shift: hybridisation and bonded heteroatoms, with wide margins."
+          checked={options.shiftWindows !== false}
+          onChange={(event) => set({ shiftWindows: event.target.checked ? null : false })}
+        />
         <Checkbox
           label="Count the resonance forms of an aromatic ring as one"
           checked={options.mergeResonanceForms}

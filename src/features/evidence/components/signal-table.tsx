@@ -28,6 +28,8 @@ interface SignalTableProps<K extends string> {
   issueFor: (row: number, column: K) => string | undefined;
   /** What a cell was understood as, shown beside it. */
   markFor?: (row: number, column: K) => CellMark | undefined;
+  /** A last column of something else than text, such as a small button. */
+  extra?: { readonly label: ReactNode; readonly className: string; readonly render: (row: number) => ReactNode };
   /** Reads text pasted from a spreadsheet. */
   parsePaste: (text: string) => { cells: ReadonlyArray<Record<K, string>>; notes: readonly string[] };
   isReadOnly: boolean;
@@ -45,6 +47,7 @@ export function SignalTable<K extends string>({
   onRowsChange,
   issueFor,
   markFor,
+  extra,
   parsePaste,
   isReadOnly,
 }: SignalTableProps<K>) {
@@ -103,6 +106,11 @@ export function SignalTable<K extends string>({
                 {column.label}
               </th>
             ))}
+            {extra === undefined ? null : (
+              <th scope="col" className={classNames('px-1 py-1 font-normal', extra.className)}>
+                {extra.label}
+              </th>
+            )}
             <th scope="col" className="w-8">
               <span className="sr-only">Remove</span>
             </th>
@@ -149,6 +157,9 @@ export function SignalTable<K extends string>({
                       </td>
                     );
                   })}
+                  {extra === undefined ? null : (
+                    <td className="px-0.5 py-0.5 align-top">{row === rows.length ? null : extra.render(row)}</td>
+                  )}
                   <td className="pt-0.5 pl-0.5 align-top">
                     {isReadOnly || row === rows.length ? null : (
                       <IconButton
@@ -165,7 +176,12 @@ export function SignalTable<K extends string>({
                 {issues.length === 0 ? null : (
                   <tr>
                     <td />
-                    <td colSpan={columns.length + 1} id={`${id}-${row}`} role="alert" className="px-1 pb-1 text-small text-madder">
+                    <td
+                      colSpan={columns.length + (extra === undefined ? 1 : 2)}
+                      id={`${id}-${row}`}
+                      role="alert"
+                      className="px-1 pb-1 text-small text-madder"
+                    >
                       {issues.map(({ key, name, message }) => (
                         <p key={key}>
                           {name}: {message}

@@ -4,13 +4,23 @@ import type { InputIssue } from '../../../../shared/schemas/problem';
 import { Nucleus } from '../../../components/chemistry-text';
 import { InlineError } from '../../../components/field';
 import { Panel } from '../../../components/panel';
-import { EMPTY_CARBON, EMPTY_PROTON, issueAt, type CarbonRow, type EvidenceDraft, type ProtonRow } from '../lib/evidence-draft';
+import {
+  derivedWindow,
+  EMPTY_CARBON,
+  EMPTY_PROTON,
+  issueAt,
+  type CarbonRow,
+  type EvidenceDraft,
+  type ProtonRow,
+} from '../lib/evidence-draft';
+import { DERIVED } from '../lib/window-text';
 import { SignalTable, type SignalColumn } from './signal-table';
+import { WindowCell } from './window-cell';
 
 const CARBON_COLUMNS: ReadonlyArray<SignalColumn<keyof CarbonRow>> = [
   { key: 'shift', name: 'Shift', label: 'δ (ppm)', placeholder: '166.9' },
   { key: 'hydrogens', name: 'Attached hydrogens', label: 'attached H', placeholder: '0–3', inputMode: 'numeric' },
-  { key: 'count', name: 'Carbons', label: 'carbons', placeholder: 'not known', inputMode: 'numeric' },
+  { key: 'count', name: 'Carbons', label: 'carbons', placeholder: '?', inputMode: 'numeric' },
 ];
 const PROTON_COLUMNS: ReadonlyArray<SignalColumn<keyof ProtonRow>> = [
   { key: 'shift', name: 'Shift', label: 'δ (ppm)', placeholder: '7.21' },
@@ -64,12 +74,27 @@ export function SignalsSection({ draft, issues, isReadOnly, onChange }: SectionP
           onRowsChange={(carbons) => onChange({ carbons })}
           parsePaste={(text) => {
             const pasted = parseCarbonTable(text);
-            return { cells: pasted.rows.map((row) => row.cells), notes: pasted.notes };
+            return { cells: pasted.rows.map((row) => ({ ...row.cells, window: DERIVED })), notes: pasted.notes };
+          }}
+          extra={{
+            label: 'window',
+            className: 'w-[27%]',
+            render: (row) => (
+              <WindowCell
+                row={`row ${row + 1}`}
+                shift={draft.carbons[row]!.shift}
+                text={draft.carbons[row]!.window}
+                derived={derivedWindow(draft, row)}
+                isReadOnly={isReadOnly}
+                onChange={(window) => onChange({ carbons: draft.carbons.map((cells, at) => (at === row ? { ...cells, window } : cells)) })}
+              />
+            ),
           }}
         />
         {isReadOnly ? null : (
           <p id={hintId} className="mt-2 text-small text-faded">
-            Attached hydrogens from DEPT or HSQC narrow the search most. Paste two or three columns from a spreadsheet into any cell.
+            Attached hydrogens from DEPT or HSQC narrow the search most. The window says which hybridisations and how many bonded
+            heteroatoms (X) the shift leaves open; press it to change it. Paste two or three columns from a spreadsheet into any cell.
           </p>
         )}
       </Panel>

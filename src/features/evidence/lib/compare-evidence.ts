@@ -1,5 +1,6 @@
 import { VALENCE_GROUP_NAMES } from '../../../../shared/chemistry/valence-group-names';
-import type { EvidenceDocument } from '../../../../shared/schemas/evidence';
+import type { CarbonWindow, EvidenceDocument } from '../../../../shared/schemas/evidence';
+import { describeWindow } from './window-text';
 
 /** One difference between two evidence documents, for people. */
 export interface EvidenceChange {
@@ -11,6 +12,9 @@ export interface EvidenceChange {
 }
 
 const countText = (count: number | undefined, unit: string): string => (count === undefined ? '' : `, ${count}${unit}`);
+
+const windowChange = (window: CarbonWindow | null | undefined): string =>
+  window === undefined ? '' : window === null ? ', no window' : `, window ${describeWindow(window)}`;
 
 /** Pairs equal texts off; what is left on either side was removed or added. */
 function changesOfLists(part: string, before: readonly string[], after: readonly string[]): EvidenceChange[] {
@@ -34,8 +38,8 @@ function partsOf(document: EvidenceDocument): Record<string, string[]> {
       label === undefined || label === '' ? smiles : `${label} (${smiles})`,
     ),
     '¹³C signals': document.carbonSignals.map(
-      ({ shift, hydrogens, count }) =>
-        `δ ${shift.toFixed(1)}${hydrogens === undefined ? '' : `, ${['C', 'CH', 'CH₂', 'CH₃'][hydrogens]}`}${countText(count, ' C')}`,
+      ({ shift, hydrogens, count, window }) =>
+        `δ ${shift.toFixed(1)}${hydrogens === undefined ? '' : `, ${['C', 'CH', 'CH₂', 'CH₃'][hydrogens]}`}${countText(count, ' C')}${windowChange(window)}`,
     ),
     '¹H signals': document.protonSignals.map(
       ({ shift, count, multiplicity, couplings }) =>
@@ -71,8 +75,10 @@ function optionsOf({ options, correlations }: EvidenceDocument): Record<string, 
           ? 'none'
           : options.valenceGroups.map((group) => VALENCE_GROUP_NAMES[group].name).join(', '),
     'Limits of 2D pairs': `COSY ${correlations.cosyBonds} bonds, HMBC ${correlations.hmbcBonds} bonds, ${correlations.exceptions} exceptions`,
+    'Windows from shifts': options.shiftWindows === undefined ? 'in rankings' : options.shiftWindows ? 'on' : 'off',
     'Candidates kept': String(options.keep),
     'Time limit': options.maxSeconds === null ? 'none' : `${options.maxSeconds} s`,
+    'Most constitutions': options.maxConstitutions === undefined ? 'no limit' : String(options.maxConstitutions),
   };
 }
 

@@ -1,13 +1,24 @@
 import { parseEvidence } from '../../../../shared/chemistry/check-evidence';
 import { CARBON_TOLERANCE, PROTON_TOLERANCE, signalsNear, type CorrelationKind } from '../../../../shared/chemistry/correlations';
-import { correlations, evidenceOptions, type EvidenceDocument, type ValenceGroup } from '../../../../shared/schemas/evidence';
+import {
+  correlations,
+  evidenceOptions,
+  type CarbonWindow,
+  type EvidenceDocument,
+  type ValenceGroup,
+} from '../../../../shared/schemas/evidence';
+import { parseFormula, type FormulaCounts } from '../../../../shared/chemistry/formula';
+import { readIntensity } from '../../../../shared/chemistry/paste-bands';
+import { deriveWindow } from '../../../../shared/chemistry/shift-windows';
 import type { InputIssue } from '../../../../shared/schemas/problem';
 import { parseNumberText } from '../../../lib/numbers';
+import { DERIVED, readWindowText, windowText, type WindowText } from './window-text';
 
 export interface CarbonRow {
   shift: string;
   hydrogens: string;
   count: string;
+  window: WindowText;
 }
 export interface ProtonRow {
   shift: string;
@@ -18,6 +29,14 @@ export interface ProtonRow {
 export interface PairRow {
   first: string;
   second: string;
+}
+export interface BandRow {
+  wavenumber: string;
+  intensity: string;
+}
+export interface PeakRow {
+  mz: string;
+  intensity: string;
 }
 export interface RequiredRow {
   smiles: string;
@@ -31,7 +50,7 @@ export interface ExcludedRow {
 
 /**
  * Evidence while it is being typed: numbers stay text, so that half-typed and wrong input stays on the page. JSON-safe,
- * because unsaved edits are kept in the browser. What the form does not show (IR, MS) is carried along untouched.
+ * because unsaved edits are kept in the browser.
  */
 export interface EvidenceDraft {
   formula: string;
@@ -41,6 +60,8 @@ export interface EvidenceDraft {
   protons: ProtonRow[];
   pairs: Record<CorrelationKind, PairRow[]>;
   pairLimits: { cosyBonds: string; hmbcBonds: string; exceptions: string };
+  bands: BandRow[];
+  peaks: PeakRow[];
   options: {
     solvent: string;
     mergeResonanceForms: boolean;
@@ -51,10 +72,12 @@ export interface EvidenceDraft {
     carbonList: 'complete' | 'partial';
     /** null: all in a ranking, none when counting or listing. */
     valenceGroups: ValenceGroup[] | null;
+    /** null: on in rankings. */
+    shiftWindows: boolean | null;
     keep: string;
     maxSeconds: string;
+    maxConstitutions: string;
   };
-  carried: Pick<EvidenceDocument, 'infraredBands' | 'massPeaks'>;
 }
 
 const text = (value: number | null | undefined): string => (value === undefined || value === null ? '' : String(value));
@@ -68,10 +91,11 @@ export function draftOf(document: EvidenceDocument): EvidenceDraft {
     formula: document.formula,
     required: document.fragments.required.map(({ smiles, count, label }) => ({ smiles, count: String(count), label: label ?? '' })),
     excluded: document.fragments.excluded.map(({ smiles, label }) => ({ smiles, label: label ?? '' })),
-    carbons: document.carbonSignals.map(({ shift, hydrogens, count }) => ({
+    carbons: document.carbonSignals.map(({ shift, hydrogens, count, window }) => ({
       shift: String(shift),
       hydrogens: text(hydrogens),
       count: text(count),
+      window: windowText(window),
     })),
     protons: document.protonSignals.map(({ shift, count, multiplicity, couplings }) => ({
       shift: String(shift),
@@ -98,10 +122,13 @@ export function draftOf(document: EvidenceDocument): EvidenceDraft {
       largestRing: text(options.ringSizes.max),
       carbonList: options.carbonList,
       valenceGroups: options.valenceGroups ?? null,
+      shiftWindows: options.shiftWindows ?? null,
       keep: String(options.keep),
       maxSeconds: text(options.maxSeconds),
+      maxConstitutions: text(options.maxConstitutions),
     },
-    carried: { infraredBands: document.infraredBands, massPeaks: document.massPeaks },
+    bands: document.infraredBands.map(({ wavenumber, intensity }) => ({ wavenumber: String(wavenumber), intensity: intensity ?? '' })),
+    peaks: document.massPeaks.map(({ mz, intensity }) => ({ mz: String(mz), intensity: text(intensity) })),
   };
 }
 
@@ -119,10 +146,15 @@ export function emptyDraft(): EvidenceDraft {
   });
 }
 
-export const EMPTY_CARBON: CarbonRow = { shift: '', hydrogens: '', count: '' };
+export const EMPTY_CARBON: CarbonRow = { shift: '', hydrogens: '', count: '', window: DERIVED };
 export const EMPTY_PROTON: ProtonRow = { shift: '', count: '', multiplicity: '', couplings: '' };
 export const EMPTY_PAIR: PairRow = { first: '', second: '' };
-const isBlank = (row: CarbonRow | ProtonRow | PairRow): boolean => Object.values(row).every((cell: string) => cell.trim() === '');
+export const EMPTY_BAND: BandRow = { wavenumber: '', intensity: '' };
+export const EMPTY_PEAK: PeakRow = { mz: '', intensity: '' };
+const isBlank = (row: CarbonRow | ProtonRow | PairRow | BandRow | PeakRow): boolean =>
+  Object.values(row).every((cell: string) => cell.trim() === '');
+const indexesOfFilled = (rows: readonly (CarbonRow | ProtonRow | PairRow | BandRow | PeakRow)[]): number[] =>
+  rows.flatMap((row, index) => (isBlank(row) ? [] : [index]));
 
 /** A number, nothing for an empty cell, or the text itself, which the schema then refuses by name. */
 function numberOrText(cell: string): number | string | undefined {
@@ -145,10 +177,12 @@ export type DraftResult =
 
 /** Reads a draft as a document. Issue paths count the rows of the draft, blank ones included, so that cells find theirs. */
 export function readDraft(draft: EvidenceDraft): DraftResult {
-  const carbonRows = draft.carbons.flatMap((row, index) => (isBlank(row) ? [] : [index]));
-  const protonRows = draft.protons.flatMap((row, index) => (isBlank(row) ? [] : [index]));
-  const pairIndexes = (kind: CorrelationKind): number[] => draft.pairs[kind].flatMap((row, index) => (isBlank(row) ? [] : [index]));
-  const pairsAt = { cosy: pairIndexes('cosy'), hsqc: pairIndexes('hsqc'), hmbc: pairIndexes('hmbc') };
+  const carbonRows = indexesOfFilled(draft.carbons);
+  const protonRows = indexesOfFilled(draft.protons);
+  const bandRows = indexesOfFilled(draft.bands);
+  const peakRows = indexesOfFilled(draft.peaks);
+  const { pairs } = draft;
+  const pairsAt = { cosy: indexesOfFilled(pairs.cosy), hsqc: indexesOfFilled(pairs.hsqc), hmbc: indexesOfFilled(pairs.hmbc) };
   const pairsOf = (kind: CorrelationKind): (number | string)[][] =>
     pairsAt[kind].map((index) => {
       const { first, second } = draft.pairs[kind][index]!;
@@ -165,7 +199,12 @@ export function readDraft(draft: EvidenceDraft): DraftResult {
     },
     carbonSignals: carbonRows.map((index) => {
       const row = draft.carbons[index]!;
-      return defined({ shift: numberOrText(row.shift) ?? '', hydrogens: numberOrText(row.hydrogens), count: numberOrText(row.count) });
+      return defined({
+        shift: numberOrText(row.shift) ?? '',
+        hydrogens: numberOrText(row.hydrogens),
+        count: numberOrText(row.count),
+        window: readWindowText(row.window),
+      });
     }),
     protonSignals: protonRows.map((index) => {
       const row = draft.protons[index]!;
@@ -176,7 +215,17 @@ export function readDraft(draft: EvidenceDraft): DraftResult {
         couplings: couplingsOf(row.couplings),
       });
     }),
-    ...draft.carried,
+    infraredBands: bandRows.map((index) => {
+      const { wavenumber, intensity } = draft.bands[index]!;
+      return defined({
+        wavenumber: numberOrText(wavenumber) ?? '',
+        intensity: intensity.trim() === '' ? undefined : readIntensity(intensity),
+      });
+    }),
+    massPeaks: peakRows.map((index) => {
+      const { mz, intensity } = draft.peaks[index]!;
+      return defined({ mz: numberOrText(mz) ?? '', intensity: numberOrText(intensity) });
+    }),
     correlations: {
       cosy: pairsOf('cosy'),
       hsqc: pairsOf('hsqc'),
@@ -192,10 +241,11 @@ export function readDraft(draft: EvidenceDraft): DraftResult {
       disabledRules: options.disabledRules,
       ringSizes: { min: numberOrText(options.smallestRing) ?? '', max: numberOrText(options.largestRing) ?? null },
       carbonList: options.carbonList,
-      // Edits that were kept in the browser before this option existed lack it.
       valenceGroups: options.valenceGroups ?? undefined,
       keep: numberOrText(options.keep) ?? '',
       maxSeconds: numberOrText(options.maxSeconds) ?? null,
+      shiftWindows: options.shiftWindows ?? undefined,
+      maxConstitutions: numberOrText(options.maxConstitutions),
     }),
   });
   if (result.ok) return { ok: true, document: result.document, notes: result.notes, issues: [] };
@@ -203,6 +253,8 @@ export function readDraft(draft: EvidenceDraft): DraftResult {
     path
       .replace(/^carbonSignals\[(\d+)\]/, (_, at: string) => `carbonSignals[${carbonRows[Number(at)] ?? at}]`)
       .replace(/^protonSignals\[(\d+)\]/, (_, at: string) => `protonSignals[${protonRows[Number(at)] ?? at}]`)
+      .replace(/^infraredBands\[(\d+)\]/, (_, at: string) => `infraredBands[${bandRows[Number(at)] ?? at}]`)
+      .replace(/^massPeaks\[(\d+)\]/, (_, at: string) => `massPeaks[${peakRows[Number(at)] ?? at}]`)
       .replace(
         /^correlations\.(cosy|hsqc|hmbc)\[(\d+)\]/,
         (_, kind: CorrelationKind, at: string) => `correlations.${kind}[${pairsAt[kind][Number(at)] ?? at}]`,
@@ -223,6 +275,16 @@ export function signalsMeant(draft: EvidenceDraft, nucleus: '1H' | '13C', cell: 
   });
   return signalsNear(listed, read.value, nucleus === '13C' ? CARBON_TOLERANCE : PROTON_TOLERANCE).map((index) => listed[index]!.text);
 }
+
+/** What the shift of a row says of its carbon; null while it is no number, or where such windows are switched off. */
+export function derivedWindow(draft: EvidenceDraft, row: number): CarbonWindow | null {
+  const shift = parseNumberText(draft.carbons[row]?.shift ?? '');
+  if (draft.options.shiftWindows === false || shift.kind !== 'number') return null;
+  const hydrogens = parseNumberText(draft.carbons[row]?.hydrogens ?? '');
+  const formula = parseFormula(draft.formula);
+  return deriveWindow(shift.value, hydrogens.kind === 'number' ? hydrogens.value : undefined, formula.ok ? formula.counts : NO_ATOMS);
+}
+const NO_ATOMS: FormulaCounts = new Map();
 
 /** First message for a field or anything below it. */
 export function issueAt(issues: readonly InputIssue[], path: string): string | undefined {

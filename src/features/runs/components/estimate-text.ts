@@ -16,7 +16,7 @@ export function formatEstimate(value: number): string {
   for (const [size, name] of UNITS) {
     if (value >= size) {
       const scaled = value / size;
-      return `${scaled >= 100 ? formatCount(scaled) : scaled.toFixed(1)} ${name}`;
+      return `${scaled >= 9.95 ? formatCount(scaled) : scaled.toFixed(1)} ${name}`;
     }
   }
   if (value < 1000) return formatCount(value);
