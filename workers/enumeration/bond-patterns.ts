@@ -32,7 +32,7 @@ const PATTERNS: readonly (readonly BondPattern[])[] = [0, 1, 2, 3, 4].map((hydro
   ].filter(({ singles }) => singles >= 0),
 );
 
-export function bondCount({ singles, doubles, triples }: BondPattern): number {
+function bondCount({ singles, doubles, triples }: BondPattern): number {
   return singles + doubles + triples;
 }
 
@@ -129,7 +129,7 @@ export function createRefinement(problem: SearchProblem): (distribution: Distrib
 const isCarbon = ({ atomicNumber }: AtomClass): boolean => atomicNumber === CARBON;
 
 /** Does the demand ask for more than a carbon with these hydrogens? */
-export function isRestricting({ hybridisations, leastHetero, mostHetero }: CarbonDemand): boolean {
+function isRestricting({ hybridisations, leastHetero, mostHetero }: CarbonDemand): boolean {
   return hybridisations !== ALL_HYBRIDISATIONS || leastHetero > 0 || mostHetero < 4;
 }
 
@@ -140,7 +140,7 @@ function isPattern(bonds: BondPattern | null, orders: readonly number[]): boolea
 }
 
 /** Atoms other than C and H of the whole molecule. */
-export function countHeteroatoms({ free, units }: SearchProblem): number {
+function countHeteroatoms({ free, units }: SearchProblem): number {
   return (
     free.reduce((sum, { atomicNumber, count }) => sum + (atomicNumber === CARBON ? 0 : count), 0) +
     units.reduce((sum, { graph, count }) => sum + count * graph.atomicNumbers.filter((z) => z !== CARBON).length, 0)

@@ -30,6 +30,16 @@ export class SlotMatching {
     this.fits[kind * this.placeCount + place] = isAllowed ? 1 : 0;
   }
 
+  /** Place of a slot as found last; −1 = none. Slots are numbered by kind. */
+  placeOf(slot: number): number {
+    return this.placeOfSlot[slot];
+  }
+
+  /** Is the place of no slot, as found last? */
+  isVacant(place: number): boolean {
+    return this.slotOfPlace[place] === NONE;
+  }
+
   isPossible(): boolean {
     const { kindOfSlot, placeOfSlot, slotOfPlace, fits, placeCount } = this;
     if (kindOfSlot.length > placeCount) return false;
