@@ -89,6 +89,8 @@ export class CorrelationMatcher {
   /** Constraints of each site. */
   private readonly constraintStart: Int32Array;
   private readonly constraintsOf: Int32Array;
+  /** Sites by falling number of constraints: of those with equally few places, the first is laid first. */
+  private readonly order: Int32Array;
   private readonly hmbcSteps: number;
   private readonly cosySteps: number;
 
@@ -144,6 +146,7 @@ export class CorrelationMatcher {
     this.constraintStart = new Int32Array(sites.length + 1);
     ofSite.forEach((list, k) => (this.constraintStart[k + 1] = this.constraintStart[k] + list.length));
     this.constraintsOf = Int32Array.from(ofSite.flat());
+    this.order = Int32Array.from(sites.keys()).sort((a, b) => ofSite[b].length - ofSite[a].length || a - b);
   }
 
   /**
@@ -280,7 +283,8 @@ export class CorrelationMatcher {
     let fewest = Infinity;
     let low = 0;
     let high = 0;
-    for (let k = 0; k < this.siteCount; k++) {
+    for (let i = 0; i < this.siteCount; i++) {
+      const k = this.order[i];
       let s = firstSlot[k];
       const end = firstSlot[k + 1];
       while (s < end && atomOfSlot[s] !== NONE) s++;
@@ -380,13 +384,14 @@ export class CorrelationMatcher {
 
   /** Marks the constraints of a site that can no longer be met; returns the new total. */
   private countUnmet(site: number, depth: number, unmet: number): number {
-    const { constraintStart, constraintsOf, unmetAt } = this;
+    const { constraintStart, constraintsOf, unmetAt, isSimple, exceptions } = this;
     let total = unmet;
     for (let k = constraintStart[site]; k < constraintStart[site + 1]; k++) {
       const p = constraintsOf[k];
-      if (unmetAt[p] !== NONE || this.canBeMet(p, depth)) continue;
+      // Where every pair must be met, what was carried forward leaves only places that meet the simple ones.
+      if ((exceptions === 0 && isSimple[p] === 1) || unmetAt[p] !== NONE || this.canBeMet(p, depth)) continue;
       unmetAt[p] = depth;
-      if (++total > this.exceptions) return total;
+      if (++total > exceptions) return total;
     }
     return total;
   }
