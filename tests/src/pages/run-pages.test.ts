@@ -4,7 +4,7 @@ import { describe, expect, it } from 'vitest';
 import { FakeProblem } from '../support/fake-api';
 import { ids, laboratory, unknownDetail } from '../support/fixtures';
 import { describePages } from '../support/pages';
-import { candidateId, finishedRun, liveRun, liveRunId, progress, runHandlers } from '../support/run-fixtures';
+import { candidateId, finishedRun, hopelessEstimate, liveRun, liveRunId, progress, runHandlers } from '../support/run-fixtures';
 
 const ranking = `/runs/${ids.run}`;
 const parameters = (page: Page) => Object.fromEntries(new URL(page.url()).searchParams);
@@ -33,7 +33,32 @@ describePages('pages of runs', (open) => {
       await dialog.getByLabel('Time limit').fill('120');
       await dialog.getByRole('button', { name: 'Start run' }).click();
       await page.waitForURL(`**${ranking}`);
-      expect(api.callsOf('startRun')[0].body).toEqual({ revisionId: ids.revision, keep: 300, maxSeconds: 120 });
+      expect(api.callsOf('startRun')[0].body).toEqual({ revisionId: ids.revision, keep: 300, maxSeconds: 120, maxConstitutions: null });
+    });
+
+    it('warns of a hopeless run, says what would help most, and leads back to the evidence', async () => {
+      const api = laboratory('chemist', runHandlers({ estimateRun: () => hopelessEstimate }));
+      const page = await open(api, `/unknowns/${ids.unknown}/runs`, { width: 390 });
+      await page.getByRole('button', { name: 'Start run' }).click();
+      const dialog = page.getByRole('dialog', { name: 'Start run' });
+      await dialog.getByText('This run will not end within what is left of your quota').waitFor();
+      expect(await dialog.getByRole('listitem').allInnerTexts()).toEqual(hopelessEstimate.hints.map(({ text }) => text));
+      await dialog.getByText(/about 105 years/).waitFor();
+      await dialog.getByRole('link', { name: 'Back to the evidence' }).click();
+      await page.waitForURL(`**/unknowns/${ids.unknown}/evidence`);
+    });
+
+    it('weighs the time limit that is being typed', async () => {
+      const page = await open(laboratory('chemist', runHandlers()), `/unknowns/${ids.unknown}/runs`);
+      await page.getByRole('button', { name: 'Start run' }).click();
+      const dialog = page.getByRole('dialog', { name: 'Start run' });
+      await dialog.getByText(/24\u2009500/).waitFor();
+      expect(await dialog.getByText(/not end within/).count()).toBe(0);
+      await dialog.getByLabel('Time limit').fill('1');
+      await dialog.getByText('This run will not end within the time limit').waitFor();
+      await dialog.getByLabel('Time limit').fill('');
+      await dialog.getByLabel('Most constitutions').fill('20000');
+      await dialog.getByText('This run may not end within the limit of constitutions').waitFor();
     });
 
     it('says beside the field what the quota does not allow, and sends nothing', async () => {
@@ -199,7 +224,7 @@ describePages('pages of runs', (open) => {
     it('marks an incomplete run and a doubtful fit', async () => {
       const stopped = { ...finishedRun, status: 'stopped' as const, complete: false, noneOfTheseProbability: 0.71 };
       const page = await open(laboratory('chemist', runHandlers({ readRun: () => stopped })), ranking);
-      await page.getByText('Incomplete: the run was stopped by its time limit or your quota').waitFor();
+      await page.getByText('Incomplete: the run was stopped by a limit').waitFor();
       await page.getByText(/none of these structures is the right one/).waitFor();
       // Mean misfit of rank 1 is 5 ppm.
       await page.getByText(/Even the best candidate misses the ¹³C shifts by 5.0/).waitFor();

@@ -230,6 +230,24 @@ export const estimate: z.input<typeof estimateResponse> = {
   seconds: 0.4,
 };
 
+export const hopelessEstimate: z.input<typeof estimateResponse> = {
+  ...estimate,
+  estimate: 8.4e13,
+  low: 2e13,
+  high: 3.4e14,
+  survivors: { estimate: 7.6e13, low: 1e13, high: 3e14 },
+  cpuSeconds: 3.3e9,
+  cpuSecondsLow: 7.5e8,
+  cpuSecondsHigh: 1.4e10,
+  quotaShare: { estimate: 550_000, low: 125_000, high: 2_330_000 },
+  isHopeless: true,
+  limit: 'quota',
+  hints: [
+    { kind: 'attachedHydrogens', text: 'Attached-hydrogen counts (DEPT or HSQC) would cut this about 300-fold.', factor: 300 },
+    { kind: 'ringSizes', text: 'Allowing only rings of five and six atoms would cut this about 17-fold.', factor: 17 },
+  ],
+};
+
 /** What the pages of runs, candidates and shortlists ask for; the shortlist remembers what was kept. */
 export function runHandlers(overrides: FakeHandlers = {}): FakeHandlers {
   const kept = [itemOf(2, { note: 'Band at 815 cm-1 agrees.', verdict: 'supported' })];

@@ -1,4 +1,4 @@
-import { useId, useRef, useState } from 'react';
+import { useId, useLayoutEffect, useRef, useState } from 'react';
 import { HYBRIDISATIONS, type CarbonWindow } from '../../../../shared/schemas/evidence';
 import { Button } from '../../../components/button';
 import { Checkbox, Select } from '../../../components/field';
@@ -40,14 +40,16 @@ export function WindowCell({ row, shift, text, derived, isReadOnly, onChange }: 
   const window = own === undefined ? derived : own;
   const source = own === undefined ? 'from the shift' : own === null ? 'switched off' : 'set by hand';
   const spoken = window === null ? (own === null ? 'none' : 'not used') : describeWindow(window);
-  const place = () => {
+  // Where it stands depends on how tall it is, which is known once it is filled.
+  useLayoutEffect(() => {
     const at = button.current?.getBoundingClientRect();
     const box = panel.current;
-    if (at === undefined || box === null) return;
+    if (!isOpen || at === undefined || box === null) return;
     const fits = at.bottom + box.offsetHeight + MARGIN_PX <= innerHeight;
     box.style.top = `${fits ? at.bottom + 4 : Math.max(MARGIN_PX, at.top - box.offsetHeight - 4)}px`;
     box.style.left = `${Math.max(MARGIN_PX, Math.min(at.left, innerWidth - box.offsetWidth - MARGIN_PX))}px`;
-  };
+    box.querySelector<HTMLElement>('input, select, button')?.focus();
+  }, [isOpen]);
   return (
     <>
       <button
@@ -70,12 +72,7 @@ export function WindowCell({ row, shift, text, derived, isReadOnly, onChange }: 
         popover="auto"
         role="dialog"
         aria-label={`Window of the signal at ${shift} ppm`}
-        onToggle={(event) => {
-          setIsOpen(event.newState === 'open');
-          if (event.newState !== 'open') return;
-          place();
-          panel.current?.querySelector<HTMLElement>('input, select, button')?.focus();
-        }}
+        onToggle={(event) => setIsOpen(event.newState === 'open')}
         className="fixed inset-auto m-0 w-[272px] rounded-panel border border-seam bg-cloth p-4 text-body text-ink"
       >
         {isOpen ? (

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { evidenceDocument } from '../../../../shared/schemas/evidence.js';
 import { compareEvidence } from '../../../../src/features/evidence/lib/compare-evidence.js';
-import { draftOf, emptyDraft, issueAt, readDraft } from '../../../../src/features/evidence/lib/evidence-draft.js';
+import { derivedWindow, draftOf, emptyDraft, issueAt, readDraft } from '../../../../src/features/evidence/lib/evidence-draft.js';
 
 const document = evidenceDocument.parse({
   formula: 'C9H10O2',
@@ -28,10 +28,58 @@ describe('evidence being typed', () => {
     expect([groupsOf(['nitro', 'sulfone']), groupsOf([]), groupsOf(undefined)]).toEqual([['nitro', 'sulfone'], [], undefined]);
   });
 
+  it('keeps windows set by hand, windows switched off, and leaves the others to the shift', () => {
+    const windowed = evidenceDocument.parse({
+      formula: 'C9H10O2',
+      carbonSignals: [
+        { shift: 166.9, window: { hybridisations: ['sp2', 'sp3'], heteroNeighbours: { min: 1, max: 2 } } },
+        { shift: 128.3, window: null },
+        { shift: 21.6 },
+      ],
+      massPeaks: [{ mz: 119.049, intensity: 100 }, { mz: 91.05 }],
+      options: { shiftWindows: false, maxConstitutions: 50_000 },
+    });
+    const draft = draftOf(windowed);
+    expect(draft.carbons.map(({ window }) => window)).toEqual(['sp3,sp2;1-2', 'none', '']);
+    const read = readDraft(draft);
+    expect(read.ok && read.document.carbonSignals.map(({ window }) => window)).toEqual([
+      { hybridisations: ['sp3', 'sp2'], heteroNeighbours: { min: 1, max: 2 } },
+      null,
+      undefined,
+    ]);
+    expect(read.ok && [read.document.massPeaks, read.document.options.shiftWindows, read.document.options.maxConstitutions]).toEqual([
+      windowed.massPeaks,
+      false,
+      50_000,
+    ]);
+  });
+
+  it('derives a window from the shift and the heteroatoms of the formula, unless that is switched off', () => {
+    const draft = { ...draftOf(document), carbons: [{ shift: '166,9', hydrogens: '0', count: '', window: '' }] };
+    // The carbonyl carbon of an ester: sp2 with two oxygens (SCIENCE.md 4, 13C ranges).
+    expect(derivedWindow(draft, 0)).toMatchObject({ hybridisations: expect.arrayContaining(['sp2']) });
+    expect(derivedWindow(draft, 0)!.heteroNeighbours.max).toBeGreaterThanOrEqual(2);
+    expect(derivedWindow({ ...draft, options: { ...draft.options, shiftWindows: false } }, 0)).toBeNull();
+    expect(derivedWindow({ ...draft, carbons: [{ ...draft.carbons[0]!, shift: 'abc' }] }, 0)).toBeNull();
+  });
+
+  it('understands the letters of band tables and names the row of a wrong band', () => {
+    const bands = [
+      { wavenumber: '3350', intensity: 'br' },
+      { wavenumber: '', intensity: '' },
+      { wavenumber: '1718', intensity: 'loud' },
+    ];
+    const read = readDraft({ ...draftOf(document), bands });
+    expect(issueAt(read.issues, 'infraredBands[2].intensity')).toBeDefined();
+    expect(issueAt(read.issues, 'infraredBands[0]')).toBeUndefined();
+    const right = readDraft({ ...draftOf(document), bands: bands.slice(0, 2) });
+    expect(right.ok && right.document.infraredBands).toEqual([{ wavenumber: 3350, intensity: 'broad' }]);
+  });
+
   it('reads decimal commas and real minus signs', () => {
     const draft = {
       ...draftOf(document),
-      carbons: [{ shift: '−2,5', hydrogens: '3', count: '' }],
+      carbons: [{ shift: '−2,5', hydrogens: '3', count: '', window: '' }],
       protons: [{ shift: '0,07', count: '9', multiplicity: 's', couplings: '' }],
     };
     const read = readDraft({ ...draft, formula: 'C4H12Si', required: [] });
@@ -39,8 +87,8 @@ describe('evidence being typed', () => {
   });
 
   it('names the row of a wrong cell although blank rows stand before it', () => {
-    const blank = { shift: '', hydrogens: '', count: '' };
-    const read = readDraft({ ...draftOf(document), carbons: [blank, blank, { shift: 'abc', hydrogens: '', count: '' }] });
+    const blank = { shift: '', hydrogens: '', count: '', window: '' };
+    const read = readDraft({ ...draftOf(document), carbons: [blank, blank, { shift: 'abc', hydrogens: '', count: '', window: '' }] });
     expect(read.ok).toBe(false);
     expect(issueAt(read.issues, 'carbonSignals[2].shift')).toContain('expected a number between -50 and 300');
   });
