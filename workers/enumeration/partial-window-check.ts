@@ -81,6 +81,7 @@ class PartialAssignment {
   private hasAssignment = false;
   private readonly dropped: Uint8Array;
   private droppedCount = 0;
+  private openCarbons = -1;
 
   constructor({ demands: all, isComplete }: CarbonWindows, layout: SearchLayout) {
     const { base, open, tied, bondQuota, freeValence } = layout;
@@ -163,6 +164,7 @@ class PartialAssignment {
    * what the full test would see, but not once all rows are complete.
    */
   exists(filled: Uint8Array, known: number): boolean {
+    this.openCarbons = -1;
     this.findTwins(filled, known);
     if (this.stillHolds(filled, known)) return true;
     this.countHetero(filled, known);
@@ -205,10 +207,13 @@ class PartialAssignment {
     const { open, heteroatoms } = this;
     let hetero = this.innerHetero[v];
     if (v < open) for (let k = 0; k < heteroatoms.length; k++) if (filled[v * FILL_STRIDE + heteroatoms[k]] !== 0) hetero++;
-    if (hetero > this.demandMost[demand]) return false;
-    const missing = this.demandLeast[demand] - hetero;
-    if (missing <= 0) return true;
-    if (v < known || v >= open || this.heteroFrom[known] < missing) return false;
+    const least = this.demandLeast[demand];
+    const most = this.demandMost[demand];
+    if (hetero > most) return false;
+    if (v < known || v >= open) return hetero >= least;
+    // Enough bonds are left for neither limit to be passed.
+    const fullDegree = this.fullDegree[v];
+    if (hetero >= least && fullDegree > 0 && hetero + fullDegree - this.innerDegree[v] <= most) return true;
     const scanned = known > this.tied ? known : this.tied;
     let left = this.freeValence[v];
     let bonds = this.innerDegree[v];
@@ -218,7 +223,26 @@ class PartialAssignment {
       left -= order;
       bonds++;
     }
-    return missing <= (this.fullDegree[v] > 0 ? this.fullDegree[v] - bonds : left);
+    if (left === 0) return hetero >= least;
+    const bondsLeft = fullDegree > 0 ? fullDegree - bonds : left;
+    if (hetero + Math.min(bondsLeft, this.heteroFrom[known]) < least) return false;
+    const bondsDue = fullDegree > 0 ? bondsLeft : Math.trunc((left + 2) / 3);
+    return hetero + bondsDue <= most || hetero + bondsDue - (this.openCarbonsFrom(filled, known) - 1) <= most;
+  }
+
+  /** Incomplete carbons; counted once in a test. */
+  private openCarbonsFrom(filled: Uint8Array, known: number): number {
+    if (this.openCarbons >= 0) return this.openCarbons;
+    const { open, tied, freeValence, isHetero } = this;
+    const scanned = known > tied ? known : tied;
+    this.openCarbons = 0;
+    for (let v = known; v < open; v++) {
+      if (isHetero[v] === 1) continue;
+      let left = freeValence[v];
+      for (let w = 0; w < scanned; w++) left -= filled[v * FILL_STRIDE + w];
+      if (left > 0) this.openCarbons++;
+    }
+    return this.openCarbons;
   }
 
   /** Heteroatoms that each carbon has at least and can have at most when all is bonded, and which demands it fits then. */
