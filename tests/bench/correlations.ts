@@ -18,7 +18,7 @@ interface Problem {
   readonly fragments: readonly string[];
   readonly exceptions: number;
 }
-/** Invented compounds: no list of references. */
+/** Structures of every kind. Their signals and pairs follow from the graph; nothing was measured. */
 const PROBLEMS: readonly Problem[] = [
   { formula: 'C6H10O3', smiles: 'CCOC(=O)CC(C)=O', fragments: [], exceptions: 0 },
   { formula: 'C8H14O2', smiles: 'CC(=O)OC1CCCCC1', fragments: [], exceptions: 0 },

@@ -150,7 +150,7 @@ describe('COSY, HSQC and HMBC pairs', () => {
   });
 
   it('shrink the list to few and cut while structures are built', () => {
-    // An invented by-product: 4-(hydroxymethyl)phenyl acetate with all its pairs.
+    // 4-(Hydroxymethyl)phenyl acetate; signals and pairs follow from the graph, nothing was measured.
     const graph = graphOf('CC(=O)Oc1ccc(CO)cc1');
     const spectra = correlationEvidenceOf(graph);
     const input = (correlations: object): EvidenceInput => ({
