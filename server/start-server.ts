@@ -48,6 +48,7 @@ export async function startServer({ config, shutdown, announce }: StartOptions):
   const compute = createComputePool({
     threads: config.computeThreads,
     isYielding: true,
+    shardHeapMegabytes: config.shardMemoryMegabytes,
     onFault: (error) => logger.error({ err: error }, 'compute thread failed'),
   });
   shutdown.add('compute threads', () => compute.close());

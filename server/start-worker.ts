@@ -25,6 +25,7 @@ export async function startWorker(config: WorkerConfig, shutdown: Shutdown): Pro
   shutdown.add('Redis connection', () => redis.disconnect());
   const compute = createComputePool({
     threads: config.computeThreads,
+    shardHeapMegabytes: config.shardMemoryMegabytes,
     onFault: (error) => logger.error({ err: error }, 'compute thread failed'),
   });
   shutdown.add('compute threads', () => compute.close());

@@ -6,6 +6,7 @@ import {
   databaseAddress,
   expected,
   jobLockSeconds,
+  shardMemory,
   logLevel,
   MAX_THREADS,
   readEnvironment,
@@ -34,6 +35,8 @@ export interface Environment {
   /** null: runs are carried inside this process. */
   readonly redisUrl: string | null;
   readonly jobLockSeconds: number;
+  /** Heap in which a shard ends itself, incomplete. */
+  readonly shardMemoryMegabytes: number;
   readonly logLevel: 'fatal' | 'error' | 'warn' | 'info' | 'debug' | 'trace' | 'silent';
   /** Cookies only over https. */
   readonly cookieSecure: boolean;
@@ -62,6 +65,7 @@ const environmentSchema = z
     COMPUTE_THREADS: wholeNumber(0, MAX_THREADS).optional(),
     REDIS_URL: redisAddress.optional(),
     JOB_LOCK_SECONDS: jobLockSeconds,
+    SHARD_MEMORY_MB: shardMemory,
     LOG_LEVEL: logLevel,
     COOKIE_SECURE: yesOrNo.optional(),
     TRUSTED_PROXIES: wholeNumber(0, 10).default(0),
@@ -93,6 +97,7 @@ export function parseEnvironment(variables: Readonly<Record<string, string | und
     computeThreads: values.COMPUTE_THREADS ?? Math.max(1, availableParallelism() - 1),
     redisUrl: values.REDIS_URL ?? null,
     jobLockSeconds: values.JOB_LOCK_SECONDS,
+    shardMemoryMegabytes: values.SHARD_MEMORY_MB,
     logLevel: values.LOG_LEVEL,
     cookieSecure: values.COOKIE_SECURE ?? publicUrl.startsWith('https:'),
     trustedProxies: values.TRUSTED_PROXIES,

@@ -36,6 +36,8 @@ export const logLevel = z
   .default('warn');
 
 /** Seconds without a sign of life after which the shard of a worker goes to another one. */
+/** MB of heap in which a shard ends itself, incomplete: far above what one needs, which is some tens. */
+export const shardMemory = wholeNumber(64, 65_536).default(512);
 export const jobLockSeconds = wholeNumber(1, 600).default(15);
 
 /**

@@ -8,11 +8,12 @@ import {
   MAX_THREADS,
   readEnvironment,
   redisAddress,
+  shardMemory,
   wholeNumber,
 } from './environment-values.js';
 
 /** What a worker process needs to know: no page, no mail, no session. */
-export interface WorkerConfig extends Pick<Environment, 'computeThreads' | 'jobLockSeconds' | 'logLevel'> {
+export interface WorkerConfig extends Pick<Environment, 'computeThreads' | 'jobLockSeconds' | 'shardMemoryMegabytes' | 'logLevel'> {
   readonly databaseUrl: string;
   readonly redisUrl: string;
 }
@@ -25,6 +26,7 @@ const workerSchema = z
     REDIS_URL: redisAddress.optional(),
     COMPUTE_THREADS: wholeNumber(1, MAX_THREADS).optional(),
     JOB_LOCK_SECONDS: jobLockSeconds,
+    SHARD_MEMORY_MB: shardMemory,
     LOG_LEVEL: logLevel,
   })
   .transform((values, context) => {
@@ -46,6 +48,7 @@ export function parseWorkerEnvironment(variables: Readonly<Record<string, string
     redisUrl,
     computeThreads: values.COMPUTE_THREADS ?? availableParallelism(),
     jobLockSeconds: values.JOB_LOCK_SECONDS,
+    shardMemoryMegabytes: values.SHARD_MEMORY_MB,
     logLevel: values.LOG_LEVEL,
   };
 }

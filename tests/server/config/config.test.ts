@@ -16,6 +16,7 @@ describe('the environment', () => {
       databaseUrl: null,
       redisUrl: null,
       jobLockSeconds: 15,
+      shardMemoryMegabytes: 512,
       dataDirectory: resolve('.data'),
       smtpUrl: null,
       cookieSecure: false,
@@ -91,6 +92,7 @@ describe('the environment of a worker', () => {
       databaseUrl: addresses.DATABASE_URL,
       redisUrl: addresses.REDIS_URL,
       jobLockSeconds: 15,
+      shardMemoryMegabytes: 512,
       logLevel: 'warn',
     });
     expect(parseWorkerEnvironment(addresses).computeThreads).toBeGreaterThanOrEqual(1);
