@@ -1,10 +1,13 @@
-import { runWeight, shardSpacing } from './share.js';
+import { type RunSize, runSize, shardSpacing } from './share.js';
+import { TARGET_SHARDS } from './shard-limits.js';
 
 /** Who asks for a slot. */
 export interface Lane {
   readonly teamId: string;
   readonly runId: string;
 }
+
+const UNKNOWN_SIZE = runSize(null, TARGET_SHARDS);
 
 interface WaitingTask {
   readonly start: () => Promise<void>;
@@ -19,8 +22,8 @@ interface RunInLine {
 }
 
 /**
- * Shares a fixed number of slots among runs as `share.ts` says: teams get the same, and inside a team small runs get more
- * than large ones. No more tasks are started than there are slots, so a run that has just been queued waits for one shard
+ * Shares a fixed number of slots among runs as `share.ts` says: teams get the same time, and a small run does not
+ * wait for a large one. No more tasks are started than there are slots, so a run that has just been queued waits for one shard
  * at most, however many shards the others still have.
  */
 export class FairScheduler {
@@ -28,7 +31,7 @@ export class FairScheduler {
   #busy = 0;
   /** Without empty ones. Of those at the same position the first is next; whoever was served goes to the back. */
   #line: RunInLine[] = [];
-  readonly #weights = new Map<string, number>();
+  readonly #sizes = new Map<string, RunSize>();
   /** Where the task stood that was started last: new runs begin there. */
   #front = 0;
 
@@ -47,9 +50,9 @@ export class FairScheduler {
     });
   }
 
-  /** Says how large a run is, in thread seconds; until then it counts as small. */
-  setSize(runId: string, expectedSeconds: number | null): void {
-    this.#weights.set(runId, runWeight(expectedSeconds));
+  /** Says how large a run is; until then it counts as one of unknown size. */
+  setSize(runId: string, size: RunSize): void {
+    this.#sizes.set(runId, size);
   }
 
   /** Skips whatever a run still has waiting. */
@@ -60,7 +63,7 @@ export class FairScheduler {
 
   /** Forgets the size of a run that has ended. */
   forget(runId: string): void {
-    this.#weights.delete(runId);
+    this.#sizes.delete(runId);
   }
 
   #tasksOf(lane: Lane): WaitingTask[] {
@@ -88,15 +91,15 @@ export class FairScheduler {
     const next = others.reduce((best, run) => (run.position < best.position ? run : best), first);
     const task = next.tasks.shift();
     this.#front = next.position;
-    const team = this.#line.filter(({ lane }) => lane.teamId === next.lane.teamId).map((run) => this.#weightOf(run));
-    next.position += shardSpacing(this.#weightOf(next), team);
+    const team = this.#line.filter(({ lane }) => lane.teamId === next.lane.teamId).map((run) => this.#sizeOf(run).weight);
+    next.position += shardSpacing(this.#sizeOf(next), team);
     this.#line = [...this.#line.filter((run) => run !== next), next];
     this.#removeEmpty();
     return task;
   }
 
-  #weightOf({ lane }: RunInLine): number {
-    return this.#weights.get(lane.runId) ?? runWeight(0);
+  #sizeOf({ lane }: RunInLine): RunSize {
+    return this.#sizes.get(lane.runId) ?? UNKNOWN_SIZE;
   }
 
   #removeEmpty(): void {

@@ -10,6 +10,7 @@ import { RunClock, type RunFigures } from './run-clock.js';
 import { describeEnd } from './run-end.js';
 import { crashedTooOften, describeFailure, isCancellation, MAX_CRASHES } from './run-failure.js';
 import { guessSeconds } from './run-size.js';
+import { runSize } from './share.js';
 import { countLimitStop, QUOTA_STOP, type Stop, stopOfShards, timeLimitStop } from './run-stop.js';
 import type { RunEnd, RunStore } from './run-store.js';
 import type { RunTask } from './run-task.js';
@@ -107,9 +108,9 @@ export class RunDriver {
   }
 
   async #work(): Promise<RunEnd | null> {
-    void this.#guessSize().catch((error: unknown) => this.#stopWith(this.#asStop(error)));
     const shards = this.#task.shards ?? (await this.#plan());
     if (shards === null) return null;
+    void this.#guessSize(shards.length).catch((error: unknown) => this.#stopWith(this.#asStop(error)));
     this.#clock.startEnumerating(shards.length, this.#figures());
     this.#stage = 'enumerating';
     this.#emitProgress();
@@ -134,11 +135,11 @@ export class RunDriver {
     return planned.shards;
   }
 
-  /** Nothing waits for it: until it is known the run counts as small. */
-  async #guessSize(): Promise<void> {
+  /** Nothing waits for it. */
+  async #guessSize(shardCount: number): Promise<void> {
     const { compute, scheduler } = this.#options;
     const expectedSeconds = await guessSeconds(compute, this.#task);
-    if (this.#stage !== 'done') scheduler.setSize(this.#task.id, expectedSeconds);
+    if (this.#stage !== 'done') scheduler.setSize(this.#task.id, runSize(expectedSeconds, shardCount));
   }
 
   async #runShard(shard: ShardSpec): Promise<void> {

@@ -4,7 +4,7 @@ import { ShardMerger } from '../merge-shards.js';
 import { guessSeconds } from '../run-size.js';
 import { readStop, type RunFailure } from '../run-stop.js';
 import { CannotResume, readRunTask, type RunTask } from '../run-task.js';
-import { runWeight, shardSpacing } from '../share.js';
+import { runSize, shardSpacing } from '../share.js';
 import { attempt, withSignal } from './attempt.js';
 import { frontOfLine, respaceTeam, shardPriorities } from './line.js';
 import { type FinishData, finishId, jobOptions, type PlanJob, RUN_QUEUE, shardId } from './run-jobs.js';
@@ -77,16 +77,16 @@ async function addFlow(context: RunJobsContext, task: RunTask, signal: AbortSign
   const merger = new ShardMerger(1);
   for (const result of task.results) merger.add({ ...result, kept: [] });
   const { constitutionCount, survivorCount, cpuSeconds, shardCount } = merger;
-  const weight = runWeight(expectedSeconds);
+  const size = runSize(expectedSeconds, shards.length);
   const data: FinishData = {
     runId: task.id,
     teamId: task.teamId,
-    weight,
+    size,
     shardCount: shards.length,
     doneBefore: { constitutionCount, survivorCount, cpuSeconds, shardCount },
   };
   const open = shards.filter(({ index }) => !merger.has(index));
-  const priorities = shardPriorities(await frontOfLine(queue), shardSpacing(weight, [weight]), open.length);
+  const priorities = shardPriorities(await frontOfLine(queue), shardSpacing(size, [size.weight]), open.length);
   const options = jobOptions(timing);
   // Jobs that are there already, from an attempt that was cut off here, stay as they are.
   await flows.add({

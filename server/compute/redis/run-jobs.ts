@@ -1,6 +1,7 @@
 import type { DefaultJobOptions, Job } from 'bullmq';
 import { MAX_CRASHES } from '../run-failure.js';
 import { SHARD_PLAN_VERSION } from '../run-store.js';
+import type { RunSize } from '../share.js';
 
 /**
  * The jobs of a run. `plan` cuts it into shards and adds the flow: `finish` as the parent, which BullMQ starts when every
@@ -28,8 +29,7 @@ export interface ShardData {
 export interface FinishData {
   readonly runId: string;
   readonly teamId: string;
-  /** Share within the team: see share.ts. */
-  readonly weight: number;
+  readonly size: RunSize;
   readonly shardCount: number;
   /** Shards that were done before this flow was made. */
   readonly doneBefore: ShardFigures & { readonly shardCount: number };

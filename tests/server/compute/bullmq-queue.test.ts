@@ -6,7 +6,7 @@ import { ComputeBusy } from '../../../server/compute/compute-service.js';
 import type { RunQueue } from '../../../server/compute/queue.js';
 import { createBullmqQueue } from '../../../server/compute/redis/bullmq-queue.js';
 import { connectRedis, RedisUnreachable } from '../../../server/compute/redis/redis-connection.js';
-import { shardPriorities } from '../../../server/compute/redis/line.js';
+import { frontOfLine, shardPriorities } from '../../../server/compute/redis/line.js';
 import { finishId, KEY_PREFIX, planId, type QueueTiming, readJobId, RUN_QUEUE, shardId } from '../../../server/compute/redis/run-jobs.js';
 import { startRunWorker } from '../../../server/compute/redis/run-worker.js';
 import { findFreePort } from '../../../server/database/mariadb-process.js';
@@ -199,6 +199,19 @@ describe.runIf(hasRedis)('the queue on Redis', () => {
     expect((await run.reload()).status).toBe('finished');
   });
 
+  it('moves everybody up before the line ends, and keeps their order', async () => {
+    const jobs = new Queue(RUN_QUEUE, { connection: admin, prefix: KEY_PREFIX });
+    const far = 2 ** 20 + 7;
+    for (const [name, priority] of Object.entries({ c: far + 50, a: far, b: far + 1 })) await jobs.add(name, {}, { priority });
+    expect(await frontOfLine(jobs)).toBe(1);
+    expect((await jobs.getPrioritized(0, -1)).map(({ name, priority }) => [name, priority])).toEqual([
+      ['a', 1],
+      ['b', 2],
+      ['c', 51],
+    ]);
+    await jobs.close();
+  });
+
   it('leaves nothing of a run behind in Redis', async () => {
     await openWorker(createFakeCompute({ shardCount: 5 }));
     const queue = await openServer();
@@ -232,9 +245,9 @@ describe('the jobs of a run', () => {
   });
 
   it('stand on the line one spacing after the other, and never beyond its end', () => {
-    expect(shardPriorities(5, 1, 3)).toEqual([5, 13, 21]);
-    expect(shardPriorities(5, 1.5, 3)).toEqual([5, 17, 29]);
+    expect(shardPriorities(5, 1, 3)).toEqual([5, 25, 45]);
+    expect(shardPriorities(5, 0.01, 8)).toEqual([5, 5, 5, 6, 6, 6, 6, 6]);
     // Of BullMQ: priorities go up to 2^21 (its documentation), and 0 would come before all others.
-    expect(Math.max(...shardPriorities(2 ** 21 - 10, 12, 200))).toBeLessThan(2 ** 21);
+    expect(Math.max(...shardPriorities(2 ** 21 - 10, 60, 200))).toBeLessThan(2 ** 21);
   });
 });

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { FairScheduler } from '../../../server/compute/fair-scheduler.js';
+import { runSize } from '../../../server/compute/share.js';
 
 /** A scheduler whose tasks are released by hand, one after the other. */
 function createBench(slots: number) {
@@ -49,18 +50,29 @@ describe('FairScheduler', () => {
 
   it('gives a small run more than a large one of its team, without stopping the large one or taking from other teams', async () => {
     const { scheduler, started, schedule, releaseAll } = createBench(1);
-    scheduler.setSize('large', 3_600);
-    scheduler.setSize('small', 0.5);
+    // Shards of a second each: an hour weighs 1/12, twenty seconds 1/5.
+    scheduler.setSize('large', runSize(3_600, 3_600));
+    scheduler.setSize('small', runSize(20, 20));
+    scheduler.setSize('other', runSize(60, 60));
     void schedule('t1', 'large', 60);
     void schedule('t2', 'other', 60);
     void schedule('t1', 'small', 20);
     await releaseAll();
     const untilSmallIsDone = started.slice(0, started.lastIndexOf('small') + 1);
     const count = (runId: string) => untilSmallIsDone.filter((id) => id === runId).length;
-    expect(count('large')).toBeGreaterThanOrEqual(1);
-    // An hour weighs 1/12.
-    expect(count('large')).toBeLessThanOrEqual(3);
+    expect(count('large')).toBeGreaterThanOrEqual(7);
+    expect(count('large')).toBeLessThanOrEqual(10);
     expect(Math.abs(count('other') - count('small') - count('large'))).toBeLessThanOrEqual(2);
+  });
+
+  it('shares time, not shards: the short ones of a small run do not wait for long ones', async () => {
+    const { scheduler, started, schedule, releaseAll } = createBench(1);
+    scheduler.setSize('hours', runSize(7_200, 192));
+    scheduler.setSize('second', runSize(1, 100));
+    void schedule('t1', 'hours', 10);
+    void schedule('t2', 'second', 100);
+    await releaseAll();
+    expect(started.slice(0, started.lastIndexOf('second')).filter((id) => id === 'hours').length).toBeLessThanOrEqual(2);
   });
 
   it('makes a run that comes late wait for one task at most', async () => {

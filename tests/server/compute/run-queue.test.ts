@@ -286,8 +286,8 @@ describe.each(implementations)('%s', (_name, createBench, canRun) => {
         clearInterval(pump);
         const formulas = compute.started.map(({ formula }) => formula);
         const before = formulas.slice(0, formulas.lastIndexOf('C4H10O'));
-        // One was under way; of what came then the hour gets 1 in 13.
-        expect(before.filter((formula) => formula === 'C9H10O2').length).toBeLessThanOrEqual(4);
+        // One was under way, others may be taken before the sizes are known.
+        expect(before.filter((formula) => formula === 'C9H10O2').length).toBeLessThanOrEqual(3);
         expect((await large.reload()).status).toBe('finished');
       });
     });
