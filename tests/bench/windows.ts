@@ -1,9 +1,9 @@
 /*
- * What windows of 13C shifts save, and what they cost: npm run bench -- windows [--limit N] [--seconds S] [--from A] [--to B]
+ * What windows of 13C shifts save, and what they cost: npm run bench -- windows [--limit N] [--seconds S] [--from A] [--to B] [--build-only]
  *
  * First the share of true structures that derived windows wrongly exclude, over all cases of fold 0 (compounds on which
  * neither the ranges nor the predictor were fitted). Then N of them (default 12), spectra alone, searched with and without
- * windows: constitutions built and seconds, no scoring. A search is stopped after S seconds (default 30); its figures stand
+ * windows: constitutions built and CPU seconds, every one filtered and scored unless --build-only. A search is stopped after S seconds (default 30); its figures stand
  * with a +.
  */
 import { parseArgs } from 'node:util';
@@ -20,6 +20,7 @@ const { values } = parseArgs({
     seconds: { type: 'string', default: '30' },
     from: { type: 'string', default: '10' },
     to: { type: 'string', default: '13' },
+    'build-only': { type: 'boolean', default: false },
   },
 });
 const all = readRankingCases();
@@ -46,7 +47,7 @@ console.log(
 );
 for (const entry of excluded) console.log(`  ${entry.id} ${entry.truth} ${rejectionOf(entry, true)!}`);
 
-/** Builds every constitution of a document in this thread. */
+/** Builds and scores every constitution of a document in this thread. */
 function build(evidence: EvidenceDocument): { built: number; branches: number; seconds: number; isFinished: boolean } {
   const started = process.cpuUsage();
   const seconds = (): number => {
@@ -54,14 +55,18 @@ function build(evidence: EvidenceDocument): { built: number; branches: number; s
     return (user + system) / 1e6;
   };
   const search = createSearch(evidence);
+  const evaluator = values['build-only'] ? null : createEvaluator(evidence, SETTINGS);
   let built = 0;
   const isLate = (): boolean => seconds() > Number(values.seconds);
   const isFinished = planShards(search, 1).every((shard) =>
     enumerateShard(search, shard, {
       onMultigraphs: () => {},
-      onConstitution: () => built++,
+      onConstitution(graph) {
+        built++;
+        evaluator?.evaluate(graph);
+      },
       shouldStop: isLate,
-      stopRequested: () => built % 1024 === 0 && isLate(),
+      stopRequested: () => built % 256 === 0 && isLate(),
     }),
   );
   return { built, branches: search.branches.length, seconds: seconds(), isFinished };
