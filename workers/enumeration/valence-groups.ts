@@ -36,6 +36,9 @@ const GROUP_KINDS = [
 ] as const satisfies ReadonlyArray<{ id: string; group: ValenceGroup; smiles: string }>;
 export type ValenceGroupKind = (typeof GROUP_KINDS)[number]['id'];
 
+/** Stands for azide and diazo groups. */
+const DIAZO_UNIT = '*=[N+]=[N-]';
+
 const fragmentOf = new Map<string, Fragment>();
 function readKind(smiles: string): Fragment {
   const known = fragmentOf.get(smiles);
@@ -86,7 +89,10 @@ export function formableGroups(evidence: EvidenceDocument, available: ReadonlyMa
     return read.kind === 'query' ? [{ smiles, query: read.query }] : [];
   });
   for (const group of evidence.options.valenceGroups ?? []) {
-    const kinds = GROUP_KINDS.filter((kind) => kind.group === group && fits(readKind(kind.smiles), available));
+    // The nitrogen beside the N₂ of an azide may lie in a required fragment.
+    const kinds = GROUP_KINDS.filter(
+      (kind) => kind.group === group && fits(readKind(kind.id === 'azide' ? DIAZO_UNIT : kind.smiles), available),
+    );
     if (kinds.length === 0) continue;
     const { name } = VALENCE_GROUP_NAMES[group];
     const missing = missingBandsOf(group, evidence.infraredBands);
@@ -117,7 +123,7 @@ export function formableGroups(evidence: EvidenceDocument, available: ReadonlyMa
   }
   if (!allowed.has('nitro')) forbiddenPartners.push('nitro');
   if (allowed.has('azide') || allowed.has('diazo')) {
-    smiles.push('*=[N+]=[N-]');
+    smiles.push(DIAZO_UNIT);
     if (!allowed.has('azide')) forbiddenPartners.push('azide');
     if (!allowed.has('diazo')) forbiddenPartners.push('diazo');
   }
