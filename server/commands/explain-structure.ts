@@ -22,7 +22,8 @@ export async function explainStructure(context: AppContext, run: Run, smiles: st
       if (kept !== null)
         return { kind: 'ranked', smiles: explanation.smiles, rank: kept.rank, candidateId: kept.id, probability: kept.probability };
       const lowest = await Candidate.findOne({ where: { runId: run.id }, attributes: ['score'], order: [['rank', 'DESC']] });
-      return { kind: 'notKept', smiles: explanation.smiles, score: explanation.score, lowestKeptScore: lowest?.score ?? null };
+      const { smiles: canonical, score } = explanation;
+      return { kind: 'notKept', smiles: canonical, score, lowestKeptScore: lowest?.score ?? null, runComplete: run.complete };
     }
   }
 }

@@ -148,8 +148,14 @@ export const explanationResponse = z.discriminatedUnion('kind', [
     reasons: z.array(z.object({ reason: z.string(), text: z.string(), atoms: z.array(z.number()) })),
   }),
   z.object({ kind: z.literal('ranked'), smiles: z.string(), rank: z.number().int(), candidateId: id, probability: z.number() }),
-  /** Survives every filter but scored below the kept ones. */
-  z.object({ kind: z.literal('notKept'), smiles: z.string(), score: z.number(), lowestKeptScore: z.number().nullable() }),
+  /** Survives every filter but scored below the kept ones, or was not reached: that is possible where the run is incomplete. */
+  z.object({
+    kind: z.literal('notKept'),
+    smiles: z.string(),
+    score: z.number(),
+    lowestKeptScore: z.number().nullable(),
+    runComplete: z.boolean(),
+  }),
   z.object({ kind: z.literal('otherFormula'), smiles: z.string(), formula: z.string(), expected: z.string() }),
 ]);
 export const exportQuery = z.object({

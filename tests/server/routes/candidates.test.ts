@@ -110,7 +110,13 @@ describe('POST /runs/:runId/explanations', () => {
 
   it('tells a structure that survived from one that was kept', async () => {
     compute.answers.explain = { kind: 'survives', score: -40, terms: {}, key: 'another', smiles: 'CCCCO' };
-    expect((await explain('CCCCO')).body).toEqual({ kind: 'notKept', smiles: 'CCCCO', score: -40, lowestKeptScore: candidates[11].score });
+    expect((await explain('CCCCO')).body).toEqual({
+      kind: 'notKept',
+      smiles: 'CCCCO',
+      score: -40,
+      lowestKeptScore: candidates[11].score,
+      runComplete: true,
+    });
   });
 
   it('tells why a structure was rejected, or that its formula is another', async () => {

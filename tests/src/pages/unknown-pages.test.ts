@@ -124,6 +124,24 @@ describePages('an unknown', (open) => {
     expect(await record.getByRole('heading', { level: 1 }).textContent()).toBe('Late-eluting impurity of batch 7');
   });
 
+  it('lets the window of a carbon signal be changed by keyboard, switched off and given back to the shift', async () => {
+    const page = await open(laboratory('chemist'), `/unknowns/${ids.unknown}/evidence`, { width: 390 });
+    const cell = page.getByRole('button', { name: /^Window, row 2/ });
+    await expect.poll(() => cell.getAttribute('aria-label')).toMatch(/sp².*from the shift/);
+    await cell.focus();
+    await page.keyboard.press('Enter');
+    const editor = page.getByRole('dialog', { name: /^Window of the signal/ });
+    await editor.getByLabel('sp³').waitFor();
+    await page.keyboard.press('Space');
+    await expect.poll(() => cell.getAttribute('aria-label')).toMatch(/sp³ or sp².*set by hand/);
+    await editor.getByRole('button', { name: 'No window' }).click();
+    await expect.poll(() => cell.getAttribute('aria-label')).toMatch(/none, switched off/);
+    await editor.getByRole('button', { name: 'As the shift says' }).click();
+    await expect.poll(() => cell.getAttribute('aria-label')).toMatch(/from the shift/);
+    await page.keyboard.press('Escape');
+    await expect.poll(() => editor.count()).toBe(0);
+  });
+
   it('changes the status at once and tells the list', async () => {
     const api = laboratory('lead', { updateUnknown: ({ body }) => unknownDetail(true, body as object) });
     const page = await open(api, `/unknowns/${ids.unknown}/comments`);

@@ -71,13 +71,19 @@ export function ExplanationAnswer({ explanation }: { explanation: Explanation })
       return (
         <div className="space-y-3">
           <StatusWord tone="weld" icon={Sigma}>
-            <strong className="font-semibold">It survives every filter but was not kept</strong>
+            <strong className="font-semibold">
+              {explanation.runComplete
+                ? 'It survives every filter but was not kept'
+                : 'It survives every filter but is not in this incomplete run'}
+            </strong>
           </StatusWord>
           <StructureDrawing smiles={explanation.smiles} width={340} height={180} />
           <p className="tabular">
             Its score is {formatSigned(explanation.score, 1)}
             {explanation.lowestKeptScore === null ? '' : `; the last candidate kept has ${formatSigned(explanation.lowestKeptScore, 1)}`}.
-            Its weight is part of the probabilities all the same.
+            {explanation.runComplete
+              ? 'Its weight is part of the probabilities all the same.'
+              : 'A limit stopped the run before it had seen every constitution: this one may not have been reached, and then it is not part of the probabilities.'}
           </p>
         </div>
       );
