@@ -120,6 +120,7 @@ const FAMILIES = ['C2H4N2O3', 'C3H6N2O2', 'C2H3N3O', 'C3H6N2OS', 'C2H6O3S2', 'C2
 describe('groups of higher valence beside required fragments', () => {
   it('give exactly the structures in which the fragments find room and a group holds every special atom outside them', () => {
     const asWritten = JSON.stringify({ kekulize: false, setAromaticity: false });
+    const molecules = new Map<MolecularGraph, NonNullable<ReturnType<typeof rdkit.get_mol>>>();
     let withGroups = 0;
     fc.assert(
       fc.property(
@@ -136,14 +137,16 @@ describe('groups of higher valence beside required fragments', () => {
             picks,
             wanted,
           );
-          fc.pre(cut.smiles.includes('*') && parseSmiles(cut.smiles).ok);
+          const read = parseSmiles(cut.smiles);
+          // A note: the fragment brings an O⁻ that the cut has not.
+          fc.pre(cut.smiles.includes('*') && read.ok && read.notes.length === 0);
           // An open double bond at a special atom makes what no group is, or leaves open which group it is.
           fc.pre(!/\[(N\+|S|PH?2?)\][-=#\d]*(\([-#]?\*\))*\(=\*\)/.test(cut.smiles) || groups === ALL);
           const query = rdkit.get_qmol(cut.smarts)!;
           const placements = (graph: MolecularGraph): number[][] => {
-            const molecule = rdkit.get_mol(molfileOf(graph), asWritten)!;
+            const molecule = molecules.get(graph) ?? rdkit.get_mol(molfileOf(graph), asWritten)!;
+            molecules.set(graph, molecule);
             const found = JSON.parse(molecule.get_substruct_matches(query)) as { atoms: number[] }[];
-            molecule.delete();
             return (Array.isArray(found) ? found : [])
               .map((match) => match.atoms)
               .filter((atoms) => atoms.every((atom, k) => outsideOrders(graph, atom, atoms) === cut.quotas[k]));
@@ -179,9 +182,10 @@ describe('groups of higher valence beside required fragments', () => {
           if (expected.length > 0) withGroups++;
         },
       ),
-      { numRuns: 150 },
+      { numRuns: 100 },
     );
-    expect(withGroups).toBeGreaterThan(50);
+    for (const molecule of molecules.values()) molecule.delete();
+    expect(withGroups).toBeGreaterThan(30);
   }, 240_000);
 
   it('make a second nitro group beside a required one, each dinitro compound once', () => {
@@ -202,6 +206,11 @@ describe('groups of higher valence beside required fragments', () => {
     ).keys;
     expect(twice).toHaveLength(4);
     for (const key of twice) expect(keys).toContain(key);
+  });
+
+  it('make an azide on the nitrogen of a required fragment', () => {
+    const input = { formula: 'C2H6N4', fragments: { required: [{ smiles: '*N(*)N=*', count: 1 }] }, options: { valenceGroups: ALL } };
+    expect(enumerateAll(input, { keep: true }).keys).toContain(constitutionKey(graphOf('CN(C)N=[N+]=[N-]'), true));
   });
 
   it('count their oxygens among required ones, as S=O and P=O of the structure', () => {
