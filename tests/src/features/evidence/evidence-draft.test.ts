@@ -1,7 +1,14 @@
 import { describe, expect, it } from 'vitest';
 import { evidenceDocument } from '../../../../shared/schemas/evidence.js';
 import { compareEvidence } from '../../../../src/features/evidence/lib/compare-evidence.js';
-import { derivedWindow, draftOf, emptyDraft, issueAt, readDraft } from '../../../../src/features/evidence/lib/evidence-draft.js';
+import {
+  derivedWindow,
+  draftOf,
+  emptyDraft,
+  issueAt,
+  readDraft,
+  signalsMeant,
+} from '../../../../src/features/evidence/lib/evidence-draft.js';
 
 const document = evidenceDocument.parse({
   formula: 'C9H10O2',
@@ -91,6 +98,37 @@ describe('evidence being typed', () => {
     const read = readDraft({ ...draftOf(document), carbons: [blank, blank, { shift: 'abc', hydrogens: '', count: '', window: '' }] });
     expect(read.ok).toBe(false);
     expect(issueAt(read.issues, 'carbonSignals[2].shift')).toContain('expected a number between -50 and 300');
+  });
+
+  it('reads pairs of 2D spectra, and names the row of a wrong one although blank rows stand before it', () => {
+    const withPairs = { ...document, correlations: { ...document.correlations, hsqc: [[21.6, 2.4]] as [number, number][], hmbcBonds: 4 } };
+    const draft = draftOf(withPairs);
+    const read = readDraft(draft);
+    expect(read.ok && read.document.correlations).toEqual(withPairs.correlations);
+    const blank = { first: '', second: '' };
+    const wrong = readDraft({
+      ...draft,
+      pairs: { ...draft.pairs, hmbc: [blank, { first: '7,21', second: 'abc' }], hsqc: [blank, { first: '166.9', second: '7.21' }] },
+    });
+    expect(issueAt(wrong.issues, 'correlations.hmbc[1][1]')).toContain('expected a number between -50 and 300');
+    const contradicted = readDraft({ ...draft, pairs: { ...draft.pairs, hsqc: [blank, { first: '166.9', second: '7.21' }] } });
+    expect(issueAt(contradicted.issues, 'correlations.hsqc[1]')).toContain('has 0 attached hydrogens');
+  });
+
+  it('shows which signals a shift of a pair can mean', () => {
+    const draft = draftOf(document);
+    expect(signalsMeant(draft, '13C', '166,5')).toEqual(['166.9']);
+    expect(signalsMeant(draft, '1H', '9.9')).toEqual([]);
+    expect(signalsMeant(draft, '1H', 'x')).toBeNull();
+    const typing = {
+      ...draft,
+      carbons: [
+        { ...draft.carbons[0]!, shift: '166.' },
+        { ...draft.carbons[0]!, shift: 'abc' },
+        { ...draft.carbons[0]!, shift: '166.3' },
+      ],
+    };
+    expect(signalsMeant(typing, '13C', '166.4')).toEqual(['166.3', '166.']);
   });
 
   it('keeps text in number fields on the page and says what was expected', () => {
