@@ -31,6 +31,8 @@ const TAIL = 0.0003;
 /** Margin in ppm: a part for everyone, and one for what few compounds do not show. */
 const MARGIN = 3;
 const FEW_MARGIN = 20;
+/** As many of a kind are left outside, too, as make up this share of all carbons with these hydrogens that lie as far out. */
+const SHARE = 0.00005;
 /** ppm without any carbon that part two groups of one kind. */
 const GAP = 8;
 /** Kinds and groups seen less often are left out. */
@@ -104,6 +106,33 @@ function splitAtGaps(shifts: readonly number[]): number[][] {
   return groups;
 }
 
+/**
+ * How many shifts of a group count as errors at its lower and upper end: a share of the group, or as many as are hardly
+ * anything beside all carbons with these hydrogens that lie as far out.
+ *
+ * @param group, all - rising.
+ */
+function trimmed(group: readonly number[], all: readonly number[]): [below: number, above: number] {
+  let below = Math.floor(TAIL * group.length);
+  let above = below;
+  const last = group.length - 1;
+  while (below < last >> 1 && below + 1 <= SHARE * countBelow(all, group[below + 1])) below++;
+  while (above < last >> 1 && above + 1 <= SHARE * (all.length - countBelow(all, group[last - 1 - above]))) above++;
+  return [below, above];
+}
+
+/** Entries of a rising list that are smaller. */
+function countBelow(list: readonly number[], value: number): number {
+  let low = 0;
+  let high = list.length;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if (list[middle] < value) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
+
 interface FittedRange extends ShiftRange {
   readonly seen: number;
 }
@@ -121,6 +150,7 @@ function fitRanges(records: readonly NmrRecord[]): FittedRange[] {
   }
   const ranges: FittedRange[] = [];
   for (const hydrogens of [0, 1, 2, 3]) {
+    const all = [...samples].flatMap(([key, shifts]) => (key.startsWith(`${hydrogens} `) ? shifts : [])).sort((a, b) => a - b);
     for (const bonds of BONDS) {
       // A double bond joins one neighbour, a triple bond or two double bonds take two valences more than neighbours.
       const most = 4 - hydrogens - { single: 0, double: 1, triple: 2, cumulated: 2 }[bonds];
@@ -131,10 +161,10 @@ function fitRanges(records: readonly NmrRecord[]): FittedRange[] {
         if (shifts === undefined || shifts.length < LEAST) continue;
         for (const group of splitAtGaps(shifts)) {
           if (group.length < Math.max(LEAST, TAIL * shifts.length)) continue;
-          const outside = Math.floor(TAIL * group.length);
+          const [below, above] = trimmed(group, all);
           const margin = MARGIN + FEW_MARGIN / Math.sqrt(group.length);
-          const low = Math.max(-50, Math.floor(group[outside] - margin));
-          const high = Math.min(300, Math.ceil(group[group.length - 1 - outside] + margin));
+          const low = Math.max(-50, Math.floor(group[below] - margin));
+          const high = Math.min(300, Math.ceil(group[group.length - 1 - above] + margin));
           ranges.push({ hydrogens, bonds, neighbours, low, high, seen: group.length });
         }
       }
@@ -216,7 +246,8 @@ export interface ShiftRange {
 
 /**
  * Fitted by tests/bench/fit-shift-windows.ts on nmrshiftdb2 in ${new Date().toISOString().slice(0, 7)} (fold 0 left out): ${seen} carbons of
- * ${fitting.length} compounds. Each range spans all but ${Math.round(TAIL * 1e5)} in 100 000 of the shifts at either end, widened by ${MARGIN} ppm and by
+ * ${fitting.length} compounds. Each range spans all but ${Math.round(TAIL * 1e5)} in 100 000 of the shifts at either end, or as many as make up ${Math.round(SHARE * 1e5)} in 100 000 of
+ * all carbons with these hydrogens that lie as far out, widened by ${MARGIN} ppm and by
  * ${FEW_MARGIN} ppm over the square root of the number of carbons seen (the last column). Shifts of one kind
  * that lie more than ${GAP} ppm apart have ranges of their own; what was seen less than ${LEAST} times is left out.
  */
