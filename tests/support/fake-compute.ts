@@ -126,6 +126,10 @@ export function createFakeCompute(options: FakeComputeOptions = {}): FakeCompute
         message: 'the search cannot be started',
         issues: [{ path: 'fragments.required', message: 'too symmetric' }],
       });
+    const { maxConstitutions = null } = input;
+    if (behaviour === 'done' && maxConstitutions !== null && maxConstitutions < result.constitutionCount) {
+      return { ...result, constitutionCount: maxConstitutions, complete: false, stoppedBy: 'count' };
+    }
     if (behaviour === 'done') return result;
     return await new Promise((resolve, reject) => {
       const finish = (action: () => void) => {

@@ -1,9 +1,9 @@
 import { countSurvivors } from '../merge-shards.js';
-import { type RunFailure, timeLimitStop } from '../run-stop.js';
-import type { ShardResult } from '../../../shared/jobs/contract.js';
+import { countLimitStop, type RunFailure, timeLimitStop } from '../run-stop.js';
+import type { RunSettings, ShardResult } from '../../../shared/jobs/contract.js';
 import { attempt, withSignal } from './attempt.js';
 import { dropWaitingShards, onDatabase, type RunJobsContext } from './run-jobs-context.js';
-import type { ShardFigures, ShardJob } from './run-jobs.js';
+import { type FinishData, finishId, type ShardFigures, type ShardJob } from './run-jobs.js';
 
 /**
  * Works on one shard and keeps its result, unless another worker was faster.
@@ -44,18 +44,32 @@ export async function runShard(
     work: async (underWay) => {
       const { counters } = underWay;
       const deadlineEpochMs = limit?.epochMs ?? null;
-      const result = await compute.runJob(
-        'shard',
-        { evidence, settings, shard: stored.spec, counters, deadlineEpochMs },
-        withSignal(signal),
-      );
+      const maxConstitutions = await constitutionsLeft(context, runId, settings);
+      const input = { evidence, settings, shard: stored.spec, counters, deadlineEpochMs, maxConstitutions };
+      const result = await compute.runJob('shard', input, withSignal(signal));
       if (!result.complete && underWay.state === 'abandoned') return null;
       // A result that a limit cut short is kept as well: a run that was stopped is not gone on with.
       await onDatabase(context, () => store.saveShard(runId, result, new Date()));
       if (limit !== null && !result.complete && isOver()) await stopRun(timeLimitStop(limit.seconds));
+      // The shards still to come would only find out that there is something left.
+      if (result.stoppedBy === 'count') await stopRun(countLimitStop(settings.maxConstitutions ?? 0));
       return figuresOf(result);
     },
   });
+}
+
+/** What a shard that starts now may still build, by what the others have reported; null = no limit. */
+async function constitutionsLeft(
+  { queue }: RunJobsContext,
+  runId: string,
+  { maxConstitutions = null }: RunSettings,
+): Promise<number | null> {
+  if (maxConstitutions === null) return null;
+  const finish = await queue.getJob(finishId(runId));
+  if (finish === undefined) return maxConstitutions;
+  const done = Object.values(await finish.getChildrenValues<ShardFigures | null>());
+  const { constitutionCount } = (finish.data as FinishData).doneBefore;
+  return Math.max(0, maxConstitutions - done.reduce((sum, shard) => sum + (shard?.constitutionCount ?? 0), constitutionCount));
 }
 
 const figuresOf = ({ constitutionCount, funnel, cpuSeconds }: ShardResult): ShardFigures => ({

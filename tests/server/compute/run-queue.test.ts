@@ -197,6 +197,15 @@ describe.each(implementations)('%s', (_name, createBench, canRun) => {
         expect(await Candidate.count({ where: { runId: run.id } })).toBe(run.keptCount);
       });
 
+      it('stops when it has found more than it may, and ranks what it has', async () => {
+        const compute = createFakeCompute({ threadCount: 1, shardCount: 8 });
+        const settings = { keep: 10, maxSeconds: null, maxConstitutions: 3_500 };
+        const run = await runToEnd(await openQueue(compute), await createRun({ settings }));
+        expect(run).toMatchObject({ status: 'stopped', complete: false, failure: { code: 'countLimit' }, constitutionCount: 3_500 });
+        expect(compute.started.length).toBeLessThanOrEqual(5);
+        expect(await Candidate.count({ where: { runId: run.id } })).toBe(10);
+      });
+
       it('leaves out a shard that overruns the time limit until its thread is ended', async () => {
         const compute = createFakeCompute({ shardCount: 3, onShard: (index) => (index === 1 ? 'ignoresFlag' : 'done') });
         const run = await runToEnd(await openQueue(compute, 50), await createRun({ settings: { keep: 10, maxSeconds: 1 } }));
