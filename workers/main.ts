@@ -39,7 +39,8 @@ function handler<K extends JobName>(work: (input: JobContract[K]['input']) => Jo
 export const plan = handler<'plan'>(({ evidence, settings, targetShards }) => {
   // Made here although the shards use it, so that an unreadable pattern is bad input of the run, not a fault of a shard.
   evaluatorFor(evidence, settings);
-  return { shards: planShards(searchFor(evidence, settings.mode), targetShards), notes: [] };
+  const search = searchFor(evidence, settings.mode);
+  return { shards: planShards(search, targetShards), notes: search.notes };
 });
 
 export const shard = handler<'shard'>(runShard);

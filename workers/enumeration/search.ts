@@ -31,8 +31,9 @@ export interface Search {
   readonly notes: readonly string[];
 }
 
-/** Branches that are held in memory; formulas with more are beyond any computer, but must not exhaust it. */
+/** Branches and sub-searches that are held in memory; formulas with more are beyond any computer, but must not exhaust it. */
 const MAX_BRANCHES = 100_000;
+const MAX_SUB_SEARCHES = 3_000;
 
 /**
  * @param evidence - with options settled; without `options.valenceGroups` no group of higher valence is formed.
@@ -50,11 +51,13 @@ export function createSearch(evidence: EvidenceDocument): Search {
   };
   add(required);
   let isCurtailed = false;
-  for (let total = 1; !isCurtailed; total++) {
+  let subSearches = 0;
+  // An odd number of open bonds stays odd whatever groups are formed.
+  for (let total = 1; !isCurtailed && openBondsOf(required) % 2 === 0; total++) {
     const problems = listCopies(groups.units, available, total).map((copies) => withFormedUnits(required, groups, copies));
     if (problems.length === 0) break;
     for (const problem of problems) {
-      isCurtailed ||= branches.length > MAX_BRANCHES;
+      isCurtailed ||= branches.length > MAX_BRANCHES || ++subSearches > MAX_SUB_SEARCHES;
       if (!isCurtailed) add(problem);
     }
     if (isCurtailed)
@@ -63,6 +66,14 @@ export function createSearch(evidence: EvidenceDocument): Search {
       );
   }
   return { required, groups, branches, isCurtailed, notes };
+}
+
+function openBondsOf({ free, units, hydrogens }: SearchProblem): number {
+  const ofUnits = units.reduce(
+    (sum, { freeValence, count }) => sum + count * freeValence.reduce((total, valence) => total + valence, 0),
+    0,
+  );
+  return free.reduce((sum, { valence, count }) => sum + valence * count, ofUnits) - hydrogens;
 }
 
 /** All ways to share `total` copies out among units for which the atoms suffice, in a fixed order. */

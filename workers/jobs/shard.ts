@@ -43,7 +43,7 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
     mustStop = stoppedBy !== null || isCancelled(counters);
     return mustStop;
   };
-  const complete = enumerateShard(search, shard, {
+  const isWhole = enumerateShard(search, shard, {
     onCut({ reason, text }, branches) {
       if (branches === 0) return;
       const cut = cuts.get(reason) ?? { reason, text, count: 0 };
@@ -85,6 +85,9 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
     stopRequested: () => mustStop,
   });
   look();
+  // Sub-searches that did not fit into memory belong to no shard, so every shard says it.
+  if (isWhole && search.isCurtailed) stoppedBy = 'memory';
+  const complete = isWhole && !search.isCurtailed;
   return {
     index: shard.index,
     constitutionCount,

@@ -258,6 +258,14 @@ describe('groups that the evidence rules out', () => {
     expect(notes).toEqual([]);
   });
 
+  it('are limited in number, with a note, where a formula has room for more sub-searches than memory', () => {
+    const search = createSearch(evidenceDocument.parse({ formula: 'C14H18N4O9S2', options: { valenceGroups: ALL } }));
+    expect(search.isCurtailed).toBe(true);
+    expect(search.notes).toEqual([expect.stringMatching(/structures with \d+ or more of them are not all built/)]);
+    expect(search.branches.length).toBeLessThan(150_000);
+    expect(createSearch(evidenceDocument.parse({ formula: 'C8H10N4O2', options: { valenceGroups: ALL } })).isCurtailed).toBe(false);
+  });
+
   it('say nothing of groups that the formula has no atoms for', () => {
     const input = {
       formula: 'C3H6O2',

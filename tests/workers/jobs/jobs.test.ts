@@ -111,6 +111,14 @@ describe('the shard job', () => {
     expect(result).toMatchObject({ ok: false, failure: { code: 'badInput', issues: [{ path: 'fragments.excluded[0].smiles' }] } });
   });
 
+  it('says in the plan what the evidence rules out', () => {
+    const evidence = evidenceDocument.parse({ formula: 'C2H6OS', fragments: { excluded: [{ smiles: 'S=O' }] } });
+    expect(outputOf(jobs.plan({ evidence, settings, targetShards: 4 })).notes).toEqual([
+      'Sulfoxide groups were left out: the excluded fragment S=O is part of them.',
+    ]);
+    expect(outputOf(jobs.plan({ evidence, settings: { ...settings, mode: 'count' }, targetShards: 4 })).notes).toEqual([]);
+  });
+
   it('only counts in mode count', () => {
     const results = shardsOf({ formula: 'C5H8' }, 4, { ...settings, mode: 'count' });
     expect(results.flatMap((result) => result.kept)).toEqual([]);
