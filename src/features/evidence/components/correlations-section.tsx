@@ -71,8 +71,8 @@ export function CorrelationsSection({ draft, issues, isReadOnly, onChange }: Sec
       {isReadOnly ? null : (
         <p className="mt-3 max-w-[80ch] text-small text-pretty text-faded">
           Below each shift stand the listed signals that it can mean: within {CARBON_TOLERANCE} ppm for carbon, {PROTON_TOLERANCE} ppm for
-          protons. Where there are two, either may be right. Carbon counts make the pairs sharper. Paste two columns from a spreadsheet into
-          any cell.
+          protons. Where there are two, either may be right. A carbon signal without a count is taken for one kind of carbon: give the count
+          where different carbons overlap. Paste two columns from a spreadsheet into any cell.
         </p>
       )}
       <fieldset disabled={isReadOnly} className="mt-5 grid gap-4 border-t border-seam pt-4 tablet:grid-cols-3">
