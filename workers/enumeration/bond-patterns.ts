@@ -15,6 +15,10 @@ import type { UnitKind } from './units.js';
 const CARBON = 6;
 const ANY_ORDER = 255;
 
+/** Refined distributions of one distribution, and of a problem, at most: they are held in memory. */
+const MOST_OF_ONE = 2000;
+const MOST_IN_ALL = 20_000;
+
 /** How many bonds of each order an atom has to other heavy atoms. */
 export interface BondPattern {
   readonly singles: number;
@@ -61,7 +65,9 @@ export function hybridisationsAt({ base, open, bondQuota, freeValence }: FillLay
  * no assignment of the signals allows. A carbon has one pattern, the same in every Kekulé form, so each constitution
  * belongs to exactly one of the refined distributions.
  *
- * @returns what distributions of this problem become; the distribution itself where no window restricts anything.
+ * Where there would be very many, carbons of some kinds are left together; the test of the finished structure sees to them.
+ *
+ * @returns what distributions of this problem become, to be asked for in a fixed order; the distribution itself where no window restricts anything.
  */
 export function createRefinement(problem: SearchProblem): (distribution: Distribution) => readonly Distribution[] {
   const { census, units, demands: atomDemands } = problem;
@@ -110,19 +116,31 @@ export function createRefinement(problem: SearchProblem): (distribution: Distrib
     splitsOf.set(key, splits);
     return splits;
   };
+  let total = 0;
   return (distribution) => {
     // Signals of a type that no free carbon has must be met by units.
     if (!isTyped || windows.demands.some(({ hydrogens }) => !distribution.some((each) => isCarbon(each) && each.hydrogens === hydrogens))) {
       if (!meetsDemands(windows, [...unitGroups, ...distribution.filter(isCarbon).map(groupOf)])) return [];
     }
-    let refined: AtomClass[][] = [[]];
-    for (const atomClass of distribution) {
-      const splits = isCarbon(atomClass) ? splitsFor(atomClass) : [[atomClass]];
-      refined = refined.flatMap((head) => splits.map((split) => [...head, ...split]));
+    const splits = distribution.map((atomClass) => (isCarbon(atomClass) ? splitsFor(atomClass) : [[atomClass]]));
+    if (splits.some((list) => list.length === 0)) return [];
+    // Classes with few splits first: what would go beyond the limit stays as it is.
+    let product = 1;
+    const isSplit = new Array<boolean>(splits.length).fill(false);
+    for (const k of splits.map((_, index) => index).sort((x, y) => splits[x].length - splits[y].length || x - y)) {
+      product *= splits[k].length;
+      isSplit[k] = product <= Math.min(MOST_OF_ONE, MOST_IN_ALL - total);
     }
-    return refined.filter(
+    let refined: AtomClass[][] = [[]];
+    distribution.forEach((atomClass, k) => {
+      const ways = isSplit[k] ? splits[k] : [[atomClass]];
+      refined = refined.flatMap((head) => ways.map((split) => [...head, ...split]));
+    });
+    refined = refined.filter(
       (classes) => canBond(classes, units) && (isTyped || meetsDemands(windows, [...unitGroups, ...classes.filter(isCarbon).map(groupOf)])),
     );
+    total += refined.length;
+    return refined;
   };
 }
 
