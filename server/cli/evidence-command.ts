@@ -46,7 +46,7 @@ export async function runEvidenceCommand(argument: string, context: CliContext, 
   line.clear();
   if (command.wantsJson) await context.write(`${JSON.stringify(command.toDocument(result))}\n`);
   else {
-    for (const note of notes) context.tell(`note: ${note}\n`);
+    for (const note of [...notes, ...result.notes]) context.tell(`note: ${note}\n`);
     await command.print(result, evidence);
   }
   return exitCodeOf(result);

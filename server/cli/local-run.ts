@@ -20,6 +20,8 @@ export interface LocalRun {
   readonly noneOfTheseProbability: number | null;
   /** False when a limit or Ctrl-C cut the enumeration short. */
   readonly isComplete: boolean;
+  /** What the search left out and why, for people. */
+  readonly notes: readonly string[];
   readonly seconds: number;
 }
 
@@ -55,7 +57,7 @@ export async function runLocally(
   const started = performance.now();
   const seconds = (): number => (performance.now() - started) / 1000;
   const deadlineEpochMs = settings.maxSeconds === null ? null : Date.now() + settings.maxSeconds * 1000;
-  const { shards } = await abortable(interrupt, (signal) =>
+  const { shards, notes } = await abortable(interrupt, (signal) =>
     compute.runJob('plan', { evidence, settings, targetShards: TARGET_SHARDS }, { signal }),
   );
 
@@ -113,6 +115,7 @@ export async function runLocally(
     candidates: described.candidates,
     noneOfTheseProbability: described.noneOfTheseProbability,
     isComplete: merged.complete && merger.shardCount === shards.length,
+    notes,
     seconds: seconds(),
   };
 }

@@ -114,6 +114,16 @@ describe('first-order rules', () => {
     ).toEqual([1, 2]);
   });
 
+  it('tells diazo carbons from other C=N and hydrogens on P=O from those on P', () => {
+    // Ethyl diazoacetate: CH 46 ppm, 4.7 ppm; dimethyl phosphonate: P–H 6.8 ppm (from memory).
+    const diazo = spectraOf('CCOC(=O)C=[N+]=[N-]');
+    expect(diazo.carbons.find(({ atoms }) => atoms.includes(5))!.shift).toBeCloseTo(46, -1);
+    expect(Math.abs(diazo.protons.find(({ atoms }) => atoms.includes(5))!.shift - 4.7)).toBeLessThan(1);
+    const onPhosphorus = spectraOf('CO[PH](=O)OC').protons.find(({ atoms }) => atoms.includes(2))!;
+    expect(Math.abs(onPhosphorus.shift - 6.8)).toBeLessThan(1);
+    expect(onPhosphorus.exchangeable).toBe(false);
+  });
+
   it('splits by fluorine', () => {
     // Fluoroethane: OCH2-type dq and dt, J(HF) about 47 and 25 Hz (from memory).
     expect(patternsOf('CCF')).toEqual(['dq', 'dt']);

@@ -97,6 +97,13 @@ describe('SignalCensus', () => {
       [],
     ],
     [
+      'hydrogen on phosphorus, which does not exchange, where an exchangeable one is marked',
+      'C[PH](C)=O',
+      { protonSignals: [{ shift: 6.9, count: 1, exchangeable: true }] },
+      'signals:exchangeableProtons:4',
+      [],
+    ],
+    [
       'fewer hydrogens on carbon than marked',
       'CO',
       { protonSignals: [{ shift: 3.4, count: 4, exchangeable: false }] },
