@@ -46,12 +46,10 @@ const PREFIX: usize = memory.data(3200);
 
 // ---- state of the search ----
 const PRESCRIBED: usize = memory.data(64);
-const HIGHEST: usize = memory.data(64);
 /** Masks of the columns bonded by order 1, 2, 3 to a vertex: 3 × 8 bytes each. */
 const BONDED: usize = memory.data(960, 8);
 /** Per row: bit j set when columns j − 1 and j lie in one cell, earlier rows considered. */
 const SAME: usize = memory.data(336, 8);
-const CAPACITY: usize = memory.data(3528, 2);
 const CELL_END: usize = memory.data(64);
 const PARENT: usize = memory.data(64);
 const SIZE: usize = memory.data(64);
@@ -92,6 +90,10 @@ let smallestAlleneRing: i32 = 0;
 let tracksRings: bool = false;
 let looksAtRings: bool = false;
 let carbons: u64 = 0;
+/** Atoms with a triple bond, with at least one double bond, with two. */
+let tripled: u64 = 0;
+let doubled: u64 = 0;
+let doubledTwice: u64 = 0;
 /** Atoms that can take part in an aromatic ring without a double bond. */
 let donors: u64 = 0;
 let stopRow: i32 = 0;
@@ -191,12 +193,7 @@ function reset(): void {
   for (let v = 0; v < n; v++) {
     const isPrescribed = load<u8>(QUOTA + 4 * v) != ANY_ORDER;
     store<u8>(PRESCRIBED + v, isPrescribed ? 1 : 0);
-    let highest = 3;
-    if (isPrescribed) {
-      hasPrescribed = true;
-      while (highest > 0 && load<u8>(QUOTA + 4 * v + highest) == 0) highest--;
-    }
-    store<u8>(HIGHEST + v, <u8>highest);
+    if (isPrescribed) hasPrescribed = true;
     // The first vertex of each unit is the root of its component.
     let root = 0;
     while (load<u8>(UNIT + root) != load<u8>(UNIT + v)) root++;
@@ -206,6 +203,15 @@ function reset(): void {
     store<u16>(COMPONENT_LEFT + 2 * root, <u16>(<i32>load<u16>(COMPONENT_LEFT + 2 * root) + left));
     totalLeft += left;
     if (root == v) componentCount++;
+  }
+  tripled = 0;
+  doubled = 0;
+  doubledTwice = 0;
+  for (let v = 0; v < atomCount; v++) {
+    if (load<u64>(INSIDE + 24 * v, 16) != 0) tripled |= bit(v);
+    const twofold = load<u64>(INSIDE + 24 * v, 8);
+    if (twofold != 0) doubled |= bit(v);
+    if ((twofold & (twofold - 1)) != 0) doubledTwice |= bit(v);
   }
   let same: u64 = 0;
   for (let j = tied + 1; j < n; j++) if (load<u8>(CLASS + j - 1) == load<u8>(CLASS + j)) same |= bit(j);
@@ -286,7 +292,10 @@ function countCut(kind: i32): void {
 /** Tests the limits on rings that a bond alone does not settle; rows [0, known) are complete. */
 function ringsFit(known: i32): bool {
   if (smallestAlkyneRing > 0) {
-    for (let v = 0; v < atomCount; v++) {
+    let rest = tripled;
+    while (rest != 0) {
+      const v = <i32>ctz(rest);
+      rest &= rest - 1;
       const ends = tripleTo(v) & ~(bit(v) - 1);
       if (ends == 0) continue;
       if (wayRound(v, <i32>ctz(ends), 0, 0, smallestAlkyneRing - 2) == 0) continue;
@@ -295,7 +304,7 @@ function ringsFit(known: i32): bool {
     }
   }
   if (smallestAlleneRing > 0) {
-    let rest = carbons;
+    let rest = carbons & doubledTwice;
     while (rest != 0) {
       const v = <i32>ctz(rest);
       rest &= rest - 1;
@@ -343,6 +352,14 @@ function addBond(i: i32, j: i32, order: i32): bool {
     if (load<u8>(PRESCRIBED + j) == 1) store<u8>(QUOTA + 4 * j + order, load<u8>(QUOTA + 4 * j + order) - 1);
   }
   totalLeft -= 2 * order;
+  if (order > 1) {
+    const ends = bit(i) | bit(j);
+    if (order == 3) tripled |= ends;
+    else {
+      doubledTwice |= doubled & ends;
+      doubled |= ends;
+    }
+  }
   let root = rootOf(i);
   let other = rootOf(j);
   let fits = true;
@@ -392,6 +409,14 @@ function removeBond(i: i32, j: i32, order: i32): void {
     if (load<u8>(PRESCRIBED + j) == 1) store<u8>(QUOTA + 4 * j + order, load<u8>(QUOTA + 4 * j + order) + 1);
   }
   totalLeft += 2 * order;
+  if (order > 1) {
+    const ends = bit(i) | bit(j);
+    if (order == 3) tripled &= ~ends;
+    else {
+      doubled &= ~(ends & ~doubledTwice);
+      doubledTwice &= ~ends;
+    }
+  }
   if (tracksRings) {
     store<u64>(ADJACENT + 8 * i, load<u64>(ADJACENT + 8 * i) & ~bit(j));
     store<u64>(ADJACENT + 8 * j, load<u64>(ADJACENT + 8 * j) & ~bit(i));
@@ -495,25 +520,18 @@ function startRow(i: i32): void {
   }
   const first = firstColumn(i);
   store<u8>(CELL_END + i, <u8>findCellEnd(i));
-  // Columns to the right can take this much of the row's valence; a row that needs more has no completion.
-  const line = CAPACITY + 2 * i * (N + 1);
-  let capacity = 0;
-  store<u16>(line + 2 * n, 0);
-  for (let j = n - 1; j >= first; j--) {
-    const left = leftOf(j);
-    const highest = <i32>load<u8>(HIGHEST + j);
-    capacity += left < highest ? left : highest;
-    store<u16>(line + 2 * j, <u16>capacity);
-  }
+  // Columns to the right can take this much; a row that needs more has no completion.
+  let room = totalLeft - leftOf(i);
+  for (let v = i + 1; v < tied; v++) room -= leftOf(v);
   // While the row equals its predecessor's and both were interchangeable, it must not grow beyond it.
   const tight = i > tied && (load<u64>(SAME + 8 * (i - 1)) & bit(i)) != 0;
-  fillEntry(i, first, tight);
+  fillEntry(i, first, room, tight);
 }
 
-function fillEntry(i: i32, j: i32, tight: bool): void {
+/** @param room free valence of the columns from j on. */
+function fillEntry(i: i32, j: i32, room: i32, tight: bool): void {
   const first = firstColumn(i);
   const own = MATRIX + i * N;
-  const line = CAPACITY + 2 * i * (N + 1);
   const same = load<u64>(SAME + 8 * i);
   const need = leftOf(i);
   // Each turn leaves column j empty after every larger entry was tried, so the call depth grows with bonds only.
@@ -536,10 +554,11 @@ function fillEntry(i: i32, j: i32, tight: bool): void {
     }
     const bound = tight ? <i32>load<u8>(own - N + j) : 3;
     if (bound < most) most = bound;
-    const least = need - <i32>load<u16>(line + 2 * (j + 1));
+    room -= left;
+    const least = need - room;
     for (let x = most; x > 0 && x >= least; x--) {
       if ((hasPrescribed || hasForbidden) && !orderFits(i, j, x)) continue;
-      if (addBond(i, j, x)) fillEntry(i, j + 1, tight && x == bound);
+      if (addBond(i, j, x)) fillEntry(i, j + 1, room, tight && x == bound);
       removeBond(i, j, x);
       if (stopped) return;
     }
@@ -875,8 +894,7 @@ function bondedTo(v: i32): u64 {
  * False is certain; true means that aromaticity has to be looked at.
  */
 function mayHaveOtherForms(): bool {
-  let doubles: u64 = 0;
-  for (let v = 0; v < atomCount; v++) if (doubleTo(v) != 0) doubles |= bit(v);
+  const doubles = doubled;
   if (popcnt(doubles) < 4) return false;
   // A double bond lies in such a cycle only when from both its ends a single bond leads to another one that does.
   core = doubles;
@@ -901,8 +919,7 @@ function tripleTo(v: i32): u64 {
 
 /** Is there a ring of atoms that can be aromatic, other than one of 4 or 8 atoms that stands alone? */
 function mayBeAromatic(doubles: u64): bool {
-  let ring = doubles | donors;
-  for (let v = 0; v < atomCount; v++) if (tripleTo(v) != 0) ring |= bit(v);
+  let ring = doubles | tripled | donors;
   for (let changed = true; changed; ) {
     changed = false;
     let rest = ring;
