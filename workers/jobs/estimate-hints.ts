@@ -4,8 +4,10 @@ import type { ResolvedEvidence } from '../../shared/chemistry/resolve-options.js
 import type { EstimateHint } from '../../shared/jobs/contract.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import type { SearchEstimate } from '../enumeration/estimate.js';
+import type { Search } from '../enumeration/search.js';
 import { AnalysisScratch, analyseStructure, type StructureAnalysis } from '../graph/analysis.js';
 import { checkRingSizes } from '../ranking/ring-sizes.js';
+import { fallByFittedCensus } from './census-by-fit.js';
 
 /** What is remembered of a constitution that was met. */
 export interface Observation {
@@ -87,8 +89,7 @@ interface Fall {
  *
  * @param evidence - with options settled: hints are for what it lacks.
  */
-export function listHints(evidence: ResolvedEvidence, size: SearchEstimate<Observation>): EstimateHint[] {
-  if (effectiveCount(size) < LEAST_SAMPLES) return [];
+export function listHints(evidence: ResolvedEvidence, search: Search, size: SearchEstimate<Observation>): EstimateHint[] {
   const { carbonSignals, options, fragments } = evidence;
   const hints: EstimateHint[] = [];
   const add = (kind: EstimateHint['kind'], what: string, fall: Fall | null): void => {
@@ -97,12 +98,16 @@ export function listHints(evidence: ResolvedEvidence, size: SearchEstimate<Obser
     hints.push({ kind, factor: fall.factor, text: `${what} would cut this ${extent}.` });
   };
   const lacksHydrogens = carbonSignals.length === 0 || carbonSignals.some(({ hydrogens }) => hydrogens === undefined);
-  if (lacksHydrogens) add('attachedHydrogens', 'Attached-hydrogen counts (DEPT or HSQC)', fallByCensus(size));
+  const byCensus = fallByCensus(search, size);
+  if (lacksHydrogens) add('attachedHydrogens', 'Attached-hydrogen counts (DEPT or HSQC)', byCensus);
   if (carbonSignals.length === 0)
     add(
       'carbonShifts',
       'A ¹³C list with shifts and attached hydrogens',
-      fallByClasses(size, ({ carbonKinds }) => carbonKinds),
+      atLeast(
+        fallByClasses(size, ({ carbonKinds }) => carbonKinds),
+        byCensus,
+      ),
     );
   else if (!options.shiftWindows)
     add(
@@ -139,9 +144,12 @@ function likeBonds(formula: string): string {
 }
 
 /** The census of carbons belongs to a whole branch, so that its size is known better than from single constitutions. */
-function fallByCensus(size: SearchEstimate<Observation>): Fall | null {
+function fallByCensus(search: Search, size: SearchEstimate<Observation>): Fall | null {
   const { branchSizes, branchVariances, samples } = size;
-  if (branchSizes.some((value) => Number.isNaN(value))) return fallByClasses(size, ({ census }) => census);
+  if (effectiveCount(size) < ENOUGH_SAMPLES || branchSizes.some((value) => Number.isNaN(value))) {
+    const factor = fallByFittedCensus(search, branchSizes);
+    return factor === null ? fallByClasses(size, ({ census }) => census) : { factor, isBound: false };
+  }
   const censusOf = new Map<number, string>();
   for (const { branch, observation } of samples) censusOf.set(branch, observation.census);
   const sizes = new Map<string, number>();
@@ -156,8 +164,14 @@ function fallByCensus(size: SearchEstimate<Observation>): Fall | null {
   let squares = 0;
   for (const value of sizes.values()) squares += value * value;
   // The square of an estimate is too large by its variance on average. Where noise is all there is, the factor is too small.
-  const isBound = noise > squares / 2 || effectiveCount(size) < ENOUGH_SAMPLES;
+  const isBound = noise > squares / 2;
   return { factor: (total * total) / (isBound ? squares : squares - noise), isBound };
+}
+
+/** Knowledge that holds other knowledge in it cuts at least as much. */
+function atLeast(fall: Fall | null, held: Fall | null): Fall | null {
+  if (fall === null || held === null) return fall ?? held;
+  return fall.factor < held.factor ? { factor: held.factor, isBound: true } : fall;
 }
 
 /** Chance that two constitutions drawn at random agree, from all pairs of different samples. */
@@ -176,6 +190,7 @@ function fallByClasses(size: SearchEstimate<Observation>, classOf: (observation:
   const pairs = total * total - own;
   if (pairs <= 0) return null;
   const samples = effectiveCount(size);
+  if (samples < LEAST_SAMPLES) return null;
   // Counting a sample as agreeing with itself makes the chance too large and the factor a bound.
   if (samples < ENOUGH_SAMPLES) return { factor: (total * total) / (agreeing + own), isBound: true };
   const least = LEAST_MET / ((samples * (samples - 1)) / 2);
@@ -196,6 +211,7 @@ function fallByRule(size: SearchEstimate<Observation>, keeps: (observation: Obse
   }
   if (met === 0) return null;
   const samples = effectiveCount(size);
+  if (samples < LEAST_SAMPLES) return null;
   const least = LEAST_MET / samples;
   const share = kept / total;
   // One-sided 95 % end of the normal approximation, not below what so few samples can tell.

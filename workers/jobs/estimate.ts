@@ -76,7 +76,7 @@ export function estimateRun(input: JobContract['estimate']['input']): JobContrac
     isExact: counted !== null,
     survivors,
     ...cost,
-    hints: mode === 'rank' && counted?.length !== 0 ? listHints(resolveOptions(evidence, mode), size) : [],
+    hints: mode === 'rank' && counted?.length !== 0 ? listHints(resolveOptions(evidence, mode), search, size) : [],
     probes: probed.probes,
     seconds: (performance.now() - startedMs) / 1000,
   };

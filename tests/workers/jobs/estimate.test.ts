@@ -1,6 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import { evidenceDocument, type EvidenceInput } from '../../../shared/schemas/evidence.js';
 import type { MolecularGraph } from '../../../shared/types/molecular-graph.js';
+import { countExactly, estimateSearch } from '../../../workers/enumeration/estimate.js';
+import { createSearch, type Search } from '../../../workers/enumeration/search.js';
+import { fallByFittedCensus } from '../../../workers/jobs/census-by-fit.js';
 import { estimateRun } from '../../../workers/jobs/estimate.js';
 import { createMemoryGuard } from '../../../workers/jobs/memory-guard.js';
 import { enumerateAll } from '../../support/enumerate.js';
@@ -19,6 +22,17 @@ const carbonHydrogens = ({ atomCount, atomicNumbers, hydrogens }: MolecularGraph
   Array.from({ length: atomCount }, (_, a) => (atomicNumbers[a] === 6 ? String(hydrogens[a]) : ''))
     .sort()
     .join('');
+
+/** The same from the exact sizes of all branches, whose carbons are alike. */
+function fallByCounts({ branches }: Search, sizes: Float64Array): number {
+  const byCensus = new Map<string, number>();
+  branches.forEach(({ distribution }, d) => {
+    const census = distribution.filter(({ atomicNumber }) => atomicNumber === 6).map(({ hydrogens, count }) => `${hydrogens}:${count}`);
+    byCensus.set(census.join(), (byCensus.get(census.join()) ?? 0) + sizes[d]!);
+  });
+  const all = [...byCensus.values()];
+  return all.reduce((sum, size) => sum + size, 0) ** 2 / all.reduce((sum, size) => sum + size * size, 0);
+}
 
 describe('the estimate of a run', () => {
   it('counts what is small enough', () => {
@@ -39,6 +53,20 @@ describe('the estimate of a run', () => {
     expect(hint.factor / truth).toBeLessThan(1.15);
     expect(hint.text).toMatch(/^Attached-hydrogen counts \(DEPT or HSQC\) would cut this about \d+-fold\.$/);
   });
+
+  it('knows it roughly from one probe a branch, by the trend over all branches', () => {
+    // Reference: the classes of all constitutions, counted.
+    const search = createSearch(evidenceDocument.parse({ formula: 'C5H9NO3', options: { plausibility: false } }));
+    const probed = estimateSearch(search, { seed: 3, maxProbes: search.branches.length, shouldStop: () => false, observe: () => null });
+    const exact = countExactly(search, () => false)!;
+    const truth = fallByCounts(search, exact);
+    for (const sizes of [exact, probed.branchSizes]) {
+      const factor = fallByFittedCensus(search, sizes)!;
+      expect(factor / truth).toBeGreaterThan(0.8);
+      expect(factor / truth).toBeLessThan(1.25);
+    }
+    expect(fallByFittedCensus(search, new Float64Array(search.branches.length).fill(NaN))).toBeNull();
+  }, 30_000);
 
   it('does not ask for what is known', () => {
     const kinds = (input: EvidenceInput) => estimateOf(input).hints.map(({ kind }) => kind);
