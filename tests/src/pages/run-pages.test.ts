@@ -4,7 +4,17 @@ import { describe, expect, it } from 'vitest';
 import { FakeProblem } from '../support/fake-api';
 import { ids, laboratory, unknownDetail } from '../support/fixtures';
 import { describePages } from '../support/pages';
-import { candidateId, finishedRun, hopelessEstimate, liveRun, liveRunId, progress, runHandlers } from '../support/run-fixtures';
+import {
+  candidateDetail,
+  candidateId,
+  finishedRun,
+  hopelessEstimate,
+  itemOf,
+  liveRun,
+  liveRunId,
+  progress,
+  runHandlers,
+} from '../support/run-fixtures';
 
 const ranking = `/runs/${ids.run}`;
 const parameters = (page: Page) => Object.fromEntries(new URL(page.url()).searchParams);
@@ -228,6 +238,23 @@ describePages('pages of runs', (open) => {
       await page.getByText(/none of these structures is the right one/).waitFor();
       // Mean misfit of rank 1 is 5 ppm.
       await page.getByText(/Even the best candidate misses the ¹³C shifts by 5.0/).waitFor();
+    });
+
+    it('names the branches cut while building, and marks candidates and kept ones of an incomplete run', async () => {
+      const cuts = [{ reason: 'ringTooSmall', text: 'A ring with fewer than 5 atoms.', count: 81_234 }];
+      const stopped = { ...finishedRun, status: 'stopped' as const, complete: false, cuts };
+      const handlers = runHandlers({
+        readRun: () => stopped,
+        readCandidate: () => ({ ...candidateDetail(1), runComplete: false }),
+        readShortlist: () => ({ items: [itemOf(2, { snapshot: { ...itemOf(2).snapshot, runComplete: false } })] }),
+      });
+      const page = await open(laboratory('chemist', handlers), ranking);
+      const building = page.getByRole('region', { name: 'Cut while building' });
+      expect(await building.innerText()).toMatch(/A ring with fewer than 5 atoms\.\s*81\u2009234 branches/);
+      await page.goto(new URL(`/candidates/${candidateId(1)}`, page.url()).href);
+      await page.getByText('Incomplete run').waitFor();
+      await page.goto(new URL(`/unknowns/${ids.unknown}/shortlist`, page.url()).href);
+      await page.getByRole('article').getByText('Incomplete run').waitFor();
     });
 
     it('warns where the purpose is regulated, and only there', async () => {
