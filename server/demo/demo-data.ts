@@ -93,7 +93,11 @@ export const DEMO_UNKNOWNS: readonly DemoUnknown[] = [
         verdict: 'confirmed',
         note: 'Same retention time and 1H as material made from the phenol on the shelf.',
       },
-      { smiles: 'CCOC(=O)c1ccc(C)cc1', verdict: 'refuted', note: 'An O–CH2 would be near 61 ppm; nothing is there.' },
+      {
+        smiles: 'CCc1ccc(OC(C)=O)cc1',
+        verdict: 'refuted',
+        note: 'The CH3 of an ethyl group on the ring would be near 15 ppm; 9.1 ppm is that of a propanoate.',
+      },
     ],
     comments: [
       { by: 'lead', text: 'The band at 1760 is high for a conjugated ester. Phenyl ester?' },

@@ -11,11 +11,7 @@ const WEIGHT = [0, 1, 64, 4096] as const;
 
 const N = FILL_STRIDE;
 
-/*
- * State of the one search that runs in this thread. It stands in the module, not in a closure, because then the
- * compiled code holds the addresses of these arrays and is compiled once, not once a layout (a tenth faster, and warm from
- * the first layout on).
- */
+/* State of the one search that runs. */
 let n = 0;
 let tied = 0;
 let layout: FillLayout;
@@ -332,7 +328,7 @@ function finishRow(i: number, tight: number): void {
     finishMatrix(i);
     return;
   }
-  if (events.onRow !== undefined && !events.onRow(a, i + 1)) return;
+  if (events.onRow !== undefined && !events.onRow(a, i + 1, a)) return;
   if ((i >= tied || stabiliser.length > 1) && !isLargest(i, i + 1, i + 1)) return;
   startRow(i + 1);
 }
@@ -349,7 +345,7 @@ function finishMatrix(row: number): void {
     const first = i < tied ? tied : i + 1;
     for (let j = first; j < n; j++) same[line + N + j] = j > first ? same[line + j] : 0;
   }
-  if (isLargest(row, row + 1 < tied ? tied : row + 1, n) && events.onLeaf(a)) stopped = true;
+  if (isLargest(row, row + 1 < tied ? tied : row + 1, n) && events.onLeaf(a, a, false)) stopped = true;
 }
 
 // ---- canonicity ----

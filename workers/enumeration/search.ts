@@ -144,7 +144,7 @@ function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink)
         if (keepsPartners !== null && !keepsPartners(filled)) return sink.stopRequested();
         const verdict = judge(molecule, mayHaveOtherForms);
         if (verdict.multigraphs !== 0) sink.onMultigraphs(verdict.multigraphs);
-        for (const graph of verdict.graphs) sink.onConstitution(graph);
+        for (let k = 0; k < verdict.graphs.length; k++) sink.onConstitution(verdict.graphs[k]);
         return sink.stopRequested();
       },
       shouldStop: () => sink.shouldStop(),

@@ -8,6 +8,8 @@ import { evaluatorFor, searchFor } from './search-cache.js';
 
 /** Constitutions between two looks at the clock; each can cost up to a millisecond with many fragments. */
 const CONSTITUTIONS_BETWEEN_CHECKS = 64;
+/** Milliseconds between two looks at the counters, the deadline and the memory. */
+const MS_BETWEEN_LOOKS = 20;
 
 /** Enumerates, filters, scores and keeps the best of one shard. Depends on nothing but its input. */
 export function runShard(input: JobContract['shard']['input']): ShardResult {
@@ -31,6 +33,7 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
   let mustStop = false;
   let stoppedBy: ShardLimit | null = null;
   let untilCheck = CONSTITUTIONS_BETWEEN_CHECKS;
+  let nextLookMs = startedMs;
 
   const look = (): boolean => {
     addToCounter(counters, 'constitutionsSeen', constitutionCount - reportedConstitutions);
@@ -42,6 +45,14 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
     else if (isOutOfMemory()) stoppedBy = 'memory';
     mustStop = stoppedBy !== null || isCancelled(counters);
     return mustStop;
+  };
+  /** Looks only when some time has passed: the counters are shared, and threads that write them often slow one another. */
+  const lookInTime = (): boolean => {
+    if (mustStop) return true;
+    const nowMs = performance.now();
+    if (nowMs < nextLookMs) return false;
+    nextLookMs = nowMs + MS_BETWEEN_LOOKS;
+    return look();
   };
   const isWhole = enumerateShard(search, shard, {
     onCut({ reason, text }, branches) {
@@ -64,7 +75,7 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
       funnel.arrive();
       if (--untilCheck === 0) {
         untilCheck = CONSTITUTIONS_BETWEEN_CHECKS;
-        look();
+        lookInTime();
       }
       const evaluation = evaluator.evaluate(graph);
       if (evaluation.kind === 'rejected') {
@@ -81,7 +92,7 @@ export function runShard(input: JobContract['shard']['input']): ShardResult {
       }
       best?.offer(graph, score, evaluation.terms);
     },
-    shouldStop: () => mustStop || look(),
+    shouldStop: lookInTime,
     stopRequested: () => mustStop,
   });
   look();

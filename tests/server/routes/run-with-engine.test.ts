@@ -4,7 +4,7 @@ import type { ComputeService } from '../../../server/compute/compute-service.js'
 import { createEmbeddedQueue } from '../../../server/compute/embedded-queue.js';
 import { createComputePool } from '../../../server/compute/pool.js';
 import type { RunQueue } from '../../../server/compute/queue.js';
-import { createLaboratory, createUnknownWithEvidence } from '../../support/laboratory.js';
+import { createLaboratory, createUnknownWithEvidence, type Laboratory } from '../../support/laboratory.js';
 import { createTestApp, type TestApp, type TestClient } from '../../support/test-app.js';
 
 /**
@@ -34,6 +34,7 @@ let testApp: TestApp;
 let compute: ComputeService;
 let queue: RunQueue;
 let chemist: TestClient;
+let laboratory: Laboratory;
 let unknownId: string;
 let runId: string;
 
@@ -42,7 +43,7 @@ beforeAll(async () => {
   testApp = await createTestApp({ compute });
   queue = createEmbeddedQueue({ compute, sequelize: testApp.context.sequelize, logger: pino({ level: 'silent' }) });
   Object.assign(testApp.context, { queue });
-  const laboratory = await createLaboratory();
+  laboratory = await createLaboratory();
   chemist = await testApp.as(laboratory.people.chemist);
   unknownId = (await createUnknownWithEvidence(laboratory, evidence)).id;
   runId = (await chemist.post(`/unknowns/${unknownId}/runs`, { keep: 100 })).body.id;
@@ -55,11 +56,22 @@ afterAll(async () => {
 });
 
 describe('a run with the real engine', () => {
-  it('counts every constitution of the formula and ranks the right one first', async () => {
-    const { body: run } = await chemist.get(`/runs/${runId}`);
-    expect(run).toMatchObject({ status: 'finished', complete: true, failure: null, constitutionCount: 1313 });
-    expect(run.cpuSeconds).toBeGreaterThan(0);
+  it('counts every constitution of a formula of which nothing else is known', async () => {
+    const { id } = await createUnknownWithEvidence(laboratory, { formula: evidence.formula, options: { plausibility: false } });
+    const { body: started } = await chemist.post(`/unknowns/${id}/runs`, { keep: 10 });
+    await queue.settled(started.id);
+    const { body: run } = await chemist.get(`/runs/${started.id}`);
+    expect(run).toMatchObject({ status: 'finished', complete: true, failure: null, constitutionCount: 1313, cuts: [] });
     expect(run.funnel[0]).toMatchObject({ stage: 'constitutions', entered: 1313 });
+  });
+
+  it('builds only what the signals allow and ranks the right one first', async () => {
+    const { body: run } = await chemist.get(`/runs/${runId}`);
+    expect(run).toMatchObject({ status: 'finished', complete: true, failure: null });
+    expect(run.cpuSeconds).toBeGreaterThan(0);
+    expect(run.constitutionCount).toBeLessThan(1313 / 5);
+    expect(run.cuts.map(({ reason }: { reason: string }) => reason)).toContain('signals:assignment');
+    expect(run.funnel[0]).toMatchObject({ stage: 'constitutions', entered: run.constitutionCount });
     const { body } = await chemist.get(`/runs/${runId}/candidates`);
     const { body: predicted } = await chemist.post(`/runs/${runId}/explanations`, { smiles: 'CC(=O)OCCCC' });
     expect(predicted).toMatchObject({ kind: 'ranked', rank: 1, candidateId: body.rows[0].id });
