@@ -7,6 +7,7 @@ import { describePages } from '../support/pages';
 import {
   candidateDetail,
   candidateId,
+  estimate,
   finishedRun,
   hopelessEstimate,
   itemOf,
@@ -54,8 +55,27 @@ describePages('pages of runs', (open) => {
       await dialog.getByText('This run will not end within what is left of your quota').waitFor();
       expect(await dialog.getByRole('listitem').allInnerTexts()).toEqual(hopelessEstimate.hints.map(({ text }) => text));
       await dialog.getByText(/about 105 years/).waitFor();
+      await dialog.getByText('None of these is enough by itself.', { exact: false }).waitFor();
       await dialog.getByRole('link', { name: 'Back to the evidence' }).click();
       await page.waitForURL(`**/unknowns/${ids.unknown}/evidence`);
+    });
+
+    it('shows no range where its ends are the same once rounded', async () => {
+      const tiny = { estimate: 2, low: 2, high: 2 };
+      const nothing = { estimate: 0, low: 0, high: 0 };
+      const counted = { ...estimate, ...tiny, isExact: true, survivors: tiny, quotaShare: nothing };
+      const api = laboratory(
+        'chemist',
+        runHandlers({ estimateRun: () => ({ ...counted, cpuSeconds: 0.01, cpuSecondsLow: 0.01, cpuSecondsHigh: 0.02 }) }),
+      );
+      const page = await open(api, `/unknowns/${ids.unknown}/runs`);
+      await page.getByRole('button', { name: 'Start run' }).click();
+      const dialog = page.getByRole('dialog', { name: 'Start run' });
+      await dialog.getByText('The search is small enough to be counted beforehand.').waitFor();
+      const text = (await dialog.locator('dl').first().innerText()).replace(/\s+/g, ' ');
+      expect(text).toContain('2 (counted)');
+      expect(text).toContain('< 0.1 s');
+      expect(text).not.toMatch(/about <|\(<|\(2 –/);
     });
 
     it('weighs the time limit that is being typed', async () => {

@@ -6,7 +6,7 @@ import { FunnelPicture } from '../../../components/funnel/funnel-picture';
 import { bandFromFunnel, bandFromProgress } from '../../../components/funnel/funnel-stages';
 import { Panel } from '../../../components/panel';
 import { StatusWord } from '../../../components/status-word';
-import { formatSeconds } from '../../../lib/dates';
+import { formatRoughSeconds, formatSeconds } from '../../../lib/dates';
 import { formatCount } from '../../../lib/numbers';
 import type { Run, RunProgress } from '../../../lib/queries/run-queries';
 import { useCancelRun } from '../api/use-cancel-run';
@@ -17,6 +17,9 @@ const STAGE_WORDS: Readonly<Record<RunProgress['stage'], string>> = {
   ranking: 'Ranking the candidates',
   done: 'Finishing',
 };
+
+/** Rate and time left speak of constitutions still to be built; afterwards they would read as a standstill. */
+const isWeaving = (stage: RunProgress['stage']) => stage === 'planning' || stage === 'enumerating';
 
 function Figure({ label, value }: { label: string; value: string }) {
   return (
@@ -79,11 +82,16 @@ export function RunLive({ run, stream }: { run: Run; stream: 'connected' | 'reco
         />
         <Figure label="Constitutions seen" value={figure(({ constitutionsSeen }) => formatCount(constitutionsSeen))} />
         <Figure label="Kept so far" value={figure(({ survivors }) => formatCount(Math.min(survivors, run.settings.keep)))} />
-        <Figure label="Rate" value={figure(({ ratePerSecond }) => `${formatCount(ratePerSecond)}\u2009/\u2009s`)} />
+        <Figure
+          label="Rate"
+          value={figure(({ stage, ratePerSecond }) => (isWeaving(stage) ? `${formatCount(ratePerSecond)}\u2009/\u2009s` : '–'))}
+        />
         <Figure label="Elapsed" value={figure(({ elapsedSeconds }) => formatSeconds(elapsedSeconds))} />
         <Figure
           label="Time left"
-          value={figure(({ secondsLeft }) => (secondsLeft === null ? 'not known yet' : `about ${formatSeconds(secondsLeft)}`))}
+          value={figure(({ stage, secondsLeft }) =>
+            !isWeaving(stage) ? '–' : secondsLeft === null ? 'not known yet' : `about ${formatRoughSeconds(secondsLeft)}`,
+          )}
         />
       </dl>
       <FunnelPicture band={band} isLive />

@@ -1,4 +1,4 @@
-import { formatSeconds } from '../../../lib/dates';
+import { formatRoughSeconds } from '../../../lib/dates';
 import { formatCount } from '../../../lib/numbers';
 
 const UNITS: ReadonlyArray<readonly [number, string]> = [
@@ -24,10 +24,9 @@ export function formatEstimate(value: number): string {
   return formatCount(Math.round(value / step) * step);
 }
 
-/** An estimated span of time in the largest unit that says something: 12 s, 3 h 20 min, 40 days, 2 million years. */
+/** An estimated span of time in the largest unit that says something: 12 s, 3.3 h, 40 days, 2 million years. */
 export function formatSpan(seconds: number): string {
-  if (seconds < 0.1) return 'under 0.1\u2009s';
-  if (seconds < 2 * DAY_SECONDS) return formatSeconds(seconds);
+  if (seconds < 2 * DAY_SECONDS) return formatRoughSeconds(seconds);
   if (seconds < 2 * YEAR_SECONDS) return `${formatCount(seconds / DAY_SECONDS)} days`;
   return `${formatEstimate(seconds / YEAR_SECONDS)} years`;
 }

@@ -53,31 +53,22 @@ function Figures({
         <Figure label="Constitutions">
           {estimate.isExact ? (
             <>
-              <Strong>{formatCount(estimate.estimate)}</Strong> <Range>counted</Range>
+              <Strong>{formatCount(estimate.estimate)}</Strong> <span className="text-faded">(counted)</span>
             </>
           ) : (
             <>
-              about <Strong>{formatEstimate(estimate.estimate)}</Strong>{' '}
-              <Range>
-                {formatEstimate(estimate.low)} – {formatEstimate(estimate.high)}
-              </Range>
+              <Rough {...estimate} format={formatEstimate} />
             </>
           )}
         </Figure>
         <Figure label="Pass the filters">
-          about <Strong>{formatEstimate(survivors.estimate)}</Strong>{' '}
-          <Range>
-            {formatEstimate(survivors.low)} – {formatEstimate(survivors.high)}
-          </Range>
+          <Rough {...survivors} format={formatEstimate} />
           <span className="block text-small text-faded">
             the best {formatEstimate(kept)} are kept; your quota allows {formatCount(candidatesPerRun)}
           </span>
         </Figure>
         <Figure label="CPU time">
-          about <Strong>{formatSpan(cpuSeconds)}</Strong>{' '}
-          <Range>
-            {formatSpan(cpuSecondsLow)} – {formatSpan(cpuSecondsHigh)}
-          </Range>
+          <Rough estimate={cpuSeconds} low={cpuSecondsLow} high={cpuSecondsHigh} format={formatSpan} />
           {threadCount > 1 ? (
             <span className="block text-small text-faded">
               {formatSpan(cpuSeconds / threadCount)} on {threadCount} threads that nobody else uses
@@ -89,10 +80,7 @@ function Figures({
             <span className="text-madder">nothing is left of this month</span>
           ) : (
             <>
-              about <Strong>{formatShare(quotaShare.estimate)}</Strong>{' '}
-              <Range>
-                {formatShare(quotaShare.low)} – {formatShare(quotaShare.high)}
-              </Range>
+              <Rough {...quotaShare} format={formatShare} />
               <span className="mt-1 mb-1 block">
                 <ShareBar share={quotaShare} />
               </span>
@@ -102,7 +90,9 @@ function Figures({
         </Figure>
       </dl>
       <p className="mt-2 text-small text-faded">
-        By random probing of the search tree; ranges hold the true value in 19 of 20 cases. The run itself counts exactly.
+        {estimate.isExact
+          ? 'The search is small enough to be counted beforehand.'
+          : 'By random probing of the search tree; ranges hold the true value in 19 of 20 cases. The run itself counts exactly.'}
       </p>
     </div>
   );
@@ -165,6 +155,9 @@ function Outlook({ unknownId, estimate, settings }: { unknownId: string; estimat
         <>
           <p className="mt-2 font-semibold">What would help most</p>
           {hints}
+          {isHopeless && estimate.hints.every(({ factor }) => factor < excess) ? (
+            <p className="mt-1">None of these is enough by itself. Required fragments and 2D pairs narrow a search most.</p>
+          ) : null}
         </>
       )}
       {backToEvidence}
@@ -199,6 +192,20 @@ function Figure({ label, children }: { label: string; children: ReactNode }) {
 function Strong({ children }: { children: ReactNode }) {
   return <strong className="font-semibold whitespace-nowrap">{children}</strong>;
 }
-function Range({ children }: { children: ReactNode }) {
-  return <span className="text-faded">({children})</span>;
+/** An estimate with its range, as far as these differ once they are rounded. */
+function Rough({ estimate, low, high, format }: { estimate: number; low: number; high: number; format: (value: number) => string }) {
+  const text = format(estimate);
+  const [from, to] = [format(low), format(high)];
+  return (
+    <>
+      {text.startsWith('<') ? '' : 'about '}
+      <Strong>{text}</Strong>
+      {from === to ? null : (
+        <span className="text-faded">
+          {' '}
+          <span className="whitespace-nowrap">({from}</span> – <span className="whitespace-nowrap">{to})</span>
+        </span>
+      )}
+    </>
+  );
 }

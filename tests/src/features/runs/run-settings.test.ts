@@ -51,10 +51,12 @@ describe('an estimated number', () => {
   });
 
   it('of seconds is told in the largest unit that says something', () => {
-    expect([0.02, 12, 5_400, 3 * 86_400, 3.2e9, 1e20].map(formatSpan)).toEqual([
-      'under 0.1\u2009s',
+    expect([0.02, 12, 80, 1_257, 12_000, 3 * 86_400, 3.2e9, 1e20].map(formatSpan)).toEqual([
+      '<\u20090.1\u2009s',
       '12\u2009s',
-      '1\u2009h 30\u2009min',
+      '80\u2009s',
+      '21\u2009min',
+      '3.3\u2009h',
       '3 days',
       '101 years',
       '3.2 trillion years',
