@@ -7,6 +7,8 @@ import { formatProbability } from '../../../lib/numbers';
 export const USUAL_DEVIATION = { '13C': 3, '1H': 0.3 } as const;
 
 export interface FitFigures {
+  /** Whether the run met every constitution. */
+  readonly isComplete: boolean;
   readonly noneOfTheseProbability: number | null;
   readonly carbonDeviation: number | null;
   readonly protonDeviation: number | null;
@@ -24,7 +26,7 @@ export function fitCautions(best: FitFigures): string[] {
   const none = best.noneOfTheseProbability;
   if (none !== null && none >= 0.5)
     cautions.push(
-      `More likely than not (${formatProbability(none)}), none of these structures is the right one. Check the formula, the required fragments and the signal list.`,
+      `More likely than not (${formatProbability(none)}), none of these structures is the right one. ${best.isComplete ? 'Check' : 'The run did not reach every constitution: run it to the end, and check'} the formula, the required fragments and the signal list.`,
     );
   else if (none !== null && none >= 0.2)
     cautions.push(`With ${formatProbability(none)} probability none of these structures is the right one.`);

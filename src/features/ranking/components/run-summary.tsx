@@ -25,7 +25,12 @@ export function RunSummary({ run, best }: { run: Run; best: CandidateRow | undef
   const cautions =
     best === undefined
       ? []
-      : fitCautions({ noneOfTheseProbability: none, carbonDeviation: best.carbonDeviation, protonDeviation: best.protonDeviation });
+      : fitCautions({
+          isComplete: run.complete,
+          noneOfTheseProbability: none,
+          carbonDeviation: best.carbonDeviation,
+          protonDeviation: best.protonDeviation,
+        });
   const misfit = best === undefined ? '' : misfitText(best);
   const hasSignals = best === undefined || best.terms.carbon13 !== undefined || best.terms.proton1 !== undefined;
   return (
