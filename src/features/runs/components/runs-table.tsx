@@ -102,8 +102,12 @@ export function RunsTable({ runs, caption, hasUnknown = false }: RunsTableProps)
                 {...(isEnded(run) ? { keptCount: run.keptCount } : {})}
               />
             </Cell>
-            <Cell align="right">{count(constitutions)}</Cell>
-            <Cell align="right">{count(survivors)}</Cell>
+            <Cell align="right" className="whitespace-nowrap">
+              {count(constitutions)}
+            </Cell>
+            <Cell align="right" className="whitespace-nowrap">
+              {count(survivors)}
+            </Cell>
             <Cell align="right" className="whitespace-nowrap">
               {seconds === null ? '–' : formatSeconds(Math.max(0, seconds))}
             </Cell>
@@ -153,7 +157,9 @@ function RunEntry({ run, hasUnknown }: { run: Run; hasUnknown: boolean }) {
         />
       </div>
       <p className="tabular text-table">
-        {count(constitutions)} constitutions, {count(survivors)} survive{seconds === null ? '' : `, ${formatSeconds(Math.max(0, seconds))}`}
+        {count(constitutions)} {constitutions === 1 ? 'constitution' : 'constitutions'}, {count(survivors)}{' '}
+        {survivors === 1 ? 'survives' : 'survive'}
+        {seconds === null ? '' : `, ${formatSeconds(Math.max(0, seconds))}`}
       </p>
       <p className="text-small text-faded">
         <Time iso={run.createdAt} />, {run.startedBy.name}, revision {run.revisionNumber}
