@@ -7,7 +7,7 @@ export const CARBON_TOLERANCE = 0.6;
 export const PROTON_TOLERANCE = 0.06;
 /** Differences of typed numbers below this are rounding. */
 const ROUNDING = 1e-9;
-/** Elements whose hydrogens exchange and have no HSQC pair with a carbon; each atom accounts for one unpaired signal. */
+/** Elements whose hydrogens exchange and have no HSQC pair with a carbon; each atom accounts for one unpaired signal of at most two hydrogens. */
 const EXCHANGING = ['N', 'O', 'S'] as const;
 
 export const CORRELATION_KINDS = ['cosy', 'hsqc', 'hmbc'] as const;
@@ -157,13 +157,15 @@ function attachedTo(
 
 /**
  * 13C signals that are quaternary because HSQC shows nothing on them. Said only where both lists are whole: the 13C list
- * by its option, the HSQC list when hardly more 1H signals are without a partner than N, O and S can carry.
+ * by its option, the HSQC list when N, O and S can carry the hydrogens of all 1H signals without a partner.
  */
 function readAbsence(document: EvidenceDocument, hsqc: readonly PairReading[], ties: readonly Ties[]): number[] {
   if (hsqc.length === 0 || document.protonSignals.length === 0 || document.options.carbonList !== 'complete') return [];
-  const unpaired = document.protonSignals.filter(
-    ({ exchangeable }, proton) => exchangeable !== true && ties[proton]!.sure.size + ties[proton]!.possible.size === 0,
-  ).length;
+  const unpaired = document.protonSignals.reduce(
+    (sum, { exchangeable, count }, proton) =>
+      exchangeable === true || ties[proton]!.sure.size + ties[proton]!.possible.size > 0 ? sum : sum + Math.ceil((count ?? 1) / 2),
+    0,
+  );
   const formula = parseFormula(document.formula);
   const exchanging = formula.ok ? EXCHANGING.reduce((sum, symbol) => sum + countOf(formula.counts, symbol), 0) : 0;
   if (unpaired > exchanging) return [];

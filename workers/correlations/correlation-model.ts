@@ -1,7 +1,9 @@
 import { readCorrelations, type CorrelationConstraint } from '../../shared/chemistry/correlations.js';
 import { parseFormula } from '../../shared/chemistry/formula.js';
+import { SHIFT_RANGES } from '../../shared/chemistry/shift-window-table.js';
 import { windowOf } from '../../shared/chemistry/shift-windows.js';
 import type { CarbonWindow, EvidenceDocument } from '../../shared/schemas/evidence.js';
+import { GROUP_SHIFT_RANGES } from '../enumeration/group-shift-ranges.js';
 import { solventOfCarbonSignal } from '../ranking/solvent-peaks.js';
 
 /** A signal of which COSY or HMBC pairs speak, as something to be laid on atoms. */
@@ -23,6 +25,8 @@ export interface SiteModel {
   /** For lone protons: true = only on atoms other than C and Si, false = only on these, null = on either. */
   readonly exchangeable: boolean | null;
   readonly window: CarbonWindow | null;
+  /** The same for carbons of isocyanides, diazo groups and nitrile oxides, with their shifts let in. */
+  readonly groupWindow: CarbonWindow | null;
   /** 1H signals that are known to come from these very atoms; 0 where overlap leaves that open. */
   readonly tiedProtons: number;
 }
@@ -76,6 +80,7 @@ export function createCorrelationModel(evidence: EvidenceDocument): CorrelationM
           mostHydrogens: attached[signal].most,
           exchangeable: null,
           window: parsed.ok ? windowOf(observed, options, parsed.counts) : null,
+          groupWindow: parsed.ok ? windowOf(observed, options, parsed.counts, [...SHIFT_RANGES, ...GROUP_SHIFT_RANGES]) : null,
           tiedProtons: (observed.count ?? 1) === 1 ? tiedProtons[signal].length : 0,
         };
       }
@@ -91,6 +96,7 @@ export function createCorrelationModel(evidence: EvidenceDocument): CorrelationM
         mostHydrogens: count === undefined || count >= 3 ? 4 : 2,
         exchangeable: exchangeable ?? null,
         window: null,
+        groupWindow: null,
         tiedProtons: 0,
       };
     }),

@@ -59,8 +59,9 @@ export function carbonCensus(
   const signals = all.filter((signal) => solventOfCarbonSignal(signal, options.solvent) === null);
   for (const signal of signals) if (signal.hydrogens !== undefined) least[signal.hydrogens] += signal.count ?? 1;
   // Carbons with an HSQC pair are not quaternary, however many hydrogens they have.
-  readCorrelations(evidence).attached.forEach((attached, index) => {
-    if (all[index].hydrogens === undefined && attached.least > 0) most[0] = Math.max(0, most[0] - (all[index].count ?? 1));
+  readCorrelations(evidence).attached.forEach(({ least: attached }, index) => {
+    const signal = all[index];
+    if (signal.hydrogens === undefined && attached > 0 && signals.includes(signal)) most[0] = Math.max(0, most[0] - (signal.count ?? 1));
   });
   const isComplete = signals.length > 0 && signals.every((signal) => signal.hydrogens !== undefined) && options.carbonList === 'complete';
   if (isComplete) {

@@ -1,6 +1,7 @@
 import { type CarbonWindow, type EvidenceDocument, HYBRIDISATIONS } from '../../shared/schemas/evidence.js';
 import { createCorrelationModel, findOpenSites, TYPE_COUNT, type CorrelationModel } from '../correlations/correlation-model.js';
 import { areTwins, CorrelationMatcher, FAILED, hasBit, MET, setBit, WORDS } from '../correlations/correlation-matcher.js';
+import { isGroupCarbon } from '../enumeration/group-shift-ranges.js';
 import { MAX_ATOMS, NEIGHBOUR_STRIDE, type StructureAnalysis } from '../graph/analysis.js';
 import type { Environments } from './environments.js';
 import type { SignalBounds } from './signal-bounds.js';
@@ -122,7 +123,7 @@ export class CorrelationCheck {
     const { atomCount: n, atomicNumbers, hydrogens } = s.graph;
     const { places } = matcher;
     for (let site = 0; site < model.sites.length; site++) {
-      const { isCarbon, leastHydrogens, mostHydrogens, exchangeable, window } = model.sites[site];
+      const { isCarbon, leastHydrogens, mostHydrogens, exchangeable, window, groupWindow } = model.sites[site];
       places[site * WORDS] = places[site * WORDS + 1] = 0;
       if (isCarbon) {
         for (let type = leastHydrogens; type <= mostHydrogens; type++) {
@@ -131,7 +132,8 @@ export class CorrelationCheck {
         }
         if (window === null) continue;
         for (let a = 0; a < n; a++)
-          if (hasBit(places, site, a) && !isInWindow(s, a, window)) places[site * WORDS + (a >> 5)] &= ~(1 << (a & 31));
+          if (hasBit(places, site, a) && !isInWindow(s, a, isGroupCarbon(s.graph, a) ? groupWindow : window))
+            places[site * WORDS + (a >> 5)] &= ~(1 << (a & 31));
         continue;
       }
       for (let a = 0; a < n; a++) {
@@ -144,7 +146,9 @@ export class CorrelationCheck {
 }
 
 /** Does a carbon have the hybridisation and the heteroatoms next to it that a window asks for? */
-function isInWindow(s: StructureAnalysis, atom: number, { hybridisations, heteroNeighbours }: CarbonWindow): boolean {
+function isInWindow(s: StructureAnalysis, atom: number, window: CarbonWindow | null): boolean {
+  if (window === null) return true;
+  const { hybridisations, heteroNeighbours } = window;
   if (!hybridisations.includes(HYBRIDISATIONS[3 - s.hybridisation[atom]])) return false;
   let hetero = 0;
   for (let k = 0; k < s.degrees[atom]; k++) if (s.graph.atomicNumbers[s.neighbours[atom * NEIGHBOUR_STRIDE + k]] !== CARBON) hetero++;

@@ -1,3 +1,4 @@
+import { readCorrelations } from '../../shared/chemistry/correlations.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { StructureAnalysis } from '../graph/analysis.js';
 import type { Environments } from './environments.js';
@@ -40,6 +41,8 @@ export class SignalCensus {
   private readonly isCounted = new Uint8Array(TYPE_COUNT).fill(1);
   private readonly largestCount = new Int32Array(TYPE_COUNT);
   private readonly totalCarbonsUnder: number;
+  /** Carbons under signals with attached hydrogens, by their number or by an HSQC pair. */
+  private readonly protonatedUnder: number;
   private readonly carbonSignalCount: number;
   private readonly protonSignalCount: number;
   private readonly exchangeableUnder: number;
@@ -56,7 +59,9 @@ export class SignalCensus {
     this.carbons = readCarbonObservations(evidence);
     this.protons = readProtonObservations(evidence);
     this.windows = WindowCensus.of(evidence, this.carbons);
+    const { attached } = readCorrelations(evidence);
     let total = 0;
+    let protonated = 0;
     let carbonSignals = 0;
     for (let i = 0; i < this.carbons.size; i++) {
       if (this.carbons.maybeSolvent[i] === 1) continue;
@@ -64,6 +69,7 @@ export class SignalCensus {
       const type = this.carbons.hydrogens[i];
       const count = this.carbons.count[i];
       total += Math.max(count, 1);
+      if (attached[i].least > 0) protonated += Math.max(count, 1);
       if (type === UNKNOWN_HYDROGENS) continue;
       this.signals[type]++;
       this.carbonsUnder[type] += Math.max(count, 1);
@@ -71,6 +77,7 @@ export class SignalCensus {
       this.largestCount[type] = Math.max(this.largestCount[type], count);
     }
     this.totalCarbonsUnder = total;
+    this.protonatedUnder = protonated;
     this.carbonSignalCount = carbonSignals;
     let exchangeable = 0;
     let bound = 0;
@@ -126,6 +133,8 @@ export class SignalCensus {
     }
     if (this.totalCarbonsUnder > totalAtoms && this.meet('tooFewCarbons', ALL_TYPES, s, all))
       return SIGNAL_REASONS.tooFewCarbons[ALL_TYPES];
+    // The atoms concerned are the carbons without hydrogens, of which it has too many.
+    if (this.protonatedUnder > totalAtoms - atoms[0] && this.meet('tooFewProtonated', 0, s, all)) return SIGNAL_REASONS.tooFewProtonated[0];
     if (
       !carbons.isTyped &&
       this.carbonSignalCount > totalMost &&

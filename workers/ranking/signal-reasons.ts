@@ -8,6 +8,7 @@ export const ALL_TYPES = 4;
 /** Kinds of contradiction between the numbers of signals and a structure. */
 export type SignalReasonKind =
   | 'tooFewCarbons'
+  | 'tooFewProtonated'
   | 'carbonAbsent'
   | 'carbonCount'
   | 'carbonEnvironments'
@@ -23,6 +24,7 @@ const byType = (kind: SignalReasonKind): readonly string[] => [0, 1, 2, 3, ALL_T
 /** Reason codes by kind and carbon type, made once so that the hot path builds no strings. */
 export const SIGNAL_REASONS: Readonly<Record<SignalReasonKind, readonly string[]>> = {
   tooFewCarbons: byType('tooFewCarbons'),
+  tooFewProtonated: byType('tooFewProtonated'),
   carbonAbsent: byType('carbonAbsent'),
   carbonCount: byType('carbonCount'),
   carbonEnvironments: byType('carbonEnvironments'),
@@ -70,6 +72,8 @@ export function describeSignalReason(reason: string): string | null {
   switch (kind) {
     case 'tooFewCarbons':
       return `It has fewer ${carbons} than the ${signals} stand for.`;
+    case 'tooFewProtonated':
+      return 'It has fewer carbons with hydrogens than the ¹³C signals stand for that have attached hydrogens or an HSQC pair.';
     case 'carbonAbsent':
       return `It has ${carbons}, but the ¹³C list, taken as complete, shows none.`;
     case 'carbonCount':

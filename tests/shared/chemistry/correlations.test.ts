@@ -190,6 +190,16 @@ describe('attached hydrogens from 2D pairs', () => {
 
   it('say nothing where either list may lack signals', () => {
     expect(hydrogensOf(documentOf({ hsqc: [[66.1, 4.35]] }))).toEqual(new Array(6).fill(undefined));
+    // The three hydrogens of a methyl group are more than the single oxygen carries.
+    const unpaired = (count: number): EvidenceDocument =>
+      evidenceDocument.parse({
+        formula: 'C4H10O',
+        carbonSignals: [{ shift: 60 }, { shift: 30 }],
+        protonSignals: [{ shift: 3.5 }, { shift: 1.2, count }],
+        correlations: { hsqc: [[60, 3.5]] },
+      });
+    expect(hydrogensOf(unpaired(1))).toEqual([undefined, 0]);
+    expect(hydrogensOf(unpaired(3))).toEqual([undefined, undefined]);
     expect(hydrogensOf(documentOf(whole, { options: { carbonList: 'partial' } }))[0]).toBeUndefined();
     expect(hydrogensOf(documentOf({}))[0]).toBeUndefined();
   });

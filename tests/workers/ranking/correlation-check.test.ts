@@ -35,6 +35,36 @@ describe('2D pairs on a finished structure', () => {
     expect(explain(base, 'CCC(=O)OC').kind).toBe('survives');
   });
 
+  it('know where carbons of diazo groups are found', () => {
+    // A constructed case: at 30 ppm other carbons with one hydrogen are sp3, those of a diazo group sp2.
+    const input: EvidenceInput = {
+      formula: 'C2H4N2',
+      carbonSignals: [{ shift: 10 }, { shift: 30, hydrogens: 1 }],
+      protonSignals: [{ shift: 1.6 }, { shift: 3.3 }],
+      correlations: { hsqc: [[10, 1.6]], hmbc: [[1.6, 30]] },
+      options: { plausibility: false, shiftWindows: true },
+    };
+    expect(evaluate(input, 'CC=[N+]=[N-]').kind).toBe('scored');
+  });
+
+  it('reject a structure with fewer carbons with hydrogens than have an HSQC pair', () => {
+    const input: EvidenceInput = {
+      formula: 'C2H6O2S',
+      carbonSignals: [{ shift: 25 }, { shift: 30 }],
+      protonSignals: [{ shift: 1.4 }, { shift: 1.7 }],
+      correlations: {
+        hsqc: [
+          [25, 1.4],
+          [30, 1.7],
+        ],
+      },
+      options: { plausibility: false },
+    };
+    expect(evaluate(input, 'CSOOC').kind).toBe('scored');
+    expect(evaluate(input, 'CC(O)OS').kind).toBe('scored');
+    expect(evaluate(input, 'CC(O)(O)S')).toMatchObject({ kind: 'rejected', reason: 'signals:tooFewProtonated:0' });
+  });
+
   it('allow as many unmet pairs as there are exceptions, and longer distances where the limit is longer', () => {
     const { correlations } = correlationEvidenceOf(ester);
     expect(evaluate({ ...base, correlations: { ...correlations, exceptions: 1 } }, isomer).kind).toBe('scored');
