@@ -33,6 +33,8 @@ const DESCRIBING_MS = 90;
 const TYPICAL_ENTRY_SECONDS = 4e-5;
 const TYPICAL_DESCRIBING_SECONDS = 3e-3;
 const MOST_SLICES = 400;
+/** Stands for "none was finished" where a relative deviation is needed: a factor of about twenty either way. */
+const LEAST_BUILT = 0.1;
 
 interface Task {
   readonly evidence: EvidenceDocument;
@@ -76,7 +78,9 @@ export function measureRate(
   // Of the whole, not the mean of the slices' rates: one slice held up by another process would count for all.
   const rate = seconds / Math.max(1, built);
   const squares = warm.reduce((sum, slice) => sum + (slice.seconds - rate * slice.count) ** 2, 0);
-  const relativeDeviation = warm.length < 2 ? 1 : Math.sqrt((squares * warm.length) / (warm.length - 1)) / seconds;
+  const spread = warm.length < 2 ? 1 : Math.sqrt((squares * warm.length) / (warm.length - 1)) / seconds;
+  // Where slices end with few constitutions, or none, their number is uncertain like any rare count, whatever the spread says.
+  const relativeDeviation = Math.sqrt(spread ** 2 + 1 / Math.max(built, LEAST_BUILT));
   return { secondsPerConstitution: rate, relativeDeviation, ...keeping };
 }
 
