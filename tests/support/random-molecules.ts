@@ -1,15 +1,5 @@
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
-
-/** Small seeded generator (mulberry32), so that a failing case can be run again. */
-export function createRandom(seed: number): () => number {
-  let state = seed >>> 0;
-  return () => {
-    state = (state + 0x6d2b79f5) >>> 0;
-    let t = Math.imul(state ^ (state >>> 15), state | 1);
-    t ^= t + Math.imul(t ^ (t >>> 7), t | 61);
-    return ((t ^ (t >>> 14)) >>> 0) / 4294967296;
-  };
-}
+import { createRandom } from '../../workers/enumeration/random-descent.js';
 
 const ELEMENTS: ReadonlyArray<readonly [atomicNumber: number, valence: number, weight: number]> = [
   [6, 4, 60],

@@ -11,7 +11,7 @@ import { createSearch, enumerateShard, planShards, type Search } from '../../wor
 import { constitutionKey } from '../../workers/graph/constitution-key.js';
 import { packGraph } from '../../workers/graph/pack.js';
 import { createEvaluator } from '../../workers/ranking/evaluator.js';
-import { createRandom } from './random-molecules.js';
+import { createRandom } from '../../workers/enumeration/random-descent.js';
 import { foldOf } from './nmr-data.js';
 
 /** A real compound with its evidence document; see the README of the data beside the checkout. */

@@ -1,6 +1,7 @@
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
 import { fill } from './fill.js';
-import { createRandom, descend, openBranch, type Descent, type OpenBranch } from './random-descent.js';
+import { openBranch, type OpenBranch } from './open-branch.js';
+import { createRandom, descend, type Descent } from './random-descent.js';
 import type { Search } from './search.js';
 
 /** A constitution met by chance, with how many constitutions of the search it stands for. */
@@ -88,7 +89,7 @@ export function estimateSearch<T>(search: Search, options: ProbeOptions<T>): Sea
   const probe = (d: number): Descent | null => {
     if (probes >= maxProbes || isOver()) return null;
     let branch = open.get(d);
-    if (branch === undefined) open.set(d, (branch = openBranch(search, d)));
+    if (branch === undefined) open.set(d, (branch = openBranch(search.branches[d])));
     const found = descend(branch, walkers, random, isOver);
     if (found === null) return null;
     probes++;
@@ -159,7 +160,7 @@ export function countExactly(search: Search, shouldStop: () => boolean): Float64
   const sizes = new Float64Array(search.branches.length);
   for (let d = 0; d < sizes.length; d++) {
     if (shouldStop()) return null;
-    const { layout, events, judge } = openBranch(search, d);
+    const { layout, events, judge } = openBranch(search.branches[d]);
     let size = 0;
     const isComplete = fill(layout, [], 0, {
       ...events,

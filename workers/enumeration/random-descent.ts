@@ -1,33 +1,6 @@
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
-import { createLayout, type SearchLayout } from './distributions.js';
-import { fill, type FillEvents } from './fill.js';
-import { createLeafJudge, type LeafVerdict } from './leaf-judge.js';
-import { createPartialChecks } from './partial-checks.js';
-import { rowEvents, type Search } from './search.js';
-import { createPartnerTest } from './valence-groups.js';
-
-/** One branch of a search laid out, ready to be walked again and again. */
-export interface OpenBranch {
-  readonly layout: SearchLayout;
-  readonly events: Pick<FillEvents, 'onRow'>;
-  /** What a filled matrix stands for; its graphs are reused. */
-  readonly judge: (filled: Uint8Array, molecule: Uint8Array, mayHaveOtherForms: boolean) => LeafVerdict;
-}
-
-const NOTHING: LeafVerdict = { multigraphs: 0, graphs: [] };
-
-export function openBranch(search: Search, index: number): OpenBranch {
-  const { problem, distribution } = search.branches[index];
-  const layout = createLayout(problem, distribution);
-  const judge = createLeafJudge(problem, layout);
-  const keepsPartners = createPartnerTest(problem, layout);
-  return {
-    layout,
-    events: rowEvents(createPartialChecks(problem, layout), keepsPartners, {}),
-    judge: (filled, molecule, mayHaveOtherForms) =>
-      keepsPartners === null || keepsPartners(filled) ? judge(molecule, mayHaveOtherForms) : NOTHING,
-  };
-}
+import { fill } from './fill.js';
+import type { OpenBranch } from './open-branch.js';
 
 /** A node of the tree with the way to it. */
 interface Node {

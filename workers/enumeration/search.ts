@@ -2,12 +2,11 @@ import { elementOf } from '../../shared/chemistry/elements.js';
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { SearchNode, ShardSpec } from '../../shared/jobs/contract.js';
 import type { MolecularGraph } from '../../shared/types/molecular-graph.js';
-import { createLayout, listDistributions, type Distribution, type SearchLayout } from './distributions.js';
-import { fill, ringCuts, type FillEvents } from './fill.js';
-import { createLeafJudge } from './leaf-judge.js';
-import { createPartialChecks, type PartialCheck } from './partial-checks.js';
+import { listDistributions, type Distribution } from './distributions.js';
+import { fill, ringCuts } from './fill.js';
+import { openBranch, type CutListener } from './open-branch.js';
 import { createProblem, type SearchProblem } from './problem.js';
-import { createPartnerTest, formableGroups, withFormedUnits, type FormableGroups, type FormedUnit } from './valence-groups.js';
+import { formableGroups, withFormedUnits, type FormableGroups, type FormedUnit } from './valence-groups.js';
 
 /** One hydrogen distribution of one sub-search. */
 export interface SearchBranch {
@@ -105,8 +104,7 @@ function listCopies(units: readonly FormedUnit[], available: ReadonlyMap<string,
 
 /** What a shard reports while it runs. Graph arrays are reused: copy what you keep. */
 export interface ConstitutionSink {
-  /** Branches were cut by a constraint while structures were being built. */
-  onCut?(constraint: Pick<PartialCheck, 'reason' | 'text'>, branches: number): void;
+  readonly onCut?: CutListener;
   onConstitution(graph: MolecularGraph): void;
   onMultigraphs(count: number): void;
   /** Called every few thousand rows; true ends the shard early. */
@@ -134,15 +132,11 @@ const RING_CONSTRAINTS = [
 
 function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink): boolean {
   for (let d = node.firstDistribution; d < node.endDistribution; d++) {
-    const { problem, distribution } = search.branches[d];
-    const layout = createLayout(problem, distribution);
-    const judge = createLeafJudge(problem, layout);
-    const keepsPartners = createPartnerTest(problem, layout);
+    const { layout, events, judge } = openBranch(search.branches[d], sink.onCut);
     const complete = fill(layout, node.prefix, 0, {
-      ...rowEvents(createPartialChecks(problem, layout), keepsPartners, sink),
+      ...events,
       onLeaf(filled, molecule, mayHaveOtherForms) {
-        if (keepsPartners !== null && !keepsPartners(filled)) return sink.stopRequested();
-        const verdict = judge(molecule, mayHaveOtherForms);
+        const verdict = judge(filled, molecule, mayHaveOtherForms);
         if (verdict.multigraphs !== 0) sink.onMultigraphs(verdict.multigraphs);
         for (let k = 0; k < verdict.graphs.length; k++) sink.onConstitution(verdict.graphs[k]);
         return sink.stopRequested();
@@ -153,30 +147,6 @@ function enumerateNode(search: Search, node: SearchNode, sink: ConstitutionSink)
     if (!complete) return false;
   }
   return true;
-}
-
-/**
- * The checks of a layout as an event of the fill; none at all without checks, so that plain searches pay nothing.
- *
- * @param keepsPartners - see createPartnerTest; what it cuts is built in another sub-search and not reported.
- */
-export function rowEvents(
-  checks: readonly PartialCheck[],
-  keepsPartners: ((filled: Uint8Array) => boolean) | null,
-  sink: Pick<ConstitutionSink, 'onCut'>,
-): Pick<FillEvents, 'onRow'> {
-  if (checks.length === 0 && keepsPartners === null) return {};
-  return {
-    onRow(filled, known, molecule) {
-      if (keepsPartners !== null && !keepsPartners(filled)) return false;
-      for (const check of checks) {
-        if (check.test(filled, known, molecule)) continue;
-        sink.onCut?.(check, 1);
-        return false;
-      }
-      return true;
-    },
-  };
 }
 
 /** Rows that a plan splits at most: deeper prefixes cost more to make than they spread. */
@@ -213,12 +183,11 @@ export function planShards(search: Search, target: number): ShardSpec[] {
  * empty list when nothing is below.
  */
 function expandNode(search: Search, node: SearchNode, rows: number): SearchNode[] {
-  const { problem, distribution } = search.branches[node.firstDistribution];
-  const layout: SearchLayout = createLayout(problem, distribution);
+  const { layout, events } = openBranch(search.branches[node.firstDistribution]);
   const prefixes: number[][] = [];
   let leaves = 0;
   fill(layout, node.prefix, rows, {
-    ...rowEvents(createPartialChecks(problem, layout), createPartnerTest(problem, layout), {}),
+    ...events,
     onLeaf: () => {
       leaves++;
       return false;

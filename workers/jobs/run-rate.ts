@@ -2,7 +2,8 @@ import type { RunSettings, ShardCandidate } from '../../shared/jobs/contract.js'
 import type { EvidenceDocument } from '../../shared/schemas/evidence.js';
 import type { ProbeSample } from '../enumeration/estimate.js';
 import { fill } from '../enumeration/fill.js';
-import { createRandom, openBranch, type OpenBranch } from '../enumeration/random-descent.js';
+import { openBranch, type OpenBranch } from '../enumeration/open-branch.js';
+import { createRandom } from '../enumeration/random-descent.js';
 import type { Search } from '../enumeration/search.js';
 import { constitutionKey } from '../graph/constitution-key.js';
 import { packGraph, unpackGraph } from '../graph/pack.js';
@@ -67,7 +68,7 @@ export function measureRate(
   while (total > 0 && slices.length < MOST_SLICES && (slices.length === 0 || !isSliced())) {
     const sample = samples[firstAtLeast(reached, random() * total)];
     let branch = open.get(sample.branch);
-    if (branch === undefined) open.set(sample.branch, (branch = openBranch(search, sample.branch)));
+    if (branch === undefined) open.set(sample.branch, (branch = openBranch(search.branches[sample.branch])));
     slices.push(runSlice(branch, evaluator, sample.path));
   }
   const keeping = measureKeeping(task, shouldStop);

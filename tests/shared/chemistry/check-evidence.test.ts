@@ -9,7 +9,8 @@ import { evidenceDocument, type EvidenceInput } from '../../../shared/schemas/ev
 import type { MolecularGraph } from '../../../shared/types/molecular-graph.js';
 import { FRAGMENT_LIBRARY } from '../../../shared/fragments/library.js';
 import { writeExplicitSmiles } from '../../support/explicit-smiles.js';
-import { createRandom, randomMolecule } from '../../support/random-molecules.js';
+import { createRandom } from '../../../workers/enumeration/random-descent.js';
+import { randomMolecule } from '../../support/random-molecules.js';
 
 /** Connected parts by random colours; a bond inside a part is never cut. */
 function cutIntoParts({ atomCount: n, bondOrders }: MolecularGraph, seed: number): number[][] {

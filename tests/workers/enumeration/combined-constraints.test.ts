@@ -17,7 +17,7 @@ import { constitutionKey } from '../../../workers/graph/constitution-key.js';
 import { createEvaluator } from '../../../workers/ranking/evaluator.js';
 import { classesOf, correlationEvidenceOf } from '../../support/correlation-evidence.js';
 import { copyGraph } from '../../support/enumerate.js';
-import { createRandom } from '../../support/random-molecules.js';
+import { createRandom } from '../../../workers/enumeration/random-descent.js';
 
 const FORMULAS = [
   ...['C5H8O', 'C4H7NO', 'C4H6O2', 'C3H5NO2', 'C4H4N2', 'C4H5NO', 'C3H6N2O', 'C5H6O', 'C6H6', 'C5H5N', 'C6H8', 'C4H4O'],

@@ -7,7 +7,7 @@ import { constitutionKey } from '../../../workers/graph/constitution-key.js';
 import { correlationEvidenceOf, meetsCorrelations } from '../../support/correlation-evidence.js';
 import { enumerateAll } from '../../support/enumerate.js';
 import { graphOf } from '../../support/graph-of.js';
-import { createRandom } from '../../support/random-molecules.js';
+import { createRandom } from '../../../workers/enumeration/random-descent.js';
 
 const LIST = { keep: 1000, maxSeconds: null, mode: 'list' } as const;
 

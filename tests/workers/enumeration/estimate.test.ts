@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { evidenceDocument, type EvidenceInput } from '../../../shared/schemas/evidence.js';
 import { countExactly, estimateSearch, type SearchEstimate } from '../../../workers/enumeration/estimate.js';
-import { createRandom, descend, openBranch } from '../../../workers/enumeration/random-descent.js';
+import { openBranch } from '../../../workers/enumeration/open-branch.js';
+import { createRandom, descend } from '../../../workers/enumeration/random-descent.js';
 import { createSearch } from '../../../workers/enumeration/search.js';
 import { enumerateAll } from '../../support/enumerate.js';
 import { readOutside } from '../../support/outside.js';
@@ -21,7 +22,7 @@ describe('a random descent', () => {
     for (const walkers of [1, 5]) {
       const random = createRandom(11);
       const total = search.branches.reduce((sum, _, d) => {
-        const branch = openBranch(search, d);
+        const branch = openBranch(search.branches[d]);
         let weights = 0;
         for (let k = 0; k < 1_500; k++) weights += descend(branch, walkers, random, never)!.weight;
         return sum + weights / 1_500;
@@ -32,12 +33,15 @@ describe('a random descent', () => {
 
   it('is exact when it is wide enough to keep every child', () => {
     const search = searchOf({ formula: 'C5H8O' });
-    const total = search.branches.reduce((sum, _, d) => sum + descend(openBranch(search, d), 1e6, createRandom(1), never)!.weight, 0);
+    const total = search.branches.reduce(
+      (sum, _, d) => sum + descend(openBranch(search.branches[d]), 1e6, createRandom(1), never)!.weight,
+      0,
+    );
     expect(total).toBe(enumerateAll({ formula: 'C5H8O' }).constitutions);
   });
 
   it('says nothing when it is ended half way', () => {
-    expect(descend(openBranch(searchOf({ formula: 'C20H30O5' }), 3), 400, createRandom(1), () => true)).toBeNull();
+    expect(descend(openBranch(searchOf({ formula: 'C20H30O5' }).branches[3]), 400, createRandom(1), () => true)).toBeNull();
   });
 });
 

@@ -56,9 +56,7 @@ const SIZE: usize = memory.data(64);
 const COMPONENT_LEFT: usize = memory.data(128, 2);
 /** For each bond: 1 + the root that it attached, 0 when both ends hung together already. */
 const ATTACHED: usize = memory.data(1600);
-/** Own cells after the row's vertex is taken out, with the weight of the row in each. */
-const OWN_COUNT: usize = memory.data(64);
-const OWN_CELL: usize = memory.data(13120, 8);
+/** Weight of a row in each of its own cells, its vertex taken out of the first. */
 const OWN_WEIGHT: usize = memory.data(6560, 4);
 /** Ordered partition of the remaining vertices under the permutation being tried, per depth. */
 const IMAGE: usize = memory.data(13448, 8);
@@ -586,18 +584,13 @@ function splitCells(i: i32): void {
   const m3 = load<u64>(row, 16);
   const change = m1 ^ (m1 << 1) | (m2 ^ (m2 << 1)) | (m3 ^ (m3 << 1));
   store<u64>(SAME + 8 * (i + 1), first + 1 < n ? same & ~change & bits(first + 1, n) : 0);
-  let count = 0;
-  const cells = OWN_CELL + 320 * i;
-  const weights = OWN_WEIGHT + 160 * i;
+  let weights = OWN_WEIGHT + 160 * i;
   for (let start = first; start < n;) {
     const end = cellEndFrom(same, start);
-    const cell = bits(start, end);
-    store<u64>(cells + 8 * count, cell);
-    store<u32>(weights + 4 * count, weightOf(row, cell));
-    count++;
+    store<u32>(weights, weightOf(row, bits(start, end)));
+    weights += 4;
     start = end;
   }
-  store<u8>(OWN_COUNT + i, <u8>count);
 }
 
 function finishRow(i: i32, tight: bool): void {

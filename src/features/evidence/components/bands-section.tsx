@@ -4,6 +4,7 @@ import { InlineError } from '../../../components/field';
 import { Panel } from '../../../components/panel';
 import { EMPTY_BAND, EMPTY_PEAK, issueAt, type BandRow, type EvidenceDraft, type PeakRow } from '../lib/evidence-draft';
 import { SignalTable, type SignalColumn } from './signal-table';
+import { Total } from './total';
 
 const BAND_COLUMNS: ReadonlyArray<SignalColumn<keyof BandRow>> = [
   { key: 'wavenumber', name: 'Wavenumber', label: 'ν̃ (cm⁻¹)', placeholder: '1718' },
@@ -62,14 +63,5 @@ export function BandsSection({ draft, issues, isReadOnly, onChange }: SectionPro
         {isReadOnly ? null : <p className="mt-2 text-small text-faded">Paste two columns from a spreadsheet into any cell.</p>}
       </Panel>
     </div>
-  );
-}
-
-function Total({ count, noun }: { count: number; noun: string }) {
-  return (
-    <span className="text-small text-faded tabular">
-      {count} {noun}
-      {count === 1 ? '' : 's'}
-    </span>
   );
 }

@@ -6,6 +6,7 @@ import { InlineError, TextInput } from '../../../components/field';
 import { Panel } from '../../../components/panel';
 import { EMPTY_PAIR, issueAt, signalsMeant, type EvidenceDraft, type PairRow } from '../lib/evidence-draft';
 import { SignalTable, type CellMark, type SignalColumn } from './signal-table';
+import { Total } from './total';
 
 const PLACEHOLDERS: Record<CorrelationKind, readonly [string, string]> = {
   cosy: ['1.26', '4.12'],
@@ -55,14 +56,7 @@ export function CorrelationsSection({ draft, issues, isReadOnly, onChange }: Sec
   const total = pairs.cosy.length + pairs.hsqc.length + pairs.hmbc.length;
   const setLimit = (change: Partial<EvidenceDraft['pairLimits']>) => onChange({ pairLimits: { ...pairLimits, ...change } });
   return (
-    <Panel
-      title="Correlations in 2D spectra"
-      actions={
-        <span className="text-small text-faded tabular">
-          {total} pair{total === 1 ? '' : 's'}
-        </span>
-      }
-    >
+    <Panel title="Correlations in 2D spectra" actions={<Total count={total} noun="pair" />}>
       <div className="grid gap-x-8 gap-y-6 wide:grid-cols-3">
         {(['hsqc', 'cosy', 'hmbc'] as const).map((kind) => (
           <PairTable key={kind} kind={kind} draft={draft} issues={issues} isReadOnly={isReadOnly} onChange={onChange} />

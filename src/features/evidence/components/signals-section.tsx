@@ -16,6 +16,7 @@ import {
 import { DERIVED } from '../lib/window-text';
 import { SignalTable, type SignalColumn } from './signal-table';
 import { WindowCell } from './window-cell';
+import { Total } from './total';
 
 const CARBON_COLUMNS: ReadonlyArray<SignalColumn<keyof CarbonRow>> = [
   { key: 'shift', name: 'Shift', label: 'δ (ppm)', placeholder: '166.9' },
@@ -58,7 +59,7 @@ export function SignalsSection({ draft, issues, isReadOnly, onChange }: SectionP
             Signals in <Nucleus nucleus="13C" />
           </>
         }
-        actions={<SignalTotal count={draft.carbons.length} />}
+        actions={<Total count={draft.carbons.length} noun="signal" />}
       >
         <InlineError message={wholeList('carbonSignals')} />
         <SignalTable
@@ -104,7 +105,7 @@ export function SignalsSection({ draft, issues, isReadOnly, onChange }: SectionP
             Signals in <Nucleus nucleus="1H" />
           </>
         }
-        actions={<SignalTotal count={draft.protons.length} />}
+        actions={<Total count={draft.protons.length} noun="signal" />}
       >
         <InlineError message={wholeList('protonSignals')} />
         <SignalTable
@@ -125,13 +126,5 @@ export function SignalsSection({ draft, issues, isReadOnly, onChange }: SectionP
         />
       </Panel>
     </div>
-  );
-}
-
-function SignalTotal({ count }: { count: number }) {
-  return (
-    <span className="text-small text-faded tabular">
-      {count} signal{count === 1 ? '' : 's'}
-    </span>
   );
 }
